@@ -1,0 +1,11 @@
+import type { NextConfig } from 'next'
+
+const config: NextConfig = {
+  poweredByHeader: false,
+  reactStrictMode: true,
+  agentRules: false,
+  experimental: { agentUpgrade: false },
+  // The API sends its own validators and caching fields; Next's page ETags stay on.
+  serverExternalPackages: ['pg', 'pino', '@node-rs/argon2'],
+}
+export default config

@@ -1,0 +1,17 @@
+import path from 'node:path'
+import { defineConfig } from 'vitest/config'
+
+const served = { globalSetup: ['tests/support/served.ts'], fileParallelism: false, testTimeout: 60_000, hookTimeout: 120_000 }
+
+export default defineConfig({
+  resolve: { alias: { '@': path.resolve(import.meta.dirname) } },
+  test: {
+    projects: [
+      { extends: true, test: { name: 'unit', environment: 'node', include: ['tests/unit/**/*.test.ts'], testTimeout: 30_000 } },
+      { extends: true, test: { name: 'reference', environment: 'node', include: ['tests/reference/**/*.test.ts'], testTimeout: 30_000 } },
+      { extends: true, test: { name: 'database', include: ['tests/database/**/*.test.ts'], globalSetup: ['tests/support/database.ts'], fileParallelism: false, testTimeout: 60_000, hookTimeout: 120_000 } },
+      { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], ...served } },
+      { extends: true, test: { name: 'browser', include: ['tests/browser/**/*.test.ts'], ...served } },
+    ],
+  },
+})
