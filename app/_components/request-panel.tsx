@@ -1,0 +1,51 @@
+'use client'
+import { useSyncExternalStore, useState } from 'react'
+import { CopyButton } from './copy-button'
+import { useEdition } from './data/edition'
+import { LANGUAGES, requestText, type RequestLanguage, type ShownRequest } from './request-text'
+
+const never = () => () => undefined
+/** The page's own origin, known in the browser only. */
+const useOrigin = (): string => useSyncExternalStore(never, () => window.location.origin, () => '')
+
+/**
+ * "The request behind this view": the API call that gives these numbers, ready to copy, with the edition pinned
+ * so that it gives the same numbers next year.
+ */
+export function RequestPanel({ path, query = {}, method, body, unpinned = false }: ShownRequest & { unpinned?: boolean }) {
+  const [language, setLanguage] = useState<RequestLanguage>('curl')
+  const { number } = useEdition()
+  const origin = useOrigin()
+  const pinned = unpinned || number === null ? query : { ...query, edition: number }
+  const text = requestText(language, origin, { path, query: pinned, method, body })
+  return (
+    <section aria-label="The request behind this view" className="no-print part">
+      <details className="group">
+        <summary className="flex min-h-9 list-none flex-wrap items-center justify-between gap-3">
+          <h2 className="text-lg">
+            <span aria-hidden="true" className="mr-2 inline-block text-lamp-ink transition-transform group-open:rotate-90">▸</span>
+            The request behind this view
+          </h2>
+          <code className="hidden max-w-full truncate text-xs text-muted md:block">{`${method ?? 'GET'} /api/v1${path}`}</code>
+        </summary>
+        <div className="mt-3">
+          <div className="flex flex-wrap items-center justify-between gap-2">
+            <div role="group" aria-label="Language" className="flex gap-1">
+              {LANGUAGES.map(({ id, label }) => (
+                <button key={id} type="button" aria-pressed={language === id} onClick={() => setLanguage(id)}
+                  className={`min-h-8 border-b-2 px-2.5 text-sm ${language === id ? 'border-lamp font-medium text-ink' : 'border-transparent text-muted hover:text-ink'}`}>
+                  {label}
+                </button>
+              ))}
+            </div>
+            <CopyButton text={text} label="Copy request" />
+          </div>
+          <pre className="mt-2 overflow-x-auto border border-rule bg-well p-3 text-xs leading-relaxed" tabIndex={0}>
+            <code>{text}</code>
+          </pre>
+          {unpinned ? null : <p className="note mt-2">{number === null ? 'The edition in force is not known yet.' : `Edition ${number} is pinned: the same request gives the same stored values next year.`}</p>}
+        </div>
+      </details>
+    </section>
+  )
+}

@@ -1,0 +1,41 @@
+import type { Metadata, Viewport } from 'next'
+import { Suspense } from 'react'
+import '@fontsource-variable/inter/wght.css'
+import '@fontsource-variable/stix-two-text/wght.css'
+import '@fontsource-variable/stix-two-text/wght-italic.css'
+import '@fontsource-variable/jetbrains-mono/wght.css'
+import './globals.css'
+import { Footer } from './_components/shell/footer'
+import { HeaderBar } from './_components/shell/header'
+import { Providers } from './_components/shell/providers'
+
+export const metadata: Metadata = {
+  title: { default: 'Lodeterm', template: '%s · Lodeterm' },
+  description: 'A reviewed table of atomic levels that computes its own magnetic splitting.',
+}
+export const viewport: Viewport = {
+  themeColor: [
+    { media: '(prefers-color-scheme: light)', color: '#f2f4f1' },
+    { media: '(prefers-color-scheme: dark)', color: '#12171a' },
+  ],
+}
+
+export default function RootLayout({ children }: { children: React.ReactNode }) {
+  return (
+    <html lang="en" suppressHydrationWarning>
+      <body>
+        <a href="#main" className="skip btn btn-lamp">Skip to the content</a>
+        <Providers>
+          <header className="no-print bg-sheet">
+            <Suspense fallback={<div className="h-14" />}>
+              <HeaderBar />
+            </Suspense>
+            <div aria-hidden="true" className="scale-edge border-t border-rule-strong" />
+          </header>
+          <main id="main" tabIndex={-1} className="flex-1 outline-none">{children}</main>
+          <Footer />
+        </Providers>
+      </body>
+    </html>
+  )
+}
