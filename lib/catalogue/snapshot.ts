@@ -1,0 +1,2 @@
+/** The door to editions held in memory: the shape of one, and how to get it. */
+export type { RetiredLevel, Snapshot, SnapshotColumns, TermMembers } from '@/lib/catalogue/shape'
