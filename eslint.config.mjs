@@ -21,8 +21,8 @@ const all = [...Object.keys(rooms), 'app', 'tests']
 const zones = Object.entries(rooms).map(([room, may]) => {
   const from = all.filter((other) => other !== room && !may.includes(other))
   return {
-    target: [`./${room}/**/*`, `./${room}.ts`],
-    from: from.flatMap((other) => [`./${other}/**/*`, `./${other}.ts`]),
+    target: [`./${room}/**/*`, `./${room}.ts*`],
+    from: from.flatMap((other) => [`./${other}/**/*`, `./${other}.ts*`]),
     message: `${room} may import only from ${may.length > 0 ? may.join(', ') : 'no other room'}.`,
   }
 })
