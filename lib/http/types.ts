@@ -1,0 +1,55 @@
+import type { z } from 'zod'
+import type { Caller } from '@/lib/access/caller'
+import type { Table, WrittenTable } from '@/lib/http/writers/table'
+import type { EditionUse, Format, Operation } from '@/openapi/core/define'
+
+/** Where a list goes on: the sort key and identity of the last row given, in the order of the sort. */
+export type CursorPosition = readonly (string | number | null)[]
+
+export interface Warning { code: string; detail: string }
+
+/** What a handler is given: everything parsed, authenticated and resolved. */
+export interface Call<P, Q, B, S> {
+  params: P
+  query: Q
+  body: B
+  /** The edition's content; `null` where the operation is of no edition. */
+  snapshot: S
+  /** Number of the edition read; the latest one (0 when nothing is published) where the operation is of no edition. */
+  edition: number
+  caller: Caller
+  requestId: string
+  /** Decoded `cursor`: the position of the last row already given. */
+  after: CursorPosition | null
+  format: Format
+  /** The entity tag of If-Match, for operations that need one; compare it by `requireVersion`. */
+  ifMatch: string | null
+  /** Adds to `meta.warnings`. */
+  warn: (code: string, detail: string) => void
+  clientAddress: string
+}
+
+export interface Answer<D> {
+  data: D
+  page?: { limit: number; next: CursorPosition | null }
+  /** Further members of `meta`: model, conventions, excluded, explained ... */
+  meta?: Record<string, unknown>
+  /** The same content as rows, for every format but JSON; a function, so that JSON does not pay for it. */
+  table?: Table | (() => Table)
+  status?: number
+  headers?: Record<string, string>
+  /** What the entity tag is made from, for things with a version of their own (`entityTag` of etag.ts). */
+  etag?: string
+}
+
+export type Handler<P extends z.ZodObject, Q extends z.ZodObject, B extends z.ZodType, R extends z.ZodType, E extends EditionUse, S> =
+  (call: Call<z.output<P>, z.output<Q>, z.output<B>, E extends 'none' ? null : S>) => Promise<Answer<z.input<R>>> | Answer<z.input<R>>
+
+/** An operation with its handler, types forgotten: what `resource` gathers. */
+export interface Endpoint<S> {
+  operation: Operation
+  handle: (call: Call<never, never, never, never>) => Promise<Answer<unknown>> | Answer<unknown>
+  readonly snapshotType?: S
+}
+
+export type WriteTable = (format: Exclude<Format, 'json'>, table: Table, meta: Record<string, unknown>) => WrittenTable | Promise<WrittenTable>

@@ -1,0 +1,18 @@
+import { ACCESS_PROBLEMS } from '@/lib/problem/catalogue-access'
+import { PHYSICS_PROBLEMS } from '@/lib/problem/catalogue-physics'
+import { REQUEST_PROBLEMS } from '@/lib/problem/catalogue-request'
+
+/** One kind of refusal: its status, and what its page says. */
+export interface ProblemKind { status: number; title: string; explanation: string; cure: string }
+
+/**
+ * Every code that can stand in a problem document or in its `errors`, each with a page at /problems/{code}.
+ * A test refuses a code that is used anywhere and missing here.
+ */
+export const PROBLEMS = { ...REQUEST_PROBLEMS, ...ACCESS_PROBLEMS, ...PHYSICS_PROBLEMS } satisfies Record<string, ProblemKind>
+
+export type ProblemCode = keyof typeof PROBLEMS
+
+export const isProblemCode = (code: string): code is ProblemCode => Object.hasOwn(PROBLEMS, code)
+
+export const kindOf = (code: string): ProblemKind | undefined => (isProblemCode(code) ? PROBLEMS[code] : undefined)
