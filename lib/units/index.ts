@@ -1,0 +1,6 @@
+export * from '@/lib/units/codata'
+export * from '@/lib/units/field'
+export * from '@/lib/units/number'
+export * from '@/lib/units/parsed'
+export * from '@/lib/units/print'
+export * from '@/lib/units/spectral'
