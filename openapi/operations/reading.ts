@@ -1,0 +1,13 @@
+import { computeSublevels, convertWavelength, decodeTerm } from './computed'
+import { downloadEditionLevels, getEdition, listEditionChanges, listEditions } from './editions'
+import { find } from './find'
+import { getGFactor, getLevel, getSublevels, listLevels, listLevelTransitions } from './levels'
+import { getSource, getSpecies, listSources, listSpecies } from './species'
+import { getComponents, getTransition, judgeTransition, listTransitions } from './transitions'
+
+/** Everything that reads the table or computes from it. */
+export const READING_OPERATIONS = [
+  listSpecies, getSpecies, listLevels, getLevel, getGFactor, getSublevels, listLevelTransitions, listTransitions, getTransition, getComponents,
+  judgeTransition, decodeTerm, computeSublevels, convertWavelength, listEditions, getEdition, listEditionChanges, downloadEditionLevels,
+  listSources, getSource, find,
+]
