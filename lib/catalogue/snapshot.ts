@@ -1,2 +1,4 @@
 /** The door to editions held in memory: the shape of one, and how to get it. */
-export type { RetiredLevel, Snapshot, SnapshotColumns, TermMembers } from '@/lib/catalogue/shape'
+export { buildSnapshot } from '@/lib/catalogue/build'
+export { closeCatalogue, editionExists, getSnapshot, latestEdition } from '@/lib/catalogue/cache'
+export type { EditionContent, RetiredLevel, Snapshot, SnapshotColumns, TermMembers } from '@/lib/catalogue/shape'
