@@ -164,7 +164,7 @@ async function freePort(wanted) {
 async function clearStale() {
   const server = runningServer(data)
   if (server?.stale && server.taken) {
-    say(`a killed server left its pid file, and pid ${server.pid} is now another program: removing the file`)
+    say(`a killed server left its pid file, and pid ${server.pid} is no longer that server: removing the file`)
     for (let i = 0; endOrphans(data, i < 10 ? 'SIGTERM' : 'SIGKILL') > 0 && i < 40; i++) await pause(250)
     fs.rmSync(path.join(data, 'postmaster.pid'), { force: true })
   }
