@@ -21,9 +21,11 @@ export const Component = z
     shift_lorentz: z.number().nullable(),
     shift_invcm: z.number(),
     shift_ghz: z.number(),
-    shift_pm: z.number().meta({ description: 'Wavelength minus that of the centre, in the medium asked for.' }),
-    wavenumber_invcm: z.number(),
-    wavelength_vac_nm: z.number(),
+    shift_pm: z.number().nullable().meta({ description: 'Wavelength minus that of the centre, in the medium asked for.' }),
+    wavenumber_invcm: z
+      .number()
+      .meta({ description: 'Negative where the field has brought the upper sublevel below the lower one; wavelengths are then null, with warning level_crossing.' }),
+    wavelength_vac_nm: z.number().nullable(),
     wavelength_air_nm: z.number().nullable(),
     frequency_thz: z.number(),
     strength: z.number().nullable(),
