@@ -109,10 +109,15 @@ function readCharge(text: string): number | null {
 }
 
 /** Letters run together with a stage: `NaI`, `FeII`, `nai`. Capitals decide first (NI is nitrogen I, Ni is nickel). */
-function splitRunTogether(text: string): { element: Element; stage: number } | null {
-  const asWritten = /^([A-Z][a-z]?)([IVXLC]+)$/.exec(text)
-  const tries = asWritten ? [[asWritten[1], asWritten[2]]] : [[text.slice(0, 2), text.slice(2)], [text.slice(0, 1), text.slice(1)]]
-  for (const [symbol = '', numeral = ''] of tries) {
+function splitAsWritten(text: string): { element: Element; stage: number } | null {
+  const match = /^([A-Z][a-z]?)([IVXLC]+)$/.exec(text)
+  return match ? firstThatReads([[match[1] ?? '', match[2] ?? '']]) : null
+}
+
+const splitFolded = (text: string) => firstThatReads([[text.slice(0, 2), text.slice(2)], [text.slice(0, 1), text.slice(1)]])
+
+function firstThatReads(tries: readonly (readonly [string, string])[]): { element: Element; stage: number } | null {
+  for (const [symbol, numeral] of tries) {
     const element = bySymbol.get(symbol) ?? byFoldedSymbol.get(symbol.toLowerCase())
     const stage = fromRoman(numeral)
     if (element && stage !== null) return { element, stage }
@@ -139,10 +144,12 @@ export function parseSpecies(text: string): Parsed<SpeciesName> {
   if (stageText === undefined) {
     const exact = bySymbol.get(word) ?? byName.get(word.toLowerCase())
     if (exact) return make(exact, 1)
-    const together = splitRunTogether(word)
-    if (together) return make(together.element, together.stage)
+    const written = splitAsWritten(word)
+    if (written) return make(written.element, written.stage)
     const folded = byFoldedSymbol.get(word.toLowerCase())
     if (folded) return make(folded, 1)
+    const together = splitFolded(word)
+    if (together) return make(together.element, together.stage)
     return refused('element_unknown', `${quoted(word)} is not an element; write its symbol or English name, such as Na or sodium.`)
   }
   const element = readElement(word)
