@@ -72,7 +72,7 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
     setSaid(done ? `Copied ${sorted.length} rows` : 'Could not copy')
   }
   return (
-    <div className="min-w-0">
+    <div className="w-fit min-w-[min(100%,44rem)] max-w-full">
       <div className="mb-1.5 flex flex-wrap items-end justify-between gap-x-4 gap-y-2">
         <div className="note min-w-0">{summary}</div>
         <div className="no-print flex flex-wrap items-center gap-2">

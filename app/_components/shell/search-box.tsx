@@ -22,7 +22,7 @@ export function SearchBox({ initial = '', large = false }: { initial?: string; l
       <label htmlFor={id} className="sr-only">Find a level or a line</label>
       <Search size={large ? 21 : 16} aria-hidden="true" className={`pointer-events-none absolute top-1/2 -translate-y-1/2 text-muted ${large ? 'left-4' : 'left-2.5'}`} />
       <input id={id} name="q" type="search" defaultValue={initial} autoComplete="off" autoCapitalize="none" spellCheck={false} enterKeyHint="search" maxLength={400}
-        placeholder={large ? 'An ion, a term symbol, a wavelength, a line’s name …' : 'Find a level or line'}
+        placeholder={large ? 'An ion, a term, a wavelength, a line’s name' : 'Find a level or line'}
         className={large
           ? 'input min-h-14 rounded-r-none border-r-0 border-ink/60 pl-12 pr-3 font-text text-[1.1875rem] sm:text-[1.3125rem]'
           : 'input min-h-8 rounded-r-none border-r-0 py-0 pl-8 pr-2 text-sm'} />

@@ -1,0 +1,77 @@
+'use client'
+import Link from 'next/link'
+import type { Transition } from '@/openapi/schemas/transition'
+import type { Column } from './data-table'
+import { linePage, speciesPage, speciesText } from './names'
+import { fixed } from './number'
+import { TermSymbol } from './term-symbol'
+
+export type Shown = 'conventional' | 'air' | 'vacuum' | 'wavenumber' | 'frequency'
+
+/** A wavelength keeps three decimals in the optical, fewer in the far infrared, where the table's own figures end sooner. */
+export const nm = (value: number): string => fixed(value, value < 3000 ? 4 : value < 30000 ? 3 : 1)
+
+const POSITION: Record<Shown, Omit<Column<Transition>, 'rowHeader' | 'cell'> & { print: (line: Transition) => string | null }> = {
+  conventional: {
+    name: 'wavelength_conventional_nm', header: 'Wavelength, nm', align: 'right', value: (line) => line.wavelength_conventional_nm, print: (line) => nm(line.wavelength_conventional_nm),
+  },
+  air: { name: 'wavelength_air_nm', header: 'Wavelength in air, nm', align: 'right', value: (line) => line.wavelength_air_nm, print: (line) => (line.wavelength_air_nm === null ? null : nm(line.wavelength_air_nm)) },
+  vacuum: { name: 'wavelength_vac_nm', header: 'Wavelength in vacuum, nm', align: 'right', value: (line) => line.wavelength_vac_nm, print: (line) => nm(line.wavelength_vac_nm) },
+  wavenumber: { name: 'wavenumber_invcm', header: <>Wavenumber, cm<sup>−1</sup></>, align: 'right', value: (line) => line.wavenumber_invcm, print: (line) => fixed(line.wavenumber_invcm, 4) },
+  frequency: { name: 'frequency_thz', header: 'Frequency, THz', align: 'right', value: (line) => line.frequency_thz, print: (line) => fixed(line.frequency_thz, 6) },
+}
+
+/** LS terms as `²S – ²P°`; the J's stand in the symbols. */
+export function Terms({ line }: { line: Transition }) {
+  return (
+    <span className="whitespace-nowrap">
+      <TermSymbol term={line.lower.term} />
+      <span aria-hidden="true" className="mx-1 text-muted">–</span>
+      <span className="sr-only"> to </span>
+      <TermSymbol term={line.upper.term} />
+    </span>
+  )
+}
+
+/** Columns of a list of lines, positioned by the quantity asked for. */
+export function lineColumns(href: (path: string) => string, options: { species?: boolean; shown?: Shown; sortable?: boolean } = {}): Column<Transition>[] {
+  const { species = true, shown = 'conventional', sortable = true } = options
+  const { print, ...position } = POSITION[shown]
+  const others = (['wavelength_vac_nm', 'wavelength_air_nm', 'wavenumber_invcm'] as const).filter((name) => name !== position.name)
+  const columns: Column<Transition>[] = [
+    {
+      name: 'species', header: 'Species', value: (line) => line.lower.species, sort: sortable,
+      cell: (line) => <Link className="link" href={href(speciesPage(line.lower.species))}>{speciesText(line.lower.species)}</Link>,
+    },
+    {
+      ...position, rowHeader: true, sort: sortable,
+      cell: (line) => (
+        <Link className="link inline-flex min-h-6 items-center" href={href(linePage(line.id))}>
+          {print(line) ?? 'no air value'}
+          {shown === 'conventional' ? <span className="ml-1 inline-block w-[1.6em] text-left text-xs text-muted no-underline">{line.conventional_medium === 'vacuum' ? 'vac' : 'air'}</span> : null}
+        </Link>
+      ),
+    },
+    ...others.map((name): Column<Transition> => ({ name, header: name, value: (line) => line[name], only: 'copy' })),
+    { name: 'terms', header: 'Lower – upper', value: (line) => `${line.lower.term.symbol} - ${line.upper.term.symbol}`, cell: (line) => <Terms line={line} />, only: 'screen' },
+    { name: 'lower', header: 'Lower', value: (line) => line.lower.id, only: 'copy' },
+    { name: 'lower_term', header: 'Lower term', value: (line) => line.lower.term.symbol, only: 'copy' },
+    { name: 'upper', header: 'Upper', value: (line) => line.upper.id, only: 'copy' },
+    { name: 'upper_term', header: 'Upper term', value: (line) => line.upper.term.symbol, only: 'copy' },
+    {
+      name: 'kind', header: 'Kind', value: (line) => line.kind,
+      cell: (line) => (
+        <>
+          {line.kind}
+          {line.verdict.intercombination ? <span className="ml-1.5 text-xs text-warn">intercombination</span> : null}
+        </>
+      ),
+    },
+    {
+      name: 'g_eff', header: <>g<sub>eff</sub></>, align: 'right', value: (line) => line.g_eff, sort: sortable,
+      cell: (line) => (line.g_eff === null ? <span className="text-muted">{line.g_eff_status === 'not_applicable' ? 'does not apply' : 'not known'}</span> : <span title={`${line.g_eff}`}>{fixed(line.g_eff, 4)}</span>),
+    },
+    { name: 'pattern', header: 'Pattern', value: (line) => line.pattern, cell: (line) => line.pattern ?? <span className="text-muted">not known</span> },
+  ]
+  return species ? columns : columns.filter((column) => column.name !== 'species')
+}
