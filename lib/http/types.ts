@@ -30,7 +30,10 @@ export interface Call<P, Q, B, S> {
 }
 
 export interface Answer<D> {
-  data: D
+  /** Left out only where `table` holds everything and no JSON but that of its rows is wanted. */
+  data?: D
+  /** What a repeated request with the same Idempotency-Key gets, where the first answer holds a secret that is shown once. */
+  repeatData?: D
   page?: { limit: number; next: CursorPosition | null }
   /** Further members of `meta`: model, conventions, excluded, explained ... */
   meta?: Record<string, unknown>
@@ -52,4 +55,4 @@ export interface Endpoint<S> {
   readonly snapshotType?: S
 }
 
-export type WriteTable = (format: Exclude<Format, 'json'>, table: Table, meta: Record<string, unknown>) => WrittenTable | Promise<WrittenTable>
+export type WriteTable = (format: Format, table: Table, meta: unknown, page?: unknown) => WrittenTable | Promise<WrittenTable>

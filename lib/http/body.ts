@@ -1,0 +1,95 @@
+import type { z } from 'zod'
+import { faultsOf, knownKeys, pointerPlace } from '@/lib/http/faults'
+import { type Fault, Problem } from '@/lib/problem'
+
+export const BODY_LIMIT_BYTES = 1_048_576
+
+const tooLarge = () => new Problem('body_too_large', `The body is larger than ${BODY_LIMIT_BYTES} bytes; reading stopped there.`)
+
+/** Refuses a body of another media type before a byte of it is read. */
+export function checkContentType(contentType: string | null, hasBody: boolean): void {
+  if (!hasBody) return
+  const type = (contentType ?? '').split(';')[0]?.trim().toLowerCase() ?? ''
+  if (type !== 'application/json') {
+    throw new Problem('unsupported_media_type', contentType === null ? 'The body has no Content-Type; send application/json.' : `The body is ${JSON.stringify(type.slice(0, 100))}; send application/json.`, { headers: { 'accept': 'application/json' } })
+  }
+}
+
+/** Whether a request carries a body, by its framing fields. */
+export const hasBody = (headers: Headers): boolean => headers.has('transfer-encoding') || Number(headers.get('content-length') ?? '0') > 0
+
+/** Reads at most BODY_LIMIT_BYTES and stops; a declared length beyond that is refused before reading. */
+export async function readText(request: Request): Promise<string> {
+  const declared = Number(request.headers.get('content-length') ?? '0')
+  if (declared > BODY_LIMIT_BYTES) throw tooLarge()
+  if (request.body === null) return ''
+  const reader = request.body.getReader()
+  const pieces: Uint8Array[] = []
+  let length = 0
+  for (;;) {
+    const step = await reader.read()
+    if (step.done) break
+    length += step.value.byteLength
+    if (length > BODY_LIMIT_BYTES) {
+      await reader.cancel().catch(() => undefined)
+      throw tooLarge()
+    }
+    pieces.push(step.value)
+  }
+  try {
+    return new TextDecoder('utf-8', { fatal: true }).decode(Buffer.concat(pieces))
+  } catch {
+    throw new Problem('body_not_json', 'The body is not valid UTF-8, which JSON has to be.')
+  }
+}
+
+function nulFaults(value: unknown, path: readonly PropertyKey[], faults: Fault[]): void {
+  const nul = String.fromCharCode(0)
+  if (typeof value === 'string') {
+    if (value.includes(nul)) faults.push({ ...pointerPlace(path), code: 'nul_byte', detail: 'Text cannot hold a NUL character.' })
+  } else if (typeof value === 'object' && value !== null) {
+    for (const [key, inside] of Object.entries(value)) {
+      if (key.includes(nul)) faults.push({ ...pointerPlace(path), code: 'nul_byte', detail: 'A key cannot hold a NUL character.' })
+      nulFaults(inside, [...path, key], faults)
+    }
+  }
+}
+
+const DEEPEST = 32
+
+/** Brackets opened and not closed at the deepest place, outside of strings: a bound before anything recursive looks at the body. */
+export function nesting(text: string): number {
+  let depth = 0
+  let deepest = 0
+  let inText = false
+  for (let i = 0; i < text.length; i += 1) {
+    const c = text.charCodeAt(i)
+    if (inText) {
+      if (c === 92) i += 1
+      else if (c === 34) inText = false
+    } else if (c === 34) inText = true
+    else if (c === 91 || c === 123) deepest = Math.max(deepest, (depth += 1))
+    else if (c === 93 || c === 125) depth -= 1
+  }
+  return deepest
+}
+
+function parseJson(text: string): unknown {
+  if (nesting(text) > DEEPEST) throw new Problem('body_not_json', `The body is nested deeper than ${DEEPEST} levels, which nothing here is.`)
+  try {
+    return JSON.parse(text)
+  } catch (error) {
+    const where = error instanceof Error ? /position (\d+)/.exec(error.message)?.[1] : undefined
+    throw new Problem('body_not_json', text.trim() === '' ? 'The body is empty.' : `The body cannot be parsed as JSON${where === undefined ? '' : ` (character ${where})`}.`)
+  }
+}
+
+/** The body as a domain value, or everything that is wrong with it. */
+export function readBody(schema: z.ZodType, text: string): { value: unknown; faults: Fault[] } {
+  const json = parseJson(text)
+  const nul: Fault[] = []
+  if (text.includes(String.fromCharCode(0)) || text.includes('\\u0000')) nulFaults(json, [], nul)
+  const result = schema.safeParse(json)
+  if (result.success) return { value: result.data, faults: nul }
+  return { value: undefined, faults: [...nul, ...faultsOf(result.error.issues, json, pointerPlace, (path) => knownKeys(schema, path))] }
+}

@@ -1,0 +1,31 @@
+import { createHash } from 'node:crypto'
+import { Problem } from '@/lib/problem'
+
+/** Raised whenever the form of stored answers changes, so that no cache goes on with the old form under the old tag. */
+export const FORM_VERSION = 1
+
+/** A strong entity tag from whatever decides a representation, byte for byte. */
+export const entityTag = (...parts: readonly (string | number | null)[]): string =>
+  `"${createHash('sha256').update(JSON.stringify(parts)).digest('base64url').slice(0, 27)}"`
+
+const listOf = (field: string): string[] => field.match(/(?:W\/)?"[^"]*"|\*/g) ?? []
+
+/** Whether If-None-Match names the tag (weak comparison, RFC 9110 section 13.1.2). */
+export function noneMatchHits(field: string | null, tag: string): boolean {
+  if (field === null) return false
+  return listOf(field).some((given) => given === '*' || given.replace(/^W\//, '') === tag)
+}
+
+/** The strong tag of If-Match; 428 where it is missing, 400 where it is not a strong tag. */
+export function readIfMatch(field: string | null): string {
+  if (field === null || field.trim() === '') throw new Problem('if_match_missing', 'Send If-Match with the ETag that you last read.')
+  const tags = listOf(field)
+  const [tag] = tags
+  if (tag === undefined || tags.length > 1 || tag === '*' || tag.startsWith('W/')) throw new Problem('if_match_malformed', 'If-Match must be one strong entity tag in quotes, as ETag gave it.')
+  return tag
+}
+
+/** 412 where the version there now is not the one the change was made from. */
+export function requireVersion(ifMatch: string | null, current: string): void {
+  if (ifMatch !== current) throw new Problem('etag_stale', 'This was changed after you read it; nothing was overwritten. Read it again and make your change on what is there now.')
+}

@@ -1,0 +1,34 @@
+import { subscribe } from 'node:diagnostics_channel'
+import type { IncomingMessage } from 'node:http'
+import { shared } from '@/lib/access/shared'
+
+/** Field in which the address of the connection itself reaches the handlers; what a client sends under this name is overwritten. */
+const PEER_FIELD = 'x-lodeterm-peer'
+
+const watch = shared('peer', () => ({ on: false }))
+
+/**
+ * Writes the address of each request's connection into its fields before anyone reads them. The framework shows handlers
+ * only X-Forwarded-For, which a client may write as it likes.
+ */
+export function watchPeers(): void {
+  if (watch.on) return
+  watch.on = true
+  subscribe('http.server.request.start', (message) => {
+    const { request } = message as { request: IncomingMessage }
+    request.headers[PEER_FIELD] = request.socket.remoteAddress ?? ''
+  })
+}
+
+const plain = (address: string): string => address.trim().replace(/^::ffff:(?=\d+\.)/, '').replace(/^\[(.*)\]$/, '$1')
+
+/**
+ * The address that a request came from: that of the connection, or, where that is a configured proxy, the last one in
+ * X-Forwarded-For that is not a configured proxy itself.
+ */
+export function clientAddress(headers: Headers, trustedProxies: readonly string[]): string {
+  const peer = watch.on ? plain(headers.get(PEER_FIELD) ?? '') : ''
+  if (!trustedProxies.includes(peer)) return peer === '' ? 'unknown' : peer
+  const hops = (headers.get('x-forwarded-for') ?? '').split(',').map(plain).filter((hop) => hop !== '')
+  return hops.findLast((hop) => !trustedProxies.includes(hop)) ?? peer
+}
