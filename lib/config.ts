@@ -27,7 +27,7 @@ const Environment = z.object({
   RATE_ANONYMOUS_PER_MINUTE: perMinute.default(1200),
   RATE_KEY_PER_MINUTE: perMinute.default(12_000),
   SESSION_SECRET_FILE: z.string().min(1).default('.data/session-secret'),
-  DEMO: flag.default(false),
+  DEMO: flag.optional(),
   NODE_ENV: z.enum(['development', 'test', 'production']).default('development'),
   LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'trace', 'silent']).default('info'),
 })
@@ -48,11 +48,14 @@ export interface Config {
   rateKeyPerMinute: number
   /** Absolute path of the private file that holds the session secret. */
   sessionSecretFile: string
-  /** Demo accounts are allowed beyond loopback. */
+  /** Whether demo accounts may exist and be used: on loopback unless DEMO=0, elsewhere only with DEMO=1. */
   demo: boolean
   nodeEnv: 'development' | 'test' | 'production'
   logLevel: 'fatal' | 'error' | 'warn' | 'info' | 'debug' | 'trace' | 'silent'
 }
+
+/** Whether a server listening there is reached from this machine only. */
+export const isLoopback = (host: string): boolean => host === 'localhost' || host === '::1' || /^127(\.\d{1,3}){3}$/.test(host)
 
 /** Reads the environment given; an empty variable counts as not set. Throws ConfigError with all that is wrong. */
 export function parseConfig(env: Readonly<Record<string, string | undefined>>): Config {
@@ -72,7 +75,7 @@ export function parseConfig(env: Readonly<Record<string, string | undefined>>): 
     rateAnonymousPerMinute: e.RATE_ANONYMOUS_PER_MINUTE,
     rateKeyPerMinute: e.RATE_KEY_PER_MINUTE,
     sessionSecretFile: path.resolve(/* turbopackIgnore: true */ process.cwd(), e.SESSION_SECRET_FILE),
-    demo: e.DEMO,
+    demo: e.DEMO ?? isLoopback(e.HOST),
     nodeEnv: e.NODE_ENV,
     logLevel: e.LOG_LEVEL,
   }

@@ -253,7 +253,7 @@ CREATE TABLE "source_revisions" (
 	CONSTRAINT "source_revisions_revision_positive" CHECK ("source_revisions"."revision" >= 1),
 	CONSTRAINT "source_revisions_edition_range" CHECK (case when "source_revisions"."published_from" is null then "source_revisions"."published_until" is null else "source_revisions"."published_from" >= 1 and coalesce("source_revisions"."published_until" > "source_revisions"."published_from", true) end),
 	CONSTRAINT "source_revisions_draft_has_amendment" CHECK ("source_revisions"."published_from" is not null or "source_revisions"."amendment_id" is not null),
-	CONSTRAINT "source_revisions_kind" CHECK ("source_revisions"."kind" in ('article', 'report', 'book', 'data sheet', 'abstract', 'preprint', 'other')),
+	CONSTRAINT "source_revisions_kind" CHECK ("source_revisions"."kind" in ('article', 'report', 'book', 'data sheet', 'abstract', 'other')),
 	CONSTRAINT "source_revisions_year" CHECK ("source_revisions"."year" between 1800 and 2200)
 );
 --> statement-breakpoint

@@ -2,7 +2,7 @@ import { sql } from 'drizzle-orm'
 import { check, index, integer, pgTable, text } from 'drizzle-orm/pg-core'
 import { revisionChecks, revisionColumns } from './columns'
 
-export const SOURCE_KINDS = ['article', 'report', 'book', 'data sheet', 'abstract', 'preprint', 'other'] as const
+export const SOURCE_KINDS = ['article', 'report', 'book', 'data sheet', 'abstract', 'other'] as const
 
 /** Identity of a source; the key is readable and never reused. */
 export const sources = pgTable('sources', { key: text('key').primaryKey() }, (t) => [
@@ -29,7 +29,7 @@ export const sourceRevisions = pgTable(
   },
   (t) => [
     ...revisionChecks('source_revisions', t),
-    check('source_revisions_kind', sql`${t.kind} in ('article', 'report', 'book', 'data sheet', 'abstract', 'preprint', 'other')`),
+    check('source_revisions_kind', sql`${t.kind} in ('article', 'report', 'book', 'data sheet', 'abstract', 'other')`),
     check('source_revisions_year', sql`${t.year} between 1800 and 2200`),
     index('source_revisions_identity').on(t.sourceKey, t.publishedFrom),
   ],
