@@ -1,4 +1,5 @@
-import { adoptG, jjG, jjGExact, landeG, landeGExact, pairG, pairGExact } from '@/lib/atomic'
+import { adoptG } from '@/lib/atomic/adopted'
+import { jjG, jjGExact, landeG, landeGExact, pairG, pairGExact } from '@/lib/atomic/lande'
 import { couplingAt, type PackedLevels } from '@/lib/catalogue/columns'
 import type { MeasuredGRow } from '@/lib/catalogue/shape'
 import type { GJ } from '@/openapi/schemas/level'
@@ -66,12 +67,12 @@ export function adoptedNumber(packed: PackedLevels, i: number): number {
 export function gOf(packed: PackedLevels, i: number, coupled: CoupledG): GJ {
   const noG = packed.columns.twoJ[i] === 0
   const rows = packed.measured.get(i) ?? NO_ROWS
-  const { adopted, basis, chosen } = adopt(packed, i, coupled.value)
+  const { adopted, basis, chosen, byCurator } = adopt(packed, i, coupled.value)
   const isLs = coupled.scheme === 'LS'
   return {
     adopted: noG ? null : adopted,
-    adopted_unc: basis === 'measured' ? (chosen?.unc ?? null) : null,
-    basis: noG ? 'none' : basis,
+    adopted_unc: basis === 'measured' && !byCurator ? (chosen?.unc ?? null) : null,
+    basis: noG ? 'none' : byCurator ? 'chosen' : basis,
     scheme: coupled.scheme,
     coupled: coupled.value,
     coupled_exact: coupled.exact,
