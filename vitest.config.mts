@@ -1,7 +1,8 @@
 import path from 'node:path'
 import { defineConfig } from 'vitest/config'
 
-const served = { globalSetup: ['tests/support/served.ts'], fileParallelism: false, testTimeout: 60_000, hookTimeout: 120_000 }
+const applied = { setupFiles: ['tests/support/apply-environment.ts'], fileParallelism: false, testTimeout: 60_000, hookTimeout: 120_000 }
+const served = { ...applied, globalSetup: ['tests/support/served.ts'] }
 
 export default defineConfig({
   resolve: { alias: { '@': path.resolve(import.meta.dirname) } },
@@ -9,7 +10,7 @@ export default defineConfig({
     projects: [
       { extends: true, test: { name: 'unit', environment: 'node', include: ['tests/unit/**/*.test.ts'], testTimeout: 30_000 } },
       { extends: true, test: { name: 'reference', environment: 'node', include: ['tests/reference/**/*.test.ts'], testTimeout: 30_000 } },
-      { extends: true, test: { name: 'database', include: ['tests/database/**/*.test.ts'], globalSetup: ['tests/support/database.ts'], fileParallelism: false, testTimeout: 60_000, hookTimeout: 120_000 } },
+      { extends: true, test: { name: 'database', include: ['tests/database/**/*.test.ts'], globalSetup: ['tests/support/database.ts'], ...applied } },
       { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], ...served } },
       { extends: true, test: { name: 'browser', include: ['tests/browser/**/*.test.ts'], ...served } },
     ],

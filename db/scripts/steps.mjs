@@ -215,3 +215,12 @@ export async function main(body) {
     process.exit(1)
   }
 }
+
+/** A port that is free now. */
+export const freePort = () => new Promise((resolve, reject) => {
+  const probe = net.createServer().once('error', reject)
+  probe.listen(0, '127.0.0.1', () => {
+    const { port } = probe.address()
+    probe.close(() => resolve(String(port)))
+  })
+})
