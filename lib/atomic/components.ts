@@ -94,6 +94,38 @@ export function requireG(end: LineEnd, name: 'lower' | 'upper'): void {
   }
 }
 
+/** What a pair of J's fixes whatever the g's and the field: which m join, how strongly, and why not. */
+export interface ComponentPlace {
+  readonly twoMLower: TwoJ
+  readonly twoMUpper: TwoJ
+  readonly q: number
+  readonly polarisation: Polarisation
+  readonly strength: number
+  readonly forbidden: ComponentRule | null
+}
+
+const places = new Map<number, readonly ComponentPlace[]>()
+
+/** Every (m_lower, m_upper) with |q| up to the rank, by q then m_lower; empty where no multipole of this rank joins the J's. Remembered. */
+export function componentPlaces(kind: Kind, twoJLower: TwoJ, twoJUpper: TwoJ): readonly ComponentPlace[] {
+  const rank = rankOf(kind)
+  const key = (twoJLower * 512 + twoJUpper) * 2 + rank - 1
+  const known = places.get(key)
+  if (known) return known
+  const list: ComponentPlace[] = []
+  for (let q = -rank; q <= rank && isTriangle(twoJLower, 2 * rank, twoJUpper); q += 1) {
+    for (const twoMLower of magneticNumbers(twoJLower)) {
+      const twoMUpper = twoMLower + 2 * q
+      if (Math.abs(twoMUpper) > twoJUpper) continue
+      const strength = componentStrength(kind, twoJLower, twoMLower, twoJUpper, twoMUpper)
+      const forbidden = strength === 0 ? forbiddingComponentRule(kind, twoJLower, twoMLower, twoJUpper, twoMUpper) : null
+      list.push({ twoMLower, twoMUpper, q, polarisation: polarisationOf(q), strength, forbidden })
+    }
+  }
+  places.set(key, list)
+  return list
+}
+
 export interface WeakFieldInput {
   kind: Kind
   lower: LineEnd
@@ -111,32 +143,27 @@ export function weakFieldComponents({ kind, lower, upper, fieldTesla, thetaDeg =
   requireG(lower, 'lower')
   requireG(upper, 'upper')
   const rank = rankOf(kind)
-  if (!isTriangle(lower.twoJ, 2 * rank, upper.twoJ)) return []
   const lorentzInvcm = MU_B_OVER_HC_INVCM_PER_T * fieldTesla
-  const components: Component[] = []
-  for (let q = -rank; q <= rank; q += 1) {
-    const factors = angularFactors(kind, q, thetaDeg)
-    for (const twoMLower of magneticNumbers(lower.twoJ)) {
-      const twoMUpper = twoMLower + 2 * q
-      if (Math.abs(twoMUpper) > upper.twoJ) continue
-      const strength = componentStrength(kind, lower.twoJ, twoMLower, upper.twoJ, twoMUpper)
-      const shift = shiftLorentz(lower.g, twoMLower, upper.g, twoMUpper)
-      const times = (factor: number | null) => (factor === null ? null : plusZero(strength * factor))
-      const component: Component = {
-        twoMLower,
-        twoMUpper,
-        q,
-        polarisation: polarisationOf(q),
-        shiftLorentz: shift,
-        shiftInvcm: plusZero(lorentzInvcm * shift),
-        strength,
-        intensity: times(factors.intensity),
-        stokesQ: times(factors.stokesQ),
-        stokesV: times(factors.stokesV),
-      }
-      const forbidden = strength === 0 ? forbiddingComponentRule(kind, lower.twoJ, twoMLower, upper.twoJ, twoMUpper) : null
-      components.push(forbidden === null ? component : { ...component, forbidden })
+  const factorsOfQ = Array.from({ length: 2 * rank + 1 }, (_, i) => angularFactors(kind, i - rank, thetaDeg))
+  const times = (strength: number, factor: number | null | undefined) => (factor === null || factor === undefined ? null : plusZero(strength * factor))
+  const components = componentPlaces(kind, lower.twoJ, upper.twoJ).map((place): Component => {
+    const { twoMLower, twoMUpper, q, polarisation, strength, forbidden } = place
+    const shift = shiftLorentz(lower.g, twoMLower, upper.g, twoMUpper)
+    const factors = factorsOfQ[q + rank]
+    const component: Component = {
+      twoMLower,
+      twoMUpper,
+      q,
+      polarisation,
+      shiftLorentz: shift,
+      shiftInvcm: plusZero(lorentzInvcm * shift),
+      strength,
+      intensity: times(strength, factors?.intensity),
+      stokesQ: times(strength, factors?.stokesQ),
+      stokesV: times(strength, factors?.stokesV),
     }
-  }
+    if (forbidden !== null) component.forbidden = forbidden
+    return component
+  })
   return components.sort(byPlace)
 }

@@ -2,44 +2,49 @@ import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 
 const LOWEST_TESLA = 1e-7
 const HIGHEST_TESLA = 1e4
-const STEPS_PER_DECADE = 6
-const REMEMBERED = 4000
+const STEPS_PER_DECADE = 4
+const RELATIVE_WIDTH = 1e-12
 
-const known = new Map<string, (number | null)[]>()
+/** Narrows a bracket of the root of `excess` (below 0 at low, above at high): Illinois steps, every fourth a bisection so that it cannot stall. */
+function narrow(excess: (tesla: number) => number, low: number, atLow: number, high: number, atHigh: number): number {
+  let [a, fa, b, fb] = [low, atLow, high, atHigh]
+  for (let step = 1; step <= 200 && b / a > 1 + RELATIVE_WIDTH; step += 1) {
+    const secant = b - (fb * (b - a)) / (fb - fa)
+    const middle = step % 4 === 0 || !(secant > a && secant < b) ? (a + b) / 2 : secant
+    if (middle <= a || middle >= b) break
+    const at = excess(middle)
+    if (at > 0) {
+      ;[b, fb] = [middle, at]
+      fa /= 2
+    } else {
+      ;[a, fa] = [middle, at]
+      fb /= 2
+    }
+  }
+  return b
+}
 
 /**
  * The smallest field (T, up to 10 000) at which a relative error, a function of x = mu_B B in cm^-1, passes the tolerance: a scan upwards in
- * six steps a decade, then bisection. 0 where it is passed at any field; null where it never is.
+ * four steps a decade, then a narrowed bracket. The scan starts a thousandth below where mixing over the smallest gap (cm^-1) can matter.
+ * 0 where the tolerance is passed at any field; null where it never is.
  */
-function firstPassed(error: (x: number) => number, tolerance: number): number | null {
-  const passed = (tesla: number) => error(MU_B_OVER_HC_INVCM_PER_T * tesla) > tolerance
-  if (passed(LOWEST_TESLA)) return 0
-  const steps = Math.round(Math.log10(HIGHEST_TESLA / LOWEST_TESLA)) * STEPS_PER_DECADE
-  let below = LOWEST_TESLA
-  for (let step = 1; step <= steps; step += 1) {
-    const above = step === steps ? HIGHEST_TESLA : LOWEST_TESLA * 10 ** (step / STEPS_PER_DECADE)
-    if (!passed(above)) {
-      below = above
-      continue
-    }
-    let [low, high] = [below, above]
-    while (high / low > 1 + 1e-12) {
-      const middle = (low + high) / 2
-      if (middle <= low || middle >= high) break
-      if (passed(middle)) high = middle
-      else low = middle
-    }
-    return high
+export function firstPassed(error: (x: number) => number, tolerance: number, smallestGap: number): number | null {
+  const excess = (tesla: number) => error(MU_B_OVER_HC_INVCM_PER_T * tesla) - tolerance
+  const hint = (tolerance * smallestGap) / (1000 * MU_B_OVER_HC_INVCM_PER_T)
+  let below = Math.min(Math.max(hint, LOWEST_TESLA), HIGHEST_TESLA / 10)
+  let before = excess(below)
+  if (before > 0) {
+    below = LOWEST_TESLA
+    before = excess(below)
+    if (before > 0) return 0
+  }
+  while (below < HIGHEST_TESLA) {
+    const above = Math.min(below * 10 ** (1 / STEPS_PER_DECADE), HIGHEST_TESLA)
+    const now = excess(above)
+    if (now > 0) return narrow(excess, below, before, above, now)
+    below = above
+    before = now
   }
   return null
-}
-
-/** `firstPassed` of several errors, remembered under a key that says all they depend on: limits do not change with the field asked. */
-export function limitsOf(key: string, errors: readonly ((x: number) => number)[], tolerance: number): (number | null)[] {
-  const before = known.get(key)
-  if (before) return before
-  const limits = errors.map((error) => firstPassed(error, tolerance))
-  if (known.size >= REMEMBERED) known.clear()
-  known.set(key, limits)
-  return limits
 }

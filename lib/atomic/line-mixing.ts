@@ -1,5 +1,5 @@
-import { componentStrength, shiftLorentz } from '@/lib/atomic/components'
-import { isTriangle, type TwoJ } from '@/lib/atomic/half'
+import { componentPlaces, shiftLorentz } from '@/lib/atomic/components'
+import type { TwoJ } from '@/lib/atomic/half'
 import { beyondLinear, mixedAmplitudes, type MixedLevel, type TermLevels } from '@/lib/atomic/mixing'
 import { type Kind, rankOf } from '@/lib/atomic/rules'
 import { hasLsDipole, lsDipoleAmplitude } from '@/lib/atomic/term-coupling'
@@ -50,30 +50,24 @@ function whyNoAmplitude(kind: Kind, lower: KernelEnd, upper: KernelEnd): string 
 export function lineKernel(kind: Kind, lower: KernelEnd, upper: KernelEnd): LineKernel {
   const rank = rankOf(kind)
   const noAmplitude = whyNoAmplitude(kind, lower, upper)
-  const components: KernelComponent[] = []
   const lowerJs = [lower.twoJ, ...lower.mixed.neighbours.map((n) => n.twoJ)]
   const upperJs = [upper.twoJ, ...upper.mixed.neighbours.map((n) => n.twoJ)]
-  const allowed = isTriangle(lower.twoJ, 2 * rank, upper.twoJ)
-  for (let q = -rank; allowed && q <= rank; q += 1) {
-    for (let twoMLower = -lower.twoJ; twoMLower <= lower.twoJ; twoMLower += 2) {
-      const twoMUpper = twoMLower + 2 * q
-      if (Math.abs(twoMUpper) > upper.twoJ) continue
-      const amplitude = (twoJUpper: TwoJ, twoJLower: TwoJ) =>
-        Math.abs(twoMUpper) > twoJUpper || Math.abs(twoMLower) > twoJLower
-          ? 0
-          : lsDipoleAmplitude(lower.term?.twoS ?? 0, { l: lower.term?.l ?? 0, twoJ: twoJLower, twoM: twoMLower }, { l: upper.term?.l ?? 0, twoJ: twoJUpper, twoM: twoMUpper })
-      components.push({
-        q,
-        twoMLower,
-        twoMUpper,
-        lowerIndex: (twoMLower + lower.twoJ) / 2,
-        upperIndex: (twoMUpper + upper.twoJ) / 2,
-        shift: shiftLorentz(lower.g, twoMLower, upper.g, twoMUpper),
-        strength: componentStrength(kind, lower.twoJ, twoMLower, upper.twoJ, twoMUpper),
-        amplitudes: noAmplitude === null ? upperJs.map((twoJUpper) => lowerJs.map((twoJLower) => amplitude(twoJUpper, twoJLower))) : [],
-      })
+  const components = componentPlaces(kind, lower.twoJ, upper.twoJ).map(({ q, twoMLower, twoMUpper, strength }): KernelComponent => {
+    const amplitude = (twoJUpper: TwoJ, twoJLower: TwoJ) =>
+      Math.abs(twoMUpper) > twoJUpper || Math.abs(twoMLower) > twoJLower
+        ? 0
+        : lsDipoleAmplitude(lower.term?.twoS ?? 0, { l: lower.term?.l ?? 0, twoJ: twoJLower, twoM: twoMLower }, { l: upper.term?.l ?? 0, twoJ: twoJUpper, twoM: twoMUpper })
+    return {
+      q,
+      twoMLower,
+      twoMUpper,
+      lowerIndex: (twoMLower + lower.twoJ) / 2,
+      upperIndex: (twoMUpper + upper.twoJ) / 2,
+      shift: shiftLorentz(lower.g, twoMLower, upper.g, twoMUpper),
+      strength,
+      amplitudes: noAmplitude === null ? upperJs.map((twoJUpper) => lowerJs.map((twoJLower) => amplitude(twoJUpper, twoJLower))) : [],
     }
-  }
+  })
   const seen = components.filter((component) => component.strength > 0)
   const largestOfQ = Array.from({ length: 2 * rank + 1 }, (_, i) => Math.max(0, ...seen.filter((c) => c.q === i - rank).map((c) => c.strength)))
   const squares = components.filter((c) => c.q === 0).reduce((sum, c) => sum + (c.amplitudes[0]?.[0] ?? 0) ** 2, 0)

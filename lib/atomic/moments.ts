@@ -1,4 +1,4 @@
-import { componentStrength, type LineEnd, shiftLorentz } from '@/lib/atomic/components'
+import { componentPlaces, type LineEnd, shiftLorentz } from '@/lib/atomic/components'
 import { Fraction, readFraction } from '@/lib/atomic/exact'
 import { isTriangle, magneticNumbers, type TwoJ } from '@/lib/atomic/half'
 import { type Kind, rankOf } from '@/lib/atomic/rules'
@@ -54,14 +54,11 @@ export function secondMoments(lower: LineEnd, upper: LineEnd): Moments | null {
   if (!hasDipole(lower.twoJ, upper.twoJ)) return null
   if ((lower.g === null && lower.twoJ > 0) || (upper.g === null && upper.twoJ > 0)) return null
   const moments: Moments = { piSecond: 0, sigmaFirst: 0, sigmaSecond: 0 }
-  for (const twoM of magneticNumbers(lower.twoJ)) {
-    if (twoM >= -upper.twoJ && twoM <= upper.twoJ) {
-      const shift = shiftLorentz(lower.g, twoM, upper.g, twoM)
-      moments.piSecond += componentStrength('E1', lower.twoJ, twoM, upper.twoJ, twoM) * shift * shift
-    }
-    if (twoM + 2 <= upper.twoJ && twoM + 2 >= -upper.twoJ) {
-      const shift = shiftLorentz(lower.g, twoM, upper.g, twoM + 2)
-      const strength = componentStrength('E1', lower.twoJ, twoM, upper.twoJ, twoM + 2)
+  for (const { q, twoMLower, twoMUpper, strength } of componentPlaces('E1', lower.twoJ, upper.twoJ)) {
+    if (q < 0) continue
+    const shift = shiftLorentz(lower.g, twoMLower, upper.g, twoMUpper)
+    if (q === 0) moments.piSecond += strength * shift * shift
+    else {
       moments.sigmaFirst += strength * shift
       moments.sigmaSecond += strength * shift * shift
     }
@@ -105,26 +102,36 @@ function kindOfShifts(distinct: number[]): PatternKind {
   return distinct[0] === -1 && distinct[1] === 0 && distinct[2] === 1 ? 'normal' : 'triplet'
 }
 
-/** The pattern of a line by its exact g's at g_s = 2: unsplit (all shifts 0), normal (-1, 0, +1), triplet (three shifts), else anomalous. Null without components. */
+const patterns = new Map<string, PatternKind | null>()
+const PATTERNS_REMEMBERED = 10_000
+
+/**
+ * The pattern of a line by its exact g's at g_s = 2: unsplit (all shifts 0), normal (-1, 0, +1), triplet (three shifts), else anomalous.
+ * Null without components or without an exact g. Remembered, since the few g's there are come again and again in lists.
+ */
 export function patternKind(lower: ExactEnd, upper: ExactEnd, kind: Kind = 'E1'): PatternKind | null {
-  if ((lower.twoJ > 0 && fractionOf(lower.g) === null) || (upper.twoJ > 0 && fractionOf(upper.g) === null)) return null
+  const [gLower, gUpper] = [fractionOf(lower.g), fractionOf(upper.g)]
+  if ((lower.twoJ > 0 && gLower === null) || (upper.twoJ > 0 && gUpper === null)) return null
+  const key = `${kind} ${lower.twoJ} ${gLower?.toFraction() ?? ''} ${upper.twoJ} ${gUpper?.toFraction() ?? ''}`
+  const known = patterns.get(key)
+  if (known !== undefined) return known
   const shifts = new Map<string, number>()
-  for (const component of exactComponents(lower, upper, kind)) shifts.set(component.shift.toFraction(), component.shift.valueOf())
-  return shifts.size === 0 ? null : kindOfShifts([...shifts.values()].sort((a, b) => a - b))
+  for (const { shift } of exactComponents(lower, upper, kind)) shifts.set(shift.toFraction(), shift.valueOf())
+  const pattern = shifts.size === 0 ? null : kindOfShifts([...shifts.values()].sort((a, b) => a - b))
+  if (patterns.size >= PATTERNS_REMEMBERED) patterns.clear()
+  patterns.set(key, pattern)
+  return pattern
 }
 
 /** `patternKind` for g's that are known as decimals only (measured, or a coupling without an exact value). */
 export function patternKindOfNumbers(lower: LineEnd, upper: LineEnd, kind: Kind = 'E1'): PatternKind | null {
-  const rank = rankOf(kind)
-  if (!isTriangle(lower.twoJ, 2 * rank, upper.twoJ) || (lower.twoJ > 0 && lower.g === null) || (upper.twoJ > 0 && upper.g === null)) return null
+  if ((lower.twoJ > 0 && lower.g === null) || (upper.twoJ > 0 && upper.g === null)) return null
   const shifts: number[] = []
-  for (let q = -rank; q <= rank; q += 1) {
-    for (const twoM of magneticNumbers(lower.twoJ)) {
-      if (Math.abs(twoM + 2 * q) > upper.twoJ || componentStrength(kind, lower.twoJ, twoM, upper.twoJ, twoM + 2 * q) === 0) continue
-      const shift = shiftLorentz(lower.g, twoM, upper.g, twoM + 2 * q)
-      const rounded = Math.abs(shift - Math.round(shift)) < SAME_SHIFT ? Math.round(shift) : shift
-      if (!shifts.some((known) => Math.abs(known - rounded) < SAME_SHIFT)) shifts.push(rounded === 0 ? 0 : rounded)
-    }
+  for (const { twoMLower, twoMUpper, strength } of componentPlaces(kind, lower.twoJ, upper.twoJ)) {
+    if (strength === 0) continue
+    const shift = shiftLorentz(lower.g, twoMLower, upper.g, twoMUpper)
+    const rounded = Math.abs(shift - Math.round(shift)) < SAME_SHIFT ? Math.round(shift) : shift
+    if (!shifts.some((known) => Math.abs(known - rounded) < SAME_SHIFT)) shifts.push(rounded === 0 ? 0 : rounded)
   }
-  return kindOfShifts(shifts.sort((a, b) => a - b))
+  return shifts.length === 0 ? null : kindOfShifts(shifts.sort((a, b) => a - b))
 }

@@ -8,7 +8,8 @@ const tesla = (value: number): string => `${printSignificant(value, 3)} T`
 
 const limitPart = (limit: number | null, tolerance: number): string => {
   if (limit === null) return ''
-  return limit === 0 ? `; ${percent(tolerance)} is passed at any field` : `; ${percent(tolerance)} is passed at ${tesla(limit)}`
+  const allowed = `${Number((tolerance * 100).toPrecision(6))} %`
+  return limit === 0 ? `; ${allowed} is passed at any field` : `; ${allowed} is passed at ${tesla(limit)}`
 }
 
 /** One aspect of a line in a sentence: `Positions: the linear law holds; the largest error is 0.0065 cm⁻¹ (0.69 % ...).` */

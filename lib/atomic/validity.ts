@@ -1,5 +1,5 @@
 import { G_S, MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
-import { limitsOf } from '@/lib/atomic/field-limit'
+import { firstPassed } from '@/lib/atomic/field-limit'
 import { formatHalf, type TwoJ } from '@/lib/atomic/half'
 import { type LineKernel, lineKernel, linePositionError, lineStrengthError } from '@/lib/atomic/line-mixing'
 import { beyondLinear, type MixedLevel, mixedLevel, missingJ, type TermLevels } from '@/lib/atomic/mixing'
@@ -89,18 +89,78 @@ const relativeLevelError = (level: MixedLevel, x: number): number => (x === 0 ? 
 
 const statusOf = (known: boolean, relativeError: number, tolerance: number): ValidityStatus => (known ? (relativeError <= tolerance ? 'valid' : 'not_valid') : 'unknown')
 
-/** A text that is the same exactly when the numbers behind the field limits are; joins what mixing and tolerance depend on. */
-const fingerprint = ({ end, mixed, reason }: Prepared): string =>
-  `${end.twoJ}:${mixed.g}:${reason === null ? 1 : 0}:${end.term === null ? '' : `${end.term.twoS},${end.term.l}`}:${mixed.neighbours.map((n) => `${n.twoJ},${n.gap},${n.slopes[n.slopes.length - 1] ?? 0}`).join(';')}`
+/** A text that is the same exactly when all that mixing depends on is; numbers print in full. */
+function fingerprint({ twoJ, g, term }: ValidityEnd): string {
+  let text = `${twoJ}:${g}`
+  if (term === null) return text
+  text += `:${term.twoS},${term.l}`
+  for (const level of term.levels) text += `;${level.twoJ},${level.energyInvcm},${level.g}`
+  return text
+}
 
-function levelValidityOf(prepared: Prepared, x: number, tolerance: number, gS: number): LevelValidity {
-  const { mixed, missing, reason, end } = prepared
+const REMEMBERED = 4000
+
+/** Remembers what does not depend on the field, since a slider or a bulk request asks the same levels at many fields. */
+function remembering<T>(): (key: string, make: () => T) => T {
+  const known = new Map<string, T>()
+  return (key, make) => {
+    const before = known.get(key)
+    if (before !== undefined) return before
+    const made = make()
+    if (known.size >= REMEMBERED) known.clear()
+    known.set(key, made)
+    return made
+  }
+}
+
+interface ReadyLevel extends Prepared {
+  limit: number | null
+}
+
+interface ReadyLine {
+  lower: ReadyLevel
+  upper: ReadyLevel
+  kernel: LineKernel
+  positionLimit: number | null
+  strengthLimit: number | null
+}
+
+const smallestGap = (level: MixedLevel): number => Math.min(Number.POSITIVE_INFINITY, ...level.neighbours.map((neighbour) => Math.abs(neighbour.gap)))
+
+const levelMemory = remembering<ReadyLevel>()
+const lineMemory = remembering<ReadyLine>()
+
+function readyLevel(end: ValidityEnd, tolerance: number, gS: number): ReadyLevel {
+  return levelMemory(`${gS}|${tolerance}|${fingerprint(end)}`, () => {
+    const prepared = prepare(end, gS)
+    const searched = prepared.reason === null && prepared.mixed.neighbours.length > 0
+    return { ...prepared, limit: searched ? firstPassed((x) => relativeLevelError(prepared.mixed, x), tolerance, smallestGap(prepared.mixed)) : null }
+  })
+}
+
+function readyLine(kind: Kind, low: ValidityEnd, high: ValidityEnd, tolerance: number, gS: number): ReadyLine {
+  return lineMemory(`${kind}|${gS}|${tolerance}|${fingerprint(low)}|${fingerprint(high)}`, () => {
+    const [lower, upper] = [readyLevel(low, tolerance, gS), readyLevel(high, tolerance, gS)]
+    const kernel = lineKernel(kind, { ...low, mixed: lower.mixed }, { ...high, mixed: upper.mixed })
+    const searched = lower.reason === null && upper.reason === null && lower.mixed.neighbours.length + upper.mixed.neighbours.length > 0
+    const gap = Math.min(smallestGap(lower.mixed), smallestGap(upper.mixed))
+    return {
+      lower,
+      upper,
+      kernel,
+      positionLimit: searched ? firstPassed((x) => linePositionError(kernel, x).relativeError, tolerance, gap) : null,
+      strengthLimit: searched && kernel.noAmplitude === null ? firstPassed((x) => lineStrengthError(kernel, x), tolerance, gap) : null,
+    }
+  })
+}
+
+function levelValidityOf(ready: ReadyLevel, x: number, tolerance: number): LevelValidity {
+  const { mixed, missing, reason, end, limit } = ready
   const known = reason === null
   const nothing = end.term === null
   const error = levelError(mixed, x)
   const relative = relativeLevelError(mixed, x)
   const largestShift = (Math.abs(mixed.g) * mixed.twoJ * x) / 2
-  const [limit = null] = known && mixed.neighbours.length > 0 ? limitsOf(`level|${gS}|${tolerance}|${fingerprint(prepared)}`, [(at) => relativeLevelError(mixed, at)], tolerance) : [null]
   return {
     status: statusOf(known, relative, tolerance),
     errorInvcm: nothing ? null : error,
@@ -118,7 +178,7 @@ function levelValidityOf(prepared: Prepared, x: number, tolerance: number, gS: n
  * (then the neighbours present give a lower bound). A term of one level is exact: error 0, no limit. Field in tesla, energies in cm^-1.
  */
 export function levelValidity(end: ValidityEnd, fieldTesla: number, { tolerance = DEFAULT_TOLERANCE, gS = G_S }: Options = {}): LevelValidity {
-  return levelValidityOf(prepare(end, gS), MU_B_OVER_HC_INVCM_PER_T * fieldTesla, tolerance, gS)
+  return levelValidityOf(readyLevel(end, tolerance, gS), MU_B_OVER_HC_INVCM_PER_T * fieldTesla, tolerance)
 }
 
 function positionsOf(kernel: LineKernel, x: number, tolerance: number, ends: Prepared[], limit: number | null): AspectValidity {
@@ -158,22 +218,11 @@ export function lineValidity(
 ): LineValidity {
   const { kind, fieldTesla, tolerance = DEFAULT_TOLERANCE, gS = G_S } = input
   const x = MU_B_OVER_HC_INVCM_PER_T * fieldTesla
-  const [lower, upper] = [prepare(input.lower, gS), prepare(input.upper, gS)]
-  const kernel = lineKernel(kind, { ...lower.end, mixed: lower.mixed }, { ...upper.end, mixed: upper.mixed })
-  const known = lower.reason === null && upper.reason === null
-  const mixes = lower.mixed.neighbours.length + upper.mixed.neighbours.length > 0
-  const [positionLimit = null, strengthLimit = null] =
-    known && mixes
-      ? limitsOf(
-          `line|${kind}|${gS}|${tolerance}|${fingerprint(lower)}|${fingerprint(upper)}`,
-          [(at) => linePositionError(kernel, at).relativeError, (at) => (kernel.noAmplitude === null ? lineStrengthError(kernel, at) : 0)],
-          tolerance,
-        )
-      : [null, null]
+  const { lower, upper, kernel, positionLimit, strengthLimit } = readyLine(kind, input.lower, input.upper, tolerance, gS)
   return {
     positions: positionsOf(kernel, x, tolerance, [lower, upper], positionLimit),
     strengths: strengthsOf(kernel, x, tolerance, [lower, upper], strengthLimit),
-    levels: { lower: levelValidityOf(lower, x, tolerance, gS), upper: levelValidityOf(upper, x, tolerance, gS) },
+    levels: { lower: levelValidityOf(lower, x, tolerance), upper: levelValidityOf(upper, x, tolerance) },
     method: VALIDITY_METHOD,
   }
 }
