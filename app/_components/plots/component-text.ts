@@ -1,12 +1,11 @@
-import type { Component } from '@/lib/atomic/components'
-import { GHZ_PER_INVCM } from '@/lib/atomic/constants'
-import { formatHalfUnicode } from '@/lib/atomic/half'
 import { printFixed } from '@/lib/units/print'
+import type { Component } from '@/openapi/schemas/components'
+import { halves } from '../number'
 import { polarisationName } from './polarisation'
 import { signed } from './ruler'
 
 /** What a component is called in a drawing: its two m's, which no other component of the line has. */
-export const componentKey = ({ twoMLower, twoMUpper }: Pick<Component, 'twoMLower' | 'twoMUpper'>): string => `${twoMLower}:${twoMUpper}`
+export const componentKey = ({ m_lower, m_upper }: Pick<Component, 'm_lower' | 'm_upper'>): string => `${m_lower}:${m_upper}`
 
 export type ShiftUnit = 'lorentz' | 'invcm' | 'ghz' | 'pm'
 
@@ -14,32 +13,28 @@ export const SHIFT_UNITS: Record<ShiftUnit, { label: string; unit: string; axis:
   lorentz: { label: 'Lorentz', unit: 'L', axis: 'Shift, Lorentz units' },
   invcm: { label: 'cm⁻¹', unit: 'cm⁻¹', axis: 'Shift' },
   ghz: { label: 'GHz', unit: 'GHz', axis: 'Shift in frequency' },
-  pm: { label: 'pm', unit: 'pm', axis: 'Shift in vacuum wavelength' },
+  pm: { label: 'pm', unit: 'pm', axis: 'Shift in wavelength' },
 }
 
-/**
- * The shift of a component in the unit of an axis. In picometres it is the vacuum wavelength minus that of the centre,
- * -1e10 d / (s (s + d)) for a shift of d at s, both in cm^-1: the exact difference, written so that no digits are lost.
- */
-export function shiftIn(unit: ShiftUnit, component: Pick<Component, 'shiftLorentz' | 'shiftInvcm'>, centreInvcm: number): number {
-  const { shiftInvcm, shiftLorentz } = component
-  if (unit === 'lorentz') return shiftLorentz
-  if (unit === 'invcm') return shiftInvcm
-  if (unit === 'ghz') return shiftInvcm * GHZ_PER_INVCM
-  const shift = (-1e10 * shiftInvcm) / (centreInvcm * (centreInvcm + shiftInvcm))
-  return shift === 0 ? 0 : shift
+/** The shift of a component in the unit of an axis; null where there is none to tell. */
+export function shiftIn(unit: ShiftUnit, component: Component): number | null {
+  if (unit === 'lorentz') return component.shift_lorentz
+  if (unit === 'invcm') return component.shift_invcm
+  return unit === 'ghz' ? component.shift_ghz : component.shift_pm
 }
 
 /** The height a component is drawn with: its intensity where an angle is given and known, else its strength. */
-export const heightOf = (component: Pick<Component, 'strength' | 'intensity'>, thetaDeg: number | null): number =>
-  thetaDeg === null ? component.strength : (component.intensity ?? component.strength)
+export const heightOf = ({ strength, intensity }: Component, thetaDeg: number | null): number =>
+  (thetaDeg === null ? strength : (intensity ?? strength)) ?? 0
+
+/** Whether a component has any strength to draw. */
+export const isDrawn = ({ strength }: Component): boolean => strength !== null && strength > 0
 
 /** One line of text about a component, for readings and for those who listen. */
 export function componentText(component: Component, thetaDeg: number | null): string {
-  const { twoMLower, twoMUpper, q, shiftLorentz, shiftInvcm, strength, intensity } = component
+  const { m_lower, m_upper, q, shift_lorentz, shift_invcm, shift_ghz, strength, intensity } = component
+  const lorentz = shift_lorentz === null ? '' : `${signed(shift_lorentz, 6)} Lorentz units, `
+  const height = strength === null ? 'strength not known' : `strength ${printFixed(strength, 4)}`
   const seen = thetaDeg !== null && intensity !== null ? `, intensity ${printFixed(intensity, 4)}` : ''
-  return (
-    `${polarisationName(q)}, m ${formatHalfUnicode(twoMLower)} → ${formatHalfUnicode(twoMUpper)}: ${signed(shiftLorentz, 6)} Lorentz units, ` +
-    `${signed(shiftInvcm, 5)} cm⁻¹ (${signed(shiftInvcm * GHZ_PER_INVCM, 5)} GHz), strength ${printFixed(strength, 4)}${seen}`
-  )
+  return `${polarisationName(q)}, m ${halves(m_lower)} → ${halves(m_upper)}: ${lorentz}${signed(shift_invcm, 5)} cm⁻¹ (${signed(shift_ghz, 5)} GHz), ${height}${seen}`
 }

@@ -1,11 +1,11 @@
 'use client'
 import { scaleLinear } from 'd3-scale'
 import { useState, type PointerEvent } from 'react'
-import type { Component } from '@/lib/atomic/components'
-import { formatHalfUnicode } from '@/lib/atomic/half'
+import type { Component } from '@/openapi/schemas/components'
+import { halves } from '../number'
 import { BottomAxis, LeftAxis } from './axis'
 import { ComponentsTwin } from './components-twin'
-import { componentKey, componentText, heightOf, SHIFT_UNITS, shiftIn, type ShiftUnit } from './component-text'
+import { componentKey, componentText, heightOf, isDrawn, SHIFT_UNITS, shiftIn, type ShiftUnit } from './component-text'
 import { Choices, PlotFrame } from './plot-frame'
 import { polarisationName, styleOf } from './polarisation'
 import { niceCeil, ruler } from './ruler'
@@ -14,7 +14,8 @@ import { roving } from './use-roving'
 
 export interface PatternPlotProps {
   components: readonly Component[]
-  centreInvcm: number
+  /** What the wavelengths are in. */
+  medium: 'air' | 'vacuum'
   fieldTesla: number
   /** Heights are intensities at this angle; strengths where it is null. */
   thetaDeg: number | null
@@ -35,10 +36,10 @@ function reach(unit: ShiftUnit, shifts: readonly number[]): number {
 }
 
 /** The Zeeman pattern of a line: π stands above the axis, σ hangs below, height for strength. */
-export function PatternPlot({ components, centreInvcm, fieldTesla, thetaDeg, active, onActive, name, title = 'Pattern' }: PatternPlotProps) {
+export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, onActive, name, title = 'Pattern' }: PatternPlotProps) {
   const [unit, setUnit] = useState<ShiftUnit>('lorentz')
-  const shown = components.filter((component) => component.strength > 0)
-  const shifts = shown.map((component) => shiftIn(unit, component, centreInvcm))
+  const shown = components.filter(isDrawn)
+  const shifts = shown.map((component) => shiftIn(unit, component) ?? 0)
   const half = reach(unit, shifts)
   const current = shown.find((component) => componentKey(component) === active)
   const quantity = thetaDeg === null ? 'Strength' : 'Intensity'
@@ -53,7 +54,7 @@ export function PatternPlot({ components, centreInvcm, fieldTesla, thetaDeg, act
       height={(width) => (width < 560 ? 330 : 380)}
       controls={<Choices label="Axis" value={unit} choices={UNITS} onChange={setUnit} />}
       reading={current ? componentText(current, thetaDeg) : together ? 'At zero field all components lie on the line.' : `${shown.length} components: ${counts}. Point at one, or tab to it.`}
-      table={<ComponentsTwin components={components} centreInvcm={centreInvcm} thetaDeg={thetaDeg} caption={`Components at ${fieldTesla} T`} />}
+      table={<ComponentsTwin components={components} thetaDeg={thetaDeg} caption={`Components at ${fieldTesla} T`} />}
     >
       {(width, height) => {
         const narrow = width < 560
@@ -78,10 +79,10 @@ export function PatternPlot({ components, centreInvcm, fieldTesla, thetaDeg, act
         const yRuler = ruler([0, full], (bottom - top) / 2 - 20, 44)
 
         function stand(items: Component[]) {
-          return stacks(items.map((component) => ({ component, id: componentKey(component), x: x(shiftIn(unit, component, centreInvcm)), height: heightOf(component, thetaDeg) })))
+          return stacks(items.map((component) => ({ component, id: componentKey(component), x: x(shiftIn(unit, component) ?? 0), height: heightOf(component, thetaDeg) })))
         }
         function strongest() {
-          const plain = (items: Component[]) => stacks(items.map((c) => ({ component: c, id: '', x: x(shiftIn(unit, c, centreInvcm)), height: c.strength })))
+          const plain = (items: Component[]) => stacks(items.map((c) => ({ component: c, id: '', x: x(shiftIn(unit, c) ?? 0), height: heightOf(c, null) })))
           return Math.max(0, ...[...plain(shown.filter((c) => c.q === 0)), ...plain(shown.filter((c) => c.q !== 0))].map((s) => s.to))
         }
         const nearest = (event: PointerEvent<SVGRectElement>, side: Standing<Component>[]) => {
@@ -118,7 +119,7 @@ export function PatternPlot({ components, centreInvcm, fieldTesla, thetaDeg, act
                 {quantity}
               </text>
             )}
-            <BottomAxis ruler={xRuler} at={x} y={bottom} from={left} to={right} title={SHIFT_UNITS[unit].axis} unit={unit === 'lorentz' ? undefined : SHIFT_UNITS[unit].unit} />
+            <BottomAxis ruler={xRuler} at={x} y={bottom} from={left} to={right} title={unit === 'pm' ? `Shift in wavelength in ${medium}` : SHIFT_UNITS[unit].axis} unit={unit === 'lorentz' ? undefined : SHIFT_UNITS[unit].unit} />
             <Ends unit={unit} left={left} right={right} y={height - 9} narrow={narrow} />
             <rect data-screen-only x={left} y={top} width={right - left} height={middle - top} fill="transparent" onPointerMove={(e) => nearest(e, above)} onPointerLeave={() => onActive(null)} />
             <rect data-screen-only x={left} y={middle} width={right - left} height={bottom - middle} fill="transparent" onPointerMove={(e) => nearest(e, below)} onPointerLeave={() => onActive(null)} />
@@ -153,7 +154,7 @@ function Stick({ component, x, from, to, middle, y, direction, thetaDeg, active,
       <path d={style.mark} transform={`translate(${x} ${end})`} fill={style.colour} stroke="var(--sheet)" strokeWidth={1} />
       {active && (
         <text x={x} y={end - direction * 11} dy={direction === 1 ? 0 : '0.7em'} textAnchor="middle" fontSize={12} fontWeight={600} fill="var(--ink)" stroke="var(--sheet)" strokeWidth={4} paintOrder="stroke" data-screen-only>
-          {`${formatHalfUnicode(component.twoMLower)} → ${formatHalfUnicode(component.twoMUpper)}`}
+          {`${halves(component.m_lower)} → ${halves(component.m_upper)}`}
         </text>
       )}
     </g>

@@ -60,7 +60,8 @@ export function ruler(domain: readonly [number, number], length: number, labelSp
   const first = Math.ceil((from / step) * fine - 1e-9)
   const last = Math.floor((to / step) * fine + 1e-9)
   for (let index = first; index <= last; index += 1) {
-    const value = (index / fine) * step
+    // Counting up from below passes through minus zero.
+    const value = index === 0 ? 0 : (index / fine) * step
     const place = ((index % fine) + fine) % fine
     if (place === 0) {
       // Zero must not print as minus zero.

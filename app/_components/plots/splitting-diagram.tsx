@@ -1,10 +1,10 @@
 'use client'
 import { useMemo } from 'react'
-import type { Component } from '@/lib/atomic/components'
 import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 import { formatHalfUnicode, magneticNumbers, type TwoJ } from '@/lib/atomic/half'
 import { linearSublevels, type Sublevel } from '@/lib/atomic/sublevels'
-import { componentKey, componentText } from './component-text'
+import type { Component } from '@/openapi/schemas/components'
+import { componentKey, componentText, isDrawn } from './component-text'
 import { PlotFrame } from './plot-frame'
 import { styleOf } from './polarisation'
 import { niceCeil, spread } from './ruler'
@@ -53,7 +53,7 @@ const widest = (sublevels: readonly Sublevel[]): number => Math.max(0, ...sublev
 /** Two levels without the field and in it, sublevels named by m, an arrow for each component. Both splittings share one scale. */
 export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDeg, active, onActive, name, title = 'Splitting' }: SplittingDiagramProps) {
   const split = useMemo(() => ({ lower: sublevelsOf(lower, fieldTesla), upper: sublevelsOf(upper, fieldTesla) }), [lower, upper, fieldTesla])
-  const shown = components.filter((component) => component.strength > 0)
+  const shown = components.filter(isDrawn)
   const current = shown.find((component) => componentKey(component) === active)
   const total = widest(split.lower) + widest(split.upper)
   // The scale goes in steps: between two of them the sublevels open as the field grows.
@@ -93,7 +93,7 @@ export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDe
           return sublevels.map((s, i) => ({ ...s, y: ys[i] ?? centre, labelY: placed[i] ?? centre }))
         }
         const ladder = { upper: rungs(split.upper, centres.upper, top - 8, top + upperHeight + 8), lower: rungs(split.lower, centres.lower, top + upperHeight + middleGap - 8, bottom + 8) }
-        const at = (list: readonly Rung[], twoM: number, other: number) => list.find((r) => r.twoM === twoM)?.y ?? other
+        const at = (list: readonly Rung[], m: number, other: number) => list.find((r) => r.twoM === 2 * m)?.y ?? other
         const step = (labels - arrive - 20) / Math.max(1, shown.length + groupsOf(shown) - 1)
         const arrows = shown.map((component, index) => ({ component, x: arrive + 14 + step * (index + 0.5 + groupsBefore(shown, index)) }))
         const mark = roving({ order: arrows.map((a) => componentKey(a.component)), active, onActive })
@@ -115,7 +115,7 @@ export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDe
                   </text>
                 )}
                 {ladder[end].map((rung) => {
-                  const lit = current !== undefined && (end === 'upper' ? current.twoMUpper : current.twoMLower) === rung.twoM
+                  const lit = current !== undefined && (end === 'upper' ? current.m_upper : current.m_lower) * 2 === rung.twoM
                   return (
                     <g key={rung.twoM}>
                       <path d={`M${leave},${centres[end]}L${arrive},${rung.y}`} stroke="var(--rule-strong)" strokeWidth={0.75} strokeDasharray="3 3" />
@@ -133,7 +133,7 @@ export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDe
               const key = componentKey(component)
               return (
                 <g key={key} {...mark(key)} role="img" aria-label={componentText(component, thetaDeg)} onPointerEnter={() => onActive(key)} onPointerLeave={() => onActive(null)}>
-                  <Arrow component={component} x={x} from={at(ladder.lower, component.twoMLower, centres.lower)} to={at(ladder.upper, component.twoMUpper, centres.upper)} active={key === active} reach={Math.max(6, step)} />
+                  <Arrow component={component} x={x} from={at(ladder.lower, component.m_lower, centres.lower)} to={at(ladder.upper, component.m_upper, centres.upper)} active={key === active} reach={Math.max(6, step)} />
                 </g>
               )
             })}

@@ -7,7 +7,7 @@ const RAISED = '⁰¹²³⁴⁵⁶⁷⁸⁹'
 
 /** An ASCII term symbol in pieces: multiplicity raised, J lowered, the star of odd parity as a degree sign. */
 export function termPieces(symbol: string): Piece[] {
-  const found = /^(\d*)([A-Z]|\[[^\]]+\]|\([^)]+\))(\*?)(.*)$/.exec(symbol)
+  const found = /^(\d*)((?<=\d)[A-Z]|\[[^\]]+\]|\([^)]+\))(\*?)(.*)$/.exec(symbol)
   if (!found) return [{ text: symbol, place: 0 }]
   const [, multiplicity = '', body = '', odd = '', j = ''] = found
   const pieces: Piece[] = [

@@ -1,0 +1,68 @@
+import type { Validity } from '@/openapi/schemas/validity'
+import { Notice } from '@/app/_components/notice'
+import { halves, significant } from '@/app/_components/number'
+import { Part } from '@/app/_components/page-head'
+
+const WORD = { valid: 'good', not_valid: 'not good', unknown: 'not known' } as const
+const TONE = { valid: 'good', not_valid: 'warn', unknown: 'info' } as const
+const TINT = { valid: 'text-good', not_valid: 'text-warn', unknown: 'text-muted' } as const
+
+const percent = (value: number | null): string => (value === null ? 'not known' : `${significant(value * 100, 2)} %`)
+const tesla = (value: number | null, status: keyof typeof WORD): string =>
+  value === null ? (status === 'unknown' ? 'not known' : 'never, up to 10 000 T') : `${significant(value, 3)} T`
+
+interface Row {
+  name: string
+  status: keyof typeof WORD
+  invcm: number | null
+  relative: number | null
+  against: string
+  limit: number | null
+}
+
+/** How far the linear law may be trusted here, positions and strengths apart, and the two levels it follows from. */
+export function ValidityPart({ validity, fieldTesla }: { validity: Validity; fieldTesla: number }) {
+  const { positions, strengths, levels } = validity
+  const missing = [...levels.lower.missing_j, ...levels.upper.missing_j]
+  const rows: Row[] = [
+    { name: 'Positions of the line', status: positions.status, invcm: positions.error_invcm, relative: positions.relative_error, against: 'largest shift', limit: positions.field_limit_tesla },
+    { name: 'Strengths of the line', status: strengths.status, invcm: null, relative: strengths.relative_error, against: 'largest in its q', limit: strengths.field_limit_tesla },
+    ...(['lower', 'upper'] as const).map((end): Row => ({ name: `Positions of the ${end} level`, status: levels[end].status, invcm: levels[end].error_invcm, relative: levels[end].relative_to_shift, against: 'its own largest shift', limit: levels[end].field_limit_tesla })),
+  ]
+  return (
+    <Part title="How far the linear law holds" aside={`At ${fieldTesla}\u202fT, tolerance ${percent(positions.tolerance)}`}>
+      <Notice tone={TONE[positions.status]} title={validity.sentence} />
+      <div className="scroll-x mt-4" tabIndex={0} role="region" aria-label="Errors of the linear law, scrolls sideways">
+        <table className="ruled">
+          <caption className="sr-only">Errors of the linear law at {fieldTesla} T</caption>
+          <thead>
+            <tr>
+              <th scope="col">What</th>
+              <th scope="col">Linear is</th>
+              <th scope="col" className="right">Error, cm<sup>−1</sup></th>
+              <th scope="col" className="right">Relative error</th>
+              <th scope="col">as a part of</th>
+              <th scope="col" className="right">Passes the tolerance at</th>
+            </tr>
+          </thead>
+          <tbody>
+            {rows.map((row) => (
+              <tr key={row.name}>
+                <th scope="row">{row.name}</th>
+                <td className={TINT[row.status]}>{WORD[row.status]}</td>
+                <td className="right">{row.invcm === null ? '' : significant(row.invcm, 3)}</td>
+                <td className="right">{`${row.status === 'unknown' && row.relative !== null ? 'at least ' : ''}${percent(row.relative)}`}</td>
+                <td className="text-muted">{row.against}</td>
+                <td className="right">{tesla(row.limit, row.status)}</td>
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      </div>
+      <p className="note mt-2">
+        Method: {validity.method}.
+        {missing.length > 0 ? ` The table holds no level with J = ${missing.map(halves).join(', ')} of these terms, so the judgement is a lower bound.` : ''}
+      </p>
+    </Part>
+  )
+}
