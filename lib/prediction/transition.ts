@@ -95,7 +95,8 @@ export function assembleTransition(snapshot: Snapshot, i: number, j: number, kin
   return { id: `${lower.id}~${upper.id}`, lower, upper, ...lineFacts(lower, upper, kind) }
 }
 
-function membersOf(snapshot: Snapshot, index: number): TransitionDetail['terms']['lower'] {
+/** The levels of the term that a level belongs to, and the J that the table lacks. */
+export function membersOf(snapshot: Snapshot, index: number): TransitionDetail['terms']['lower'] {
   const { indices, missingTwoJ } = snapshot.termMembers(index)
   const { term } = snapshot.level(index)
   return {

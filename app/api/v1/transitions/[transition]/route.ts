@@ -1,0 +1,5 @@
+import { endpoint, resource } from '@/app/api/endpoint'
+import { oneTransition } from '@/lib/prediction/answers/lines'
+import { getTransition } from '@/openapi/operations/transitions'
+
+export const { GET, HEAD, OPTIONS, POST, PUT, PATCH, DELETE } = resource(endpoint(getTransition, ({ snapshot, params, query }) => oneTransition(snapshot, params.transition, query)))

@@ -1,0 +1,39 @@
+import type { z } from 'zod'
+import { CONSTANTS } from '@/lib/units/codata'
+import { bodyProblem } from '@/lib/problem'
+import { airOf, convert } from '@/lib/prediction/convert'
+import { SUBLEVEL_CONVENTIONS } from '@/lib/prediction/conventions'
+import { termSublevels } from '@/lib/prediction/sublevels'
+import { decodeTerm } from '@/lib/prediction/terms'
+import type { Term } from '@/lib/atomic'
+import type { computeSublevels, convertWavelength } from '@/openapi/operations/computed'
+
+type Warn = (code: string, detail: string) => void
+
+const gSOf = (given: number | null | undefined): number => given ?? CONSTANTS.electronSpinG.value
+
+/** A bare term symbol decoded. */
+export function termAnswer(term: Term, gS: number | undefined) {
+  return { data: decodeTerm(term, gS), meta: { conventions: { g_s: gSOf(gS), g_l: 1, ls_exact: 'At g_s = 2.' } } }
+}
+
+/** One position on every scale. */
+export function conversionAnswer(query: z.output<(typeof convertWavelength)['query']>, warn: Warn) {
+  const { conversion, extrapolated } = convert(query.value, query.from, query.to, query.formula)
+  if (extrapolated) warn('air_extrapolated', 'Beyond 1690 nm the formula of air is extrapolated.')
+  return { data: conversion, meta: { conventions: { air: airOf(query.formula), chain: 'h, c and e are exact; 1 cm^-1 = 29.9792458 GHz.' } } }
+}
+
+/** Sublevels of one LS term given in the request. */
+export function sublevelMatrixAnswer(body: z.output<NonNullable<(typeof computeSublevels)['body']>>, warn: Warn) {
+  if ('nucleus' in body) throw bodyProblem('/nucleus', 'hyperfine_not_built', 'Hyperfine structure is not built yet; ask with levels instead of level and nucleus.')
+  const matrix = termSublevels(body)
+  if (body.model === 'auto') warn('intermediate_not_built', 'model=auto is linear until the intermediate model is built.')
+  return {
+    data: matrix,
+    meta: {
+      model: 'linear',
+      conventions: { ...SUBLEVEL_CONVENTIONS, g_s: gSOf(body.g_s), order: 'Matrices are [field][state]; states by m, then upwards in energy at B -> 0+.', high_field_names: 'm_l and m_s are null: the linear model does not name them.' },
+    },
+  }
+}
