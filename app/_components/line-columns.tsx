@@ -1,8 +1,10 @@
 'use client'
 import Link from 'next/link'
+import type { Level } from '@/openapi/schemas/level'
 import type { Transition } from '@/openapi/schemas/transition'
+import { Configuration } from './configuration'
 import type { Column } from './data-table'
-import { linePage, speciesPage, speciesText } from './names'
+import { levelPage, linePage, speciesPage, speciesText } from './names'
 import { fixed } from './number'
 import { TermSymbol } from './term-symbol'
 
@@ -33,9 +35,18 @@ export function Terms({ line }: { line: Transition }) {
   )
 }
 
+function End({ level, href }: { level: Level; href: (path: string) => string }) {
+  return (
+    <Link className="inline-flex min-h-6 items-baseline gap-2 hover:text-lamp-ink" href={href(levelPage(level.id))}>
+      <Configuration text={level.configuration} className="text-muted" />
+      <TermSymbol term={level.term} />
+    </Link>
+  )
+}
+
 /** Columns of a list of lines, positioned by the quantity asked for. */
-export function lineColumns(href: (path: string) => string, options: { species?: boolean; shown?: Shown; sortable?: boolean } = {}): Column<Transition>[] {
-  const { species = true, shown = 'conventional', sortable = true } = options
+export function lineColumns(href: (path: string) => string, options: { species?: boolean; shown?: Shown; sortable?: boolean; full?: boolean } = {}): Column<Transition>[] {
+  const { species = true, shown = 'conventional', sortable = true, full = false } = options
   const { print, ...position } = POSITION[shown]
   const others = (['wavelength_vac_nm', 'wavelength_air_nm', 'wavenumber_invcm'] as const).filter((name) => name !== position.name)
   const columns: Column<Transition>[] = [
@@ -52,12 +63,20 @@ export function lineColumns(href: (path: string) => string, options: { species?:
         </Link>
       ),
     },
-    ...others.map((name): Column<Transition> => ({ name, header: name, value: (line) => line[name], only: 'copy' })),
-    { name: 'terms', header: 'Lower – upper', value: (line) => `${line.lower.term.symbol} - ${line.upper.term.symbol}`, cell: (line) => <Terms line={line} />, only: 'screen' },
-    { name: 'lower', header: 'Lower', value: (line) => line.lower.id, only: 'copy' },
-    { name: 'lower_term', header: 'Lower term', value: (line) => line.lower.term.symbol, only: 'copy' },
-    { name: 'upper', header: 'Upper', value: (line) => line.upper.id, only: 'copy' },
-    { name: 'upper_term', header: 'Upper term', value: (line) => line.upper.term.symbol, only: 'copy' },
+    ...others.map((name): Column<Transition> => ({
+      name, header: name === 'wavenumber_invcm' ? <>Wavenumber, cm<sup>−1</sup></> : name, align: 'right', value: (line) => line[name],
+      only: full && name === 'wavenumber_invcm' ? undefined : 'copy', cell: (line) => fixed(line.wavenumber_invcm, 4),
+    })),
+    ...(full
+      ? (['lower', 'upper'] as const).map((end): Column<Transition> => ({
+          name: `${end}_level`, header: end === 'lower' ? 'Lower level' : 'Upper level', value: (line) => line[end].id, cell: (line) => <End level={line[end]} href={href} />, only: 'screen',
+        }))
+      : [{ name: 'terms', header: 'Lower – upper', value: (line: Transition) => `${line.lower.term.symbol} - ${line.upper.term.symbol}`, cell: (line: Transition) => <Terms line={line} />, only: 'screen' as const }]),
+    ...(['lower', 'upper'] as const).flatMap((end): Column<Transition>[] => [
+      { name: end, header: end, value: (line) => line[end].id, only: 'copy' },
+      { name: `${end}_configuration`, header: `${end} configuration`, value: (line) => line[end].configuration, only: 'copy' },
+      { name: `${end}_term`, header: `${end} term`, value: (line) => line[end].term.symbol, only: 'copy' },
+    ]),
     {
       name: 'kind', header: 'Kind', value: (line) => line.kind,
       cell: (line) => (

@@ -12,19 +12,19 @@ const useOrigin = (): string => useSyncExternalStore(never, () => window.locatio
  * "The request behind this view": the API call that gives these numbers, ready to copy, with the edition pinned
  * so that it gives the same numbers next year.
  */
-export function RequestPanel({ path, query = {}, method, body, unpinned = false }: ShownRequest & { unpinned?: boolean }) {
+export function RequestPanel({ path, query = {}, method, body, unpinned = false, title = 'The request behind this view', open = false }: ShownRequest & { unpinned?: boolean; title?: string; open?: boolean }) {
   const [language, setLanguage] = useState<RequestLanguage>('curl')
   const { number } = useEdition()
   const origin = useOrigin()
   const pinned = unpinned || number === null ? query : { ...query, edition: number }
   const text = requestText(language, origin, { path, query: pinned, method, body })
   return (
-    <section aria-label="The request behind this view" className="no-print part">
-      <details className="group">
+    <section aria-label={title} className="no-print part">
+      <details className="group" open={open}>
         <summary className="flex min-h-9 list-none flex-wrap items-center justify-between gap-3">
           <h2 className="text-lg">
             <span aria-hidden="true" className="mr-2 inline-block text-lamp-ink transition-transform group-open:rotate-90">▸</span>
-            The request behind this view
+            {title}
           </h2>
           <code className="hidden max-w-full truncate text-xs text-muted md:block">{`${method ?? 'GET'} /api/v1${path}`}</code>
         </summary>
