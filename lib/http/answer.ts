@@ -17,7 +17,7 @@ export interface Setting {
   noneMatch: string | null
 }
 
-export interface Written { status: number; headers: Record<string, string>; body: string | Uint8Array<ArrayBuffer> | ReadableStream<Uint8Array> | null; json: unknown }
+export interface Written { status: number; headers: Record<string, string>; body: string | Uint8Array<ArrayBuffer> | ReadableStream<Uint8Array> | null; json: unknown; cookies?: readonly string[] }
 
 function metaOf<S>(house: House<S>, setting: Setting, answer: Answer<unknown>): Record<string, unknown> {
   const { operation } = setting
@@ -42,14 +42,14 @@ function nextAddress(setting: Setting, cursor: string, baseUrl: string): string 
   return `${baseUrl}${API_PREFIX}${setting.path}?${search.toString()}`
 }
 
-const charset = (type: string): string => type
 
 /** Puts a handler's answer into its envelope and representation, with its validators. */
 export async function writeAnswer<S>(house: House<S>, setting: Setting, answer: Answer<unknown>, derivedTag: string | null): Promise<Written> {
   const { operation, format } = setting
   const headers: Record<string, string> = { ...answer.headers }
   const status = answer.status ?? operation.status
-  if (status === 204) return { status, headers, body: null, json: null }
+  const cookies = answer.cookies ?? []
+  if (status === 204) return { status, headers, body: null, json: null, cookies }
   const meta = metaOf(house, setting, answer)
   let page: { limit: number; next_cursor: string | null } | undefined
   if (answer.page !== undefined) {
@@ -74,5 +74,5 @@ export async function writeAnswer<S>(house: House<S>, setting: Setting, answer: 
   const tag = derivedTag ?? answer.etag ?? (operation.method === 'get' && typeof body === 'string' ? entityTag(operation.id, createHash('sha256').update(body).digest('base64')) : null)
   if (tag !== null) headers.etag = tag
   if (operation.method === 'get' && tag !== null && noneMatchHits(setting.noneMatch, tag)) return { status: 304, headers: { etag: tag, ...(headers.link === undefined ? {} : { link: headers.link }) }, body: null, json: null }
-  return { status, headers, body, json }
+  return { status, headers, body, json, cookies }
 }

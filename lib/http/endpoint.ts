@@ -9,7 +9,7 @@ import type { House } from '@/lib/http/house'
 import { chooseFormat } from '@/lib/http/negotiate'
 import { clientAddress } from '@/lib/http/peer'
 import { asProblem, problemDocument } from '@/lib/http/problem-response'
-import { rateFields } from '@/lib/http/rate-limit'
+import { type Allowance, rateFields } from '@/lib/http/rate-limit'
 import { planRequest, readRequest, type ReadRequest, type RequestPlan, splitAddress } from '@/lib/http/request'
 import type { Call, Endpoint, Handler, Warning } from '@/lib/http/types'
 import { checkSameSite } from '@/lib/access/same-site'
@@ -31,8 +31,8 @@ const CODINGS = /\b(br|gzip|deflate|zstd)\b/g
  * this order: authenticate, authorise, cheap refusals (404, 405, 415), preconditions, body, act.
  */
 export function createEndpoint<S>(open: () => House<S>) {
-  const endpoint = <P extends z.ZodObject, Q extends z.ZodObject, B extends z.ZodType, R extends z.ZodType, E extends EditionUse>(
-    operation: Operation<P, Q, B, R, E>, handle: Handler<P, Q, B, R, E, S>,
+  const endpoint = <P extends z.ZodObject, Q extends z.ZodObject, B extends z.ZodType, R extends z.ZodType, E extends EditionUse, L extends boolean>(
+    operation: Operation<P, Q, B, R, E, L>, handle: Handler<P, Q, B, R, E, L, S>,
   ): Endpoint<S> => ({ operation: operation as unknown as Operation, handle: handle as unknown as Endpoint<S>['handle'] })
 
   const resource = (...endpoints: Endpoint<S>[]): Routes => {
@@ -59,7 +59,7 @@ async function serve<S>(house: House<S>, planned: Map<string, Planned<S>>, allow
   if (open || planned.size === 0) Object.assign(progress.headers, crossOriginFields())
   try {
     const written = await perform(house, planned, one, allowed, request, progress)
-    return finish(house, progress, request, written.status, { ...progress.headers, ...written.headers }, request.method === 'HEAD' ? null : written.body, written.body)
+    return finish(house, progress, request, written.status, { ...progress.headers, ...written.headers }, request.method === 'HEAD' ? null : written.body, written.body, written.cookies)
   } catch (error) {
     const problem = asProblem(error)
     if (problem.status >= 500) house.log.error({ requestId: progress.requestId, code: problem.code, err: problem.cause ?? problem }, problem.detail)
@@ -69,7 +69,7 @@ async function serve<S>(house: House<S>, planned: Map<string, Planned<S>>, allow
   }
 }
 
-function finish<S>(house: House<S>, progress: Progress, request: Request, status: number, headers: Record<string, string>, body: Written['body'], whole: Written['body']): Response {
+function finish<S>(house: House<S>, progress: Progress, request: Request, status: number, headers: Record<string, string>, body: Written['body'], whole: Written['body'], cookies: readonly string[] = []): Response {
   headers['x-request-id'] = progress.requestId
   if (typeof whole === 'string') headers['content-length'] = String(Buffer.byteLength(whole))
   const level = status >= 400 || (progress.operation !== null && writes(progress.operation)) ? 'info' : 'debug'
@@ -80,7 +80,9 @@ function finish<S>(house: House<S>, progress: Progress, request: Request, status
       caller: caller.kind, ...(caller.kind === 'key' ? { key: caller.keyId } : caller.kind === 'session' ? { user: caller.userId } : {}),
     }, 'answered')
   }
-  return new Response(body, { status, headers })
+  const response = new Response(body, { status, headers })
+  for (const cookie of cookies) response.headers.append('set-cookie', cookie)
+  return response
 }
 
 async function perform<S>(house: House<S>, planned: Map<string, Planned<S>>, one: Planned<S> | undefined, allowed: readonly string[], request: Request, progress: Progress): Promise<Written> {
@@ -105,7 +107,7 @@ async function perform<S>(house: House<S>, planned: Map<string, Planned<S>>, one
   const warnings: Warning[] = []
   const setting: Setting = { operation, read, edition, fingerprint, format, warnings, path: where.path, noneMatch }
   const call = {
-    params: read.params, query: read.query, body: read.body, edition, after, format, caller: progress.caller, requestId: progress.requestId, ifMatch: read.ifMatch, clientAddress: address,
+    params: read.params, query: read.query, body: read.body, edition, after, format, caller: progress.caller, requestId: progress.requestId, ifMatch: read.ifMatch, clientAddress: address, requestFields: headers,
     snapshot: operation.edition === 'none' ? null : await house.snapshotFor(edition),
     warn: (code: string, detail: string) => void (warnings.some((warning) => warning.code === code && warning.detail === detail) || warnings.push({ code, detail })),
   } as unknown as Call<never, never, never, never>
@@ -138,14 +140,25 @@ async function admit<S>(house: House<S>, operation: Operation | undefined, plann
     const anonymous = caller.kind === 'anonymous'
     const policy = anonymous ? 'anonymous' : caller.kind
     const name = caller.kind === 'anonymous' ? `a:${address}` : caller.kind === 'key' ? `k:${caller.keyId}` : `u:${caller.userId}`
-    const allowance = house.limiter.take(name, anonymous ? house.ratePerMinute.anonymous : house.ratePerMinute.known)
-    Object.assign(progress.headers, rateFields(policy, allowance))
-    if (!allowance.allowed) throw new Problem('rate_limited', `${allowance.limit} requests a minute are allowed; wait ${allowance.retryAfter} s.`, { headers: { 'retry-after': String(allowance.retryAfter) } })
+    const allowance = count(house, operation, name, anonymous ? house.ratePerMinute.anonymous : house.ratePerMinute.known)
+    if (allowance !== null) Object.assign(progress.headers, rateFields(policy, allowance))
+    if (allowance?.allowed === false) throw new Problem('rate_limited', `${allowance.limit} requests a minute are allowed; wait ${allowance.retryAfter} s.`, { headers: { 'retry-after': String(allowance.retryAfter) } })
   }
   if (refused !== null) throw refused
   if (caller.kind === 'session') checkSameSite(request.method, headers, house.baseUrl)
   else if (operation !== undefined && operation.role === 'public') checkSameSite(request.method, headers, house.baseUrl, false)
   authorise(operation, [...planned.values()].map((other) => other.operation), caller, house.openReading)
+}
+
+/** A limiter that fails lets reads pass, and nothing else. */
+function count<S>(house: House<S>, operation: Operation | undefined, name: string, perMinute: number): Allowance | null {
+  try {
+    return house.limiter.take(name, perMinute)
+  } catch (error) {
+    house.log.error({ err: error }, 'The rate limiter failed')
+    if (operation !== undefined && writes(operation)) throw new Problem('unavailable', 'Requests cannot be counted at the moment, so nothing is changed.', { headers: { 'retry-after': '5' }, cause: error })
+    return null
+  }
 }
 
 const CHALLENGE = { 'www-authenticate': 'Bearer realm="lodeterm"' }

@@ -1,7 +1,7 @@
 import type { z } from 'zod'
 import type { Caller } from '@/lib/access/caller'
 import type { Table, WrittenTable } from '@/lib/http/writers/table'
-import type { EditionUse, Format, Operation } from '@/openapi/core/define'
+import type { EditionUse, Format, Operation, SharedQuery } from '@/openapi/core/define'
 
 /** Where a list goes on: the sort key and identity of the last row given, in the order of the sort. */
 export type CursorPosition = readonly (string | number | null)[]
@@ -27,6 +27,8 @@ export interface Call<P, Q, B, S> {
   /** Adds to `meta.warnings`. */
   warn: (code: string, detail: string) => void
   clientAddress: string
+  /** Fields of the request, for the few operations that need one (cookies at sign-in). */
+  requestFields: Headers
 }
 
 export interface Answer<D> {
@@ -41,12 +43,17 @@ export interface Answer<D> {
   table?: Table | (() => Table)
   status?: number
   headers?: Record<string, string>
+  /** Set-Cookie fields. */
+  cookies?: readonly string[]
   /** What the entity tag is made from, for things with a version of their own (`entityTag` of etag.ts). */
   etag?: string
 }
 
-export type Handler<P extends z.ZodObject, Q extends z.ZodObject, B extends z.ZodType, R extends z.ZodType, E extends EditionUse, S> =
-  (call: Call<z.output<P>, z.output<Q>, z.output<B>, E extends 'none' ? null : S>) => Promise<Answer<z.input<R>>> | Answer<z.input<R>>
+/** The shape of `data`: a list of the contract's answer where it is a list. */
+type Data<R extends z.ZodType, L extends boolean> = L extends true ? z.input<R>[] : z.input<R>
+
+export type Handler<P extends z.ZodObject, Q extends z.ZodObject, B extends z.ZodType, R extends z.ZodType, E extends EditionUse, L extends boolean, S> =
+  (call: Call<z.output<P>, z.output<Q> & SharedQuery<L>, z.output<B>, E extends 'none' ? null : S>) => Promise<Answer<Data<R, L>>> | Answer<Data<R, L>>
 
 /** An operation with its handler, types forgotten: what `resource` gathers. */
 export interface Endpoint<S> {

@@ -11,7 +11,6 @@ export const REQUEST_PROBLEMS = {
   number_malformed: { status: 400, title: 'Not a number', explanation: 'A decimal number was expected: digits, an optional sign, point and exponent.', cure: 'Write the number plainly, such as 589.16 or 1.2e-3, without a unit unless the parameter takes one.' },
   number_out_of_range: { status: 400, title: 'Number out of range', explanation: 'The number is outside the bounds of this parameter.', cure: 'Give a number within the bounds named in the detail.' },
   range_reversed: { status: 400, title: 'Range reversed', explanation: 'The lower bound of a window is above its upper bound, so nothing can lie inside.', cure: 'Exchange the two bounds.' },
-  range_mixed: { status: 400, title: 'Window given in several quantities', explanation: 'A window was given in more than one of wavelength, wavenumber and frequency.', cure: 'Give the window in one quantity only.' },
   length_out_of_range: { status: 400, title: 'Too short or too long', explanation: 'A text or list has fewer or more items than allowed.', cure: 'Keep within the length named in the detail.' },
   format_mismatch: { status: 400, title: 'Text of the wrong form', explanation: 'A text must follow a certain form, such as an address, a date or an identifier, and does not.', cure: 'Write it in the form named in the detail.' },
   nul_byte: { status: 400, title: 'NUL byte in the input', explanation: 'The address or the body holds a NUL character (code 0), which no value here can contain.', cure: 'Remove the NUL characters.' },

@@ -29,7 +29,7 @@ export interface Example { params?: Record<string, string>; query?: Record<strin
 
 export interface Operation<
   P extends z.ZodObject = z.ZodObject, Q extends z.ZodObject = z.ZodObject, B extends z.ZodType = z.ZodType,
-  R extends z.ZodType = z.ZodType, E extends EditionUse = EditionUse,
+  R extends z.ZodType = z.ZodType, E extends EditionUse = EditionUse, L extends boolean = boolean,
 > {
   /** operationId, camelCase: `listLevels`. */
   readonly id: string
@@ -49,7 +49,7 @@ export interface Operation<
   readonly body?: B
   /** The shape of `data` in the envelope; for a list, of its array. */
   readonly answer: R
-  readonly list: boolean
+  readonly list: L
   readonly edition: E
   /** Where the edition's number stands: the `edition` parameter, or path parameter `n`. */
   readonly editionIn: 'query' | 'path'
@@ -66,9 +66,9 @@ export interface Operation<
   readonly bare: boolean
 }
 
-type Given<P extends z.ZodObject, Q extends z.ZodObject, B extends z.ZodType, R extends z.ZodType, E extends EditionUse> =
-  Pick<Operation<P, Q, B, R, E>, 'id' | 'method' | 'path' | 'summary' | 'tag' | 'role' | 'answer' | 'edition'>
-  & Partial<Omit<Operation<P, Q, B, R, E>, 'answer' | 'edition' | 'formats'>> & { formats?: readonly Format[] }
+type Given<P extends z.ZodObject, Q extends z.ZodObject, B extends z.ZodType, R extends z.ZodType, E extends EditionUse, L extends boolean> =
+  Pick<Operation<P, Q, B, R, E, L>, 'id' | 'method' | 'path' | 'summary' | 'tag' | 'role' | 'answer' | 'edition'>
+  & Partial<Omit<Operation<P, Q, B, R, E, L>, 'answer' | 'edition' | 'formats'>> & { formats?: readonly Format[] }
 
 
 const NO_PARAMETERS = z.strictObject({})
@@ -80,10 +80,10 @@ const NO_PARAMETERS = z.strictObject({})
  */
 export function defineOperation<
   R extends z.ZodType, E extends EditionUse, P extends z.ZodObject = typeof NO_PARAMETERS,
-  Q extends z.ZodObject = typeof NO_PARAMETERS, B extends z.ZodType = z.ZodUndefined,
->(given: Given<P, Q, B, R, E>): Operation<P, Q, B, R, E> {
+  Q extends z.ZodObject = typeof NO_PARAMETERS, B extends z.ZodType = z.ZodUndefined, const L extends boolean = false,
+>(given: Given<P, Q, B, R, E, L>): Operation<P, Q, B, R, E, L> {
   const formats: readonly Format[] = ['json', ...(given.formats ?? []).filter((format) => format !== 'json')]
-  const list = given.list ?? false
+  const list = given.list ?? (false as L)
   const editionIn = given.editionIn ?? 'query'
   const shared: Record<string, z.ZodType> = {}
   if (list) Object.assign(shared, { limit: limitParameter, cursor: cursorParameter })
@@ -108,6 +108,9 @@ export function defineOperation<
     editionIn,
   }
 }
+
+/** The parameters that `defineOperation` adds, as they come to a handler. */
+export type SharedQuery<L extends boolean> = L extends true ? { limit: number } : unknown
 
 /** Whether an operation changes anything; a POST that reads an edition or only computes does not. */
 export const writes = (operation: Pick<Operation, 'method' | 'edition' | 'role'>): boolean =>

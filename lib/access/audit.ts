@@ -1,0 +1,50 @@
+import { and, desc, eq, lt, type SQL } from 'drizzle-orm'
+import type { Db, Tx } from '@/db/client'
+import { auditEvents, users } from '@/db/schema'
+import type { Caller } from '@/lib/access/caller'
+import type { AuditEvent } from '@/openapi/schemas/audit'
+
+/** Where a change came from: who, from which address, in which request. */
+export interface Acting { caller: Caller; ip: string | null; requestId: string | null }
+
+export interface AuditEntry { action: string; subjectKind: string; subjectId: string | null; before?: unknown; after?: unknown }
+
+/** Adds an audit row in the same transaction as the change it tells of. Passwords and keys never stand in it. */
+export async function recordAudit(tx: Tx | Db, acting: Acting, entry: AuditEntry): Promise<void> {
+  const { caller } = acting
+  await tx.insert(auditEvents).values({
+    actorUser: caller.userId,
+    actorKey: caller.kind === 'key' ? caller.keyId : null,
+    actorSession: caller.kind === 'session' ? caller.sessionId : null,
+    action: entry.action,
+    subjectKind: entry.subjectKind,
+    subjectId: entry.subjectId,
+    before: entry.before ?? null,
+    after: entry.after ?? null,
+    ip: acting.ip,
+    requestId: acting.requestId,
+  })
+}
+
+export interface AuditFilter { action?: string; subject_kind?: string; subject_id?: string; actor?: string }
+
+/** Newest first; `beforeId` is the last one already given. One row more than `limit` tells that there is a next page. */
+export async function listAudit(db: Db, filter: AuditFilter, beforeId: number | null, limit: number): Promise<AuditEvent[]> {
+  const conditions: SQL[] = []
+  if (beforeId !== null) conditions.push(lt(auditEvents.id, beforeId))
+  if (filter.action !== undefined) conditions.push(eq(auditEvents.action, filter.action))
+  if (filter.subject_kind !== undefined) conditions.push(eq(auditEvents.subjectKind, filter.subject_kind))
+  if (filter.subject_id !== undefined) conditions.push(eq(auditEvents.subjectId, filter.subject_id))
+  if (filter.actor !== undefined) conditions.push(eq(auditEvents.actorUser, filter.actor))
+  const rows = await db
+    .select({ event: auditEvents, actorName: users.name })
+    .from(auditEvents).leftJoin(users, eq(users.id, auditEvents.actorUser))
+    .where(and(...conditions)).orderBy(desc(auditEvents.id)).limit(limit + 1)
+  return rows.map(({ event, actorName }) => ({
+    id: event.id, at: event.at.toISOString(), action: event.action,
+    actor: event.actorUser === null ? null : { id: event.actorUser, name: actorName ?? '' },
+    key: event.actorKey, session: event.actorSession,
+    subject: { kind: event.subjectKind, id: event.subjectId },
+    before: event.before ?? null, after: event.after ?? null, ip: event.ip, request_id: event.requestId,
+  }))
+}

@@ -1,0 +1,9 @@
+import { changePassword, createKey, getKey, getMe, listKeys, revokeKey, signIn, signOut } from './account'
+import { changeAmendment, createAmendment, getAmendment, listAmendments } from './amendments'
+import { getLive, getOpenApi, getReady, listAudit } from './instance'
+
+/** Everything about accounts, drafts and the instance itself. */
+export const PEOPLE_OPERATIONS = [
+  signIn, signOut, getMe, changePassword, listKeys, createKey, getKey, revokeKey,
+  listAmendments, createAmendment, getAmendment, changeAmendment, listAudit, getLive, getReady, getOpenApi,
+]
