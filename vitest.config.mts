@@ -1,6 +1,8 @@
 import path from 'node:path'
 import { defineConfig } from 'vitest/config'
 
+// vitest sets BASE_URL to a path; the project means an address by it.
+const plain = { environment: 'node', env: { BASE_URL: '' }, testTimeout: 30_000 } as const
 const applied = { setupFiles: ['tests/support/apply-environment.ts'], fileParallelism: false, testTimeout: 60_000, hookTimeout: 120_000 }
 const served = { ...applied, globalSetup: ['tests/support/served.ts'] }
 
@@ -8,8 +10,8 @@ export default defineConfig({
   resolve: { alias: { '@': path.resolve(import.meta.dirname) } },
   test: {
     projects: [
-      { extends: true, test: { name: 'unit', environment: 'node', include: ['tests/unit/**/*.test.ts'], testTimeout: 30_000 } },
-      { extends: true, test: { name: 'reference', environment: 'node', include: ['tests/reference/**/*.test.ts'], testTimeout: 30_000 } },
+      { extends: true, test: { name: 'unit', include: ['tests/unit/**/*.test.ts'], ...plain } },
+      { extends: true, test: { name: 'reference', include: ['tests/reference/**/*.test.ts'], ...plain } },
       { extends: true, test: { name: 'database', include: ['tests/database/**/*.test.ts'], globalSetup: ['tests/support/database.ts'], ...applied } },
       { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], ...served } },
       { extends: true, test: { name: 'browser', include: ['tests/browser/**/*.test.ts'], ...served } },

@@ -20,6 +20,8 @@ export async function testDatabase() {
     DEMO: '1',
     DEMO_ACCOUNTS_FILE: path.join(folder, 'demo-accounts.json'),
     SESSION_SECRET_FILE: sessionSecret(path.join(folder, 'session-secret')),
+    // Stated, since vitest sets a BASE_URL of its own that is no address.
+    BASE_URL: 'http://127.0.0.1:3000',
     LOG_LEVEL: 'warn',
     // Limits have tests of their own, which count what they send; no other test should meet them.
     RATE_ANONYMOUS_PER_MINUTE: '1000000',
