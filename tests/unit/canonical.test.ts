@@ -6,10 +6,7 @@ describe('canonical JSON (RFC 8785)', () => {
   it('orders keys by UTF-16 code units and writes numbers as ECMAScript does', () => {
     // The ordering and number cases of RFC 8785, sections 3.2.2.3 and 3.2.3.
     const keys = { '\u20ac': 'Euro Sign', '\r': 'Carriage Return', '\ufb33': 'Hebrew Letter Dalet With Dagesh', '1': 'One', '\ud83d\ude00': 'Emoji: Grinning Face', '\u0080': 'Control', '\u00f6': 'Latin Small Letter O With Diaeresis' }
-    const order = Object.keys(JSON.parse(`{${canonicalJson(keys).slice(1, -1)}}`))
-    // An integer-like key comes first in any parsed object, so the text itself is what counts.
     expect(canonicalJson(keys)).toBe(`{"\\r":"Carriage Return","1":"One","\u0080":"Control","\u00f6":"Latin Small Letter O With Diaeresis","\u20ac":"Euro Sign","\ud83d\ude00":"Emoji: Grinning Face","\ufb33":"Hebrew Letter Dalet With Dagesh"}`)
-    expect(order).toHaveLength(7)
     expect(canonicalJson([333333333.33333329, 1e30, 4.5, 2e-3, 0.000000000000000000000000001, -0])).toBe('[333333333.3333333,1e+30,4.5,0.002,1e-27,0]')
     expect(canonicalJson({ literals: [null, true, false], string: '\u20ac$\u000F\u000aA\'\u0042\u0022\u005c\\"/' })).toBe('{"literals":[null,true,false],"string":"\u20ac$\\u000f\\nA\'B\\"\\\\\\\\\\"/"}')
   })
