@@ -100,8 +100,8 @@ function pieceEnd(snapshot: Snapshot, species: readonly number[], from: number, 
   return end
 }
 
-/** The first `limit + 1` lines after a given one, in order. Works piece by piece along the spectrum, so memory stays bounded. */
-function pageOf(snapshot: Snapshot, species: readonly number[], window: SpectralWindow, verdict: PairVerdict, limit: number, after: Line | null): Line[] {
+/** The first `limit` lines after a given one, in order. Works piece by piece along the spectrum, so memory stays bounded. */
+export function firstLines(snapshot: Snapshot, species: readonly number[], window: SpectralWindow, verdict: PairVerdict, limit: number, after: Line | null = null): Line[] {
   const found: Line[] = []
   const top = Math.min(window.maxInvcm, widestInterval(snapshot, species))
   let from = Math.max(window.minInvcm, after?.wavenumberInvcm ?? 0)
@@ -116,11 +116,11 @@ function pageOf(snapshot: Snapshot, species: readonly number[], window: Spectral
         if (after === null || inLineOrder(line, after) > 0) found.push(line)
       })
     }
-    if (last || found.length > limit) break
+    if (last || found.length >= limit) break
     from = end
     pairs = Math.min(pairs * 4, LARGEST_PIECE)
   }
-  return found.sort(inLineOrder).slice(0, limit + 1)
+  return found.sort(inLineOrder).slice(0, limit)
 }
 
 /** The levels a transition id names, in order of their energies; null where either is not an active level, or of another species. */
@@ -143,7 +143,7 @@ export function listLines(snapshot: Snapshot, query: LineListQuery): LineList | 
   const after = query.after === null ? null : lineOf(snapshot, query.after)
   if (query.after !== null && after === null) return null
   const { total, excluded } = keptTally(snapshot, query, species, verdict)
-  const found = pageOf(snapshot, species, query.window, verdict, query.limit, after)
+  const found = firstLines(snapshot, species, query.window, verdict, query.limit + 1, after)
   const lines = found.slice(0, query.limit)
   const last = lines.at(-1)
   return {
