@@ -1,10 +1,12 @@
 import type { Metadata, Viewport } from 'next'
+import { HydrationBoundary } from '@tanstack/react-query'
 import { Suspense } from 'react'
 import '@fontsource-variable/inter/wght.css'
 import '@fontsource-variable/stix-two-text/wght.css'
 import '@fontsource-variable/stix-two-text/wght-italic.css'
 import '@fontsource-variable/jetbrains-mono/wght.css'
 import './globals.css'
+import { prefetch } from './_components/data/prefetch'
 import { Footer } from './_components/shell/footer'
 import { HeaderBar } from './_components/shell/header'
 import { Providers } from './_components/shell/providers'
@@ -20,20 +22,24 @@ export const viewport: Viewport = {
   ],
 }
 
-export default function RootLayout({ children }: { children: React.ReactNode }) {
+export default async function RootLayout({ children }: { children: React.ReactNode }) {
+  // Every page says which edition is in force, so the list of editions comes with the first answer.
+  const state = await prefetch([['/editions']])
   return (
     <html lang="en" suppressHydrationWarning>
       <body>
         <a href="#main" className="skip btn btn-lamp">Skip to the content</a>
         <Providers>
-          <header className="no-print bg-sheet">
-            <Suspense fallback={<div className="h-14" />}>
-              <HeaderBar />
-            </Suspense>
-            <div aria-hidden="true" className="scale-edge border-t border-rule-strong" />
-          </header>
-          <main id="main" tabIndex={-1} className="flex-1 outline-none">{children}</main>
-          <Footer />
+          <HydrationBoundary state={state}>
+            <header className="no-print bg-sheet">
+              <Suspense fallback={<div className="h-14" />}>
+                <HeaderBar />
+              </Suspense>
+              <div aria-hidden="true" className="scale-edge border-t border-rule-strong" />
+            </header>
+            <main id="main" tabIndex={-1} className="flex-1 outline-none">{children}</main>
+            <Footer />
+          </HydrationBoundary>
         </Providers>
       </body>
     </html>

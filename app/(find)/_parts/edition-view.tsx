@@ -12,7 +12,7 @@ import { PageHead, Part } from '../../_components/page-head'
 import { ProblemView } from '../../_components/problem-view'
 import { RequestPanel } from '../../_components/request-panel'
 import { Skeleton } from '../../_components/skeleton'
-import { day } from './day'
+import { day } from '../../_components/day'
 
 const FORMATS = [
   { id: 'json', label: 'JSON', what: 'everything, nested' },

@@ -8,7 +8,7 @@ import { PageHead } from '../../_components/page-head'
 import { ProblemView } from '../../_components/problem-view'
 import { RequestPanel } from '../../_components/request-panel'
 import { Skeleton } from '../../_components/skeleton'
-import { day } from './day'
+import { day } from '../../_components/day'
 
 /** Every edition, the newest first. */
 export function EditionsList() {

@@ -139,3 +139,10 @@ export const problemOf = (error: unknown): ProblemDocument =>
   error instanceof ApiError
     ? error.problem
     : { type: 'about:blank', title: 'This view failed', status: 0, detail: error instanceof Error ? error.message : 'An unexpected fault in this page.' }
+
+/** The entity tag of a thing as it is now, to be sent as If-Match with the change made from it. */
+export async function apiEtag(path: string): Promise<string> {
+  const response = await send(apiPath(path), { headers: { accept: 'application/json' }, cache: 'no-store' })
+  await readAnswer<unknown>(response)
+  return response.headers.get('etag') ?? ''
+}

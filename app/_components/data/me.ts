@@ -1,13 +1,13 @@
 'use client'
 import { useQuery } from '@tanstack/react-query'
-import type { Me } from '@/openapi/schemas/account'
+import type { Account } from '@/openapi/schemas/session'
 import { ApiError, apiQuery } from './api'
 
-/** Who is signed in. A 401 is an answer here, not a fault: nobody is. */
-export const meQuery = () => apiQuery<Me>('/me')
+export const meQuery = () => apiQuery<Account>('/me')
 
+/** Who is signed in. A 401 is an answer here, not a fault: nobody is. */
 export function useMe() {
-  const { data, error, isPending, refetch } = useQuery({ ...meQuery(), retry: false })
+  const { data, error, isPending, refetch } = useQuery({ ...meQuery(), staleTime: 0 })
   const nobody = error instanceof ApiError && error.problem.status === 401
   return { me: nobody ? null : (data?.data ?? null), nobody, isPending, error: nobody ? null : error, refetch }
 }

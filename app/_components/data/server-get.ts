@@ -1,15 +1,46 @@
 import { headers } from 'next/headers'
 import { apiPath, readAnswer, type ApiAnswer, type ApiQuery } from './api'
 
-/** Reads the API on the server with the visitor's own cookie; null where it cannot, and the browser then asks itself. */
+type Handler = (request: Request) => Promise<Response>
+
+/** The reads that pages begin with, each answered by its own route handler: the same checks, limits and shapes as over the wire. */
+const READS: readonly { path: RegExp; open: () => Promise<{ GET: Handler }> }[] = [
+  { path: /^\/editions$/, open: () => import('@/app/api/v1/editions/route') },
+  { path: /^\/editions\/[^/]+$/, open: () => import('@/app/api/v1/editions/[n]/route') },
+  { path: /^\/editions\/[^/]+\/changes$/, open: () => import('@/app/api/v1/editions/[n]/changes/route') },
+  { path: /^\/species$/, open: () => import('@/app/api/v1/species/route') },
+  { path: /^\/species\/[^/]+$/, open: () => import('@/app/api/v1/species/[species]/route') },
+  { path: /^\/sources$/, open: () => import('@/app/api/v1/sources/route') },
+  { path: /^\/sources\/[^/]+$/, open: () => import('@/app/api/v1/sources/[key]/route') },
+  { path: /^\/levels$/, open: () => import('@/app/api/v1/levels/route') },
+  { path: /^\/levels\/[^/]+$/, open: () => import('@/app/api/v1/levels/[level]/route') },
+  { path: /^\/levels\/[^/]+\/g-factor$/, open: () => import('@/app/api/v1/levels/[level]/g-factor/route') },
+  { path: /^\/levels\/[^/]+\/transitions$/, open: () => import('@/app/api/v1/levels/[level]/transitions/route') },
+  { path: /^\/transitions$/, open: () => import('@/app/api/v1/transitions/route') },
+  { path: /^\/transitions\/[^/]+$/, open: () => import('@/app/api/v1/transitions/[transition]/route') },
+  { path: /^\/transitions\/[^/]+\/components$/, open: () => import('@/app/api/v1/transitions/[transition]/components/route') },
+  { path: /^\/me$/, open: () => import('@/app/api/v1/me/route') },
+]
+
+/** What a visitor's request says about who they are and where they come from; nothing else of it concerns the API. */
+const CARRIED = ['cookie', 'x-lodeterm-peer', 'x-forwarded-for', 'user-agent'] as const
+
+/**
+ * Reads the API on the server, within the process, as the visitor. Null where it refuses or fails: the browser then asks
+ * itself and shows the problem.
+ */
 export async function serverGet<T>(path: string, query?: ApiQuery): Promise<ApiAnswer<T> | null> {
+  const read = READS.find((candidate) => candidate.path.test(path))
+  if (read === undefined) return null
   try {
     const incoming = await headers()
-    const cookie = incoming.get('cookie')
-    const response = await fetch(`http://127.0.0.1:${process.env.API_PORT ?? process.env.PORT ?? '3000'}${apiPath(path, query)}`, {
-      headers: { accept: 'application/json', ...(cookie ? { cookie } : {}) }, cache: 'no-store',
-    })
-    return await readAnswer<ApiAnswer<T>>(response)
+    const sent = new Headers({ accept: 'application/json' })
+    for (const name of CARRIED) {
+      const value = incoming.get(name)
+      if (value !== null) sent.set(name, value)
+    }
+    const { GET } = await read.open()
+    return await readAnswer<ApiAnswer<T>>(await GET(new Request(`http://127.0.0.1${apiPath(path, query)}`, { headers: sent })))
   } catch {
     return null
   }
