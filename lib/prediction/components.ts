@@ -1,4 +1,6 @@
-import { AIR_FROM_NM, airWavelength, CONVENTIONAL_AIR_TO_NM, DEFAULT_AIR_FORMULA, PhysicsError, refractivity, type Component as Splitting, weakFieldComponents } from '@/lib/atomic'
+import { AIR_FROM_NM, airWavelength, CONVENTIONAL_AIR_TO_NM, DEFAULT_AIR_FORMULA, refractivity } from '@/lib/atomic/air'
+import { type Component as Splitting, weakFieldComponents } from '@/lib/atomic/components'
+import { PhysicsError } from '@/lib/atomic/errors'
 import { termNotPure } from '@/lib/atomic/adopted'
 import { GHZ_PER_INVCM } from '@/lib/atomic/constants'
 import { chooseG, type ChosenG, type GChoice } from '@/lib/prediction/g-values'

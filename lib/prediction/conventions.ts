@@ -1,4 +1,4 @@
-import { AIR_FORMULAS, DEFAULT_AIR_FORMULA } from '@/lib/atomic'
+import { AIR_FORMULAS, DEFAULT_AIR_FORMULA } from '@/lib/atomic/air'
 
 /** What numbers mean where something was computed: `meta.conventions`. */
 export const AIR = `Air wavelengths: ${AIR_FORMULAS[DEFAULT_AIR_FORMULA].source}; standard air, ${AIR_FORMULAS[DEFAULT_AIR_FORMULA].air}; from 200 nm (vacuum) up.`

@@ -1,4 +1,5 @@
-import { AIR_FORMULAS, AIR_FROM_NM, airToVac, airWavelength, PhysicsError } from '@/lib/atomic'
+import { AIR_FORMULAS, AIR_FROM_NM, airToVac, airWavelength } from '@/lib/atomic/air'
+import { PhysicsError } from '@/lib/atomic/errors'
 import { evOfWavenumber, thzOfWavenumber, vacuumNmOfWavenumber, wavenumberOfEv, wavenumberOfThz, wavenumberOfVacuumNm } from '@/lib/units/spectral'
 import type { AirFormula } from '@/openapi/schemas/common'
 import type { Conversion, SpectralScale } from '@/openapi/schemas/computed'

@@ -1,4 +1,5 @@
-import { landeG, PhysicsError } from '@/lib/atomic'
+import { PhysicsError } from '@/lib/atomic/errors'
+import { landeG } from '@/lib/atomic/lande'
 import { coupledAt, lsNumbers, type PhysicalLevel } from '@/lib/prediction/levels'
 import type { GValues } from '@/openapi/schemas/common'
 

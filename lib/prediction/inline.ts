@@ -1,4 +1,5 @@
-import { checkLsJ, landeG, landeGExact, lsTerm, printTerm } from '@/lib/atomic'
+import { landeG, landeGExact } from '@/lib/atomic/lande'
+import { checkLsJ, lsTerm, printTerm } from '@/lib/atomic/term'
 import type { Fault } from '@/lib/problem'
 import { twice } from '@/lib/prediction/levels'
 import type { InlineLevelAnswer } from '@/openapi/schemas/transition'

@@ -1,4 +1,5 @@
-import { jjG, type JjQuantumNumbers, type JudgedLevel, landeG, type LsQuantumNumbers, pairG, type PairQuantumNumbers } from '@/lib/atomic'
+import { jjG, type JjQuantumNumbers, landeG, type LsQuantumNumbers, pairG, type PairQuantumNumbers } from '@/lib/atomic/lande'
+import { type JudgedLevel } from '@/lib/atomic/rules'
 import type { Level } from '@/openapi/schemas/level'
 
 /** The part of a level that physics looks at: levels of the table and levels given in a request alike. */

@@ -1,4 +1,6 @@
-import { linearSublevels, MU_B_OVER_HC_INVCM_PER_T, PhysicsError } from '@/lib/atomic'
+import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
+import { PhysicsError } from '@/lib/atomic/errors'
+import { linearSublevels } from '@/lib/atomic/sublevels'
 import { bodyProblem, type Fault, faultsProblem, Problem } from '@/lib/problem'
 import { chooseG, type GChoice } from '@/lib/prediction/g-values'
 import { inlineFaults, inlineLevel, type InlineLevelGiven } from '@/lib/prediction/inline'

@@ -1,4 +1,7 @@
-import { coupledRange, G_S, landeG, landeGExact, printTerm, type Term } from '@/lib/atomic'
+import { G_S } from '@/lib/atomic/constants'
+import { coupledRange } from '@/lib/atomic/half'
+import { landeG, landeGExact } from '@/lib/atomic/lande'
+import { printTerm, type Term } from '@/lib/atomic/term'
 import type { DecodedTerm } from '@/openapi/schemas/computed'
 
 /** J's that a symbol leaves open, as twice the value; the product of multiplicities where J is not given. */

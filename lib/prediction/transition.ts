@@ -1,6 +1,8 @@
-import {
-  airWavelength, conventionalWavelength, defaultKind, effectiveG, type ExactEnd, judge, type LineEnd, patternKind, patternKindOfNumbers, PhysicsError, secondMoments,
-} from '@/lib/atomic'
+import { airWavelength, conventionalWavelength } from '@/lib/atomic/air'
+import { type LineEnd } from '@/lib/atomic/components'
+import { PhysicsError } from '@/lib/atomic/errors'
+import { effectiveG, type ExactEnd, patternKind, patternKindOfNumbers, secondMoments } from '@/lib/atomic/moments'
+import { defaultKind, judge } from '@/lib/atomic/rules'
 import { thzOfWavenumber, vacuumNmOfWavenumber } from '@/lib/units/spectral'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { chooseG, type GChoice } from '@/lib/prediction/g-values'

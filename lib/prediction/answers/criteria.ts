@@ -1,6 +1,7 @@
 import type { z } from 'zod'
 import { parseConfiguration, printConfiguration } from '@/lib/atomic/configuration'
-import { type LevelCriteria, wholeConfiguration } from '@/lib/catalogue/criteria'
+import { type LevelCriteria, levelVerdict, wholeConfiguration } from '@/lib/catalogue/criteria'
+import { criteriaOfQuery } from '@/lib/catalogue/find'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { isProblemCode, parameterProblem } from '@/lib/problem'
 import { sourceOf, speciesIndex } from '@/lib/prediction/resolve'
@@ -12,9 +13,11 @@ function configurationWanted(text: string) {
   throw parameterProblem('configuration', isProblemCode(parsed.code) ? parsed.code : 'configuration_malformed', parsed.detail)
 }
 
-/** What a level must be, from the parameters of the list. Unknown species and sources are refused, not taken as matching nothing. */
-export function levelCriteria(snapshot: Snapshot, query: z.output<(typeof listLevels)['query']>): LevelCriteria {
-  const criteria: { -readonly [K in keyof LevelCriteria]: LevelCriteria[K] } = {}
+type Criteria = { -readonly [K in keyof LevelCriteria]: LevelCriteria[K] }
+
+/** What the filters ask, words aside. Unknown species and sources are refused, not taken as matching nothing. */
+function filters(snapshot: Snapshot, query: z.output<(typeof listLevels)['query']>): Criteria {
+  const criteria: Criteria = {}
   if (query.species !== undefined) criteria.species = new Set(query.species.map((id) => speciesIndex(snapshot, id)))
   if (query.term !== undefined) criteria.terms = [query.term]
   if (query.s !== undefined) criteria.twoS = query.s
@@ -27,6 +30,21 @@ export function levelCriteria(snapshot: Snapshot, query: z.output<(typeof listLe
   if (query.g_min !== undefined) criteria.gMin = { value: query.g_min }
   if (query.g_max !== undefined) criteria.gMax = { value: query.g_max }
   if (query.source !== undefined) criteria.source = sourceOf(snapshot, query.source, 'source').key
-  if (query.q !== undefined) criteria.words = query.q.split(/\s+/)
   return criteria
+}
+
+function matching(snapshot: Snapshot, criteria: LevelCriteria): Set<number> {
+  const verdict = levelVerdict(snapshot, criteria)
+  const indices = new Set<number>()
+  for (let i = 0; i < snapshot.size; i += 1) if (verdict(i) === 'in') indices.add(i)
+  return indices
+}
+
+/** What a level must be, from the parameters of the list. Filters and words must both hold, also where they speak of the same thing. */
+export function levelCriteria(snapshot: Snapshot, query: z.output<(typeof listLevels)['query']>): LevelCriteria {
+  const criteria = filters(snapshot, query)
+  if (query.q === undefined) return criteria
+  const words = criteriaOfQuery(snapshot, query.q)
+  const bothSpeak = Object.keys(words).some((name) => name in criteria)
+  return bothSpeak ? { ...criteria, levels: matching(snapshot, words) } : { ...criteria, ...words }
 }

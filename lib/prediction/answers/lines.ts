@@ -1,5 +1,5 @@
 import type { z } from 'zod'
-import { defaultKind } from '@/lib/atomic'
+import { defaultKind } from '@/lib/atomic/rules'
 import { type LineExclusion, type LineListQuery, listLines, spectralWindow, type WindowAsked } from '@/lib/catalogue/lines'
 import { LINE_EXCLUSIONS, passes, pairMask } from '@/lib/catalogue/line-scan'
 import type { Snapshot } from '@/lib/catalogue/shape'

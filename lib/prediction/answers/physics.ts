@@ -5,7 +5,7 @@ import { airOf, convert } from '@/lib/prediction/convert'
 import { SUBLEVEL_CONVENTIONS } from '@/lib/prediction/conventions'
 import { termSublevels } from '@/lib/prediction/sublevels'
 import { decodeTerm } from '@/lib/prediction/terms'
-import type { Term } from '@/lib/atomic'
+import type { Term } from '@/lib/atomic/term'
 import type { computeSublevels, convertWavelength } from '@/openapi/operations/computed'
 
 type Warn = (code: string, detail: string) => void
