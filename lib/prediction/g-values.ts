@@ -26,7 +26,7 @@ export function chooseG(level: PhysicalLevel, { gValues, gS }: GChoice, field: s
   const none = level.term.j === 0
   if (gValues === 'ls') {
     const numbers = lsNumbers(level)
-    if (!numbers) throw new PhysicsError('no_ls_g', `The ${field} level ${level.term.symbol} is not named in LS coupling, so it has no LS g_J; use g_values=adopted or g_values=coupled.`, field)
+    if (!numbers) throw new PhysicsError('no_ls_g', `The ${field} level ${level.term.symbol} is not named in LS coupling, so it has no LS g_J; use g_values=adopted or g_values=coupled.`, 'g_values')
     return { g: gS === null ? level.g_j.ls : landeG(numbers, { gS }), unc: null, none }
   }
   if (none) return { g: null, unc: null, none }

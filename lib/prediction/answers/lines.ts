@@ -1,4 +1,5 @@
 import type { z } from 'zod'
+import { AIR_MEASURED_TO_NM } from '@/lib/atomic/air'
 import { defaultKind } from '@/lib/atomic/rules'
 import { type LineExclusion, type LineListQuery, listLines, spectralWindow, type WindowAsked } from '@/lib/catalogue/lines'
 import { LINE_EXCLUSIONS, passes, pairMask } from '@/lib/catalogue/line-scan'
@@ -17,6 +18,11 @@ import type { Transition } from '@/openapi/schemas/transition'
 
 type Warn = (code: string, detail: string) => void
 
+/** Air wavelengths beyond the range in which the formula of air was measured are told, with a warning. */
+export function warnOfAir(lines: readonly Pick<Transition, 'wavelength_vac_nm'>[], warn: Warn): void {
+  if (lines.some((line) => line.wavelength_vac_nm > AIR_MEASURED_TO_NM)) warn('air_extrapolated', `Beyond ${AIR_MEASURED_TO_NM} nm the formula of air is extrapolated.`)
+}
+
 const staleCursor = () =>
   new Problem('cursor_malformed', 'The cursor names a row that this edition does not hold; begin without one.', {
     errors: [{ parameter: 'cursor', code: 'cursor_malformed', detail: 'Begin without a cursor.' }],
@@ -34,7 +40,7 @@ function windowOf(query: z.output<(typeof listTransitions)['query']>): WindowAsk
 }
 
 /** Lines that the rules allow, in a window, over any species of the edition, by wavenumber. */
-export function lineList(snapshot: Snapshot, query: z.output<(typeof listTransitions)['query']>, after: Position) {
+export function lineList(snapshot: Snapshot, query: z.output<(typeof listTransitions)['query']>, after: Position, warn: Warn) {
   const limit = limitOf(query)
   const asked: LineListQuery = {
     kind: query.kind,
@@ -50,6 +56,7 @@ export function lineList(snapshot: Snapshot, query: z.output<(typeof listTransit
   const list = listLines(snapshot, asked)
   if (list === null) throw staleCursor()
   const lines = list.lines.map(({ lower, upper }) => assembleTransition(snapshot, lower, upper, query.kind))
+  warnOfAir(lines, warn)
   return {
     data: lines,
     page: { limit, next: list.next === null ? null : [list.next] },
@@ -68,7 +75,7 @@ function firstFailed(line: Transition, rules: 'ls' | 'rigorous'): LineExclusion 
  * The partners of a level by wavenumber: those that the rules in force let through, and with `include=forbidden` the others too.
  * Without `kind` each pair is judged as what it can be.
  */
-export function partnerList(snapshot: Snapshot, levelId: string, query: z.output<(typeof listLevelTransitions)['query']>, after: Position) {
+export function partnerList(snapshot: Snapshot, levelId: string, query: z.output<(typeof listLevelTransitions)['query']>, after: Position, warn: Warn) {
   const limit = limitOf(query)
   const index = levelIndex(snapshot, levelId)
   const { speciesOf, energyInvcm, twoJ, parity } = snapshot.columns
@@ -100,6 +107,7 @@ export function partnerList(snapshot: Snapshot, levelId: string, query: z.output
   const idOf = ({ lower, upper }: { lower: number; upper: number }): string => `${snapshot.levelId(lower)}~${snapshot.levelId(upper)}`
   const { rows, next } = pageOf(partners, limit, after, idOf)
   const lines = rows.map(({ lower, upper, kind }) => assembleTransition(snapshot, lower, upper, kind))
+  warnOfAir(lines, warn)
   return {
     data: lines,
     page: { limit, next },
@@ -109,9 +117,11 @@ export function partnerList(snapshot: Snapshot, levelId: string, query: z.output
 }
 
 /** One line or forbidden pair with the terms of both ends. */
-export function oneTransition(snapshot: Snapshot, id: string, query: z.output<(typeof getTransition)['query']>) {
+export function oneTransition(snapshot: Snapshot, id: string, query: z.output<(typeof getTransition)['query']>, warn: Warn) {
   const [first, second] = transitionIndices(snapshot, id)
-  return { data: transitionDetail(snapshot, first, second, query.kind), meta: { conventions: LINE_CONVENTIONS } }
+  const detail = transitionDetail(snapshot, first, second, query.kind)
+  warnOfAir([detail], warn)
+  return { data: detail, meta: { conventions: LINE_CONVENTIONS } }
 }
 
 /** The components of a line at a field. */
@@ -139,5 +149,6 @@ export function componentsAnswer(snapshot: Snapshot, id: string, query: z.output
 export function judgeAnswer(body: z.output<NonNullable<(typeof judgeTransition)['body']>>, warn: Warn) {
   const { transition, exchanged } = judgeInline(body.lower, body.upper, body.kind, body.g_s ?? null)
   if (exchanged) warn('levels_exchanged', 'The level given as upper has the lower energy; lower and upper were exchanged in the answer.')
+  warnOfAir([transition], warn)
   return { data: transition, meta: { conventions: LINE_CONVENTIONS } }
 }
