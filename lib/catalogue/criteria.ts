@@ -43,21 +43,39 @@ export type Test = (index: number) => boolean
 /** Why a level that is otherwise wanted is not in the list. */
 export type LevelExclusion = 'retired' | 'g_not_known' | 'g_not_applicable' | 's_l_not_applicable'
 
+/** Which of the distinct configurations are the one wanted: 1 at their numbers. */
+function matchesOf(snapshot: Snapshot, { canonical, match }: ConfigurationWanted): Uint8Array {
+  const index = searchIndex(snapshot)
+  return index.remembered.get(`configuration ${match} ${canonical}`, () => {
+    const withParents = canonical.includes('(')
+    if (match === 'whole') return Uint8Array.from(withParents ? index.configurations : index.shells, (text) => (text === canonical ? 1 : 0))
+    const within = `.${canonical}.`
+    return Uint8Array.from(withParents ? index.dottedConfigurations : index.dottedShells, (text) => (text.includes(within) ? 1 : 0))
+  })
+}
+
+/** Whether any level, of the species given where any are, has the configuration. */
+export function configurationOccurs(snapshot: Snapshot, wanted: ConfigurationWanted, species: ReadonlySet<number>): boolean {
+  const matches = matchesOf(snapshot, wanted)
+  if (species.size === 0) return matches.includes(1)
+  const { configurationNumber } = searchIndex(snapshot)
+  for (const one of species) {
+    const [from, to] = snapshot.speciesRange(one)
+    for (let i = from; i < to; i += 1) if (matches[configurationNumber[i] ?? 0] === 1) return true
+  }
+  return false
+}
+
 function configurationTest(snapshot: Snapshot, wanted: readonly ConfigurationWanted[]): Test {
   const index = searchIndex(snapshot)
-  const matches = new Uint8Array(index.configurations.length)
+  const { configurationNumber } = index
+  const lists = wanted.map((one) => matchesOf(snapshot, one))
+  const plain: Test = lists.length === 1 ? (i) => lists[0]![configurationNumber[i]!] === 1 : (i) => lists.some((matches) => matches[configurationNumber[i]!] === 1)
   const withCore = wanted.filter(({ canonical }) => canonical.startsWith('['))
-  for (const { canonical, match } of wanted) {
-    const own = canonical.includes('(') ? index.configurations : index.shells
-    for (let k = 0; k < matches.length; k += 1) {
-      const text = own[k] ?? ''
-      if (match === 'whole' ? text === canonical : `.${text}.`.includes(`.${canonical}.`)) matches[k] = 1
-    }
-  }
-  if (withCore.length === 0) return (i) => matches[index.configurationNumber[i] ?? 0] === 1
+  if (withCore.length === 0) return plain
   return (i) => {
-    const number = index.configurationNumber[i] ?? 0
-    if (matches[number] === 1) return true
+    if (plain(i)) return true
+    const number = configurationNumber[i] ?? 0
     const core = snapshot.species[snapshot.columns.speciesOf[i] ?? 0]?.core_configuration ?? ''
     return withCore.some(({ canonical }) => canonical === `${core}.${(canonical.includes('(') ? index.configurations : index.shells)[number] ?? ''}`)
   }
@@ -94,9 +112,10 @@ interface WordFinder {
   readonly occurs: boolean
 }
 
-function wordFinder(snapshot: Snapshot, word: string): WordFinder {
+const wordFinder = (snapshot: Snapshot, word: string): WordFinder => searchIndex(snapshot).remembered.get(`word ${fold(word)}`, () => findWord(snapshot, fold(word)))
+
+function findWord(snapshot: Snapshot, folded: string): WordFinder {
   const index = searchIndex(snapshot)
-  const folded = fold(word)
   const inConfiguration = Uint8Array.from(index.foldedConfigurations, (text) => (standsIn(text, folded) ? 1 : 0))
   const inSymbol = Uint8Array.from(index.symbols, (text) => (standsIn(text, folded) ? 1 : 0))
   const inSpecies = Uint8Array.from(snapshot.species, ({ id, name, element, stage }) => ([id, name, `${element} ${stage}`].some((text) => standsIn(fold(text), folded)) ? 1 : 0))

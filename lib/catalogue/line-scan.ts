@@ -69,8 +69,9 @@ export function pairVerdict(snapshot: Snapshot, window: SpectralWindow, asked: L
   const withLs = asked.rules === 'ls'
   const { gEffMin = Number.NEGATIVE_INFINITY, gEffMax = Number.POSITIVE_INFINITY, gEffOpen = false } = asked
   const asksG = asked.gEffMin !== undefined || asked.gEffMax !== undefined
+  const { sureMinInvcm, sureMaxInvcm } = window
   return (lower, upper, interval) => {
-    const place = window.verdict(interval)
+    const place = interval > sureMinInvcm && interval < sureMaxInvcm ? 'in' : window.verdict(interval)
     if (place === 'out') return OUT
     if (interval === 0) return CODE.zero_interval
     const mask = ruleMask(kindCode, twoJ[lower]!, parity[lower]!, twoS[lower]!, l[lower]!, twoJ[upper]!, parity[upper]!, twoS[upper]!, l[upper]!)

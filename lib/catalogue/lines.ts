@@ -1,10 +1,9 @@
-import type { Kind } from '@/lib/atomic/rules'
 import {
-  countPairs, LINE_EXCLUSIONS, type LineExclusion, type LineRules, LISTED, OUT, pairMask, pairVerdict, type PairVerdict, passes, visitPairs, widestInterval,
+  countPairs, LINE_EXCLUSIONS, type LineExclusion, type LineRules, LISTED, OUT, pairVerdict, type PairVerdict, visitPairs, widestInterval,
 } from '@/lib/catalogue/line-scan'
 import { EXPLAINED_LIMIT } from '@/lib/catalogue/levels'
 import type { Snapshot } from '@/lib/catalogue/shape'
-import { type SpectralWindow, WHOLE_SPECTRUM } from '@/lib/catalogue/window'
+import type { SpectralWindow } from '@/lib/catalogue/window'
 
 export { effectiveGOfPair, LINE_EXCLUSIONS, type LineExclusion, type LineRules } from '@/lib/catalogue/line-scan'
 export { spectralWindow, WHOLE_SPECTRUM, type SpectralWindow, type WindowAsked } from '@/lib/catalogue/window'
@@ -167,39 +166,4 @@ function explainedPairs(snapshot: Snapshot, species: readonly number[], window: 
     })
   }
   return explained
-}
-
-export interface Partner extends Line {
-  /** The other level. */
-  readonly partner: number
-  /** The rules in force let it through. */
-  readonly allowed: boolean
-}
-
-export interface PartnerList {
-  /** By wavenumber. Those that are not allowed only when asked for. */
-  readonly partners: readonly Partner[]
-  readonly excluded: Partial<Record<LineExclusion, number>>
-}
-
-/** The levels that a level makes lines of a kind with; `includeForbidden` gives all others as well, but for those of equal energy. */
-export function allowedPartners(snapshot: Snapshot, index: number, kind: Kind, rules: 'ls' | 'rigorous', includeForbidden: boolean): PartnerList {
-  const [begin, end] = snapshot.speciesRange(snapshot.columns.speciesOf[index] ?? 0)
-  const { energyInvcm } = snapshot.columns
-  const verdict = pairVerdict(snapshot, WHOLE_SPECTRUM, { kind, rules })
-  const partners: Partner[] = []
-  const excluded: Partial<Record<LineExclusion, number>> = {}
-  for (let other = begin; other < end; other += 1) {
-    if (other === index) continue
-    const [lower, upper] = other < index ? [other, index] : [index, other]
-    const wavenumberInvcm = (energyInvcm[upper] ?? 0) - (energyInvcm[lower] ?? 0)
-    const code = verdict(lower, upper, wavenumberInvcm)
-    const reason = code === LISTED ? undefined : LINE_EXCLUSIONS[code - 1]
-    if (reason !== undefined && (!includeForbidden || reason === 'zero_interval')) {
-      excluded[reason] = (excluded[reason] ?? 0) + 1
-      continue
-    }
-    partners.push({ partner: other, lower, upper, wavenumberInvcm, allowed: passes(pairMask(snapshot, kind, lower, upper), rules) })
-  }
-  return { partners: partners.sort(inLineOrder), excluded }
 }

@@ -8,6 +8,9 @@ export interface SearchIndex {
   /** Number of a level's configuration among the distinct ones. */
   readonly configurationNumber: Uint32Array
   readonly configurations: readonly string[]
+  /** With a dot at each end, so that whole shells can be looked for inside: `.3d6.(5D).4s.`. */
+  readonly dottedConfigurations: readonly string[]
+  readonly dottedShells: readonly string[]
   readonly foldedConfigurations: readonly string[]
   /** The same without parent terms: `3d6.4s.4p`. */
   readonly shells: readonly string[]
@@ -18,8 +21,30 @@ export interface SearchIndex {
   /** Second name and note of the few levels that have them, folded. */
   readonly remarks: ReadonlyMap<number, string>
   readonly secondNames: ReadonlyMap<number, string>
+  /** What was worked out for the configurations and words asked for last. */
+  readonly remembered: Remembered
   /** The active levels in an order; null g goes last. Ties are broken by species, energy and ordinal. */
   order(sort: LevelSort): { sequence: Uint32Array; place: Uint32Array }
+}
+
+/** A map that forgets its oldest entries. */
+export class Remembered {
+  private readonly kept = new Map<string, unknown>()
+
+  constructor(private readonly most: number) {}
+
+  /** The value made before under this key, or a new one. A key must always stand for one kind of value. */
+  get<T>(key: string, make: () => T): T {
+    const found = this.kept.get(key)
+    if (found !== undefined) return found as T
+    const made = make()
+    this.kept.set(key, made)
+    if (this.kept.size > this.most) for (const oldest of this.kept.keys()) {
+      this.kept.delete(oldest)
+      break
+    }
+    return made
+  }
 }
 
 /** Small letters, no accents, raised and lowered digits plain, degree sign as *, one space between words. */
@@ -94,6 +119,7 @@ function sorted(snapshot: Snapshot, sort: LevelSort): { sequence: Uint32Array; p
 
 function build(snapshot: Snapshot): SearchIndex {
   const configuration = numbered(snapshot.total, (i) => snapshot.configurationOf(i))
+  const shells = configuration.texts.map(withoutParents)
   const symbolTexts: string[] = []
   const keys = new Map<string, number>()
   const symbolNumber = new Uint32Array(snapshot.total)
@@ -118,8 +144,11 @@ function build(snapshot: Snapshot): SearchIndex {
   return {
     configurationNumber: configuration.number,
     configurations: configuration.texts,
+    dottedConfigurations: configuration.texts.map((text) => `.${text}.`),
+    dottedShells: shells.map((text) => `.${text}.`),
     foldedConfigurations: configuration.texts.map(fold),
-    shells: configuration.texts.map(withoutParents),
+    shells,
+    remembered: new Remembered(300),
     symbolNumber,
     symbols: symbolTexts,
     remarks,

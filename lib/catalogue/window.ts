@@ -16,6 +16,9 @@ export interface SpectralWindow {
   readonly minInvcm: number
   readonly maxInvcm: number
   readonly verdict: (wavenumberInvcm: number) => WindowVerdict
+  /** Between these (both left out) every wavenumber is `in`, so that bulk search need not compute a wavelength for each pair. */
+  readonly sureMinInvcm: number
+  readonly sureMaxInvcm: number
   /** Tells windows apart that have the same bounds but another scale or medium. */
   readonly key: string
 }
@@ -23,7 +26,7 @@ export interface SpectralWindow {
 /** Enough to hold the rounding of a conversion there and back. */
 const SLACK = 1e-9
 
-export const WHOLE_SPECTRUM: SpectralWindow = { minInvcm: 0, maxInvcm: Number.POSITIVE_INFINITY, verdict: () => 'in', key: 'whole' }
+export const WHOLE_SPECTRUM: SpectralWindow = { minInvcm: 0, maxInvcm: Number.POSITIVE_INFINITY, verdict: () => 'in', sureMinInvcm: Number.NEGATIVE_INFINITY, sureMaxInvcm: Number.POSITIVE_INFINITY, key: 'whole' }
 
 const between = (value: number, min: number | null, max: number | null): boolean => (min === null || value >= min) && (max === null || value <= max)
 
@@ -53,10 +56,23 @@ function wavelengthVerdict(minNm: number | null, maxNm: number | null, medium: M
  * vacuum outside. In `air`, a line below 200 nm has no wavelength: it is told apart where its vacuum wavelength lies in the window.
  */
 export function spectralWindow(asked: WindowAsked | null): SpectralWindow {
-  return asked === null ? WHOLE_SPECTRUM : { ...boundsOf(asked), key: JSON.stringify(asked) }
+  if (asked === null) return WHOLE_SPECTRUM
+  const bounds = boundsOf(asked)
+  // where the bounds follow the scale monotonically, whatever is clear of them by the slack is inside
+  const sure = asked.scale !== 'wavelength' || isMonotonic(asked)
+  return {
+    ...bounds,
+    sureMinInvcm: sure ? bounds.minInvcm * (1 + 3 * SLACK) : Number.POSITIVE_INFINITY,
+    sureMaxInvcm: sure ? bounds.maxInvcm * (1 - 3 * SLACK) : Number.NEGATIVE_INFINITY,
+    key: JSON.stringify(asked),
+  }
 }
 
-function boundsOf(asked: WindowAsked): Omit<SpectralWindow, 'key'> {
+/** A wavelength window on one side of every change of medium: bounds as wavenumbers are then exact but for rounding. */
+const isMonotonic = ({ minNm, maxNm, medium }: Extract<WindowAsked, { scale: 'wavelength' }>): boolean =>
+  medium === 'vacuum' || (minNm !== null && maxNm !== null && minNm > AIR_FROM_NM + 1 && (medium === 'air' || maxNm < CONVENTIONAL_AIR_TO_NM - 1))
+
+function boundsOf(asked: WindowAsked): Pick<SpectralWindow, 'minInvcm' | 'maxInvcm' | 'verdict'> {
   if (asked.scale === 'wavenumber') {
     const { minInvcm, maxInvcm } = asked
     return { minInvcm: minInvcm ?? 0, maxInvcm: maxInvcm ?? Number.POSITIVE_INFINITY, verdict: (invcm) => (between(invcm, minInvcm, maxInvcm) ? 'in' : 'out') }

@@ -19,9 +19,7 @@ export interface Found extends Pick<Understanding, 'understood' | 'questions'> {
 }
 
 /** Pairs of levels looked at for one search: some tens of milliseconds. */
-const PAIR_BUDGET = 2_000_000
-/** Lines held while looking for the first of them. */
-const HELD = 20_000
+const PAIR_BUDGET = 1_000_000
 
 /** The wish about levels as criteria; `energy` is left out where it is about lines. */
 function criteriaOf(wish: Wish, withEnergy: boolean): LevelCriteria {
@@ -49,21 +47,28 @@ const aboutLevels = (wish: Wish, energyIsForLevels: boolean): boolean => {
 /** Parts that only a line can meet: then the levels shown are the ends of the lines. */
 const onlyLines = (wish: Wish): boolean => wish.windows.length > 0 || wish.lines !== null || wish.gEffMin !== undefined || wish.gEffMax !== undefined
 
-/** Collects lines, keeps the first of them by an order, and counts all. */
+/** Counts lines and keeps the first of them by an order, in a bounded list. */
 class Gathered {
   total = 0
   private held: Line[] = []
+  private worst: Line | null = null
 
-  constructor(private readonly order: (a: Line, b: Line) => number) {}
+  constructor(
+    private readonly order: (a: Line, b: Line) => number,
+    private readonly wanted: number,
+  ) {}
 
   add(line: Line): void {
     this.total += 1
+    if (this.wanted === 0 || (this.worst !== null && this.order(line, this.worst) >= 0)) return
     this.held.push(line)
-    if (this.held.length > 2 * HELD) this.held = this.held.sort(this.order).slice(0, HELD)
+    if (this.held.length < 2 * this.wanted + 100) return
+    this.held = this.first()
+    this.worst = this.held.at(-1) ?? null
   }
 
-  first(count: number): Line[] {
-    return this.held.sort(this.order).slice(0, count)
+  first(): Line[] {
+    return this.held.sort(this.order).slice(0, this.wanted)
   }
 }
 
@@ -149,13 +154,13 @@ function linesOfMarked(search: LineSearch, ends: Uint8Array, limit: number): Fou
   const verdict = search.verdicts[0]
   if (!verdict) return NO_LINES
   const energy = snapshot.columns.energyInvcm
-  const gathered = new Gathered(orderFor(snapshot, search.wish))
+  const gathered = new Gathered(orderFor(snapshot, search.wish), limit)
   let looked = 0
   for (const one of species) {
     const [from, to] = snapshot.speciesRange(one)
     for (let i = from; i < to; i += 1) {
       if (ends[i] !== 1) continue
-      if (looked > PAIR_BUDGET) return { lines: gathered.first(limit), total: gathered.total, lowerBound: true }
+      if (looked > PAIR_BUDGET) return { lines: gathered.first(), total: gathered.total, lowerBound: true }
       looked += to - from
       for (let other = from; other < to; other += 1) {
         // a pair of two marked levels is met twice, and counted from its lower end
@@ -166,13 +171,13 @@ function linesOfMarked(search: LineSearch, ends: Uint8Array, limit: number): Fou
       }
     }
   }
-  return { lines: gathered.first(limit), total: gathered.total, lowerBound: false }
+  return { lines: gathered.first(), total: gathered.total, lowerBound: false }
 }
 
 /** Lines in the windows asked for. Where a window holds more pairs than the budget, the first lines of it and a lower bound. */
 function linesInWindows(search: LineSearch, limit: number): FoundLines {
   const { snapshot, species, windows, verdicts } = search
-  const gathered = new Gathered(orderFor(snapshot, search.wish))
+  const gathered = new Gathered(orderFor(snapshot, search.wish), limit)
   let lowerBound = false
   windows.forEach((window, at) => {
     const verdict = verdicts[at]
@@ -190,7 +195,7 @@ function linesInWindows(search: LineSearch, limit: number): FoundLines {
       })
     }
   })
-  return { lines: gathered.first(limit), total: gathered.total, lowerBound }
+  return { lines: gathered.first(), total: gathered.total, lowerBound }
 }
 
 /** All lines of the species named, or of all: counted where that is quick, else the first along the spectrum and a lower bound. */
@@ -220,42 +225,41 @@ function rankedLevels(snapshot: Snapshot, wish: Wish, indices: readonly number[]
   return [...indices.filter(isExact), ...indices.filter((i) => !isExact(i))]
 }
 
+/** For a query about lines, the levels shown are the ends of this many of them at most. */
 const ENDS_SHOWN_OF = 1000
 
-function endsOf(lines: readonly Line[]): number[] {
-  return [...new Set(lines.flatMap(({ lower, upper }) => [lower, upper]))].sort((a, b) => a - b)
-}
+const endsOf = (lines: readonly Line[]): number[] => [...new Set(lines.flatMap(({ lower, upper }) => [lower, upper]))].sort((a, b) => a - b)
 
-/** Indices of all levels that a query asks for; for a query about lines, the ends of (at most a thousand of) them. */
-function levelsAsked(snapshot: Snapshot, understanding: Understanding): number[] {
-  const { wish, asks } = understanding
+/** Indices of all levels that a query about levels asks for. */
+function levelsAsked(snapshot: Snapshot, { wish, asks }: Understanding): number[] {
   if (!asks || wish.impossible) return []
-  if (onlyLines(wish)) return endsOf(findLines(snapshot, understanding, ENDS_SHOWN_OF).lines)
   const verdict = levelVerdict(snapshot, criteriaOf(wish, true))
   const indices: number[] = []
   for (let i = 0; i < snapshot.size; i += 1) if (verdict(i) === 'in') indices.push(i)
   return rankedLevels(snapshot, wish, indices)
 }
 
-/** Criteria that the words of `GET /levels?q=` add to its other filters. */
+/** Criteria that the words of `GET /levels?q=` add to its other filters. For words about lines: the ends of (at most a thousand of) them. */
 export function criteriaOfQuery(snapshot: Snapshot, query: string): LevelCriteria {
   const understanding = understand(snapshot, query)
   const { wish, asks } = understanding
-  if (!asks || wish.impossible || onlyLines(wish)) return { levels: new Set(levelsAsked(snapshot, understanding)) }
+  if (!asks || wish.impossible) return { levels: new Set() }
+  if (onlyLines(wish)) return { levels: new Set(endsOf(findLines(snapshot, understanding, ENDS_SHOWN_OF).lines)) }
   return criteriaOf(wish, true)
 }
 
 /** Answers the one search box: levels and lines together, each with its total, and how every word was understood. */
 export function find(snapshot: Snapshot, query: string, limits: { levels: number; lines: number }): Found {
   const understanding = understand(snapshot, query)
-  const levels = levelsAsked(snapshot, understanding)
-  const lines = findLines(snapshot, understanding, limits.lines)
+  const about = onlyLines(understanding.wish)
+  const lines = findLines(snapshot, understanding, about ? Math.max(limits.lines, ENDS_SHOWN_OF) : limits.lines)
+  const levels = about ? endsOf(lines.lines) : levelsAsked(snapshot, understanding)
   return {
     understood: understanding.understood,
     questions: understanding.questions,
     levels: levels.slice(0, limits.levels),
     levelsTotal: levels.length,
-    lines: lines.lines,
+    lines: lines.lines.slice(0, limits.lines),
     linesTotal: lines.total,
     linesTotalIsLowerBound: lines.lowerBound,
   }

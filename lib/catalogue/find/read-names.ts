@@ -109,6 +109,7 @@ export const readIdentifier: Reader = ({ snapshot, words }, at) => {
   if (TRANSITION_ID.test(text)) {
     const line = lineOf(snapshot, text)
     if (line === null) return { next: at + 1, kind: 'level_id', meaning: `transition ${text}: no such pair of levels in this edition`, apply: (wish) => void (wish.lines = wish.lines ?? []) }
+    if (line.wavenumberInvcm === 0) return { next: at + 1, kind: 'level_id', meaning: `transition ${text}: the two levels have equal energies, so there is no line`, apply: (wish) => void (wish.lines = wish.lines ?? []) }
     return { next: at + 1, kind: 'level_id', meaning: `transition ${lineId(snapshot, line.lower, line.upper)}`, apply: (wish) => void (wish.lines = [...(wish.lines ?? []), line]) }
   }
   if (!LEVEL_ID.test(text)) return null
@@ -163,7 +164,7 @@ function paschenLine(reading: Reading, at: number, text: string): ReadPart | nul
   const lines: Line[] = []
   for (const a of namedLevels(reading, first)) {
     for (const b of namedLevels(reading, second)) {
-      if (a === b || speciesOf[a] !== speciesOf[b]) continue
+      if (speciesOf[a] !== speciesOf[b] || energyInvcm[a] === energyInvcm[b]) continue
       const [lower, upper] = a < b ? [a, b] : [b, a]
       lines.push({ lower, upper, wavenumberInvcm: (energyInvcm[upper] ?? 0) - (energyInvcm[lower] ?? 0) })
     }

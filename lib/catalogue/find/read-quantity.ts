@@ -3,12 +3,12 @@ import { formatHalf, parseHalf } from '@/lib/atomic/half'
 import { spectralWindow } from '@/lib/catalogue/window'
 import { nextAfter, type Question, type ReadPart, type Reader, type Reading, restFrom } from '@/lib/catalogue/find/wish'
 import { withStretch } from '@/lib/catalogue/find/words'
-import { readSpectralUnit, SPECTRAL_UNITS, type SpectralUnit, toWavenumber, vacuumNmOfWavenumber, wavenumberOfVacuumNm } from '@/lib/units/spectral'
+import { readSpectralUnit, SPECTRAL_UNITS, type SpectralQuantity, type SpectralUnit, toWavenumber, vacuumNmOfWavenumber, wavenumberOfVacuumNm } from '@/lib/units/spectral'
 import type { Medium } from '@/openapi/schemas/common'
 
 const NUMBER = '(\\d+(?:\\.\\d*)?|\\.\\d+)'
 const UNIT = '([A-Za-zÅÅåµμ/][A-Za-zÅÅåµμ]*(?:\\s?\\^?[-\\u2212\\u2013]1|⁻¹)?|1/cm)'
-const RANGE = new RegExp(`^${NUMBER}\\s*(?:[-\\u2013\\u2014\\u2212]|\\.\\.+|to)\\s*${NUMBER}\\s*${UNIT}(?=$|[\\s,;:!?"')])`, 'u')
+const RANGE = new RegExp(`^(?:(?:between|from)\\s+)?${NUMBER}\\s*(?:[-\\u2013\\u2014\\u2212]|\\.\\.+|to\\s|and\\s)\\s*${NUMBER}\\s*${UNIT}(?=$|[\\s,;:!?"')])`, 'u')
 const AROUND = new RegExp(`^(~|≈|≃|about|near|around|circa|ca\\.)?\\s*${NUMBER}\\s*(?:(?:±|\\+/?-)\\s*${NUMBER}\\s*)?${UNIT}(?=$|[\\s,;:!?"')])`, 'u')
 const ENERGY_BOUND = new RegExp(`^E\\s*(<=|>=|≤|≥|<|>)\\s*${NUMBER}\\s*${UNIT}(?=$|[\\s,;:!?"')])`, 'u')
 const IN_MEDIUM = /^\s*,?\s*\(?(?:in\s+)?(air|vac|vacuum)\)?(?=$|[\s,;:!?"'])/i
@@ -171,6 +171,8 @@ export const readComparison: Reader = (reading, at) => {
   }
 }
 
+const SORT: Readonly<Record<SpectralQuantity, string>> = { wavelength: 'a wavelength', wavenumber: 'an energy, or the wavenumber of a line', energy: 'an energy', frequency: 'a frequency' }
+
 /** Units a bare number may have been meant in, each with the values it is likely for. */
 const LIKELY: readonly { unit: SpectralUnit; from: number; to: number }[] = [
   { unit: 'Å', from: 300, to: 500_000 },
@@ -189,7 +191,7 @@ export const readBareNumber: Reader = (reading, at) => {
   const value = Number(text)
   const instead = (replacement: string): string => withStretch(reading.query, word.start, word.end, replacement)
   const options = LIKELY.filter(({ from, to }) => value >= from && value <= to).map(({ unit }) => ({
-    label: SPECTRAL_UNITS[unit].quantity === 'wavelength' ? `${text} ${unit}, a wavelength` : `${text} ${unit}, an energy or a line's position`,
+    label: `${text} ${unit}, ${SORT[SPECTRAL_UNITS[unit].quantity]}`,
     q: instead(`${word.text} ${unit}`),
   }))
   const two = parseHalf(text)

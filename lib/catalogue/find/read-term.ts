@@ -1,7 +1,7 @@
 import { type Configuration, parseConfiguration, parseConfigurationOf, printConfiguration } from '@/lib/atomic/configuration'
 import { formatHalf, parseHalf } from '@/lib/atomic/half'
 import { parseTerm, printLabelledTerm, type Term } from '@/lib/atomic/term'
-import { type ConfigurationWanted, levelVerdict } from '@/lib/catalogue/criteria'
+import { configurationOccurs, type ConfigurationWanted } from '@/lib/catalogue/criteria'
 import { withoutParents } from '@/lib/catalogue/search-index'
 import { readQuantity } from '@/lib/catalogue/find/read-quantity'
 import { isPaschenName, paschenQuestion } from '@/lib/catalogue/find/read-names'
@@ -61,12 +61,6 @@ function readConfigurationText({ snapshot, speciesNamed }: Reading, text: string
   return parseConfigurationOf(text, { core: core?.ok ? core.value : null, z: species.z, charge: species.charge })
 }
 
-function occurs({ snapshot, speciesNamed }: Reading, wanted: ConfigurationWanted): boolean {
-  const verdict = levelVerdict(snapshot, { configurations: [wanted], ...(speciesNamed.size > 0 ? { species: speciesNamed } : {}) })
-  for (let i = 0; i < snapshot.size; i += 1) if (verdict(i) === 'in') return true
-  return false
-}
-
 interface Candidate {
   readonly next: number
   readonly configuration: Configuration
@@ -95,7 +89,7 @@ export const readConfiguration: Reader = (reading, at) => {
   if (!word || !SHELLS.test(word.text) || word.text.startsWith('(') || !/[a-z]/.test(word.text)) return null
   const all = candidates(reading, begin)
   // shells in several words are one configuration where the edition holds it, else the first word stands alone
-  const chosen = all.find(({ wanted }) => occurs(reading, wanted)) ?? all[0]
+  const chosen = all.find(({ wanted }) => configurationOccurs(reading.snapshot, wanted, reading.speciesNamed)) ?? all[0]
   if (!chosen) {
     const read = readConfigurationText(reading, word.text)
     if (read.ok || read.code !== 'configuration_impossible') return null

@@ -18,7 +18,7 @@ export interface Understanding {
   readonly asks: boolean
 }
 
-const JOINING = /^(?:lines?|levels?|transitions?|terms?|configurations?|wavelengths?|energ(?:y|ies)|parity|the|an?|of|in|at|and|or|to|from|near|with|for|air|vac|vacuum|[-–—→~+&|/.]+)$/i
+const JOINING = /^(?:lines?|levels?|transitions?|terms?|configurations?|wavelengths?|energ(?:y|ies)|parity|the|an?|of|in|at|and|or|to|from|near|with|for|between|air|vac|vacuum|λ|lambda|[-–—→~+&|/.<>=]+)$/i
 
 /** Words that join the others, and say nothing alone. */
 const readJoining: Reader = ({ words }, at) =>
