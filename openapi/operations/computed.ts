@@ -53,7 +53,7 @@ export const computeSublevels = defineOperation({
   ]),
   answer: SublevelMatrix,
   edition: 'computed',
-  problems: ['term_impossible', 'term_mixed', 'intermediate_not_built', 'hyperfine_not_built', 'field_out_of_range'],
+  problems: ['term_impossible', 'term_mixed', 'intermediate_not_built', 'hyperfine_not_built', 'field_out_of_range', 'g_impossible', 'answer_too_large'],
   example: {
     body: {
       levels: [
@@ -81,5 +81,6 @@ export const convertWavelength = defineOperation({
   }),
   answer: Conversion,
   edition: 'computed',
+  problems: ['air_not_applicable'],
   example: { query: { value: '589.158', from: 'vacuum_nm', to: 'air_nm' } },
 })

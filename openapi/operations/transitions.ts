@@ -126,7 +126,7 @@ export const judgeTransition = defineOperation({
   }),
   answer: JudgedTransition,
   edition: 'computed',
-  problems: ['term_impossible', 'zero_interval'],
+  problems: ['term_impossible', 'zero_interval', 'g_impossible'],
   example: {
     body: {
       lower: { energy_invcm: 0, s: 0, l: 0, j: 0, parity: 'even' },
