@@ -21,8 +21,8 @@ export function GCell({ level }: { level: Level }) {
 }
 
 /** Columns of a list of levels. `href` adds the pinned edition to addresses. */
-export function levelColumns(href: (path: string) => string, options: { species?: boolean; id?: boolean } = {}): Column<Level>[] {
-  const { species = true, id = true } = options
+export function levelColumns(href: (path: string) => string, options: { species?: boolean; id?: boolean; named?: boolean } = {}): Column<Level>[] {
+  const { species = true, id = true, named = false } = options
   const columns: Column<Level>[] = [
     {
       name: 'species', header: 'Species', value: (level) => level.species, sort: true,
@@ -39,7 +39,7 @@ export function levelColumns(href: (path: string) => string, options: { species?
       ),
     },
     { name: 'label', header: 'Label', value: (level) => level.term.label, only: 'copy' },
-    { name: 'alternative_name', header: 'Other name', value: (level) => level.alternative_name, only: 'copy' },
+    { name: 'alternative_name', header: 'Also called', value: (level) => level.alternative_name, only: named ? undefined : 'copy', cell: (level) => level.alternative_name ?? '' },
     { name: 'j', header: 'J', value: (level) => level.term.j, only: 'copy' },
     {
       name: 'energy_invcm', header: <>Energy, cm<sup>−1</sup></>, align: 'right', value: (level) => level.energy_invcm, sort: true,

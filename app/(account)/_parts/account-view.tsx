@@ -1,6 +1,5 @@
 'use client'
-import { useMutation, useQueryClient } from '@tanstack/react-query'
-import { useRouter } from 'next/navigation'
+import { useMutation } from '@tanstack/react-query'
 import { apiSend } from '../../_components/data/api'
 import { useMe } from '../../_components/data/me'
 import { Notice } from '../../_components/notice'
@@ -19,15 +18,10 @@ const ROLE: Record<string, string> = {
 }
 
 function SignOut() {
-  const router = useRouter()
-  const client = useQueryClient()
   const signOut = useMutation({
     mutationFn: () => apiSend<null>('DELETE', '/session'),
-    onSuccess: () => {
-      client.clear()
-      router.push('/')
-      router.refresh()
-    },
+    // A whole new page: nothing that was read as this person stays behind.
+    onSuccess: () => window.location.assign('/'),
   })
   const problem = restOf(signOut.error, [])
   return (

@@ -1,6 +1,5 @@
 'use client'
-import { useMutation, useQueryClient } from '@tanstack/react-query'
-import { useRouter } from 'next/navigation'
+import { useMutation } from '@tanstack/react-query'
 import { useSyncExternalStore, type FormEvent } from 'react'
 import type { SignedIn } from '@/openapi/schemas/session'
 import { apiSend } from '../../_components/data/api'
@@ -13,16 +12,11 @@ const FIELDS = ['/email', '/password']
 
 /** Sends the sign-in over the API. The form posts, so that a password never lands in an address, script or no script. */
 export function SignInForm({ next }: { next: string }) {
-  const router = useRouter()
-  const client = useQueryClient()
   const ready = useSyncExternalStore(never, () => true, () => false)
   const signIn = useMutation({
     mutationFn: (given: { email: string; password: string }) => apiSend<SignedIn>('POST', '/session', given),
-    onSuccess: () => {
-      client.clear()
-      router.push(next)
-      router.refresh()
-    },
+    // A whole new page: nothing that was read as a stranger stays behind.
+    onSuccess: () => window.location.assign(next),
   })
   const submit = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault()
@@ -35,7 +29,7 @@ export function SignInForm({ next }: { next: string }) {
       {problem ? <Notice tone="bad" role="alert" title={problem.title}><p>{problem.detail}</p></Notice> : null}
       <Field label="Email" name="email" type="email" autoComplete="username" required maxLength={320} error={faultOf(signIn.error, '/email')} />
       <Field label="Password" name="password" type="password" autoComplete="current-password" required maxLength={1000} error={faultOf(signIn.error, '/password')} />
-      <button type="submit" className="btn btn-lamp w-full" disabled={!ready || signIn.isPending}>{signIn.isPending ? 'Signing in' : 'Sign in'}</button>
+      <button type="submit" className="btn btn-lamp w-full" disabled={!ready || signIn.isPending || signIn.isSuccess}>{signIn.isPending || signIn.isSuccess ? 'Signing in' : 'Sign in'}</button>
       <p className="note">An account is made by an admin of this instance. On the demo, the accounts were printed when the server first started; <code>npm run demo-accounts</code> prints them again.</p>
     </form>
   )

@@ -87,19 +87,21 @@ export function EditionView({ n }: { n: string }) {
               </div>
             ))}
           </dl>
-          <Part title="The whole table as a file">
-            <ul className="max-w-3xl border-t border-rule">
-              {FORMATS.map((format) => (
-                <li key={format.id} className="border-b border-rule">
-                  <a className="group flex min-h-9 flex-wrap items-baseline gap-x-4 py-1.5 hover:bg-lamp-wash" href={apiPath(`${path}/levels`, { format: format.id })} download={`lodeterm-edition-${edition.number}.${format.id}`}>
-                    <span className="link w-16 font-medium">{format.label}</span>
-                    <span className="note">{format.what}</span>
-                  </a>
-                </li>
-              ))}
-            </ul>
-          </Part>
-          <Part title="How to cite"><Cite edition={edition} /></Part>
+          <div className="grid gap-x-14 lg:grid-cols-2 [&>*]:min-w-0">
+            <Part title="The whole table as a file">
+              <ul className="max-w-3xl border-t border-rule">
+                {FORMATS.map((format) => (
+                  <li key={format.id} className="border-b border-rule">
+                    <a className="group flex min-h-9 flex-wrap items-baseline gap-x-4 py-1.5 hover:bg-lamp-wash" href={apiPath(`${path}/levels`, { format: format.id })} download={`lodeterm-edition-${edition.number}.${format.id}`}>
+                      <span className="link w-16 font-medium">{format.label}</span>
+                      <span className="note">{format.what}</span>
+                    </a>
+                  </li>
+                ))}
+              </ul>
+            </Part>
+            <Part title="How to cite"><Cite edition={edition} /></Part>
+          </div>
           <Part title="Checksum">
             <p className="note mb-2">SHA-256 of the canonical content: two copies of the table with this checksum hold the same values.</p>
             <p className="flex flex-wrap items-center gap-3"><code className="text-sm [overflow-wrap:anywhere]">{edition.checksum}</code><CopyButton text={edition.checksum} label="Copy checksum" /></p>

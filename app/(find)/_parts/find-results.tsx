@@ -73,7 +73,7 @@ function Answer({ find }: { find: Find }) {
   if (find.levels.length === 0 && find.lines.length === 0) return find.questions.length > 0 ? null : <Nothing href={href} />
   const levels = find.levels.length === 0 ? null : (
     <Part key="levels" title="Levels" aside={find.levels_total > find.levels.length ? `The first ${find.levels.length} of ${find.levels_total}; add a part to narrow them` : plural(find.levels_total, 'level')}>
-      <DataTable columns={levelColumns(href, { id: false })} rows={find.levels} rowKey={(level) => level.id} caption="Levels found" hideCaption />
+      <DataTable columns={levelColumns(href, { id: false, named: find.levels.some((level) => level.alternative_name !== null) })} rows={find.levels} rowKey={(level) => level.id} caption="Levels found" hideCaption />
     </Part>
   )
   const total = `${find.lines_total_is_lower_bound ? 'at least ' : ''}${find.lines_total}`
@@ -110,10 +110,10 @@ export function FindResults({ q }: { q: string }) {
       ) : (
         <>
           <Understood find={data.data} href={href} />
-          <Warnings meta={data.meta} />
           <Questions find={data.data} href={href} />
           <div aria-live="polite" className="sr-only">{`${plural(data.data.levels_total, 'level')}, ${plural(data.data.lines_total, 'line')}`}</div>
           <Answer find={data.data} />
+          <Warnings meta={data.meta} quiet />
         </>
       )}
       <RequestPanel path="/find" query={query} />

@@ -104,12 +104,14 @@ function Results({ query }: { query: ReturnType<typeof lineQuery> }) {
   }
   return (
     <>
-      <Warnings meta={meta} />
       <DataTable columns={columns} rows={rows} rowKey={(line) => line.id} caption="Lines, by wavenumber" hideCaption
         summary={<span role="status">{answer.hasNextPage ? `The first ${plural(rows.length, 'line')}, by wavenumber` : plural(rows.length, 'line')}</span>}
         actions={<a className="btn btn-small" href={apiPath('/transitions', { ...query, limit: 1000, format: 'csv' })} download="lines.csv">Download CSV</a>} />
       <div className="mt-4 flex flex-wrap items-start justify-between gap-4">
-        {excluded}
+        <div>
+          {excluded}
+          <Warnings meta={meta} quiet />
+        </div>
         {answer.hasNextPage ? (
           <button type="button" className="btn" disabled={answer.isFetchingNextPage} onClick={() => void answer.fetchNextPage()}>
             {answer.isFetchingNextPage ? 'Loading more' : 'Show 100 more'}

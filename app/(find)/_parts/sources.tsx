@@ -19,7 +19,7 @@ export function SourcesList() {
   const query = { edition: param, limit: 1000 }
   const { data, error, isPending, refetch } = useQuery(apiQuery<Source[]>('/sources', query))
   const columns: Column<Source>[] = [
-    { name: 'citation', header: 'Source', rowHeader: true, wrap: true, value: (row) => row.citation, sort: true, cell: (row) => <Link className="link inline-block min-h-6 min-w-[18rem] max-w-[46rem]" href={href(`/sources/${encodeURIComponent(row.key)}`)}>{row.citation}</Link> },
+    { name: 'citation', header: 'Source', rowHeader: true, wrap: true, value: (row) => row.citation, sort: true, cell: (row) => <Link className="link block min-h-6 min-w-[18rem] sm:w-[44rem] sm:max-w-[55vw]" href={href(`/sources/${encodeURIComponent(row.key)}`)}>{row.citation}</Link> },
     { name: 'key', header: 'Key', value: (row) => row.key, only: 'copy' },
     { name: 'doi', header: 'DOI', value: (row) => row.doi, only: 'copy' },
     { name: 'kind', header: 'Kind', value: (row) => row.kind, sort: true },

@@ -22,10 +22,10 @@ import { Skeleton, TableSkeleton } from '../../_components/skeleton'
 import { SourceRef } from '../../_components/source-ref'
 import { speciesLevels } from './species-query'
 
-const ISOTOPES: Column<Isotope>[] = [
-  { name: 'mass_number', header: 'Mass number', align: 'right', value: (row) => row.mass_number, rowHeader: true, sort: true },
+const isotopeColumns = (element: string): Column<Isotope>[] => [
+  { name: 'mass_number', header: 'Isotope', value: (row) => row.mass_number, rowHeader: true, cell: (row) => <span className="symbol"><sup>{row.mass_number}</sup>{element}</span> },
   { name: 'mass_u', header: 'Mass, u', align: 'right', value: (row) => row.mass_u, cell: (row) => <Quantity value={row.mass_u} digits={12} /> },
-  { name: 'nuclear_spin', header: 'Nuclear spin I', align: 'right', value: (row) => row.nuclear_spin, cell: (row) => (row.nuclear_spin === null ? <Quantity value={null} /> : halves(row.nuclear_spin)) },
+  { name: 'nuclear_spin', header: 'Spin I', align: 'right', value: (row) => row.nuclear_spin, cell: (row) => (row.nuclear_spin === null ? <Quantity value={null} /> : halves(row.nuclear_spin)) },
   { name: 'abundance_percent', header: 'Abundance, %', align: 'right', value: (row) => row.abundance_percent, sort: true, cell: (row) => <Quantity value={row.abundance_percent} digits={6} /> },
   { name: 'source', header: 'Source', value: (row) => row.source, wrap: true, cell: (row) => <SourceRef source={row.source} evidence={row.evidence} /> },
 ]
@@ -47,32 +47,51 @@ function Facts({ species }: { species: Species }) {
   )
 }
 
-function Levels({ species }: { species: Species }) {
+function Levels({ species, beside }: { species: Species; beside: React.ReactNode }) {
   const { param, href } = useEdition()
   const query = speciesLevels(species.id, param)
   const answer = useInfiniteQuery(apiPages<Level>('/levels', query))
   const levels = useMemo(() => answer.data?.pages.flatMap((page) => page.data) ?? [], [answer.data])
-  const columns = useMemo(() => levelColumns(href, { species: false }), [href])
+  const columns = useMemo(() => levelColumns(href, { species: false, named: levels.some((level) => level.alternative_name !== null) }), [href, levels])
   if (answer.isPending) {
     return (
       <>
-        <Part title="Term diagram"><Skeleton label="Drawing the term diagram" className="h-[30rem] w-full" /></Part>
+        <div className="part"><Skeleton label="Drawing the term diagram" className="h-[30rem] w-full" /></div>
         <Part title="Levels"><TableSkeleton rows={species.level_count || 8} /></Part>
       </>
     )
   }
-  if (answer.error && levels.length === 0) return <Part title="Levels"><ProblemView error={answer.error} onRetry={() => void answer.refetch()} heading="h3" /></Part>
+  if (answer.error && levels.length === 0) return <><Part title="Levels"><ProblemView error={answer.error} onRetry={() => void answer.refetch()} heading="h3" /></Part>{beside}</>
   if (levels.length === 0) return <Part title="Levels"><EmptyState title="This edition holds no level of this species" /></Part>
   return (
     <>
-      <Part title="Term diagram">
-        <TermDiagram levels={levels} ionisationInvcm={species.ionisation_energy_invcm} hrefFor={(level) => href(levelPage(level.id))} name={species.id} />
+      <div className="part">
+        <TermDiagram title={`Levels of ${speciesText(species.id)} by term`} levels={levels} ionisationInvcm={species.ionisation_energy_invcm} hrefFor={(level) => href(levelPage(level.id))} name={species.id} />
+      </div>
+      <div className="gap-x-16 xl:grid xl:grid-cols-[auto_minmax(0,1fr)] [&>*]:min-w-0">
+        <Part title="Levels" aside={plural(species.level_count, 'level')}>
+          <DataTable columns={columns} rows={levels} rowKey={(level) => level.id} caption={`Levels of ${speciesText(species.id)}`} hideCaption
+            actions={<a className="btn btn-small" download={`${species.id}-levels.csv`} href={apiPath('/levels', { ...query, limit: 1000, format: 'csv' })}>Download CSV</a>} />
+          {answer.hasNextPage ? <button type="button" className="btn mt-4" disabled={answer.isFetchingNextPage} onClick={() => void answer.fetchNextPage()}>Show more levels</button> : null}
+        </Part>
+        <div>{beside}</div>
+      </div>
+      <div className="mt-5"><EvidenceKey /></div>
+    </>
+  )
+}
+
+function Beside({ species }: { species: Species }) {
+  const sum = species.isotope_abundance_sum_percent
+  return (
+    <>
+      <Part title="Isotopes" aside={sum !== null && sum < 99.5 ? `Only the main isotopes are listed: ${fixed(sum, 1)} % in all` : undefined}>
+        {species.isotopes.length === 0 ? <p className="note">None are listed.</p> : (
+          <DataTable columns={isotopeColumns(species.element)} rows={species.isotopes} rowKey={(row) => String(row.mass_number)} caption={`Isotopes of ${species.name}`} hideCaption />
+        )}
       </Part>
-      <Part title="Levels" aside={plural(species.level_count, 'level')}>
-        <DataTable columns={columns} rows={levels} rowKey={(level) => level.id} caption={`Levels of ${speciesText(species.id)}`} hideCaption
-          actions={<a className="btn btn-small" download={`${species.id}-levels.csv`} href={apiPath('/levels', { ...query, limit: 1000, format: 'csv' })}>Download CSV</a>} />
-        {answer.hasNextPage ? <button type="button" className="btn mt-4" disabled={answer.isFetchingNextPage} onClick={() => void answer.fetchNextPage()}>Show more levels</button> : null}
-        <div className="mt-5"><EvidenceKey /></div>
+      <Part title="Sources">
+        <ul className="space-y-1">{species.sources.map((key) => <li key={key}><SourceRef source={key} /></li>)}</ul>
       </Part>
     </>
   )
@@ -85,7 +104,6 @@ export function SpeciesView({ species: id }: { species: string }) {
   const { data, error, isPending, refetch } = useQuery(apiQuery<Species>(path, { edition: param }))
   if (error) return <div className="page pt-9"><ProblemView error={error} onRetry={() => void refetch()} heading="h1" /></div>
   const species = data?.data
-  const sum = species?.isotope_abundance_sum_percent ?? null
   return (
     <div className="page">
       <PageHead title={<>{speciesText(id)}{species ? <span className="text-muted">, {species.name}</span> : null}</>} crumbs={<Link className="link" href={href('/')}>All species</Link>}
@@ -93,15 +111,7 @@ export function SpeciesView({ species: id }: { species: string }) {
       {isPending || species === undefined ? <Skeleton label="Loading the species" className="h-28 max-w-3xl" /> : (
         <>
           <Facts species={species} />
-          <Levels species={species} />
-          <Part title="Isotopes" aside={sum !== null && sum < 99.5 ? `Only the main isotopes are listed: ${fixed(sum, 1)} % in all` : undefined}>
-            {species.isotopes.length === 0 ? <p className="note">None are listed.</p> : (
-              <DataTable columns={ISOTOPES} rows={species.isotopes} rowKey={(row) => String(row.mass_number)} caption={`Isotopes of ${species.name}`} hideCaption />
-            )}
-          </Part>
-          <Part title="Sources">
-            <ul className="space-y-1">{species.sources.map((key) => <li key={key}><SourceRef source={key} /></li>)}</ul>
-          </Part>
+          <Levels species={species} beside={<Beside species={species} />} />
         </>
       )}
       <RequestPanel path="/levels" query={speciesLevels(id, param)} />

@@ -10,7 +10,7 @@ const GROUPS: readonly { title: string; has: (status: number) => boolean }[] = [
   { title: 'Who may do it', has: (status) => status === 401 || status === 403 },
   { title: 'Nothing there, or not in that way', has: (status) => [404, 405, 406, 410, 413, 415].includes(status) },
   { title: 'The state does not allow it', has: (status) => [409, 412, 428, 429].includes(status) },
-  { title: 'Physics forbids it', has: (status) => status === 422 },
+  { title: 'Well formed, and not possible', has: (status) => status === 422 },
   { title: 'Faults of the server', has: (status) => status >= 500 },
 ]
 

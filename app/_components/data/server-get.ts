@@ -8,6 +8,7 @@ const READS: readonly { path: RegExp; open: () => Promise<{ GET: Handler }> }[] 
   { path: /^\/editions$/, open: () => import('@/app/api/v1/editions/route') },
   { path: /^\/editions\/[^/]+$/, open: () => import('@/app/api/v1/editions/[n]/route') },
   { path: /^\/editions\/[^/]+\/changes$/, open: () => import('@/app/api/v1/editions/[n]/changes/route') },
+  { path: /^\/find$/, open: () => import('@/app/api/v1/find/route') },
   { path: /^\/species$/, open: () => import('@/app/api/v1/species/route') },
   { path: /^\/species\/[^/]+$/, open: () => import('@/app/api/v1/species/[species]/route') },
   { path: /^\/sources$/, open: () => import('@/app/api/v1/sources/route') },
