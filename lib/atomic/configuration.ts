@@ -3,7 +3,7 @@ import { type Parsed, parsed, refused } from '@/lib/atomic/errors'
 import { readShells } from '@/lib/atomic/configuration-reading'
 import { formatHalf, type TwoJ } from '@/lib/atomic/half'
 import { shellLetter, termLetter } from '@/lib/atomic/letters'
-import { termAllowed, walkConfiguration } from '@/lib/atomic/microstates'
+import { termAllowed, tooManyOpenShells, walkConfiguration } from '@/lib/atomic/microstates'
 import { capacity, type Configuration, type ConfigurationPart, isShell, type Shell } from '@/lib/atomic/shells'
 import { type LsTerm, parseTerm, type Parity, printTerm } from '@/lib/atomic/term'
 import { quoted } from '@/lib/units/number'
@@ -15,6 +15,8 @@ const SUPERSCRIPTS = '⁰¹²³⁴⁵⁶⁷⁸⁹'
 const LONGEST = 160
 /** More readings than any real configuration has; a text that has more is no configuration. */
 const MOST_READINGS = 4000
+/** Parents are checked against the terms of their shells, which costs more. */
+const MOST_WITH_PARENTS = 60
 
 const shellText = (shell: Shell): string => `${shell.n}${shellLetter(shell.l)}${shell.count === 1 ? '' : shell.count}`
 
@@ -23,15 +25,18 @@ interface Segment {
   text: string
 }
 
+/** A raised count is a count and nothing else, so it ends its shell: `2s²2p` becomes `2s^2 2p`. */
+const lowerCounts = (text: string): string => text.replace(/[⁰¹²³⁴-⁹]+/g, (run) => `^${[...run].map((d) => SUPERSCRIPTS.indexOf(d)).join('')} `)
+
 /** Cuts the text into runs of shells and parents in brackets; null with what stood in the way when that fails. */
 function segmentsOf(text: string): Segment[] | null {
   const segments: Segment[] = []
   for (const match of text.matchAll(/\(([^()]*)\)|([^()]+)/g)) {
     if (match[1] !== undefined) segments.push({ kind: 'parent', text: match[1].trim() })
-    else if (match[2] !== undefined) for (const run of match[2].split(/[.\s]+/)) if (run !== '') segments.push({ kind: 'shells', text: run })
+    else if (match[2] !== undefined) for (const run of lowerCounts(match[2]).split(/[.\s]+/)) if (run !== '') segments.push({ kind: 'shells', text: run })
   }
-  const put = segments.map((segment) => (segment.kind === 'parent' ? `(${segment.text})` : segment.text)).join('')
-  return put.replace(/[\s.]/g, '').length === text.replace(/[\s.]/g, '').length ? segments : null
+  // brackets left over after the balanced ones are cut out match nothing
+  return /[()]/.test(text.replace(/\([^()]*\)/g, '')) ? null : segments
 }
 
 function readParent(text: string, whole: string): Parsed<LsTerm> {
@@ -66,6 +71,9 @@ function combine(choices: readonly (readonly ConfigurationPart[][])[]): Configur
 function settle(core: string | null, parts: readonly ConfigurationPart[], text: string): Parsed<Configuration> {
   const twice = repeated(parts)
   if (twice) return refused('configuration_impossible', `${quoted(text)} names the shell ${twice.n}${shellLetter(twice.l)} twice; write its electrons together, such as ${twice.n}${shellLetter(twice.l)}2.`)
+  const many = tooManyOpenShells(parts)
+  if (many !== null) return refused('configuration_malformed', `${quoted(text)} cannot be used: ${many}.`)
+  if (parts.every(isShell)) return parsed({ core, parts: [...parts] })
   const walk = walkConfiguration(parts)
   const parents = parts.filter((part) => part.kind === 'parent')
   const bad = walk.impossibleParent >= 0 ? parents[walk.impossibleParent] : undefined
@@ -89,7 +97,7 @@ function settle(core: string | null, parts: readonly ConfigurationPart[], text: 
  * Errors: `configuration_malformed` (not a configuration), `configuration_impossible` (3p7, 2d, a shell twice, a parent the shells cannot make).
  */
 export function parseConfiguration(text: string, options: { fits?: (configuration: Configuration) => boolean } = {}): Parsed<Configuration> {
-  const plain = text.replace(/[⁰¹²³⁴-⁹]+/g, (run) => `^${[...run].map((d) => SUPERSCRIPTS.indexOf(d)).join('')} `).trim()
+  const plain = text.trim()
   if (plain === '') return refused('configuration_malformed', `A configuration is missing: ${FORMS}.`)
   if (plain.length > LONGEST) return refused('configuration_malformed', `${quoted(text)} is too long for a configuration; ${FORMS}.`)
   const coreMatch = /^\[\s*([A-Za-z]{1,2})\s*\]/.exec(plain)
@@ -111,11 +119,22 @@ export function parseConfiguration(text: string, options: { fits?: (configuratio
     choices.push(readings.value)
   }
   if (choices[0]?.[0]?.[0]?.kind === 'parent') return refused('configuration_malformed', `${quoted(text)} begins with a parent; the shells that make it stand before it, such as 3d6(5D)4s.`)
-  const settled = combine(choices).map((parts) => settle(core, parts, text))
-  const possible = settled.flatMap((reading) => (reading.ok ? [reading.value] : []))
-  const chosen = (options.fits ? possible.find(options.fits) : undefined) ?? possible[0]
-  if (chosen) return parsed(chosen)
-  return settled[0] ?? refused('configuration_malformed', `${quoted(text)} holds no shell; ${FORMS}.`)
+  return firstThatFits(core, combine(choices), text, options.fits)
+}
+
+/** The first reading that is possible and fits, else the first that is possible, else why the simplest is not. */
+function firstThatFits(core: string | null, readings: readonly ConfigurationPart[][], text: string, fits: ((configuration: Configuration) => boolean) | undefined): Parsed<Configuration> {
+  let simplest: Configuration | null = null
+  let refusal: Parsed<Configuration> | null = null
+  const withParents = readings[0]?.some((part) => part.kind === 'parent') ?? false
+  for (const parts of withParents ? readings.slice(0, MOST_WITH_PARENTS) : readings) {
+    const reading = settle(core, parts, text)
+    if (!reading.ok) refusal ??= reading
+    else if (fits === undefined || fits(reading.value)) return reading
+    else simplest ??= reading.value
+  }
+  if (simplest !== null) return parsed(simplest)
+  return refusal ?? refused('configuration_malformed', `${quoted(text)} holds no shell; ${FORMS}.`)
 }
 
 /** `canonical`: dots between all parts, `3d6.(5D).4s.4p.(3P*)`; `unicode`: for reading, `3d⁶(⁵D)4s4p(³P°)`. */

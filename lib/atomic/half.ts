@@ -57,7 +57,8 @@ export const isTriangle = (twoA: TwoJ, twoB: TwoJ, twoC: TwoJ): boolean =>
 /** m = -J .. J as twice the value. */
 export function magneticNumbers(twoJ: TwoJ): TwoJ[] {
   const list: TwoJ[] = []
-  for (let two = -twoJ; two <= twoJ; two += 2) list.push(two)
+  // 0 - J, not -J: m of J = 0 must not be a negative zero
+  for (let two = 0 - twoJ; two <= twoJ; two += 2) list.push(two)
   return list
 }
 

@@ -65,10 +65,12 @@ export function termsOfShell(l: number, count: number): ReadonlyMap<TermKey, num
   return terms
 }
 
-/** Terms as small integers inside: twoS * 64 + L. */
+/** Terms as small integers inside: twoS * 256 + L. */
 type Packed = ReadonlySet<number>
+/** No open shell: 1S. */
 const NONE: Packed = new Set([0])
-const pack = (twoS: number, l: number): number => twoS * 64 + l
+const NOTHING: Packed = new Set<number>()
+const pack = (twoS: number, l: number): number => twoS * 256 + l
 
 const packedShells = new Map<number, Packed>()
 
@@ -84,20 +86,40 @@ function packedShell(shell: Shell): Packed {
   return set
 }
 
-/** Every term that one of `a` and one of `b` make when they are not equivalent: S and L add as vectors. */
+const coupled = new WeakMap<Packed, WeakMap<Packed, Packed>>()
+
+/** Every term that one of `a` and one of `b` make when they are not equivalent: S and L add as vectors. Remembered as long as the sets live. */
 function couple(a: Packed, b: Packed): Packed {
   if (a.size === 1 && a.has(0)) return b
   if (b.size === 1 && b.has(0)) return a
+  const before = coupled.get(a)?.get(b)
+  if (before) return before
   const sum = new Set<number>()
   for (const x of a) {
     for (const y of b) {
-      const [twoS1, l1, twoS2, l2] = [x >> 6, x & 63, y >> 6, y & 63]
+      const [twoS1, l1, twoS2, l2] = [x >> 8, x & 255, y >> 8, y & 255]
       for (let twoS = Math.abs(twoS1 - twoS2); twoS <= twoS1 + twoS2; twoS += 2) {
         for (let l = Math.abs(l1 - l2); l <= l1 + l2; l += 1) sum.add(pack(twoS, l))
       }
     }
   }
+  const ofA = coupled.get(a) ?? new WeakMap<Packed, Packed>()
+  coupled.set(a, ofA.set(b, sum))
   return sum
+}
+
+const MOST_OPEN = 8
+const MOST_MANY_BODIED = 3
+
+/**
+ * A sentence when a configuration has more open shells than any known level: counting its terms would take long and mean nothing. At most
+ * eight open shells, of which three may hold more than one electron and more than one hole. Null when it is within that.
+ */
+export function tooManyOpenShells(parts: readonly ConfigurationPart[]): string | null {
+  const open = parts.filter((part): part is Shell => part.kind === 'shell' && part.count > 0 && part.count < capacity(part.l))
+  const manyBodied = open.filter((shell) => shell.count > 1 && shell.count < capacity(shell.l) - 1)
+  if (open.length <= MOST_OPEN && manyBodied.length <= MOST_MANY_BODIED) return null
+  return `it has more open shells than any known level (at most ${MOST_OPEN}, of which ${MOST_MANY_BODIED} with several electrons and holes)`
 }
 
 export interface Walk {
@@ -149,6 +171,7 @@ const REMEMBERED = 5000
 const allowed = new Map<string, Packed>()
 
 function allowedPacked(configuration: Configuration): Packed {
+  if (tooManyOpenShells(configuration.parts) !== null) return NOTHING
   const key = configuration.parts.map((part) => (part.kind === 'shell' ? `${part.l}:${part.count}` : `(${part.term.twoS},${part.term.l})`)).join('.')
   const known = allowed.get(key)
   if (known) return known
@@ -159,7 +182,7 @@ function allowedPacked(configuration: Configuration): Packed {
 }
 
 /** The LS terms that the open shells of a configuration can make, its parents taken into account. */
-export const allowedTerms = (configuration: Configuration): Set<TermKey> => new Set([...allowedPacked(configuration)].map((term) => termKey(term >> 6, term & 63)))
+export const allowedTerms = (configuration: Configuration): Set<TermKey> => new Set([...allowedPacked(configuration)].map((term) => termKey(term >> 8, term & 255)))
 
 /** Whether S and L are among the terms that the configuration can make (Pauli and parents). */
-export const termAllowed = (configuration: Configuration, twoS: TwoJ, l: number): boolean => l < 64 && allowedPacked(configuration).has(pack(twoS, l))
+export const termAllowed = (configuration: Configuration, twoS: TwoJ, l: number): boolean => l < 256 && allowedPacked(configuration).has(pack(twoS, l))
