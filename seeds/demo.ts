@@ -1,7 +1,7 @@
 import { randomInt } from 'node:crypto'
 import fs from 'node:fs'
 import path from 'node:path'
-import { count, eq, sql } from 'drizzle-orm'
+import { count, eq, isNotNull, sql } from 'drizzle-orm'
 import type { Db } from '@/db/client'
 import { auditEvents, users } from '@/db/schema'
 import { hashPassword } from '@/lib/access/passwords'
@@ -52,7 +52,7 @@ const withPasswords = () => Promise.all(PEOPLE.map(async (person) => {
 }))
 
 /**
- * Keeps the demo accounts as the instance is set: made once, where there are no accounts at all and demo accounts are allowed;
+ * Keeps the demo accounts as the instance is set: made once, where there is no account to sign in with and demo accounts are allowed;
  * open while they are allowed and closed while they are not. Answers the accounts just made, or null.
  */
 export async function setDemoAccounts(db: Db, allowed: boolean): Promise<DemoAccount[] | null> {
@@ -71,7 +71,8 @@ export async function setDemoAccounts(db: Db, allowed: boolean): Promise<DemoAcc
   })
 }
 
-const isEmpty = async (db: Pick<Db, 'select'>) => ((await db.select({ n: count() }).from(users))[0]?.n ?? 0) === 0
+/** Whether nobody can sign in; the account that owns keys made on the command line is nobody in this sense. */
+const isEmpty = async (db: Pick<Db, 'select'>) => ((await db.select({ n: count() }).from(users).where(isNotNull(users.passwordHash)))[0]?.n ?? 0) === 0
 
 /** The demo accounts with their passwords; where the private file is lost or tells of other accounts, new passwords are set. */
 export async function demoAccounts(db: Db): Promise<{ accounts: DemoAccount[]; renewed: boolean }> {
