@@ -41,7 +41,7 @@ export async function changePassword(db: Db, acting: Acting, given: { password: 
   const caller = knownCaller(acting.caller)
   checkPassword(given.new_password, '/new_password')
   const user = await userOf(db, caller.userId)
-  const attempt = await beginAttempt(db, subjectOf(user.email.toLowerCase(), `password change ${user.id}`), acting.ip ?? 'unknown')
+  const attempt = await beginAttempt(db, subjectOf(user.email.toLowerCase(), `password change ${user.id}`), acting.ip ?? 'unknown', true)
   if (!(await verifyPassword(user.passwordHash, given.password))) throw bodyProblem('/password', 'password_wrong', 'This is not the present password.')
   await succeed(db, attempt)
   if (given.password === given.new_password) throw bodyProblem('/new_password', 'password_unchanged', 'The new password is the present one.')

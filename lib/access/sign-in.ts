@@ -23,7 +23,7 @@ export async function signIn(db: Db, given: { email: string; password: string },
   const deviceField = readCookie(from.cookie, deviceCookieName())
   const device = deviceField === null ? null : await readDeviceToken(deviceField)
   const known = device !== null && user !== undefined && device.subject === user.id ? device.id : null
-  const attempt = await beginAttempt(db, subjectOf(email, known), from.ip)
+  const attempt = await beginAttempt(db, subjectOf(email, known), from.ip, known !== null)
   const fits = await verifyPassword(user?.active === true ? user.passwordHash : null, given.password)
   if (!fits || user === undefined) throw new Problem('sign_in_refused', 'The address and the password do not belong together.', { headers: { 'www-authenticate': 'Bearer realm="lodeterm"' } })
   await succeed(db, attempt)

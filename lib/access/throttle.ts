@@ -7,7 +7,8 @@ import { Problem } from '@/lib/problem'
  * Slows guessing without locking anyone out for long. Failures of the last hour since the last success are counted per
  * account and per address; a few are free, then each further attempt waits twice as long as the one before, at most
  * a quarter of an hour after the last failure. A refused attempt is not counted, so hammering does not prolong the wait.
- * A browser that has signed in to the account before is counted by itself, so strangers cannot keep its owner out.
+ * A browser that has signed in to the account before is counted by itself, whatever is tried elsewhere or from its address,
+ * so strangers cannot keep an owner out.
  */
 const FREE = { account: 5, address: 20 }
 const WINDOW_MS = 3_600_000
@@ -35,14 +36,14 @@ export const subjectOf = (email: string, device: string | null): string => (devi
  * Counts an attempt before it is judged, as failed, so that attempts side by side cannot pass together; `succeed` corrects it.
  * Throws 429 `sign_in_throttled` with Retry-After where it has to wait. `subject` is that of `subjectOf`.
  */
-export async function beginAttempt(db: Db, subject: string, ip: string): Promise<Attempt> {
+export async function beginAttempt(db: Db, subject: string, ip: string, knownDevice = false): Promise<Attempt> {
   return db.transaction(async (tx) => {
     await tx.execute(sql`select pg_advisory_xact_lock(hashtext(${subject}))`)
     const now = Date.now()
     const wait = Math.max(
       await waitFor(tx, eq(signInAttempts.email, subject), FREE.account, now),
       // a success says nothing about other accounts tried from the address, so only failures are looked at there
-      await waitFor(tx, and(eq(signInAttempts.ip, ip), eq(signInAttempts.succeeded, false)) ?? sql`false`, FREE.address, now),
+      knownDevice ? 0 : await waitFor(tx, and(eq(signInAttempts.ip, ip), eq(signInAttempts.succeeded, false)) ?? sql`false`, FREE.address, now),
     )
     if (wait > 0) {
       const seconds = Math.ceil(wait / 1000)

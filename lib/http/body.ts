@@ -30,10 +30,8 @@ export async function readText(request: Request): Promise<string> {
     const step = await reader.read()
     if (step.done) break
     length += step.value.byteLength
-    if (length > BODY_LIMIT_BYTES) {
-      await reader.cancel().catch(() => undefined)
-      throw tooLarge()
-    }
+    // not cancelled: that would close the connection before the answer could be read
+    if (length > BODY_LIMIT_BYTES) throw tooLarge()
     pieces.push(step.value)
   }
   try {

@@ -5,7 +5,7 @@ import type { Fault } from '@/lib/problem'
 import { quoted } from '@/lib/units/number'
 
 interface Def { type?: string; innerType?: unknown; in?: unknown; defaultValue?: unknown }
-const defOf = (schema: unknown): Def | undefined => (schema as { _zod?: { def?: Def } })._zod?.def
+const defOf = (schema: unknown): Def | undefined => (schema as { _zod?: { def?: Def } } | undefined)?._zod?.def
 
 function isRepeatable(schema: unknown): boolean {
   const def = defOf(schema)
@@ -65,10 +65,11 @@ export function readQuery(plan: QueryPlan, search: string): ReadQuery {
     for (const pair of search.split('&')) {
       if (pair === '') continue
       const split = pair.indexOf('=')
-      const name = decode(split < 0 ? pair : pair.slice(0, split))
+      const written = split < 0 ? pair : pair.slice(0, split)
+      const name = decode(written)
       const text = decode(split < 0 ? '' : pair.slice(split + 1))
       if (name === null || text === null) {
-        faults.push({ parameter: name ?? pair.slice(0, 60), code: 'encoding_malformed', detail: 'The percent-encoding of this part of the address is not valid UTF-8.' })
+        faults.push({ parameter: name ?? written.slice(0, 60), code: 'encoding_malformed', detail: 'The percent-encoding of this part of the address is not valid UTF-8.' })
         if (name !== null) refused.add(name)
       } else if (name.includes(NUL) || text.includes(NUL)) {
         faults.push({ parameter: name.replaceAll(NUL, ''), code: 'nul_byte', detail: 'A parameter cannot hold a NUL character.' })

@@ -132,6 +132,23 @@ function complete(place: PathItemOperation, operation: Operation): void {
   if (more.length > 0) place.parameters = [...(place.parameters ?? []), ...more]
 }
 
+/**
+ * A named schema that may also be null comes from the generator as "the schema and (text or null)", which null never meets:
+ * it is made "the schema or null". Everything else is left as it is.
+ */
+function mendNullable(node: unknown): unknown {
+  if (Array.isArray(node)) return node.map(mendNullable)
+  if (typeof node !== 'object' || node === null) return node
+  const { allOf, ...rest } = node as { allOf?: Doc[] }
+  const mended = Object.fromEntries(Object.entries(rest).map(([name, value]) => [name, mendNullable(value)]))
+  if (allOf === undefined) return mended
+  const named = allOf.find((part) => '$ref' in part)
+  const open = allOf.find((part) => Array.isArray(part.type) && part.type.includes('null'))
+  if (allOf.length !== 2 || named === undefined || open === undefined) return { ...mended, allOf: mendNullable(allOf) }
+  const about = Object.fromEntries(Object.entries(open).filter(([name]) => name !== 'type'))
+  return { ...mended, ...about, anyOf: [named, { type: 'null' }] }
+}
+
 /** The OpenAPI 3.1 document of all operations. */
 export function buildDocument(operations: readonly Operation[]): Doc {
   const registry = new OpenAPIRegistry()
@@ -152,7 +169,7 @@ export function buildDocument(operations: readonly Operation[]): Doc {
     const place = paths[operation.path]?.[operation.method]
     if (place !== undefined) complete(place, operation)
   }
-  return document as unknown as Doc
+  return mendNullable(document) as Doc
 }
 
 /** The document as it is committed. */
