@@ -1,0 +1,68 @@
+import type { Browser } from 'playwright-core'
+import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { accessibilityFindings, go, openBrowser, overflow, type Theme, visit } from './browser'
+
+/** Every page a visitor can open, with the words that show it has its content. */
+const PAGES: readonly { path: string; shows: RegExp }[] = [
+  { path: '/', shows: /Find a level or a line/ },
+  { path: '/?q=sodium+D1', shows: /589\.59/ },
+  { path: '/?q=6302.5', shows: /6302\.5/ },
+  { path: '/lines?wavelength_min_nm=588&wavelength_max_nm=590', shows: /Na/ },
+  { path: '/lines/Na-I.1~Na-I.2?field=1.5T', shows: /2\.8/ },
+  { path: '/lines/Na-I.2~Na-I.3', shows: /M1/ },
+  { path: '/levels/Na-I.2', shows: /0\.66581/ },
+  { path: '/levels/Ne-I.2', shows: /1s5/ },
+  { path: '/species/Fe-I', shows: /iron/i },
+  { path: '/editions', shows: /Edition 1/ },
+  { path: '/editions/1', shows: /[0-9a-f]{16}/ },
+  { path: '/sources', shows: /J\. Phys\. Chem\. Ref\. Data/ },
+  { path: '/problems', shows: /invalid_input/ },
+  { path: '/problems/invalid_input', shows: /request/i },
+  { path: '/sign-in', shows: /Password/ },
+  { path: '/api-docs', shows: /API/ },
+]
+
+let browser: Browser
+beforeAll(async () => {
+  browser = await openBrowser()
+})
+afterAll(async () => {
+  await browser.close()
+})
+
+describe.each<Theme>(['light', 'dark'])('in the %s theme', (theme) => {
+  it.each(PAGES)('$path is accessible, quiet, and has its content', async ({ path, shows }) => {
+    const { context, page, complaints } = await visit(browser, { theme })
+    await go(page, path)
+    await expect.poll(() => page.locator('main').innerText(), { timeout: 15_000 }).toMatch(shows)
+    expect(await page.title()).not.toBe('')
+    expect(await page.locator('h1').count()).toBe(1)
+    expect(await accessibilityFindings(page)).toEqual([])
+    expect(complaints).toEqual([])
+    await context.close()
+  })
+})
+
+describe.each([320, 390, 1440])('%i pixels wide', (width) => {
+  it('no page scrolls sideways', async () => {
+    const { context, page } = await visit(browser, { width, height: 844 })
+    const wide: string[] = []
+    for (const { path } of PAGES) {
+      await go(page, path)
+      const by = await overflow(page)
+      if (by > 0) wide.push(`${path} by ${by} px`)
+    }
+    expect(wide).toEqual([])
+    await context.close()
+  })
+})
+
+it('what does not exist says so, and is not an error of ours', async () => {
+  const { context, page } = await visit(browser)
+  for (const path of ['/levels/Na-I.9999', '/lines/Na-I.1~Na-I.9999', '/species/Xx-I', '/nowhere', '/editions/77', '/levels/%00', '/lines/nonsense?field=3furlong']) {
+    const response = await page.goto(path, { waitUntil: 'networkidle' })
+    expect(response?.status(), path).toBeLessThan(500)
+    expect((await page.locator('main').innerText()).length, path).toBeGreaterThan(20)
+  }
+  await context.close()
+})
