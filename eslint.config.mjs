@@ -34,9 +34,9 @@ export default defineConfig([
     files: ['**/*.ts', '**/*.tsx'],
     rules: {
       'import/no-restricted-paths': ['error', { zones }],
-      'import/no-cycle': ['error', { maxDepth: 12 }],
+      'import/no-cycle': ['error', { ignoreExternal: true }],
       '@typescript-eslint/no-explicit-any': 'error',
     },
   },
-  globalIgnores(['.next/**', 'next-env.d.ts', 'db/migrations/**', '.data/**', 'coverage/**', 'public/**']),
+  globalIgnores(['**/.next/**', 'next-env.d.ts', 'db/migrations/**', '.data/**', 'coverage/**', 'public/**']),
 ])
