@@ -2,19 +2,20 @@ import path from 'node:path'
 import { defineConfig } from 'vitest/config'
 
 // vitest sets BASE_URL to a path; the project means an address by it.
-const plain = { environment: 'node', env: { BASE_URL: '' }, testTimeout: 30_000 } as const
+const plain = { environment: 'node', env: { BASE_URL: '' }, testTimeout: 30_000, sequence: { groupOrder: 0 } } as const
 const applied = { setupFiles: ['tests/support/apply-environment.ts'], fileParallelism: false, testTimeout: 60_000, hookTimeout: 120_000 }
 const served = { ...applied, globalSetup: ['tests/support/served.ts'] }
 
+// One group after the other: what asks a server or drives a browser should not wait behind physics.
 export default defineConfig({
   resolve: { alias: { '@': path.resolve(import.meta.dirname) } },
   test: {
     projects: [
       { extends: true, test: { name: 'unit', include: ['tests/unit/**/*.test.ts'], ...plain } },
       { extends: true, test: { name: 'reference', include: ['tests/reference/**/*.test.ts'], ...plain } },
-      { extends: true, test: { name: 'database', include: ['tests/database/**/*.test.ts'], globalSetup: ['tests/support/database.ts'], ...applied } },
-      { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], ...served } },
-      { extends: true, test: { name: 'browser', include: ['tests/browser/**/*.test.ts'], ...served } },
+      { extends: true, test: { name: 'database', include: ['tests/database/**/*.test.ts'], globalSetup: ['tests/support/database.ts'], ...applied, sequence: { groupOrder: 1 } } },
+      { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], ...served, sequence: { groupOrder: 2 } } },
+      { extends: true, test: { name: 'browser', include: ['tests/browser/**/*.test.ts'], ...served, sequence: { groupOrder: 3 } } },
     ],
   },
 })

@@ -19,7 +19,8 @@ try {
   await ensureAppRole()
   await migrate(drizzle(client), { migrationsFolder })
 } catch (error) {
-  console.error(`The database could not be migrated: ${(error.cause ?? error).message}`)
+  const { message, code } = error.cause ?? error
+  console.error(`The database could not be migrated: ${message || code}`)
   process.exitCode = 1
 } finally {
   await client.end().catch(() => undefined)
@@ -36,6 +37,6 @@ async function ensureAppRole() {
   } catch (error) {
     if (error.code !== '42501') throw error
     throw new Error('this login may not make or join the role lodeterm_app. Let a superuser run "create role lodeterm_app nologin; grant lodeterm_app to '
-      + '<this login>;" once, or give DATABASE_APP_URL with a login of the application', { cause: undefined })
+      + '<this login>;" once, or give DATABASE_APP_URL with a login of the application')
   }
 }

@@ -18,7 +18,13 @@ const names = rest.filter((word) => !word.startsWith('--'))
 
 // One at a time. The kernel lets go of the lock even after kill -9; with -o the server does not inherit it.
 if (['up', 'down', 'fresh'].includes(verb) && process.env.PG_LOCKED === undefined) {
-  fs.mkdirSync(home, { recursive: true })
+  try {
+    fs.mkdirSync(home, { recursive: true })
+    fs.closeSync(fs.openSync(path.join(home, 'lock'), 'a'))
+  } catch (error) {
+    say(`${home} cannot be written to (${error.code}). It belongs to whoever began with it: start as that user, or set PG_HOME to a folder of your own, or DATABASE_URL`)
+    process.exit(1)
+  }
   const held = spawnSync('flock', ['-o', '-w', '180', path.join(home, 'lock'), process.execPath, ...process.argv.slice(1)], {
     stdio: 'inherit', env: { ...process.env, PG_LOCKED: '1' },
   })

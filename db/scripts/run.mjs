@@ -1,9 +1,10 @@
 // Runs a TypeScript command of the project with the database's addresses set: node db/scripts/run.mjs FILE.ts [arguments]
 import { spawn } from 'node:child_process'
-import { database, install, main, migrate, releaseDatabase, root, sessionSecret } from './steps.mjs'
+import { database, dataFolder, install, main, migrate, releaseDatabase, root, sessionSecret } from './steps.mjs'
 
 const [file, ...rest] = process.argv.slice(2)
 await main(async () => {
+  dataFolder()
   await install()
   const env = { ...(await database('lodeterm')), SESSION_SECRET_FILE: sessionSecret(process.env.SESSION_SECRET_FILE || '.data/session-secret') }
   await migrate(env)

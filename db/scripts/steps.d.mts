@@ -16,6 +16,7 @@ export function run(command: string, args: readonly string[], options?: RunOptio
 export function node(args: readonly string[], options?: RunOptions): Promise<string>
 export function checkNode(): void
 export function checkListen(host: string, port: string): Promise<void>
+export function dataFolder(): void
 export function install(): Promise<void>
 export function database(name: string, options?: { fresh?: boolean }): Promise<Environment>
 export function releaseDatabase(): Promise<unknown> | undefined

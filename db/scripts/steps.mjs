@@ -77,6 +77,17 @@ export function checkListen(host, port) {
   })
 }
 
+/** Makes the private data folder, or says whose it is. */
+export function dataFolder() {
+  const folder = path.join(root, '.data')
+  try {
+    fs.mkdirSync(folder, { recursive: true })
+    fs.accessSync(folder, fs.constants.W_OK)
+  } catch (error) {
+    throw new StepError(`${folder} cannot be written to (${error.code}): it belongs to whoever ran this project before. Run as that user, or work in a clone of your own.`)
+  }
+}
+
 // ---- installing
 
 /** Whether node_modules holds what the lock asks for, by npm's own record of what it installed (written last). */
@@ -142,7 +153,7 @@ export async function build() {
   if (isBuilt()) return
   const from = performance.now()
   say('building')
-  fs.mkdirSync(path.join(root, '.data'), { recursive: true })
+  dataFolder()
   await run('flock', ['-o', path.join(root, '.data/build.lock'), process.execPath, 'db/scripts/build.mjs'], { env: { NODE_ENV: 'production' } })
   say(`built in ${seconds(from)}`)
 }

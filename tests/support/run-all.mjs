@@ -1,7 +1,7 @@
 // npm test: everything, from a bare clone. Arguments go to vitest (npm test -- --project unit).
 import fs from 'node:fs'
 import path from 'node:path'
-import { build, checkNode, endServer, endWithChildren, install, main, node, releaseDatabase, run, say, StepError } from '../../db/scripts/steps.mjs'
+import { build, checkNode, dataFolder, endServer, endWithChildren, install, main, node, releaseDatabase, run, say, StepError } from '../../db/scripts/steps.mjs'
 import { chromium } from './chromium.mjs'
 import { folder, testDatabase, testServer } from './settings.mjs'
 
@@ -67,6 +67,7 @@ async function everything() {
 endWithChildren()
 await main(async () => {
   checkNode()
+  dataFolder()
   await install()
   try {
     await everything()
