@@ -196,8 +196,11 @@ function positionsOf(kernel: LineKernel, x: number, tolerance: number, ends: Pre
 }
 
 function strengthsOf(kernel: LineKernel, x: number, tolerance: number, ends: Prepared[], limit: number | null): AspectValidity {
-  const reason = kernel.noAmplitude ?? ends.find((end) => end.reason !== null)?.reason ?? null
-  const relativeError = kernel.noAmplitude === null ? lineStrengthError(kernel, x) : null
+  const incomplete = ends.find((end) => end.reason !== null)?.reason ?? null
+  // complete terms of one level each: nothing is mixed in, so the strengths stay whatever gave them
+  const unmixed = incomplete === null && ends.every((end) => end.mixed.neighbours.length === 0)
+  const reason = unmixed ? null : (kernel.noAmplitude ?? incomplete)
+  const relativeError = unmixed ? 0 : kernel.noAmplitude === null ? lineStrengthError(kernel, x) : null
   return {
     status: statusOf(reason === null, relativeError ?? 0, tolerance),
     errorInvcm: null,

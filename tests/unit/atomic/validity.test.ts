@@ -119,6 +119,13 @@ describe('validity of the linear law', () => {
     expect(line.strengths.reason).toContain('no LS amplitude')
   })
 
+  it('without an LS amplitude but with one level in each term nothing is mixed: strengths stay valid', () => {
+    const [a, b] = [term(4, 0, { 4: 0 }), term(0, 1, { 2: 30000 })]
+    expect(lineValidity({ kind: 'E1', lower: end(a, 4), upper: end(b, 2), fieldTesla: 10 }).strengths).toMatchObject({ status: 'valid', relativeError: 0, reason: null })
+    expect(lineValidity({ kind: 'M1', lower: end(a, 4), upper: end(b, 2), fieldTesla: 10 }).strengths.status).toBe('valid')
+    expect(lineValidity({ kind: 'M1', lower: end(mercury.p, 2), upper: end(mercury.p, 4), fieldTesla: 10 }).strengths.status).toBe('unknown')
+  })
+
   it('two J of one energy are never linear: the limit is 0', () => {
     const carbon = term(1, 3, { 5: 168978.34, 7: 168978.34 })
     const validity = levelValidity(end(carbon, 5), 0.001)
