@@ -19,7 +19,7 @@ export interface Found extends Pick<Understanding, 'understood' | 'questions'> {
 }
 
 /** Pairs of levels looked at for one search: some tens of milliseconds. */
-const PAIR_BUDGET = 1_000_000
+const PAIR_BUDGET = 600_000
 
 /** The wish about levels as criteria; `energy` is left out where it is about lines. */
 function criteriaOf(wish: Wish, withEnergy: boolean): LevelCriteria {
