@@ -13,13 +13,13 @@ import { node as start, root } from '../../db/scripts/steps.mjs'
 const DATABASE = 'lodeterm_commands_test'
 let folder = ''
 let db: pg.Client
-let environment: NodeJS.ProcessEnv = {}
+let environment = process.env
 
-const node = (args: string[], env: NodeJS.ProcessEnv = environment) => {
+const node = (args: string[], env = environment) => {
   const result = spawnSync(process.execPath, args, { cwd: root, encoding: 'utf8', env })
   return { code: result.status, out: result.stdout.trim(), said: result.stderr }
 }
-const typescript = (file: string, args: string[] = [], env: NodeJS.ProcessEnv = {}) => node(['--import', 'tsx', file, ...args], { ...environment, ...env })
+const typescript = (file: string, args: string[] = [], env: Record<string, string> = {}) => node(['--import', 'tsx', file, ...args], { ...environment, ...env })
 const people = async () => (await db.query('select email, role, active, demo, password_hash from users where password_hash is not null order by email')).rows
 
 beforeAll(async () => {
