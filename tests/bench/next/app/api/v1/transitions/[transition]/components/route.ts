@@ -1,0 +1,1 @@
+export { GET } from '@/app/api/v1/transitions/[transition]/components/route'
