@@ -13,6 +13,7 @@ import { Quantity } from '@/app/_components/quantity'
 import { TableSkeleton } from '@/app/_components/skeleton'
 import { SourceRef } from '@/app/_components/source-ref'
 import { Warnings } from '@/app/_components/warnings'
+import { Formula } from './formula'
 
 const SCHEME = { LS: 'LS', J1K: 'pair', jj: 'jj' } as const
 
@@ -53,10 +54,10 @@ function Derivation({ g }: { g: GFactor }) {
         {g.derivation.map((step, index) => (
           <li key={index} className="grid grid-cols-[minmax(0,1fr)_auto] gap-x-6 border-b border-rule py-2">
             <span className="min-w-0">
-              <span className="note block">{step.label}</span>
-              <span className="symbol whitespace-normal! break-words">{trueMinus(step.text)}</span>
+              <span className="note block [&_sub]:text-[0.75em]"><Formula text={step.label} /></span>
+              <span className="symbol whitespace-normal! break-words"><Formula text={step.text} /></span>
             </span>
-            {step.value === null ? null : <span className="symbol num self-end text-lg">{trueMinus(step.value)}</span>}
+            {step.value === null || step.text.endsWith(`= ${step.value}`) ? null : <span className="symbol num self-end">= {trueMinus(step.value)}</span>}
           </li>
         ))}
       </ol>

@@ -1,6 +1,5 @@
 'use client'
 import type { HyperfineConstants, LevelDetail } from '@/openapi/schemas/level'
-import { Cautions } from '@/app/_components/cautions'
 import { Configuration } from '@/app/_components/configuration'
 import { DataTable, type Column } from '@/app/_components/data-table'
 import { EvidenceKey } from '@/app/_components/evidence'
@@ -61,7 +60,6 @@ export function LevelFoot({ level }: { level: LevelDetail }) {
       </Part>
       <RequestPanel path={`/levels/${level.id}`} />
       <PermanentLink path={levelPage(level.id)} />
-      <Cautions className="mt-8" />
     </>
   )
 }

@@ -11,6 +11,7 @@ import { halves } from '@/app/_components/number'
 import { PageHead } from '@/app/_components/page-head'
 import { Quantity } from '@/app/_components/quantity'
 import { TermSymbol } from '@/app/_components/term-symbol'
+import { decimalsOf } from '../_parts/stored'
 import { decodedTerm } from './term-words'
 
 /** The level by its name, what the name says in words, and its two chief values. */
@@ -39,7 +40,7 @@ export function LevelHead({ level }: { level: LevelDetail }) {
         <Decoded level={level} />
         <dl className="sheet grid content-start divide-y divide-rule self-start">
           <Fact name="Energy above the ground level">
-            <Quantity value={level.energy_invcm} unc={level.energy_unc_invcm} decimals={5} unit="cm⁻¹" className="text-xl" />
+            <Quantity value={level.energy_invcm} unc={level.energy_unc_invcm} decimals={decimalsOf(level.energy_invcm)} unit="cm⁻¹" className="text-xl" />
             <span className="note mt-0.5 flex flex-wrap items-baseline gap-x-2">
               <Quantity value={level.energy_invcm * EV_PER_INVCM} decimals={6} unit="eV" />
               <Evidence grade={level.energy_evidence} />

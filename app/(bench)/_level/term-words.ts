@@ -8,6 +8,7 @@ export interface TermPart {
 }
 
 const MULTIPLICITIES = ['singlet', 'doublet', 'triplet', 'quartet', 'quintet', 'sextet', 'septet', 'octet', 'nonet', 'decet']
+const RAISED = '⁰¹²³⁴⁵⁶⁷⁸⁹'
 const LETTERS = 'SPDFGHIKLMNOQRTUV'
 
 /** `doublet` for 2; from eleven on by number. */
@@ -47,7 +48,7 @@ export function decodedTerm({ term, coupling }: Level): { sentence: string; part
     return {
       sentence: `A pair-coupled level of ${term.parity} parity with J = ${halves(term.j)}: the core’s J and the orbit of the outer electron make K, and K with its spin makes J. It has no S and L of its own.`,
       parts: [
-        { symbol: 'core', value: `${2 * core.s + 1}${letter(core.l)} ${halves(core.j)}`, meaning: `a ${multiplicityWord(2 * core.s + 1)} ${letter(core.l)} core with J = ${halves(core.j)}` },
+        { symbol: 'core', value: `${RAISED[2 * core.s + 1] ?? ''}${letter(core.l)} ${halves(core.j)}`, meaning: `a ${multiplicityWord(2 * core.s + 1)} ${letter(core.l)} core with J = ${halves(core.j)}` },
         { symbol: 'l', value: term.l_outer, meaning: `orbit of the outer electron, a ${small(term.l_outer)} electron` },
         { symbol: 'K', value: term.k, meaning: 'the core’s J and the outer l together; written in brackets' },
         j,

@@ -1,5 +1,5 @@
 'use client'
-import { useQuery } from '@tanstack/react-query'
+import { keepPreviousData, useQuery } from '@tanstack/react-query'
 import Link from 'next/link'
 import { useState } from 'react'
 import type { Level, LevelDetail } from '@/openapi/schemas/level'
@@ -15,10 +15,26 @@ import { Part } from '@/app/_components/page-head'
 import { ProblemView } from '@/app/_components/problem-view'
 import { TableSkeleton } from '@/app/_components/skeleton'
 import { TermSymbol } from '@/app/_components/term-symbol'
+import { Choices } from '@/app/_components/plots/plot-frame'
 import { Warnings } from '@/app/_components/warnings'
 import { printDetail, RULE_NAMES } from '../_parts/rule-words'
 
 type Shown = 'allowed' | 'forbidden'
+type Judged = 'E1' | 'M1' | 'E2' | 'any'
+
+const JUDGED: { value: Judged; label: string }[] = [
+  { value: 'E1', label: 'E1' },
+  { value: 'M1', label: 'M1' },
+  { value: 'E2', label: 'E2' },
+  { value: 'any', label: 'by parity' },
+]
+
+const ASIDE: Record<Judged, string> = {
+  E1: 'Electric dipole: parity must change',
+  M1: 'Magnetic dipole: parity must stay the same',
+  E2: 'Electric quadrupole: parity must stay the same, J may change by two',
+  any: 'E1 where the parities differ, else M1, else E2',
+}
 
 const partnerOf = (line: Transition, id: string): Level => (line.lower.id === id ? line.upper : line.lower)
 
@@ -92,23 +108,28 @@ function Reasons({ line }: { line: Transition }) {
 export function TransitionsPart({ level }: { level: LevelDetail }) {
   const { param: edition, href } = useEdition()
   const [shown, setShown] = useState<Shown>('allowed')
-  const { data, error, refetch } = useQuery(apiQuery<Transition[]>(`/levels/${level.id}/transitions`, { include: 'forbidden', limit: 1000, edition }))
+  const [judged, setJudged] = useState<Judged>('E1')
+  const query = { include: 'forbidden', kind: judged === 'any' ? undefined : judged, limit: 1000, edition }
+  const { data, error, refetch } = useQuery({ ...apiQuery<Transition[]>(`/levels/${level.id}/transitions`, query), placeholderData: keepPreviousData })
   if (error) return <Part title="Transitions"><ProblemView error={error} onRetry={() => void refetch()} heading="h3" /></Part>
   if (!data) return <Part title="Transitions"><TableSkeleton rows={6} columns={5} label="Loading the transitions" /></Part>
   const groups = { allowed: data.data.filter((line) => line.verdict.allowed), forbidden: data.data.filter((line) => !line.verdict.allowed) }
   const rows = groups[shown]
   return (
-    <Part title="Transitions" aside="Judged as E1 where the parities differ, else as M1, else as E2">
+    <Part title="Transitions" aside={ASIDE[judged]}>
       <Warnings meta={data.meta} />
-      <div role="group" aria-label="Which pairs" className="mb-3 flex flex-wrap gap-1.5">
+      <div className="mb-3 flex flex-wrap items-center gap-x-6 gap-y-2">
+      <div role="group" aria-label="Which pairs" className="flex flex-wrap gap-1.5">
         {(['allowed', 'forbidden'] as const).map((one) => (
           <button key={one} type="button" aria-pressed={shown === one} onClick={() => setShown(one)} className="btn btn-small aria-pressed:border-lamp aria-pressed:bg-lamp-wash">
             {one === 'allowed' ? 'Allowed' : 'Forbidden'} <span className="num text-muted">{groups[one].length}</span>
           </button>
         ))}
       </div>
+      <Choices label="Judged as" value={judged} choices={JUDGED} onChange={setJudged} />
+      </div>
       <DataTable
-        key={shown}
+        key={`${shown} ${judged}`}
         columns={columnsFor(level.id, shown, href)}
         rows={rows}
         rowKey={(line) => `${line.id} ${line.kind}`}

@@ -1,7 +1,7 @@
 'use client'
 import type { Component, Components } from '@/openapi/schemas/components'
 import { DataTable, type Column } from '@/app/_components/data-table'
-import { fixed, halves } from '@/app/_components/number'
+import { fixed, halves, significant } from '@/app/_components/number'
 import { componentKey } from '@/app/_components/plots/component-text'
 import { PolarisationSign, polarisationName } from '@/app/_components/plots/polarisation'
 import { signed } from '@/app/_components/plots/ruler'
@@ -101,8 +101,8 @@ function Budget({ components }: { components: readonly Component[] }) {
   return (
     <p className="note mt-2 max-w-[60rem]">
       {total
-        ? `Positions are uncertain by at most ${Number(worst.wavenumber_known_unc_invcm.toPrecision(2))} cm⁻¹ (one standard deviation).`
-        : `The uncertainty of the positions is not known: nothing is stated for ${unknown.join(', ')}.${known.length > 0 ? ` The known part is at most ${Number(worst.wavenumber_known_unc_invcm.toPrecision(2))} cm⁻¹, from ${known.join(', ')}.` : ''}`}{' '}
+        ? `Positions are uncertain by at most ${significant(worst.wavenumber_known_unc_invcm, 2)} cm⁻¹ (one standard deviation).`
+        : `The uncertainty of the positions is not known: nothing is stated for ${unknown.join(', ')}.${known.length > 0 ? ` The known part is at most ${significant(worst.wavenumber_known_unc_invcm, 2)} cm⁻¹, from ${known.join(', ')}.` : ''}`}{' '}
       Level energies are taken as independent, and the field as exact.
     </p>
   )

@@ -1,5 +1,5 @@
 'use client'
-import { useState } from 'react'
+import { memo, useDeferredValue, useState } from 'react'
 import type { Level } from '@/openapi/schemas/level'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
 import { AngleControl } from '@/app/_components/field/angle-control'
@@ -11,8 +11,9 @@ import { PatternPlot } from '@/app/_components/plots/pattern-plot'
 import { SplittingDiagram, type SplitLevel } from '@/app/_components/plots/splitting-diagram'
 import { Warnings } from '@/app/_components/warnings'
 import { ComponentsTable } from './components-table'
-import { usePrediction } from './use-prediction'
+import { usePrediction, type Prediction } from './use-prediction'
 import { ValidityPart } from './validity-part'
+import { shortVerdict, worse } from './verdict-words'
 
 const splitLevel = (level: Level): SplitLevel => ({ configuration: level.configuration, symbol: level.term.symbol, twoJ: Math.round(2 * level.term.j), g: level.g_j.adopted })
 
@@ -22,6 +23,8 @@ export function LineBench({ line }: { line: TransitionDetail }) {
   const { thetaDeg, setThetaDeg, problem: angleProblem } = useAngle()
   const [active, setActive] = useState<string | null>(null)
   const prediction = usePrediction(line, field.tesla, thetaDeg)
+  // The drawings follow the slider; the tables below may lag a frame or two, so that no step of a drag waits for them.
+  const settled = useDeferredValue(prediction)
   const validity = prediction.ok ? prediction.components.validity : null
   const name = line.id.replace('~', '_')
   const shared = { fieldTesla: field.tesla, thetaDeg, active, onActive: setActive, name }
@@ -33,8 +36,8 @@ export function LineBench({ line }: { line: TransitionDetail }) {
         onChange={setField}
         problem={fieldProblem}
         model="linear (weak field)"
-        tone={validity?.positions.status ?? 'unknown'}
-        verdict={validity?.sentence}
+        tone={validity ? worse(validity.positions.status, validity.strengths.status) : 'unknown'}
+        verdict={validity ? shortVerdict(validity, line) : undefined}
         limitTesla={validity?.positions.field_limit_tesla ?? null}
       />
       <div className="mt-3">
@@ -52,17 +55,34 @@ export function LineBench({ line }: { line: TransitionDetail }) {
             <PatternPlot {...shared} components={prediction.components.components} medium={line.conventional_medium} />
             <SplittingDiagram {...shared} components={prediction.components.components} lower={splitLevel(line.lower)} upper={splitLevel(line.upper)} />
           </div>
-          <SignConvention thetaDeg={thetaDeg} kind={line.kind} />
-          <Warnings meta={{ warnings: prediction.warnings }} />
-          <Part title="Components" aside={`At ${field.tesla}\u202fT, linear law, adopted g values`}>
-            <ComponentsTable answer={prediction.components} medium={line.conventional_medium} active={active} />
-          </Part>
-          <ValidityPart validity={prediction.components.validity} fieldTesla={field.tesla} />
+          <Numbers line={line} prediction={settled} active={active} />
         </>
       )}
     </>
   )
 }
+
+interface NumbersProps {
+  line: TransitionDetail
+  prediction: Prediction
+  active: string | null
+}
+
+/** Everything in words and figures that follows the field. */
+const Numbers = memo(function Numbers({ line, prediction, active }: NumbersProps) {
+  if (!prediction.ok) return null
+  const { components, warnings } = prediction
+  return (
+    <>
+      <SignConvention thetaDeg={components.theta_deg} kind={line.kind} />
+      <Warnings meta={{ warnings }} />
+      <Part title="Components" aside={`At ${components.field_tesla}\u202fT, linear law, adopted g values`}>
+        <ComponentsTable answer={components} medium={line.conventional_medium} active={active} />
+      </Part>
+      <ValidityPart validity={components.validity} fieldTesla={components.field_tesla} />
+    </>
+  )
+})
 
 /** What the signs mean, wherever σ+ and σ− are shown. */
 function SignConvention({ thetaDeg, kind }: { thetaDeg: number | null; kind: string }) {

@@ -3,7 +3,6 @@ import Link from 'next/link'
 import type { Level } from '@/openapi/schemas/level'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
 import { fieldForUrl } from '@/lib/units/field'
-import { Cautions } from '@/app/_components/cautions'
 import { Configuration } from '@/app/_components/configuration'
 import { useEdition } from '@/app/_components/data/edition'
 import { Evidence, EvidenceKey } from '@/app/_components/evidence'
@@ -16,6 +15,7 @@ import { SourceRef } from '@/app/_components/source-ref'
 import { TermSymbol } from '@/app/_components/term-symbol'
 import { PermanentLink } from '../_parts/permanent-link'
 import { RulesList } from '../_parts/rules-list'
+import { decimalsOf } from '../_parts/stored'
 
 /** What stands below a line's bench whatever its field: rules, moments, where both levels come from, the request. */
 export function LineFoot({ line, kind }: { line: TransitionDetail; kind: string | null }) {
@@ -44,7 +44,6 @@ export function LineFoot({ line, kind }: { line: TransitionDetail; kind: string 
         query={allowed ? { field: fieldForUrl(field.tesla, field.unit), theta_deg: thetaDeg, kind, model: 'linear' } : { kind }}
       />
       <PermanentLink path={linePage(line.id)} />
-      <Cautions className="mt-8" />
     </>
   )
 }
@@ -92,7 +91,7 @@ function Origin({ level, end }: { level: Level; end: string }) {
       <dl className="facts text-sm">
         <dt>Energy</dt>
         <dd>
-          <Quantity value={level.energy_invcm} unc={level.energy_unc_invcm} decimals={5} unit="cm⁻¹" />{' '}
+          <Quantity value={level.energy_invcm} unc={level.energy_unc_invcm} decimals={decimalsOf(level.energy_invcm)} unit="cm⁻¹" />{' '}
           <SourceRef source={level.energy_source} evidence={level.energy_evidence} />
           <span className="note block">{level.line_checked ? 'A well-known wavelength is reproduced to 0.01 nm with it.' : 'No well-known wavelength checks it yet.'}</span>
         </dd>

@@ -2,6 +2,7 @@ import type { Validity } from '@/openapi/schemas/validity'
 import { Notice } from '@/app/_components/notice'
 import { halves, significant } from '@/app/_components/number'
 import { Part } from '@/app/_components/page-head'
+import { worse } from './verdict-words'
 
 const WORD = { valid: 'good', not_valid: 'not good', unknown: 'not known' } as const
 const TONE = { valid: 'good', not_valid: 'warn', unknown: 'info' } as const
@@ -31,7 +32,9 @@ export function ValidityPart({ validity, fieldTesla }: { validity: Validity; fie
   ]
   return (
     <Part title="How far the linear law holds" aside={`At ${fieldTesla}\u202fT, tolerance ${percent(positions.tolerance)}`}>
-      <Notice tone={TONE[positions.status]} title={validity.sentence} />
+      <Notice tone={TONE[worse(positions.status, strengths.status)]}>
+        <p>{validity.sentence}</p>
+      </Notice>
       <div className="scroll-x mt-4" tabIndex={0} role="region" aria-label="Errors of the linear law, scrolls sideways">
         <table className="ruled">
           <caption className="sr-only">Errors of the linear law at {fieldTesla} T</caption>

@@ -25,7 +25,6 @@ const THUMB = 24
 const numberIn = ({ tesla, unit }: FieldValue): string => String(Number(fieldIn(tesla, unit).toPrecision(10)))
 
 const TONE = { valid: 'border-good', not_valid: 'border-warn', unknown: 'border-rule-strong' } as const
-const WORD = { valid: 'holds', not_valid: 'no longer good', unknown: 'not known' } as const
 
 /** The field: typed with any of its units, or moved along a log scale; the model in force and whether it may be trusted. */
 export function FieldControl({ value, onChange, model = 'linear (weak field)', verdict, tone = 'unknown', limitTesla = null, problem = null }: FieldControlProps) {
@@ -111,7 +110,7 @@ export function FieldControl({ value, onChange, model = 'linear (weak field)', v
       <p className={`num border-l-2 pl-3 text-sm md:col-span-2 ${TONE[tone]}`} aria-live="polite">
         <span className="text-muted">Model: </span>
         {model}
-        {verdict ? <><span className="text-muted">{` · ${WORD[tone]} · `}</span>{verdict}</> : null}
+        {verdict ? <><span className="text-muted">{' · '}</span>{verdict}</> : null}
       </p>
     </section>
   )

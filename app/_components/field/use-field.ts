@@ -1,7 +1,7 @@
 'use client'
 import { parseAsString, throttle, useQueryState } from 'nuqs'
 import { useCallback, useMemo } from 'react'
-import { fieldForUrl, parseField } from '@/lib/units/field'
+import { fieldForUrl, formatField, parseField } from '@/lib/units/field'
 import type { FieldValue } from './field-scale'
 
 /** The address follows a drag, but not at every pixel: browsers limit how often it may change. */
@@ -22,7 +22,7 @@ export function useField(byDefault: FieldValue = { tesla: 1, unit: 'T' }): Field
   const { tesla, unit } = parsed?.ok ? parsed : byDefault
   const field = useMemo(() => ({ tesla, unit }), [tesla, unit])
   const setField = useCallback((next: FieldValue) => void setText(fieldForUrl(next.tesla, next.unit)), [setText])
-  return { field, setField, problem: parsed && !parsed.ok ? parsed.detail : null }
+  return { field, setField, problem: parsed && !parsed.ok ? `${parsed.detail} Until then ${formatField(byDefault.tesla, byDefault.unit)} is shown.` : null }
 }
 
 export interface AngleState {
@@ -45,5 +45,5 @@ export function useAngle(): AngleState {
   const [text, setText] = useQueryState('theta', parseAsString.withOptions(options))
   const parsed = text === null ? null : readAngle(text)
   const setThetaDeg = useCallback((thetaDeg: number | null) => void setText(thetaDeg === null ? null : String(thetaDeg)), [setText])
-  return { thetaDeg: parsed?.ok ? parsed.degrees : null, setThetaDeg, problem: parsed && !parsed.ok ? parsed.detail : null }
+  return { thetaDeg: parsed?.ok ? parsed.degrees : null, setThetaDeg, problem: parsed && !parsed.ok ? `${parsed.detail} Until then it is averaged over angle.` : null }
 }

@@ -65,7 +65,7 @@ export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, 
         const above = stand(shown.filter((c) => c.q === 0))
         const below = stand(shown.filter((c) => c.q !== 0))
         const tallest = Math.max(0, ...[...above, ...below].map((s) => s.to))
-        const full = niceCeil((thetaDeg === null ? tallest : Math.max(tallest, 0.5 * strongest())) * 1.02)
+        const full = (thetaDeg === null ? tallest : Math.max(tallest, 0.5 * strongest())) * 1.1 || 1
         const y = scaleLinear().domain([0, full]).range([0, (bottom - top) / 2 - 20])
         const order = [...above, ...below].sort((a, b) => a.x - b.x || b.component.q - a.component.q).map((s) => s.id)
         const across = (key: string, upwards: boolean) => {
@@ -76,7 +76,7 @@ export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, 
         }
         const mark = roving({ order, active, onActive, across })
         const xRuler = ruler([-half, half], right - left - 24, narrow ? 58 : 84)
-        const yRuler = ruler([0, full], (bottom - top) / 2 - 20, 44)
+        const yRuler = ruler([0, full], (bottom - top) / 2 - 20, 40)
 
         function stand(items: Component[]) {
           return stacks(items.map((component) => ({ component, id: componentKey(component), x: x(shiftIn(unit, component) ?? 0), height: heightOf(component, thetaDeg) })))
@@ -107,8 +107,8 @@ export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, 
               {xRuler.ticks.map(({ value, rank }) => rank < 2 && <path key={value} d={`M${x(value)},${middle - (rank === 0 ? 4 : 2.5)}v${rank === 0 ? 8 : 5}`} stroke="var(--ink)" strokeWidth={0.75} />)}
               {!narrow && (
                 <>
-                  <text x={right - 4} y={top + 14} textAnchor="end" fontSize={15} fill="var(--muted)" fontFamily="'STIX Two Text Variable', serif">π</text>
-                  <text x={right - 4} y={bottom - 16} textAnchor="end" fontSize={15} fill="var(--muted)" fontFamily="'STIX Two Text Variable', serif">σ</text>
+                  <text x={right - 4} y={top + 14} textAnchor="end" fontSize={15} fill="var(--muted)" stroke="var(--sheet)" strokeWidth={6} paintOrder="stroke" fontFamily="'STIX Two Text Variable', serif">π</text>
+                  <text x={right - 4} y={bottom - 16} textAnchor="end" fontSize={15} fill="var(--muted)" stroke="var(--sheet)" strokeWidth={6} paintOrder="stroke" fontFamily="'STIX Two Text Variable', serif">σ</text>
                 </>
               )}
             </g>

@@ -1,5 +1,5 @@
 import { scaleLinear } from 'd3-scale'
-import { printSignificant, trueMinus } from '@/lib/units/print'
+import { printFixed, printSignificant, trueMinus } from '@/lib/units/print'
 
 /** One mark on a ruler: its value, its rank (0 labelled, 1 half-way, 2 fine) and, for rank 0, its label. */
 export interface Tick {
@@ -66,7 +66,7 @@ export function ruler(domain: readonly [number, number], length: number, labelSp
     if (place === 0) {
       // Zero must not print as minus zero.
       const shown = Math.round(index / fine) === 0 ? 0 : value / unit
-      ticks.push({ value, rank: 0, label: trueMinus(shown.toFixed(Math.min(decimals, 10))) })
+      ticks.push({ value, rank: 0, label: printFixed(shown, Math.min(decimals, 10), { grouped: Math.abs(shown) >= 1e4 }) })
     } else ticks.push({ value, rank: half > 0 && place === half ? 1 : 2, label: null })
   }
   return { ticks, exponent }

@@ -75,12 +75,12 @@ export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDe
         const [top, bottom] = [46, height - 34]
         const middleGap = 84
         const room = bottom - top - middleGap
-        const pxPerInvcm = total > 0 ? room / 2 / full : 0
         // Each level gets its share of the height, never less than its m labels need.
         const before = { upper: brief(upper), lower: brief(lower) }
-        const share = (mine: number, twoJ: TwoJ) => Math.max(total > 0 ? (room * mine) / total : room / 2, (twoJ + 1) * GAP)
+        const share = (mine: number, twoJ: TwoJ) => Math.max(total > 0 ? (room * mine) / total : room / 2, 76, (twoJ + 1) * GAP)
         const wish = { upper: share(widest(split.upper), upper.twoJ), lower: share(widest(split.lower), lower.twoJ) }
         const fit = room / (wish.upper + wish.lower)
+        const pxPerInvcm = total > 0 ? (fit * room) / 2 / full : 0
         const upperHeight = wish.upper * fit
         const centres = { upper: top + upperHeight / 2, lower: bottom - (wish.lower * fit) / 2 }
         const [plain, leave, arrive, labels] = narrow ? [12, 64, 96, width - 44] : [24, 132, 184, width - 64]

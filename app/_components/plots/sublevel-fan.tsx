@@ -47,6 +47,12 @@ function rightEdge(range: Range, fieldTesla: number, limitTesla: number | null):
   return limitTesla !== null && limitTesla > wanted && limitTesla < 3 * wanted ? niceCeil(limitTesla * 1.15) : fieldTesla === 0 ? 1 : wanted
 }
 
+/** Where the words about the limit fit: in the hatched part, else before it and clear of the cursor, else nowhere. */
+function placeText(limit: number, right: number, cursor: number): { x: number; anchor: 'start' | 'end' } | null {
+  if (right - Math.max(limit, cursor > limit ? cursor : limit) >= 150) return { x: Math.max(limit, cursor > limit ? cursor : limit) + 7, anchor: 'start' }
+  return limit - (cursor < limit ? cursor : 0) >= 150 ? { x: limit - 7, anchor: 'end' } : null
+}
+
 /** Energies of the sublevels of one level against the field, by the linear law. */
 export function SublevelFan({ twoJ, g, fieldTesla, fieldUnit, limitTesla, tolerance, onField, name, title = 'Sublevels against field' }: SublevelFanProps) {
   const [unit, setUnit] = useState<EnergyUnit>('invcm')
@@ -77,6 +83,7 @@ export function SublevelFan({ twoJ, g, fieldTesla, fieldUnit, limitTesla, tolera
           ? `m = ${formatHalfUnicode(current.twoM)} at ${formatField(fieldTesla, fieldUnit)}: ${signed(current.shiftInvcm, 6)} cm⁻¹ (${signed(current.shiftGhz, 6)} GHz)`
           : `${twoJ + 1} sublevel${twoJ === 0 ? '' : 's'}; the line marks ${formatField(fieldTesla, fieldUnit)}.`
       }
+      note={limitTesla !== null && limitTesla < edge ? `Hatched: from ${formatField(Number(limitTesla.toPrecision(3)), fieldUnit)} on the linear law is off by more than ${tolerance * 100} % of μB·B.` : undefined}
       table={<SublevelsTwin levels={[{ name: 'level', sublevels: here }]} caption={`Sublevels at ${formatField(fieldTesla, fieldUnit)}, linear law`} />}
     >
       {(width, height) => {
@@ -90,6 +97,7 @@ export function SublevelFan({ twoJ, g, fieldTesla, fieldUnit, limitTesla, tolera
         const path = line<{ b: number; e: number }>().x((p) => x(p.b)).y((p) => y(p.e))
         const mark = roving({ order: [...end].reverse().map((s) => String(s.twoM)), active, onActive: setActive, across: (key, up) => (Math.abs(Number(key) + (up ? 2 : -2)) <= twoJ ? String(Number(key) + (up ? 2 : -2)) : null) })
         const limit = limitTesla !== null && limitTesla < edge ? x(limitTesla) : null
+        const limitText = limit === null ? null : placeText(limit, right, fieldTesla <= edge ? x(fieldTesla) : left)
         const cursor = fieldTesla <= edge ? x(fieldTesla) : null
         return (
           <>
@@ -104,9 +112,11 @@ export function SublevelFan({ twoJ, g, fieldTesla, fieldUnit, limitTesla, tolera
                 <>
                   <rect x={limit} y={top} width={right - limit} height={bottom - top} fill={`url(#${hatch})`} />
                   <path d={`M${limit},${top}V${bottom}`} stroke="var(--warn)" strokeWidth={1.5} strokeDasharray="2 3" />
-                  <text x={limit + (limit > (left + right) / 2 ? -7 : 7)} y={bottom - 16} textAnchor={limit > (left + right) / 2 ? 'end' : 'start'} fontSize={12} fill="var(--warn)" stroke="var(--sheet)" strokeWidth={4} paintOrder="stroke">
-                    {`linear off by over ${tolerance * 100} %`}
-                  </text>
+                  {limitText && (
+                    <text x={limitText.x} y={top + 14} textAnchor={limitText.anchor} fontSize={12} fill="var(--warn)" stroke="var(--sheet)" strokeWidth={4} paintOrder="stroke">
+                      {`linear off by over ${tolerance * 100} %`}
+                    </text>
+                  )}
                 </>
               )}
             </g>

@@ -26,7 +26,8 @@ export interface TermDiagramProps {
   title?: string
 }
 
-const COLUMN = 112
+/** Columns share the width, up to this much each. */
+const COLUMN = 250
 const STROKE = 30
 const BREAK = 26
 const SERIF = "'STIX Two Text Variable', serif"
@@ -64,7 +65,7 @@ export function TermDiagram({ levels, ionisationInvcm, hrefFor, selected = null,
       {(width, height) => {
         const [left, right, top, bottom] = [76, width - 8, 58, height - 18]
         const scale = brokenScale(segments, top + (ionisationInvcm === null ? 6 : 20), bottom - 8)
-        const step = Math.min(COLUMN * 1.6, (right - left - 14) / Math.max(1, columns.length))
+        const step = Math.min(COLUMN, (right - left - 14) / Math.max(1, columns.length))
         const order = columns.flatMap((c) => c.levels.map((l) => l.id))
         const mark = roving({ order, active, onActive: setActive, across: (id, up) => neighbour(columns, id, up) })
         return (
