@@ -8,6 +8,13 @@ const never = () => () => undefined
 /** The page's own origin, known in the browser only. */
 const useOrigin = (): string => useSyncExternalStore(never, () => window.location.origin, () => '')
 
+/** The address of the view as it stands, with the edition it reads. */
+function permanentLink(edition: number | null): string {
+  const address = new URL(window.location.href)
+  if (edition !== null) address.searchParams.set('edition', String(edition))
+  return address.href
+}
+
 /**
  * "The request behind this view": the API call that gives these numbers, ready to copy, with the edition pinned
  * so that it gives the same numbers next year.
@@ -46,6 +53,12 @@ export function RequestPanel({ path, query = {}, method, body, unpinned = false,
           {unpinned ? null : <p className="note mt-2">{number === null ? 'The edition in force is not known yet.' : `Edition ${number} is pinned: the same request gives the same stored values next year.`}</p>}
         </div>
       </details>
+      {unpinned ? null : (
+        <p className="mt-3 flex flex-wrap items-center gap-x-3 gap-y-1">
+          <CopyButton text={() => permanentLink(number)} label="Copy permanent link" />
+          <span className="note">to this view{number === null ? '' : `, edition ${number} pinned`}</span>
+        </p>
+      )}
     </section>
   )
 }

@@ -19,7 +19,11 @@ export function Reference() {
         if (gone || node === null) return
         ;(module.default as Start)({
           url: '/api/v1/openapi.json', domNode: node, docExpansion: 'list', defaultModelsExpandDepth: -1, tryItOutEnabled: true, deepLinking: false, filter: true,
-          onComplete: () => setState('ready'),
+          onComplete: () => {
+            // The page has its own main landmark.
+            for (const main of node.querySelectorAll('main')) main.setAttribute('role', 'group')
+            setState('ready')
+          },
         })
       })
       .catch(() => setState('failed'))

@@ -56,7 +56,7 @@ function Levels({ species, beside }: { species: Species; beside: React.ReactNode
   if (answer.isPending) {
     return (
       <>
-        <div className="part"><Skeleton label="Drawing the term diagram" className="h-[30rem] w-full" /></div>
+        <Part title="Term diagram"><Skeleton label="Drawing the term diagram" className="h-[30rem] w-full" /></Part>
         <Part title="Levels"><TableSkeleton rows={species.level_count || 8} /></Part>
       </>
     )
@@ -65,9 +65,9 @@ function Levels({ species, beside }: { species: Species; beside: React.ReactNode
   if (levels.length === 0) return <Part title="Levels"><EmptyState title="This edition holds no level of this species" /></Part>
   return (
     <>
-      <div className="part">
+      <Part title="Term diagram">
         <TermDiagram title={`Levels of ${speciesText(species.id)} by term`} levels={levels} ionisationInvcm={species.ionisation_energy_invcm} hrefFor={(level) => href(levelPage(level.id))} name={species.id} />
-      </div>
+      </Part>
       <div className="gap-x-16 xl:grid xl:grid-cols-[auto_minmax(0,1fr)] [&>*]:min-w-0">
         <Part title="Levels" aside={plural(species.level_count, 'level')}>
           <DataTable columns={columns} rows={levels} rowKey={(level) => level.id} caption={`Levels of ${speciesText(species.id)}`} hideCaption
