@@ -17,11 +17,13 @@ const ROLE: Record<string, string> = {
   admin: 'Admin: also publishes editions and manages people and keys.',
 }
 
+const HOME = '/'
+
 function SignOut() {
   const signOut = useMutation({
     mutationFn: () => apiSend<null>('DELETE', '/session'),
     // A whole new page: nothing that was read as this person stays behind.
-    onSuccess: () => window.location.assign('/'),
+    onSuccess: () => window.location.assign(HOME),
   })
   const problem = restOf(signOut.error, [])
   return (
