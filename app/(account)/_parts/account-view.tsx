@@ -17,13 +17,11 @@ const ROLE: Record<string, string> = {
   admin: 'Admin: also publishes editions and manages people and keys.',
 }
 
-const HOME = '/'
-
 function SignOut() {
   const signOut = useMutation({
     mutationFn: () => apiSend<null>('DELETE', '/session'),
-    // A whole new page: nothing that was read as this person stays behind.
-    onSuccess: () => window.location.assign(HOME),
+    // A whole new page, which asks a stranger to sign in: nothing that was read as this person stays behind.
+    onSuccess: () => window.location.reload(),
   })
   const problem = restOf(signOut.error, [])
   return (
