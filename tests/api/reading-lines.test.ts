@@ -150,6 +150,23 @@ describe('geometry', () => {
   })
 })
 
+describe('other kinds than E1', () => {
+  it('an E2 line (Hg 3P0 - 3P2) has five components by q, no angular intensity and no g_eff', async () => {
+    const { data } = (await get('/transitions/Hg-I.2~Hg-I.4')).json
+    expect(data).toMatchObject({ kind: 'E2', g_eff: null, g_eff_status: 'not_applicable', verdict: { allowed: true, ls: null } })
+    const e2 = await components('Hg-I.2~Hg-I.4', 'field=1T&theta_deg=30')
+    expect(e2.components.map((one: Json) => [one.q, one.polarisation, one.strength])).toEqual([[-2, 'q=-2', 1], [-1, 'sigma-', 1], [0, 'pi', 1], [1, 'sigma+', 1], [2, 'q=+2', 1]])
+    for (const one of e2.components as Json[]) expect(one).toMatchObject({ intensity: null, intensity_status: 'not_applicable', stokes_q: null })
+  })
+
+  it('M1 turns the sign of Stokes Q against E1 of the same J', async () => {
+    const m1 = await components('Na-I.2~Na-I.3', 'field=0.1T&theta_deg=90&g_values=ls')
+    const e1 = await components('Na-I.1~Na-I.3', 'field=0.1T&theta_deg=90&g_values=ls')
+    expect(of(m1.components, 'q')).toEqual(of(e1.components, 'q'))
+    expect(of(m1.components, 'stokes_q')).toEqual(of(e1.components, 'stokes_q').map((q) => -q))
+  })
+})
+
 describe('forbidden pairs and refusals', () => {
   it('a forbidden pair is told with the rule that forbids it', async () => {
     const reply = await get('/transitions/Na-I.1~Na-I.4?kind=E1')
