@@ -33,8 +33,9 @@ const CARRIED = ['cookie', 'x-lodeterm-peer', 'x-forwarded-for', 'user-agent'] a
 export async function serverGet<T>(path: string, query?: ApiQuery): Promise<ApiAnswer<T> | null> {
   const read = READS.find((candidate) => candidate.path.test(path))
   if (read === undefined) return null
+  // Outside of the try: at build time this throws to say that the page belongs to a request and is not made beforehand.
+  const incoming = await headers()
   try {
-    const incoming = await headers()
     const sent = new Headers({ accept: 'application/json' })
     for (const name of CARRIED) {
       const value = incoming.get(name)
