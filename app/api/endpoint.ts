@@ -8,6 +8,7 @@ import { editionExists, getSnapshot, latestEdition, type Snapshot } from '@/lib/
 import { getConfig } from '@/lib/config'
 import { createEndpoint } from '@/lib/http/endpoint'
 import type { House } from '@/lib/http/house'
+import { KeptAnswers } from '@/lib/http/kept-answers'
 import { processLog } from '@/lib/http/log'
 import { RateLimiter } from '@/lib/http/rate-limit'
 import { writeTable } from '@/lib/http/writers'
@@ -28,6 +29,8 @@ function build(): House<Snapshot> {
     callerFor,
     idempotency: idempotencyStore(getDb),
     limiter: shared('limiter', () => new RateLimiter()),
+    // while the code is being changed under a running server, answers are made anew
+    kept: config.nodeEnv === 'production' ? shared('kept', () => new KeptAnswers()) : undefined,
     writeTable,
     log: processLog(config.logLevel),
   }

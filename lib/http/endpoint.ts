@@ -98,12 +98,14 @@ async function perform<S>(house: House<S>, planned: Map<string, Planned<S>>, one
   const where = splitAddress(request.url)
   const read = await readRequest(operation, one.plan, request, where)
   const format = chooseFormat(operation.formats, read.query.format, headers.get('accept'))
-  const fingerprint = queryFingerprint(operation.id, read.path, read.asked)
+  const fingerprint = operation.list ? queryFingerprint(operation.id, read.path, read.asked) : ''
   const { edition, pinned, after } = await resolveEdition(house, operation, read, fingerprint)
   progress.headers['cache-control'] = cacheControl(operation, pinned, progress.caller, house.openReading)
   const derived = operation.method === 'get' && operation.edition !== 'none' ? derivedTag(house, operation, read, edition, format, headers) : null
   const noneMatch = headers.get('if-none-match')
   if (derived !== null && noneMatch !== null && noneMatch.trim() !== '*' && noneMatchHits(noneMatch, derived)) return { status: 304, headers: { etag: derived }, body: null, json: null }
+  const kept = derived === null || noneMatch?.trim() === '*' ? undefined : house.kept?.get(derived)
+  if (kept !== undefined) return kept
   const warnings: Warning[] = []
   const setting: Setting = { operation, read, edition, fingerprint, format, warnings, path: where.path, noneMatch }
   const call = {
@@ -114,6 +116,7 @@ async function perform<S>(house: House<S>, planned: Map<string, Planned<S>>, one
   const act = async (): Promise<{ written: Written; repeat: unknown }> => {
     const answer = await one.handle(call)
     const written = await writeAnswer(house, setting, answer, derived)
+    if (derived !== null) house.kept?.keep(derived, written)
     const repeat = answer.repeatData === undefined ? written.json : { ...(written.json as Record<string, unknown>), data: answer.repeatData }
     return { written, repeat }
   }

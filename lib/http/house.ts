@@ -1,6 +1,7 @@
 import type { Logger } from 'pino'
 import type { Caller } from '@/lib/access/caller'
 import type { IdempotencyStore } from '@/lib/access/idempotency'
+import type { KeptAnswers } from '@/lib/http/kept-answers'
 import type { RateLimiter } from '@/lib/http/rate-limit'
 import type { WriteTable } from '@/lib/http/types'
 
@@ -25,6 +26,8 @@ export interface House<S> {
   callerFor: (credentials: Credentials) => Promise<Caller> | Caller
   idempotency: IdempotencyStore
   limiter: RateLimiter
+  /** Answers to give again without making them; without it each is made anew. */
+  kept?: KeptAnswers | undefined
   writeTable: WriteTable
   log: Logger
 }
