@@ -3,12 +3,10 @@ import type { HyperfineConstants, LevelDetail } from '@/openapi/schemas/level'
 import { Configuration } from '@/app/_components/configuration'
 import { DataTable, type Column } from '@/app/_components/data-table'
 import { EvidenceKey } from '@/app/_components/evidence'
-import { levelPage } from '@/app/_components/names'
 import { Part } from '@/app/_components/page-head'
 import { Quantity } from '@/app/_components/quantity'
 import { RequestPanel } from '@/app/_components/request-panel'
 import { SourceRef } from '@/app/_components/source-ref'
-import { PermanentLink } from '../_parts/permanent-link'
 
 const hyperfine: Column<HyperfineConstants>[] = [
   { name: 'mass_number', header: 'Isotope', rowHeader: true, value: (row) => row.mass_number },
@@ -59,7 +57,6 @@ export function LevelFoot({ level }: { level: LevelDetail }) {
         <div className="mt-5"><EvidenceKey /></div>
       </Part>
       <RequestPanel path={`/levels/${level.id}`} />
-      <PermanentLink path={levelPage(level.id)} />
     </>
   )
 }

@@ -1,5 +1,5 @@
 'use client'
-import { memo, useDeferredValue, useState } from 'react'
+import { memo, useDeferredValue, useMemo, useState } from 'react'
 import type { Level } from '@/openapi/schemas/level'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
 import { AngleControl } from '@/app/_components/field/angle-control'
@@ -26,6 +26,7 @@ export function LineBench({ line }: { line: TransitionDetail }) {
   // The drawings follow the slider; the tables below may lag a frame or two, so that no step of a drag waits for them.
   const settled = useDeferredValue(prediction)
   const validity = prediction.ok ? prediction.components.validity : null
+  const ends = useMemo(() => ({ lower: splitLevel(line.lower), upper: splitLevel(line.upper) }), [line])
   const name = line.id.replace('~', '_')
   const shared = { fieldTesla: field.tesla, thetaDeg, active, onActive: setActive, name }
 
@@ -53,7 +54,7 @@ export function LineBench({ line }: { line: TransitionDetail }) {
         <>
           <div className="mt-7 grid gap-x-8 gap-y-8 xl:grid-cols-[minmax(0,1.12fr)_minmax(0,1fr)]">
             <PatternPlot {...shared} components={prediction.components.components} medium={line.conventional_medium} />
-            <SplittingDiagram {...shared} components={prediction.components.components} lower={splitLevel(line.lower)} upper={splitLevel(line.upper)} />
+            <SplittingDiagram {...shared} components={prediction.components.components} {...ends} />
           </div>
           <Numbers line={line} prediction={settled} active={active} />
         </>

@@ -1,5 +1,6 @@
 'use client'
 import Link from 'next/link'
+import { memo } from 'react'
 import type { Level } from '@/openapi/schemas/level'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
 import { fieldForUrl } from '@/lib/units/field'
@@ -7,24 +8,20 @@ import { Configuration } from '@/app/_components/configuration'
 import { useEdition } from '@/app/_components/data/edition'
 import { Evidence, EvidenceKey } from '@/app/_components/evidence'
 import { useAngle, useField } from '@/app/_components/field/use-field'
-import { levelPage, linePage } from '@/app/_components/names'
+import { levelPage } from '@/app/_components/names'
 import { Part } from '@/app/_components/page-head'
 import { Quantity } from '@/app/_components/quantity'
 import { RequestPanel } from '@/app/_components/request-panel'
 import { SourceRef } from '@/app/_components/source-ref'
 import { TermSymbol } from '@/app/_components/term-symbol'
-import { PermanentLink } from '../_parts/permanent-link'
 import { RulesList } from '../_parts/rules-list'
 import { decimalsOf } from '../_parts/stored'
 
-/** What stands below a line's bench whatever its field: rules, moments, where both levels come from, the request. */
-export function LineFoot({ line, kind }: { line: TransitionDetail; kind: string | null }) {
-  const { field } = useField()
-  const { thetaDeg } = useAngle()
-  const { allowed } = line.verdict
+/** What stands below a line's bench: rules, moments, where both levels come from, the request. */
+export const LineFoot = memo(function LineFoot({ line, kind }: { line: TransitionDetail; kind: string | null }) {
   return (
     <>
-      {allowed ? (
+      {line.verdict.allowed ? (
         <>
           <Part title="Selection rules" aside={line.verdict.intercombination ? 'An intercombination line: real, and weaker than one that keeps S' : undefined}>
             <RulesList verdict={line.verdict} />
@@ -39,20 +36,24 @@ export function LineFoot({ line, kind }: { line: TransitionDetail; kind: string 
         </div>
         <div className="mt-5"><EvidenceKey /></div>
       </Part>
-      <RequestPanel
-        path={allowed ? `/transitions/${line.id}/components` : `/transitions/${line.id}`}
-        query={allowed ? { field: fieldForUrl(field.tesla, field.unit), theta_deg: thetaDeg, kind, model: 'linear' } : { kind }}
-      />
-      <PermanentLink path={linePage(line.id)} />
+      <Request line={line} kind={kind} />
     </>
   )
+})
+
+/** Alone, so that a drag of the field redraws no more of the foot than this. */
+function Request({ line, kind }: { line: TransitionDetail; kind: string | null }) {
+  const { field } = useField()
+  const { thetaDeg } = useAngle()
+  if (!line.verdict.allowed) return <RequestPanel path={`/transitions/${line.id}`} query={{ kind }} />
+  return <RequestPanel path={`/transitions/${line.id}/components`} query={{ field: fieldForUrl(field.tesla, field.unit), theta_deg: thetaDeg, kind, model: 'linear' }} />
 }
 
 const PATTERN = {
   unsplit: 'Unsplit: at g_s = 2 every shift is 0.',
   normal: 'Normal: shifts of −1, 0 and +1 Lorentz units.',
   triplet: 'Triplet: three distinct shifts, not those of the normal effect.',
-  anomalous: "Anomalous: more than three distinct shifts.",
+  anomalous: 'Anomalous: neither unsplit nor a triplet.',
 } as const
 
 /** The effective Landé factor and the moments of the pattern, in Lorentz units. */

@@ -1,5 +1,5 @@
 'use client'
-import { useId, useState, type KeyboardEvent, type ReactNode } from 'react'
+import { memo, useId, useState, type KeyboardEvent, type ReactNode } from 'react'
 import { fieldIn, FIELD_UNITS, formatField, parseField, type FieldUnit } from '@/lib/units/field'
 import styles from './field-control.module.css'
 import { fieldMarks, LAST_STOP, placeOf, stepped, stopOf, teslaAt, type FieldValue } from './field-scale'
@@ -123,7 +123,7 @@ function read(text: string, unit: FieldUnit) {
 }
 
 /** The ruled strip under the slider, its marks where the thumb's slit stands at that field. */
-function Scale({ unit, limitTesla }: { unit: FieldUnit; limitTesla: number | null }) {
+const Scale = memo(function Scale({ unit, limitTesla }: { unit: FieldUnit; limitTesla: number | null }) {
   const at = (tesla: number) => `calc(${THUMB / 2}px + (100% - ${THUMB}px) * ${placeOf(tesla).toFixed(5)})`
   return (
     <div aria-hidden="true" className="relative h-8 font-sans text-2xs text-muted">
@@ -142,4 +142,4 @@ function Scale({ unit, limitTesla }: { unit: FieldUnit; limitTesla: number | nul
       )}
     </div>
   )
-}
+})
