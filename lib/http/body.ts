@@ -18,20 +18,39 @@ export function checkContentType(contentType: string | null, hasBody: boolean): 
 /** Whether a request carries a body, by its framing fields. */
 export const hasBody = (headers: Headers): boolean => headers.has('transfer-encoding') || Number(headers.get('content-length') ?? '0') > 0
 
-/** Reads at most BODY_LIMIT_BYTES and stops; a declared length beyond that is refused before reading. */
+const LINGER_BYTES = 64 * BODY_LIMIT_BYTES
+
+/**
+ * Goes on reading a refused body for a while and throws it away. A client that is still sending would else find the
+ * connection closed under it before it could read why.
+ */
+async function linger(reader: ReadableStreamDefaultReader<Uint8Array>): Promise<void> {
+  let length = 0
+  try {
+    for (let step = await reader.read(); !step.done && length < LINGER_BYTES; step = await reader.read()) length += step.value.byteLength
+    await reader.cancel()
+  } catch {
+    // the client has gone: nobody waits for the answer
+  }
+}
+
+/** Keeps at most BODY_LIMIT_BYTES; a declared length beyond that is refused before anything is read. */
 export async function readText(request: Request): Promise<string> {
   const declared = Number(request.headers.get('content-length') ?? '0')
-  if (declared > BODY_LIMIT_BYTES) throw tooLarge()
   if (request.body === null) return ''
   const reader = request.body.getReader()
+  const refuse = (): never => {
+    void linger(reader)
+    throw tooLarge()
+  }
+  if (declared > BODY_LIMIT_BYTES) refuse()
   const pieces: Uint8Array[] = []
   let length = 0
   for (;;) {
     const step = await reader.read()
     if (step.done) break
     length += step.value.byteLength
-    // not cancelled: that would close the connection before the answer could be read
-    if (length > BODY_LIMIT_BYTES) throw tooLarge()
+    if (length > BODY_LIMIT_BYTES) refuse()
     pieces.push(step.value)
   }
   try {

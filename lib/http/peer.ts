@@ -5,10 +5,26 @@ import { shared } from '@/lib/access/shared'
 /** Field in which the address of the connection itself reaches the handlers; what a client sends under this name is overwritten. */
 const PEER_FIELD = 'x-lodeterm-peer'
 
+/**
+ * A path whose percent-encoding is not UTF-8, with its percent signs taken as what they are. The framework answers such a
+ * path with a 500 before any handler sees it; so it reaches one, which finds no such thing.
+ */
+export function decodable(url: string): string {
+  const mark = url.indexOf('?')
+  const path = mark < 0 ? url : url.slice(0, mark)
+  if (!path.includes('%')) return url
+  try {
+    decodeURIComponent(path)
+    return url
+  } catch {
+    return path.replaceAll('%', '%25') + (mark < 0 ? '' : url.slice(mark))
+  }
+}
+
 const watch = shared('peer', () => ({ on: false }))
 
 /**
- * Writes the address of each request's connection into its fields before anyone reads them. The framework shows handlers
+ * Writes the address of each request's connection into its fields before anyone reads them, and makes every path decodable. The framework shows handlers
  * only X-Forwarded-For, which a client may write as it likes.
  */
 export function watchPeers(): void {
@@ -17,6 +33,7 @@ export function watchPeers(): void {
   subscribe('http.server.request.start', (message) => {
     const { request } = message as { request: IncomingMessage }
     request.headers[PEER_FIELD] = request.socket.remoteAddress ?? ''
+    request.url = decodable(request.url ?? '/')
   })
 }
 

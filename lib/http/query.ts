@@ -68,7 +68,8 @@ export function readQuery(plan: QueryPlan, search: string): ReadQuery {
       const written = split < 0 ? pair : pair.slice(0, split)
       const name = decode(written)
       const text = decode(split < 0 ? '' : pair.slice(split + 1))
-      if (name === null || text === null) {
+      // U+FFFD is what some servers on the way make of bytes that are not UTF-8
+      if (name === null || text === null || text.includes('\ufffd')) {
         faults.push({ parameter: name ?? written.slice(0, 60), code: 'encoding_malformed', detail: 'The percent-encoding of this part of the address is not valid UTF-8.' })
         if (name !== null) refused.add(name)
       } else if (name.includes(NUL) || text.includes(NUL)) {

@@ -16,7 +16,7 @@ const LIMITS = {
   'RateLimit-Policy': header('Quota and window in seconds.', { type: 'string', pattern: '^"[a-z]+";q=[0-9]+;w=60$' }),
   'RateLimit': header('Requests that remain and seconds until the quota is whole.', { type: 'string', pattern: '^"[a-z]+";r=[0-9]+;t=[0-9]+$' }),
 }
-const CACHE = { 'Cache-Control': header('How long the answer keeps.'), Vary: header('What the answer depends on.', { const: 'Accept, Authorization, Cookie' }, false) }
+const CACHE = { 'Cache-Control': header('How long the answer keeps.'), Vary: header('What the answer depends on.', { type: 'string', pattern: 'Accept, Authorization, Cookie' }) }
 
 /** Codes that the wrapper itself can answer with, by what an operation is. */
 function wrapperCodes(operation: Operation): string[] {
@@ -98,7 +98,7 @@ function security(operation: Operation): Doc[] {
   return [...(operation.role === 'reader' ? [{}] : []), { key: [] }, { session: [] }]
 }
 
-const NOT_MODIFIED: ResponseConfig = { description: 'Not changed since the entity tag given; validators are repeated.', headers: { ...ALWAYS, ETag: header('The same tag.'), 'Cache-Control': CACHE['Cache-Control'] } as never }
+const NOT_MODIFIED: ResponseConfig = { description: 'Not changed since the entity tag given; validators are repeated.', headers: { ...ALWAYS, ETag: header('The same tag.'), ...CACHE } as never }
 
 function routeOf(operation: Operation): RouteConfig {
   const example = operation.example.body

@@ -85,7 +85,7 @@ export function conformanceFaults(method: string, url: string, answered: Answere
   if (!REQUEST_ID.test(answered.headers['x-request-id'] ?? '')) faults.push('no X-Request-Id')
   const verb = method.toLowerCase()
   if (verb === 'options') return faults
-  const at = decodeURI(url.split('?')[0] ?? '').replace(/^\/api\/v1/, '')
+  const at = (url.split('?')[0] ?? '').replace(/^\/api\/v1/, '')
   const template = templateOf(at)
   const type = (answered.headers['content-type'] ?? '').split(';')[0] ?? ''
   if (answered.status >= 400) {
