@@ -4,6 +4,7 @@ const SAFE = 'Nothing in the table was changed.'
 
 /** What a reader can do about each kind of refusal. */
 function advice(problem: ProblemDocument): string {
+  if (problem.code === 'edition_unknown') return 'Let the edition in the address go, or choose one of those published.'
   switch (problem.status) {
     case 0: return 'Check the connection and whether the server is running, then try again.'
     case 400: return 'Correct what is named below and ask again.'
@@ -27,6 +28,9 @@ export function ProblemView({ error, problem, onRetry, heading = 'h2' }: {
 }) {
   const shown = problem ?? problemOf(error)
   const Heading = heading
+  // One fault that only repeats the sentence above is not told twice.
+  const faults = (shown.errors ?? []).filter((item, _, all) => all.length > 1 || item.detail !== shown.detail)
+  const mayHelp = shown.status === 0 || shown.status === 429 || shown.status >= 500
   const page = (() => {
     try {
       return new URL(shown.type, 'http://local').pathname
@@ -41,9 +45,9 @@ export function ProblemView({ error, problem, onRetry, heading = 'h2' }: {
         <dt>What happened</dt>
         <dd>
           {shown.detail}
-          {shown.errors && shown.errors.length > 0 ? (
+          {faults.length > 0 ? (
             <ul className="mt-1.5 list-disc space-y-1 pl-5">
-              {shown.errors.map((item, index) => (
+              {faults.map((item, index) => (
                 <li key={index}>
                   {placeOf(item) ? <code className="mr-1.5 text-lamp-ink">{placeOf(item)}</code> : null}
                   {item.detail}
@@ -58,7 +62,7 @@ export function ProblemView({ error, problem, onRetry, heading = 'h2' }: {
         <dd>{advice(shown)}</dd>
       </dl>
       <div className="mt-4 flex flex-wrap items-center gap-3">
-        {onRetry ? <button type="button" className="btn" onClick={onRetry}>Try again</button> : null}
+        {onRetry && mayHelp ? <button type="button" className="btn" onClick={onRetry}>Try again</button> : null}
         {page?.startsWith('/problems/') ? <a className="link text-sm" href={page}>More about this problem</a> : null}
         {shown.instance ? <span className="note">Request id <code>{shown.instance}</code></span> : null}
       </div>

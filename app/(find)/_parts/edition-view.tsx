@@ -45,7 +45,9 @@ function Cite({ edition }: { edition: Edition }) {
 const fieldText = (value: unknown): string => (value === null || value === undefined ? 'nothing' : typeof value === 'object' ? JSON.stringify(value) : String(value))
 
 function Changes({ edition }: { edition: Edition }) {
-  const { data, error, isPending, refetch } = useQuery(apiQuery<Change[]>(`/editions/${edition.number}/changes`, { limit: 200 }))
+  const first = edition.number === 1
+  const { data, error, isPending, refetch } = useQuery({ ...apiQuery<Change[]>(`/editions/${edition.number}/changes`, { limit: 200 }), enabled: !first })
+  if (first) return <p className="prose-text">This is the first edition: all of its {count(edition.counts.levels)} levels are new.</p>
   if (isPending) return <Skeleton label="Loading the changes" className="h-20 w-full" />
   if (error) return <ProblemView error={error} onRetry={() => void refetch()} heading="h3" />
   const columns: Column<Change>[] = [
@@ -58,9 +60,7 @@ function Changes({ edition }: { edition: Edition }) {
       )),
     },
   ]
-  const created = data.data.length > 0 && data.data.every((change) => change.action === 'created')
   if (data.data.length === 0) return <p className="note">Nothing differs from the edition before.</p>
-  if (created && edition.number === 1) return <p className="prose-text">This is the first edition: all of its {count(edition.counts.levels)} levels are new.</p>
   return <DataTable columns={columns} rows={data.data} rowKey={(row) => row.level} caption={`Changes in edition ${edition.number}`} hideCaption summary={data.page?.next_cursor ? `The first ${data.data.length} changes` : plural(data.data.length, 'change')} />
 }
 

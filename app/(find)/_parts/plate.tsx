@@ -10,6 +10,8 @@ const LANDMARKS = [
 const at = (nm: number): number => ((nm - FROM) / (TO - FROM)) * 1000
 const share = (nm: number): string => `${((nm - FROM) / (TO - FROM)) * 100}%`
 
+const TICKS = Array.from({ length: (TO - FROM) / 5 + 1 }, (_, index) => FROM + index * 5).map((nm) => `M${at(nm)} 0v${nm % 50 === 0 ? 10 : nm % 10 === 0 ? 6 : 3}`).join('')
+
 /**
  * The visible lines of the edition as a spectrograph's plate would hold them, over a ruled scale. All are drawn
  * alike: the table holds no intensities. Each stretch of the plate is a link to its lines.
@@ -26,9 +28,7 @@ export async function Plate({ edition }: { edition: number | undefined }) {
     <figure className="mt-9 sm:mt-12">
       <div className="relative">
         <svg viewBox="0 0 1000 100" preserveAspectRatio="none" className="plate-lines block h-24 w-full bg-plate sm:h-32" role="img" aria-label={`${lines.length} lines from ${FROM} to ${TO} nm drawn as slit images`}>
-          {lines.map((nm, index) => (
-            <path key={index} d={`M${at(nm).toFixed(2)} 14V86`} stroke="var(--plate-line)" vectorEffect="non-scaling-stroke" strokeOpacity="0.78" />
-          ))}
+          <path d={lines.map((nm) => `M${at(nm).toFixed(2)} 14V86`).join('')} stroke="var(--plate-line)" vectorEffect="non-scaling-stroke" strokeOpacity="0.82" />
         </svg>
         <div className="absolute inset-0 flex">
           {windows.map(({ from, to }) => (
@@ -39,10 +39,7 @@ export async function Plate({ edition }: { edition: number | undefined }) {
       </div>
       <div className="relative h-12" aria-hidden="true">
         <svg viewBox="0 0 1000 10" preserveAspectRatio="none" className="absolute inset-x-0 top-0 h-2.5 w-full">
-          {Array.from({ length: (TO - FROM) / 5 + 1 }, (_, index) => {
-            const nm = FROM + index * 5
-            return <path key={nm} d={`M${at(nm)} 0v${nm % 50 === 0 ? 10 : nm % 10 === 0 ? 6 : 3}`} stroke="var(--rule-strong)" strokeWidth="1" vectorEffect="non-scaling-stroke" />
-          })}
+          <path d={TICKS} stroke="var(--rule-strong)" strokeWidth="1" vectorEffect="non-scaling-stroke" />
         </svg>
         {[400, 450, 500, 550, 600, 650, 700, 750].map((nm) => (
           <span key={nm} className={`num absolute top-3 -translate-x-1/2 text-xs text-muted ${nm % 100 === 50 ? 'max-sm:hidden' : ''}`} style={{ left: share(nm) }}>{nm}{nm === 400 ? '\u202fnm' : ''}</span>
