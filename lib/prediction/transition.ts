@@ -1,12 +1,13 @@
 import { airWavelength, conventionalWavelength } from '@/lib/atomic/air'
 import { type LineEnd } from '@/lib/atomic/components'
 import { PhysicsError } from '@/lib/atomic/errors'
-import { effectiveG, type ExactEnd, patternKind, patternKindOfNumbers, secondMoments } from '@/lib/atomic/moments'
+import { readFraction } from '@/lib/atomic/exact'
+import { effectiveG, patternKindOfNumbers, secondMoments } from '@/lib/atomic/moments'
 import { defaultKind, judge } from '@/lib/atomic/rules'
 import { thzOfWavenumber, vacuumNmOfWavenumber } from '@/lib/units/spectral'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { chooseG, type GChoice } from '@/lib/prediction/g-values'
-import { judgedOf, type PhysicalLevel } from '@/lib/prediction/levels'
+import { judgedOf, type PhysicalLevel, twoJOf } from '@/lib/prediction/levels'
 import { linksOfTransition } from '@/lib/prediction/links'
 import { positionUnc } from '@/lib/prediction/uncertainty'
 import type { Kind } from '@/openapi/schemas/common'
@@ -20,13 +21,19 @@ export type LineFacts = Omit<Transition, 'id' | 'lower' | 'upper'>
 const patterns = new Map<string, Pattern | null>()
 const PATTERNS_KEPT = 20_000
 
-/** Pattern by exact coupled g at g_s = 2, remembered: few combinations of J and g occur, and exact fractions are slow. */
-function exactPattern(lower: ExactEnd, upper: ExactEnd, kind: Kind): Pattern | null {
-  const key = `${kind} ${lower.twoJ} ${String(lower.g)} ${upper.twoJ} ${String(upper.g)}`
+/** The g of an end at g_s = 2, from its fraction; null for J = 0. */
+const atTwo = (level: PhysicalLevel): number | null => (level.g_j.coupled_exact === null ? null : (readFraction(level.g_j.coupled_exact)?.valueOf() ?? null))
+
+/**
+ * Pattern by exact coupled g at g_s = 2, remembered, for few combinations of J and g occur. Shifts are compared as doubles: unequal ones
+ * of these fractions differ by far more than rounding (a test holds this against `patternKind` in exact fractions, which is slow).
+ */
+function exactPattern(lower: PhysicalLevel, upper: PhysicalLevel, kind: Kind): Pattern | null {
+  const key = `${kind} ${lower.term.j} ${lower.g_j.coupled_exact ?? ''} ${upper.term.j} ${upper.g_j.coupled_exact ?? ''}`
   const known = patterns.get(key)
   if (known !== undefined) return known
   if (patterns.size >= PATTERNS_KEPT) patterns.clear()
-  const made = patternKind(lower, upper, kind)
+  const made = patternKindOfNumbers({ twoJ: twoJOf(lower), g: atTwo(lower) }, { twoJ: twoJOf(upper), g: atTwo(upper) }, kind)
   patterns.set(key, made)
   return made
 }
@@ -34,7 +41,7 @@ function exactPattern(lower: ExactEnd, upper: ExactEnd, kind: Kind): Pattern | n
 function patternOf(lower: PhysicalLevel, upper: PhysicalLevel, ends: readonly [LineEnd, LineEnd], kind: Kind): Pattern | null {
   const exact = (level: PhysicalLevel) => level.term.j === 0 || level.g_j.coupled_exact !== null
   if (!exact(lower) || !exact(upper)) return patternKindOfNumbers(ends[0], ends[1], kind)
-  return exactPattern({ twoJ: ends[0].twoJ, g: lower.g_j.coupled_exact }, { twoJ: ends[1].twoJ, g: upper.g_j.coupled_exact }, kind)
+  return exactPattern(lower, upper, kind)
 }
 
 /**

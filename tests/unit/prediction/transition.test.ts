@@ -1,8 +1,12 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { PhysicsError } from '@/lib/atomic/errors'
+import { coupledRange } from '@/lib/atomic/half'
+import { landeGExact } from '@/lib/atomic/lande'
+import { patternKind } from '@/lib/atomic/moments'
 import { predictComponents } from '@/lib/prediction/components'
-import { assembleTransition, transitionDetail } from '@/lib/prediction/transition'
+import { inlineLevel } from '@/lib/prediction/inline'
+import { assembleTransition, lineFacts, transitionDetail } from '@/lib/prediction/transition'
 import { edition, level, SODIUM_LEVELS } from './edition'
 
 const ASKED = { gValues: 'adopted', gS: null, fieldTesla: 1, fieldUncTesla: null, model: 'linear', thetaDeg: null, medium: 'conventional', tolerance: 0.01 } as const
@@ -30,6 +34,23 @@ describe('the terms of both ends', () => {
     const detail = transitionDetail(alone, 0, 1)
     expect(detail.terms.upper.missing_j).toEqual([1.5])
     expect(predictComponents(detail, ASKED).components.validity.positions.status).toBe('unknown')
+  })
+})
+
+describe('the pattern', () => {
+  it('is that of exact fractions for every LS line up to S = 5/2, L = 4', () => {
+    const terms = Array.from({ length: 6 }, (_, twoS) => [0, 1, 2, 3, 4].flatMap((l) => coupledRange(twoS, 2 * l).map((twoJ) => ({ twoS, l, twoJ })))).flat()
+    let compared = 0
+    for (const a of terms) {
+      for (const b of terms) {
+        if (a.twoS !== b.twoS || Math.abs(a.l - b.l) > 1 || Math.abs(a.twoJ - b.twoJ) > 2 || a.twoJ + b.twoJ === 0) continue
+        const inline = (numbers: typeof a, energy: number, parity: 'even' | 'odd') => inlineLevel({ energy_invcm: energy, s: numbers.twoS / 2, l: numbers.l, j: numbers.twoJ / 2, parity }, null)
+        const exact = patternKind({ twoJ: a.twoJ, g: landeGExact(a) }, { twoJ: b.twoJ, g: landeGExact(b) })
+        expect(lineFacts(inline(a, 0, 'even'), inline(b, 1, 'odd'), undefined).pattern, JSON.stringify([a, b])).toBe(exact)
+        compared += 1
+      }
+    }
+    expect(compared).toBe(470)
   })
 })
 
