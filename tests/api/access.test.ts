@@ -265,6 +265,13 @@ describe('audit', () => {
     expect((await get(`/audit?limit=1&cursor=${page.json.page?.next_cursor}`, { key: admin.key })).json.data?.[0]?.id).toBeLessThan(Number(page.json.data?.[0]?.id))
   })
 
+  it('names the address of the connection, not what a client says of itself', async () => {
+    const { key } = await makeKey('curator')
+    const made = await ask('post', '/keys', { key, body: { name: 'from where' }, headers: { 'x-forwarded-for': '203.0.113.9', 'x-lodeterm-peer': '203.0.113.9' } })
+    const [row] = await getDb().select({ ip: auditEvents.ip }).from(auditEvents).where(eq(auditEvents.subjectId, String(made.json.data.id)))
+    expect(row?.ip).toBe('127.0.0.1')
+  })
+
   it('leaves nothing of a refused change', async () => {
     const { key } = await makeKey('reader')
     const before = await getDb().$count(auditEvents)
