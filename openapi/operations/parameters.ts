@@ -1,4 +1,3 @@
-import { z } from 'zod'
 import { parseTerm, type Term } from '@/lib/atomic/term'
 import type { Parsed } from '@/lib/units/parsed'
 import { choiceParameter, fieldParameter, numberParameter, readBy } from '@/openapi/core/parameters'
