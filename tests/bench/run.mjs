@@ -7,8 +7,7 @@ import { Connection, median, scriptBytes } from './measure.mjs'
 
 const folder = path.join(root, '.data/bench')
 const APP = 'tests/bench/next'
-const ROUNDS = 30
-const PER_ROUND = 100
+const ROUNDS = 3000
 const WARM_UP = 1000
 
 const LIMITS = { wrapper: 1.3, components: 1.5, scriptKb: 200 }
@@ -53,7 +52,7 @@ async function serveRoutes(env) {
   throw new Error('the routes to measure did not answer')
 }
 
-/** Medians of interleaved rounds on one connection: what disturbs the machine disturbs all alike. */
+/** Medians on one connection, one request of each in turn: what disturbs the machine disturbs all alike. */
 async function compareRoutes(env, key) {
   const { child, base } = await serveRoutes(env)
   const connection = new Connection(base)
@@ -69,9 +68,7 @@ async function compareRoutes(env, key) {
     for (const route of Object.values(routes)) for (let i = 0; i < WARM_UP; i++) await connection.time(route)
     const times = Object.fromEntries(Object.keys(routes).map((name) => [name, []]))
     for (let round = 0; round < ROUNDS; round++) {
-      for (const [name, route] of Object.entries(routes)) {
-        for (let i = 0; i < PER_ROUND; i++) times[name].push(await connection.time(route))
-      }
+      for (const [name, route] of Object.entries(routes)) times[name].push(await connection.time(route))
     }
     return Object.fromEntries(Object.entries(times).map(([name, list]) => [name, median(list)]))
   } finally {
