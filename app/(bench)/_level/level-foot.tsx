@@ -7,6 +7,7 @@ import { Part } from '@/app/_components/page-head'
 import { Quantity } from '@/app/_components/quantity'
 import { RequestPanel } from '@/app/_components/request-panel'
 import { SourceRef } from '@/app/_components/source-ref'
+import { CitedSource } from '../_parts/cited-source'
 
 const hyperfine: Column<HyperfineConstants>[] = [
   { name: 'mass_number', header: 'Isotope', rowHeader: true, value: (row) => row.mass_number },
@@ -32,7 +33,7 @@ export function LevelFoot({ level }: { level: LevelDetail }) {
         <dl className="facts">
           <dt>Energy</dt>
           <dd>
-            <SourceRef source={level.energy_source} evidence={level.energy_evidence} />
+            <CitedSource source={level.energy_source} evidence={level.energy_evidence} />
             <span className="note block">
               {level.energy_literal === null ? 'The digits of the source were not kept.' : <>The source prints <span className="num text-ink">{level.energy_literal}</span>.</>}{' '}
               {level.energy_unc_invcm === null ? (level.energy_invcm === 0 ? 'The ground level is the zero of the scale.' : 'No uncertainty is stated.') : null}{' '}
@@ -44,7 +45,7 @@ export function LevelFoot({ level }: { level: LevelDetail }) {
           {g.measured !== null ? (
             <>
               <dt>g<sub>J</sub> measured</dt>
-              <dd><Quantity value={g.measured} unc={g.measured_unc} digits={9} /> <SourceRef source={g.measured_source} evidence={g.measured_evidence} /></dd>
+              <dd><Quantity value={g.measured} unc={g.measured_unc} digits={9} /> <CitedSource source={g.measured_source} evidence={g.measured_evidence} /></dd>
             </>
           ) : null}
           {level.note ? (
