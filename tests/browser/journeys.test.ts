@@ -10,7 +10,7 @@ afterAll(async () => {
   await browser.close()
 })
 
-const main = (page: Page): Promise<string> => page.locator('main').innerText()
+const main = (page: Page): Promise<string> => page.locator('#main').innerText()
 const componentRows = (page: Page) => page.getByRole('table', { name: /Components of/ }).locator('tbody tr')
 
 describe('the sodium D lines in a field', () => {
@@ -104,7 +104,7 @@ describe('finding', () => {
     const question = page.getByRole('region', { name: 'A question back' })
     await expect.poll(() => question.getByRole('link').count()).toBeGreaterThan(1)
     await question.getByRole('link', { name: /Å/ }).first().click()
-    await expect.poll(() => page.locator('main a[href*="/lines/Fe-I."]').count()).toBeGreaterThan(0)
+    await expect.poll(() => page.locator('#main a[href*="/lines/Fe-I."]').count()).toBeGreaterThan(0)
     await context.close()
   })
 
@@ -155,7 +155,7 @@ describe('judging and decoding', () => {
     await page.waitForURL(/\/levels\/Na-I\.2/)
     expect(new URL(page.url()).searchParams.get('edition')).toBe('1')
     // the request stands folded away
-    await expect.poll(() => page.locator('main').textContent()).toMatch(/levels\/Na-I\.2\?edition=1/)
+    await expect.poll(() => page.locator('#main').textContent()).toMatch(/levels\/Na-I\.2\?edition=1/)
     await context.close()
   })
 })
@@ -202,7 +202,7 @@ describe('accounts', () => {
       await page.getByLabel('Email').fill(email)
       await page.getByLabel('Password').fill('certainly not the password')
       await page.getByRole('button', { name: 'Sign in' }).click()
-      const alert = page.locator('main [role=alert]')
+      const alert = page.locator('#main [role=alert]')
       await expect.poll(() => alert.count()).toBeGreaterThan(0)
       words.push(await alert.first().innerText())
     }

@@ -13,7 +13,7 @@ const PAGES: readonly { path: string; shows: RegExp }[] = [
   { path: '/levels/Na-I.2', shows: /0\.66581/ },
   { path: '/levels/Ne-I.2', shows: /1s5/ },
   { path: '/species/Fe-I', shows: /iron/i },
-  { path: '/editions', shows: /Edition 1/ },
+  { path: '/editions', shows: /First edition/ },
   { path: '/editions/1', shows: /[0-9a-f]{16}/ },
   { path: '/sources', shows: /J\. Phys\. Chem\. Ref\. Data/ },
   { path: '/problems', shows: /invalid_input/ },
@@ -34,7 +34,7 @@ describe.each<Theme>(['light', 'dark'])('in the %s theme', (theme) => {
   it.each(PAGES)('$path is accessible, quiet, and has its content', async ({ path, shows }) => {
     const { context, page, complaints } = await visit(browser, { theme })
     await go(page, path)
-    await expect.poll(() => page.locator('main').innerText(), { timeout: 15_000 }).toMatch(shows)
+    await expect.poll(() => page.locator('#main').innerText(), { timeout: 15_000 }).toMatch(shows)
     expect(await page.title()).not.toBe('')
     expect(await page.locator('h1').count()).toBe(1)
     expect(await accessibilityFindings(page)).toEqual([])
@@ -62,7 +62,7 @@ it('what does not exist says so, and is not an error of ours', async () => {
   for (const path of ['/levels/Na-I.9999', '/lines/Na-I.1~Na-I.9999', '/species/Xx-I', '/nowhere', '/editions/77', '/levels/%00', '/lines/nonsense?field=3furlong']) {
     const response = await page.goto(path, { waitUntil: 'networkidle' })
     expect(response?.status(), path).toBeLessThan(500)
-    expect((await page.locator('main').innerText()).length, path).toBeGreaterThan(20)
+    expect((await page.locator('#main').innerText()).length, path).toBeGreaterThan(20)
   }
   await context.close()
 })
