@@ -34,7 +34,6 @@ export default defineConfig([
     files: ['**/*.ts', '**/*.tsx'],
     rules: {
       'import/no-restricted-paths': ['error', { zones }],
-      'import/no-cycle': ['error', { ignoreExternal: true }],
       '@typescript-eslint/no-explicit-any': 'error',
     },
   },

@@ -6,9 +6,10 @@ const percent = (share: number): string => `${printSignificant(share * 100, 2)} 
 const invcm = (value: number): string => `${printSignificant(value, 3)} cm⁻¹`
 const tesla = (value: number): string => `${printSignificant(value, 3)} T`
 
-const limitPart = (limit: number | null, tolerance: number): string => {
+/** Where the tolerance is passed; `of` names what it is a part of, where that is not what the sentence spoke of last. */
+const limitPart = (limit: number | null, tolerance: number, of = ''): string => {
   if (limit === null) return ''
-  const allowed = `${Number((tolerance * 100).toPrecision(6))} %`
+  const allowed = `${Number((tolerance * 100).toPrecision(6))} %${of}`
   return limit === 0 ? `; ${allowed} is passed at any field` : `; ${allowed} is passed at ${tesla(limit)}`
 }
 
@@ -33,7 +34,7 @@ export function levelSentence(name: string, level: LevelValidity): string {
   const least = level.status === 'unknown' ? 'at least ' : ''
   const why = level.status === 'unknown' ? `, ${level.reason ?? 'the term is not complete'}` : ''
   if (level.errorInvcm === 0 && level.status === 'valid') return `${name}: linear without error within its term.`
-  return `${name}: off by up to ${least}${invcm(level.errorInvcm)}${own}${limitPart(level.fieldLimitTesla, level.tolerance)}${why}.`
+  return `${name}: off by up to ${least}${invcm(level.errorInvcm)}${own}${limitPart(level.fieldLimitTesla, level.tolerance, ' of μB·B')}${why}.`
 }
 
 /** What a page says below a pattern at this field: positions, strengths, then each level that is off. */

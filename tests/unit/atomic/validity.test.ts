@@ -159,5 +159,6 @@ describe('validity of the linear law', () => {
     expect(sentence).toContain('3p ²P°₁/₂: off by up to 0.00645 cm⁻¹, 2.8 % of its own largest linear shift')
     expect(sentence).not.toContain('3s ²S₁/₂:')
     expect(sentence).toContain('1 % is passed at 2.16 T')
+    expect(sentence).toContain('1 % of μB·B is passed at 1.63 T')
   })
 })
