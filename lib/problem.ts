@@ -48,6 +48,10 @@ export const bodyProblem = (pointer: string, code: ProblemCode, detail: string):
 export const notFound = (code: ProblemCode, detail: string, near: readonly string[] = []): Problem =>
   new Problem(code, near.length === 0 ? detail : `${detail} Did you mean ${near.slice(0, 3).join(' or ')}?`)
 
+/** Bounds of what one answer tells; a request with more faults than this was not made by hand. */
+const MOST_PLACES = 20
+const MOST_ERRORS = 200
+
 /**
  * The problem that a list of faults makes: of their own kind where there is one fault, else `invalid_input`
  * (or, where every fault is well formed and impossible, `physics_impossible`).
@@ -56,6 +60,7 @@ export function faultsProblem(faults: readonly Fault[]): Problem {
   const [first] = faults
   if (first !== undefined && faults.length === 1 && isProblemCode(first.code)) return new Problem(first.code, first.detail, { errors: [first] })
   const impossible = faults.length > 0 && faults.every((fault) => kindOf(fault.code)?.status === 422)
-  const places = faults.map((fault) => fault.parameter ?? fault.pointer ?? 'body')
-  return new Problem(impossible ? 'physics_impossible' : 'invalid_input', `${faults.length} things are wrong: ${[...new Set(places)].join(', ')}.`, { errors: [...faults] })
+  const places = [...new Set(faults.map((fault) => fault.parameter ?? fault.pointer ?? 'body'))]
+  const named = places.length > MOST_PLACES ? `${places.slice(0, MOST_PLACES).join(', ')} and ${places.length - MOST_PLACES} more` : places.join(', ')
+  return new Problem(impossible ? 'physics_impossible' : 'invalid_input', `${faults.length} things are wrong: ${named}.`, { errors: faults.slice(0, MOST_ERRORS) })
 }

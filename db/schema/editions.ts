@@ -26,6 +26,8 @@ export const editions = pgTable(
     publishedAt: timestamp('published_at', { withTimezone: true, mode: 'date' }).notNull().defaultNow(),
     // RESTRICT: who published stays known. Null for the edition a new installation is loaded with.
     publishedBy: uuid('published_by').references(() => users.id, { onDelete: 'restrict' }),
+    /** The name that person had then: an edition, and what is told of it, never changes. */
+    publisherName: text('publisher_name'),
   },
   (t) => [check('editions_number', sql`${t.number} >= 1`), check('editions_checksum', sql`${t.checksum} ~ '^[0-9a-f]{64}$'`)],
 )

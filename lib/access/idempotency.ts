@@ -28,9 +28,10 @@ export function idempotencyStore(db: () => Db): IdempotencyStore {
   return {
     async begin(claim) {
       await db().delete(idempotencyKeys).where(lt(idempotencyKeys.createdAt, new Date(Date.now() - KEEP_MS)))
+      // the time is set here, in the milliseconds that a Date can carry back: the takeover below compares it
       // two rounds: a claim that vanishes between the insert and the look is claimed again
       for (let round = 0; round < 2; round += 1) {
-        const inserted = await db().insert(idempotencyKeys).values(claim).onConflictDoNothing().returning({ key: idempotencyKeys.key })
+        const inserted = await db().insert(idempotencyKeys).values({ ...claim, createdAt: new Date() }).onConflictDoNothing().returning({ key: idempotencyKeys.key })
         if (inserted.length > 0) return { state: 'new' }
         const [found] = await db().select().from(idempotencyKeys).where(at(claim))
         if (found === undefined) continue

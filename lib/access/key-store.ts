@@ -71,7 +71,7 @@ export async function createKey(db: Db, acting: Acting, given: NewKeyRequest): P
     const [used] = await tx.select({ number: count() }).from(apiKeys)
       .where(and(eq(apiKeys.userId, owner.id), isNull(apiKeys.revokedAt), or(isNull(apiKeys.expiresAt), gt(apiKeys.expiresAt, new Date()))))
     if ((used?.number ?? 0) >= MOST_KEYS) throw new Problem('too_many_keys', `You have ${MOST_KEYS} keys in use; revoke one first.`)
-    const [row] = await tx.insert(apiKeys).values({ userId: owner.id, name: given.name, prefix: minted.prefix, sha256: minted.sha256, role, expiresAt }).returning()
+    const [row] = await tx.insert(apiKeys).values({ userId: owner.id, createdAt: new Date(), name: given.name, prefix: minted.prefix, sha256: minted.sha256, role, expiresAt }).returning()
     if (row === undefined) throw new Error('The key was not stored')
     const key = shown({ key: row, owner })
     await recordAudit(tx, acting, { action: 'key.create', subjectKind: 'key', subjectId: row.id, after: { name: key.name, role: key.role, expires_at: key.expires_at } })

@@ -31,7 +31,8 @@ export interface LineRules {
   readonly gEffMin?: number
   readonly gEffMax?: number
   /** Bounds themselves left out. */
-  readonly gEffOpen?: boolean
+  readonly gEffMinOpen?: boolean
+  readonly gEffMaxOpen?: boolean
 }
 
 function firstFailure(mask: number, withLs: boolean): number {
@@ -67,7 +68,7 @@ export function pairVerdict(snapshot: Snapshot, window: SpectralWindow, asked: L
   const { twoJ, parity, twoS, l } = snapshot.columns
   const kindCode = KIND_CODE[asked.kind]
   const withLs = asked.rules === 'ls'
-  const { gEffMin = Number.NEGATIVE_INFINITY, gEffMax = Number.POSITIVE_INFINITY, gEffOpen = false } = asked
+  const { gEffMin = Number.NEGATIVE_INFINITY, gEffMax = Number.POSITIVE_INFINITY, gEffMinOpen = false, gEffMaxOpen = false } = asked
   const asksG = asked.gEffMin !== undefined || asked.gEffMax !== undefined
   const { sureMinInvcm, sureMaxInvcm } = window
   return (lower, upper, interval) => {
@@ -83,7 +84,7 @@ export function pairVerdict(snapshot: Snapshot, window: SpectralWindow, asked: L
     if (kindCode === KIND_CODE.E2) return CODE.g_eff_not_applicable
     const g = effectiveGOfPair(snapshot, lower, upper)
     if (Number.isNaN(g)) return CODE.g_eff_not_known
-    return gEffOpen ? (g > gEffMin && g < gEffMax ? LISTED : OUT) : g >= gEffMin && g <= gEffMax ? LISTED : OUT
+    return (gEffMinOpen ? g > gEffMin : g >= gEffMin) && (gEffMaxOpen ? g < gEffMax : g <= gEffMax) ? LISTED : OUT
   }
 }
 

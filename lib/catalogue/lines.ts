@@ -72,7 +72,7 @@ const tallies = new WeakMap<Snapshot, Map<string, Tally>>()
 function keptTally(snapshot: Snapshot, query: LineListQuery, species: readonly number[], verdict: PairVerdict): Tally {
   const kept = tallies.get(snapshot) ?? new Map<string, Tally>()
   tallies.set(snapshot, kept)
-  const key = JSON.stringify([query.kind, query.rules, query.gEffMin, query.gEffMax, query.gEffOpen, query.species, query.window.key])
+  const key = JSON.stringify([query.kind, query.rules, query.gEffMin, query.gEffMax, query.gEffMinOpen, query.gEffMaxOpen, query.species, query.window.key])
   const found = kept.get(key)
   if (found) return found
   const made = tally(snapshot, species, query.window, verdict)

@@ -3,7 +3,7 @@ import type { z } from 'zod'
 import { ANONYMOUS, atLeast, type Caller } from '@/lib/access/caller'
 import { writeAnswer, type Setting, type Written } from '@/lib/http/answer'
 import { queryFingerprint, readCursor } from '@/lib/http/cursor'
-import { entityTag, FORM_VERSION, noneMatchHits } from '@/lib/http/etag'
+import { entityTag, FORM_VERSION, noneMatchNames } from '@/lib/http/etag'
 import { cacheControl, crossOriginFields, openToOtherSites, preflightFields, VARY } from '@/lib/http/fields'
 import type { House } from '@/lib/http/house'
 import { chooseFormat } from '@/lib/http/negotiate'
@@ -103,7 +103,7 @@ async function perform<S>(house: House<S>, planned: Map<string, Planned<S>>, one
   progress.headers['cache-control'] = cacheControl(operation, pinned, progress.caller, house.openReading)
   const derived = operation.method === 'get' && operation.edition !== 'none' ? derivedTag(house, operation, read, edition, format, headers) : null
   const noneMatch = headers.get('if-none-match')
-  if (derived !== null && noneMatch !== null && noneMatch.trim() !== '*' && noneMatchHits(noneMatch, derived)) return { status: 304, headers: { etag: derived }, body: null, json: null }
+  if (derived !== null && noneMatch !== null && noneMatchNames(noneMatch, derived)) return { status: 304, headers: { etag: derived }, body: null, json: null }
   const kept = derived === null || noneMatch?.trim() === '*' ? undefined : house.kept?.get(derived)
   if (kept !== undefined) return kept
   const warnings: Warning[] = []
@@ -196,8 +196,7 @@ async function resolveEdition<S>(house: House<S>, operation: Operation, read: Re
 /** The tag of an answer that edition, query and program decide: no content need be made to know that it has not changed. */
 function derivedTag<S>(house: House<S>, operation: Operation, read: ReadRequest, edition: number, format: string, headers: Headers): string {
   const codings = (headers.get('accept-encoding') ?? '').match(CODINGS)?.sort().join() ?? ''
-  const physics = operation.edition === 'computed' ? house.physics : 0
-  return entityTag(FORM_VERSION, operation.id, edition, physics, house.constants, JSON.stringify(read.path), JSON.stringify(Object.entries(read.asked).sort()), format, codings)
+  return entityTag(FORM_VERSION, operation.id, edition, house.physics, house.constants, JSON.stringify(read.path), JSON.stringify(Object.entries(read.asked).sort()), format, codings)
 }
 
 /** Performs a write once per Idempotency-Key: a repeat gets the stored answer, another request under the same key is refused. */
@@ -221,7 +220,8 @@ async function actOnce<S>(
     await house.idempotency.abandon(claim)
     throw error
   }
-  await house.idempotency.finish(claim, { status: done.written.status, headers: done.written.headers, body: done.repeat })
+  // what was written is written, whatever becomes of the note of it
+  await house.idempotency.finish(claim, { status: done.written.status, headers: done.written.headers, body: done.repeat }).catch((error: unknown) => house.log.error({ err: error }, 'the answer under an Idempotency-Key was not kept'))
   return done.written
 }
 

@@ -12,9 +12,11 @@ const listOf = (field: string): string[] => field.match(/(?:W\/)?"[^"]*"|\*/g) ?
 
 /** Whether If-None-Match names the tag (weak comparison, RFC 9110 section 13.1.2). */
 export function noneMatchHits(field: string | null, tag: string): boolean {
-  if (field === null) return false
-  return listOf(field).some((given) => given === '*' || given.replace(/^W\//, '') === tag)
+  return field !== null && (listOf(field).includes('*') || noneMatchNames(field, tag))
 }
+
+/** The same without `*`, which stands for whatever exists: for use before it is known that something does. */
+export const noneMatchNames = (field: string, tag: string): boolean => listOf(field).some((given) => given.replace(/^W\//, '') === tag)
 
 /** The strong tag of If-Match; 428 where it is missing, 400 where it is not a strong tag. */
 export function readIfMatch(field: string | null): string {

@@ -3,6 +3,9 @@ import { quoted } from '@/lib/units/number'
 import type { Fault } from '@/lib/problem'
 import { nearest } from '@/lib/http/nearest'
 
+/** Unknown keys of one place that are told one by one: no honest body has more, and a hostile one should not be answered at length. */
+const MOST_KEYS = 50
+
 type Issue = z.core.$ZodIssue
 type Place = (path: readonly PropertyKey[]) => Pick<Fault, 'parameter' | 'pointer'>
 
@@ -50,7 +53,7 @@ export function faultsOf(issues: readonly Issue[], input: unknown, place: Place,
     const value = lookIn(input, issue.path)
     switch (issue.code) {
       case 'unrecognized_keys':
-        return issue.keys.map((key) => {
+        return issue.keys.slice(0, MOST_KEYS).map((key) => {
           const near = nearest(key, known(issue.path))
           return { ...place([...issue.path, key]), code: parameter ? 'unknown_parameter' : 'unknown_field', detail: `${quoted(key)} is not known here.${near === null ? '' : ` Did you mean ${near}?`}` }
         })

@@ -1,6 +1,6 @@
 import { desc, eq } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
-import { editions, users } from '@/db/schema'
+import { editions } from '@/db/schema'
 import { parameterProblem } from '@/lib/problem'
 import { linksOfEdition } from '@/lib/prediction/links'
 import type { Edition } from '@/openapi/schemas/edition'
@@ -12,7 +12,7 @@ const COLUMNS = {
   checksum: editions.checksum,
   counts: editions.counts,
   publishedAt: editions.publishedAt,
-  publishedBy: users.name,
+  publishedBy: editions.publisherName,
 }
 
 type Row = Pick<Edition, 'number' | 'label' | 'notes' | 'checksum' | 'counts'> & { publishedAt: Date; publishedBy: string | null }
@@ -26,13 +26,13 @@ const told = ({ publishedAt, publishedBy, ...row }: Row): Edition => ({
 
 /** All editions, the newest first. */
 export async function readEditions(db: Db | Tx): Promise<Edition[]> {
-  const rows = await db.select(COLUMNS).from(editions).leftJoin(users, eq(users.id, editions.publishedBy)).orderBy(desc(editions.number))
+  const rows = await db.select(COLUMNS).from(editions).orderBy(desc(editions.number))
   return rows.map(told)
 }
 
 /** One edition; 404 `edition_unknown`. */
 export async function readEdition(db: Db | Tx, number: number): Promise<Edition> {
-  const [row] = await db.select(COLUMNS).from(editions).leftJoin(users, eq(users.id, editions.publishedBy)).where(eq(editions.number, number)).limit(1)
+  const [row] = await db.select(COLUMNS).from(editions).where(eq(editions.number, number)).limit(1)
   if (!row) throw parameterProblem('n', 'edition_unknown', `There is no edition ${number}; GET /api/v1/editions lists all.`)
   return told(row)
 }

@@ -10,11 +10,18 @@ import type { Format } from '@/openapi/core/formats'
  * so that `meta.query` can show it as if it had been typed. Names and bounds for the document stand in `meta`.
  */
 
+const LONGEST = 200
+
 type Meta = Record<string, unknown> & { description: string }
 
 /** Text read by a domain parser; its code and sentence become the error of the parameter. */
 export const readBy = <T>(parse: (text: string) => Parsed<T>, meta: Meta) =>
   z.string().transform((text, context): T => {
+    // No value of any parameter is longer, and what a parser is given stays small.
+    if (text.length > LONGEST) {
+      context.addIssue({ code: 'custom', message: `At most ${LONGEST} characters are read here; this has ${text.length}.`, params: { code: 'length_out_of_range' } })
+      return z.NEVER
+    }
     const result = parse(text)
     if (result.ok) return result.value
     context.addIssue({ code: 'custom', message: result.detail, params: { code: result.code } })

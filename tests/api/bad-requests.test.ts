@@ -41,9 +41,13 @@ function wrongTexts(schema: Schema): string[] {
 
 const replaced = (query: Baseline['query'], name: string, texts: readonly string[]): Baseline['query'] => [...query.filter(([other]) => other !== name), ...texts.map((text): [string, string] => [name, text])]
 
-/** Must be refused, always as a problem of the 400s. */
-async function refused(one: Documented, baseline: Baseline, why: string, sending: Sending = sendingOf(baseline)): Promise<void> {
+/** Must be refused, always as a problem of the 400s; where a parameter is at fault, as one that names it. */
+async function refused(one: Documented, baseline: Baseline, why: string, sending: Sending = sendingOf(baseline), parameter?: string): Promise<void> {
   const reply = await ask(one.method, addressOf(one.path, baseline), withCredentials(one, sending))
+  if (parameter !== undefined) {
+    expect(reply.status, `${why}: ${reply.text.slice(0, 300)}`).toBeOneOf([400, 422])
+    expect(reply.json.errors?.map((fault: { parameter?: string }) => fault.parameter), why).toContain(parameter)
+  }
   expect(reply.status, `${why}: ${reply.text.slice(0, 300)}`).toBeGreaterThanOrEqual(400)
   expect(reply.status, `${why}: ${reply.text.slice(0, 300)}`).toBeLessThan(500)
 }
@@ -53,18 +57,18 @@ describe.each(documented)('$method $path', (one) => {
   const parameters = (one.operation.parameters ?? []).filter((parameter: ParameterDoc) => parameter.in === 'query')
 
   it('refuses unknown and repeated parameters', async () => {
-    await refused(one, { ...baseline, query: [...baseline.query, ['surely_unknown', '1']] }, 'unknown parameter')
+    await refused(one, { ...baseline, query: [...baseline.query, ['surely_unknown', '1']] }, 'unknown parameter', undefined, 'surely_unknown')
     for (const parameter of parameters) {
       if (parameter.schema.type === 'array') continue
       const given = baseline.query.find(([name]) => name === parameter.name)?.[1] ?? String(parameter.schema.default ?? parameter.schema.example ?? '1')
-      await refused(one, { ...baseline, query: replaced(baseline.query, parameter.name, [given, given]) }, `${parameter.name} twice`)
+      await refused(one, { ...baseline, query: replaced(baseline.query, parameter.name, [given, given]) }, `${parameter.name} twice`, undefined, parameter.name)
     }
   })
 
   it('refuses each parameter with each value it cannot have', async () => {
     for (const parameter of parameters) {
       for (const text of wrongTexts(parameter.schema)) {
-        await refused(one, { ...baseline, query: replaced(baseline.query, parameter.name, [text]) }, `${parameter.name}=${JSON.stringify(text.slice(0, 40))}`)
+        await refused(one, { ...baseline, query: replaced(baseline.query, parameter.name, [text]) }, `${parameter.name}=${JSON.stringify(text.slice(0, 40))}`, undefined, parameter.name)
       }
       if (parameter.required === true) await refused(one, { ...baseline, query: replaced(baseline.query, parameter.name, []) }, `${parameter.name} left out`)
     }

@@ -51,6 +51,14 @@ describe('the search box', () => {
     }
   })
 
+  it('keeps an open bound and a closed one of g_eff apart', async () => {
+    // singlets have exactly 1
+    const closed = await find('Cd I g_eff>0.5 g_eff<=1', '&lines_limit=200')
+    expect(closed.lines.length).toBeGreaterThan(0)
+    const open = await find('Cd I g_eff>0.5 g_eff<1', '&lines_limit=200')
+    expect(open.lines_total).toBeLessThan(closed.lines_total)
+  })
+
   it('tells totals whatever the limits', async () => {
     const [few, many] = [await find('Na I', '&levels_limit=0&lines_limit=1'), await find('Na I', '&levels_limit=200&lines_limit=200')]
     expect([few.levels.length, few.lines.length]).toEqual([0, 1])
@@ -71,6 +79,14 @@ describe('the search box', () => {
 })
 
 describe('lines over all species', () => {
+  it('a species named twice is named once', async () => {
+    const once = await get('/transitions?species=Na-I&limit=1000')
+    const twice = await get('/transitions?species=Na-I&species=Na-I&limit=1000')
+    expect(once.json.data.length).toBeGreaterThan(0)
+    expect(twice.json.data).toEqual(once.json.data)
+    expect([twice.json.meta.total, twice.json.meta.excluded]).toEqual([once.json.meta.total, once.json.meta.excluded])
+  })
+
   it('paged to the end are those of one page, each once, by wavenumber, with the same counts', async () => {
     const at = '/transitions?wavelength_min_nm=500&wavelength_max_nm=600'
     const whole = await get(`${at}&limit=1000`)

@@ -114,6 +114,16 @@ describe('bodies', () => {
     expect(reply.status).toBe(413)
   })
 
+  it('answers a body of countless unknown keys, and a parameter of endless length, briefly', async () => {
+    const many = await ask('post', at, { body: Object.fromEntries(Array.from({ length: 60_000 }, (_, index) => [`k${index}`, 1])) })
+    expect(many.status).toBe(400)
+    expect(many.json.errors.length).toBeLessThanOrEqual(200)
+    expect(many.text.length).toBeLessThan(100_000)
+    const long = await get(`/transitions/Na-I.1~Na-I.2/components?field=1a${'+'.repeat(12_000)}b`)
+    expect(long.status).toBe(400)
+    expect(faultsOf(long)).toEqual(['field length_out_of_range'])
+  })
+
   it('refuses nesting without end, and names NUL bytes and unknown keys by pointer', async () => {
     const deep = await ask('post', at, { raw: '['.repeat(100_000), headers: { 'content-type': 'application/json' } })
     expect(deep.status).toBe(400)

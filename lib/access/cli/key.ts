@@ -46,7 +46,7 @@ async function makeKey(db: Db, wanted: Wanted): Promise<string> {
     const [owner] = await tx.select({ id: users.id }).from(users).where(eq(sql`lower(${users.email})`, SERVICE.email))
     if (owner === undefined) throw new Error('The account of the command line could not be made')
     const [row] = await tx.insert(apiKeys)
-      .values({ userId: owner.id, name: wanted.name, prefix: minted.prefix, sha256: minted.sha256, role: wanted.role, expiresAt: wanted.expiresAt })
+      .values({ userId: owner.id, createdAt: new Date(), name: wanted.name, prefix: minted.prefix, sha256: minted.sha256, role: wanted.role, expiresAt: wanted.expiresAt })
       .returning({ id: apiKeys.id })
     await recordAudit(tx, { caller: ANONYMOUS, ip: null, requestId: null }, {
       action: 'key.create', subjectKind: 'key', subjectId: row?.id ?? null, after: { name: wanted.name, role: wanted.role, expires_at: wanted.expiresAt?.toISOString() ?? null, from: 'command line' },

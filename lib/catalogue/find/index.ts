@@ -96,7 +96,8 @@ function lineSearch(snapshot: Snapshot, wish: Wish): LineSearch {
     rules: 'rigorous' as const,
     ...(wish.gEffMin === undefined ? {} : { gEffMin: wish.gEffMin.value }),
     ...(wish.gEffMax === undefined ? {} : { gEffMax: wish.gEffMax.value }),
-    gEffOpen: (wish.gEffMin ?? wish.gEffMax)?.open ?? false,
+    gEffMinOpen: wish.gEffMin?.open ?? false,
+    gEffMaxOpen: wish.gEffMax?.open ?? false,
   }
   let ends: Uint8Array | null = null
   if (aboutLevels(wish, !energyIsForLines)) {

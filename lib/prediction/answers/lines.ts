@@ -47,7 +47,8 @@ export function lineList(snapshot: Snapshot, query: z.output<(typeof listTransit
     rules: query.rules,
     ...(query.g_eff_min === undefined ? {} : { gEffMin: query.g_eff_min }),
     ...(query.g_eff_max === undefined ? {} : { gEffMax: query.g_eff_max }),
-    species: query.species?.map((id) => speciesIndex(snapshot, id)) ?? null,
+    // named twice is named once
+    species: query.species === undefined ? null : [...new Set(query.species.map((id) => speciesIndex(snapshot, id)))].sort((a, b) => a - b),
     window: spectralWindow(windowOf(query)),
     limit,
     after: after === null ? null : String(after[0]),

@@ -2,7 +2,7 @@ import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { z } from 'zod'
 import { nesting, readBody, readText } from '@/lib/http/body'
-import { noneMatchHits, readIfMatch } from '@/lib/http/etag'
+import { noneMatchHits, noneMatchNames, readIfMatch } from '@/lib/http/etag'
 import { editDistance, nearest } from '@/lib/http/nearest'
 import { chooseFormat } from '@/lib/http/negotiate'
 import { clientAddress, decodable, watchPeers } from '@/lib/http/peer'
@@ -96,6 +96,8 @@ describe('entity tags', () => {
     expect(noneMatchHits('*', '"b"')).toBe(true)
     expect(noneMatchHits('"a"', '"b"')).toBe(false)
     expect(noneMatchHits(null, '"b"')).toBe(false)
+    expect(noneMatchNames('"x", *', '"b"')).toBe(false)
+    expect(noneMatchNames('"x", W/"b"', '"b"')).toBe(true)
     expect(readIfMatch('"a"')).toBe('"a"')
     for (const field of ['W/"a"', '*', 'a', '"a", "b"']) expect(() => readIfMatch(field)).toThrow(/strong entity tag/)
     expect(() => readIfMatch(null)).toThrow(/If-Match/)

@@ -1,0 +1,1 @@
+ALTER TABLE "editions" ADD COLUMN "publisher_name" text;
