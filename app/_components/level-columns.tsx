@@ -5,7 +5,7 @@ import { Configuration } from './configuration'
 import type { Column } from './data-table'
 import { Evidence } from './evidence'
 import { levelPage, speciesPage, speciesText } from './names'
-import { fixed } from './number'
+import { decimalsOf, fixed } from './number'
 import { TermSymbol } from './term-symbol'
 
 /** Adopted g_J with where it comes from; the exact fraction where the coupling gives one. */
@@ -14,7 +14,7 @@ export function GCell({ level }: { level: Level }) {
   if (adopted === null) return <span className="text-muted">{status === 'not_applicable' ? 'none: J = 0' : 'not known'}</span>
   return (
     <span className="num" title={`${adopted}`}>
-      {fixed(adopted, 5)}
+      {fixed(adopted, basis === 'coupled' ? 5 : Math.min(5, decimalsOf(adopted)))}
       <span className="ml-1.5 inline-block w-[5.5em] text-left text-xs text-muted">{basis === 'coupled' ? (exact ? `≈ ${exact}` : 'coupled') : basis}</span>
     </span>
   )
@@ -43,7 +43,7 @@ export function levelColumns(href: (path: string) => string, options: { species?
     { name: 'j', header: 'J', value: (level) => level.term.j, only: 'copy' },
     {
       name: 'energy_invcm', header: <>Energy, cm<sup>−1</sup></>, align: 'right', value: (level) => level.energy_invcm, sort: true,
-      cell: (level) => <span title={`${level.energy_invcm}`}>{fixed(level.energy_invcm, 4)}</span>,
+      cell: (level) => <span title={`${level.energy_invcm}`}>{fixed(level.energy_invcm, decimalsOf(level.energy_invcm))}</span>,
     },
     { name: 'energy_unc_invcm', header: 'Uncertainty', value: (level) => level.energy_unc_invcm, only: 'copy' },
     { name: 'g_j', header: <>g<sub>J</sub></>, align: 'right', value: (level) => level.g_j.adopted, sort: true, cell: (level) => <GCell level={level} /> },

@@ -5,13 +5,13 @@ import type { Transition } from '@/openapi/schemas/transition'
 import { Configuration } from './configuration'
 import type { Column } from './data-table'
 import { levelPage, linePage, speciesPage, speciesText } from './names'
-import { fixed } from './number'
+import { fixed, significant } from './number'
 import { TermSymbol } from './term-symbol'
 
 export type Shown = 'conventional' | 'air' | 'vacuum' | 'wavenumber' | 'frequency'
 
 /** A wavelength keeps three decimals in the optical, fewer in the far infrared, where the table's own figures end sooner. */
-export const nm = (value: number): string => fixed(value, value < 3000 ? 4 : value < 30000 ? 3 : 1)
+export const nm = (value: number): string => (value < 1e6 ? fixed(value, value < 3000 ? 4 : value < 30000 ? 3 : 1) : significant(value, 6))
 
 const POSITION: Record<Shown, Omit<Column<Transition>, 'rowHeader' | 'cell'> & { print: (line: Transition) => string | null }> = {
   conventional: {

@@ -12,6 +12,9 @@ export function fixed(value: number, decimals: number, group = true): string {
   return `${negative ? MINUS : ''}${body}`
 }
 
+/** How many decimals a stored number carries, so that none are shown that it does not have. */
+export const decimalsOf = (value: number): number => (/e/.test(String(value)) ? 0 : (String(value).split('.')[1] ?? '').length)
+
 /** Significant digits; powers of ten where the number is very small or very large. */
 export function significant(value: number, digits = 4): string {
   if (value === 0) return '0'

@@ -60,6 +60,12 @@ function telling(measured: MeasuredG, coupled: number): string | null {
 const unknownUncertainty = (measured: MeasuredG): GWarning[] =>
   measured.unc === null ? [{ code: 'g_unc_unknown', detail: `The measured g_J ${measured.value} is used, and its uncertainty is not known.` }] : []
 
+/** Why a measured value does not displace the coupled one. */
+const tellsNoMore = (measured: MeasuredG, coupled: number): string =>
+  measured.unc === null
+    ? `the measured value has no stated uncertainty and is within 0.002 of the coupled one (${Math.abs(measured.value - coupled).toPrecision(2)} away)`
+    : `the measured value, known to ${measured.unc}, agrees with the coupled one and is less certain than 0.001`
+
 /**
  * The g_J to compute with: what a curator chose; else the measured value where it tells more than the coupled one (standard deviation
  * at most 0.001, or more than two of them away; of unknown uncertainty: more than 0.002 away); else the coupled one; else the measured one.
@@ -82,7 +88,7 @@ export function adoptG<M extends MeasuredG>(input: {
   }
   const why = coupled === null ? 'the coupling gives no g_J' : telling(chosen, coupled)
   if (why === null) {
-    return { adopted: coupled, basis: 'coupled', chosen, reason: 'the measured value tells no more than the coupled one', byCurator: false, warnings: [] }
+    return { adopted: coupled, basis: 'coupled', chosen, reason: tellsNoMore(chosen, coupled ?? 0), byCurator: false, warnings: [] }
   }
   return { adopted: chosen.value, basis: 'measured', chosen, reason: why, byCurator: false, warnings: unknownUncertainty(chosen) }
 }

@@ -157,8 +157,9 @@ function readyLine(kind: Kind, low: ValidityEnd, high: ValidityEnd, tolerance: n
 function levelValidityOf(ready: ReadyLevel, x: number, tolerance: number): LevelValidity {
   const { mixed, missing, reason, end, limit } = ready
   const known = reason === null
-  const nothing = end.term === null
   const error = levelError(mixed, x)
+  // of an incomplete term whose neighbours say nothing there is no bound but the empty one
+  const nothing = end.term === null || (!known && error === 0)
   const relative = relativeLevelError(mixed, x)
   const largestShift = (Math.abs(mixed.g) * mixed.twoJ * x) / 2
   return {
@@ -184,7 +185,7 @@ export function levelValidity(end: ValidityEnd, fieldTesla: number, { tolerance 
 function positionsOf(kernel: LineKernel, x: number, tolerance: number, ends: Prepared[], limit: number | null): AspectValidity {
   const unknown = ends.filter((end) => end.reason !== null)
   const { errorInvcm, relativeError } = linePositionError(kernel, x)
-  const nothing = ends.every((end) => end.end.term === null)
+  const nothing = ends.every((end) => end.end.term === null) || (unknown.length > 0 && errorInvcm === 0)
   return {
     status: statusOf(unknown.length === 0, relativeError, tolerance),
     errorInvcm: nothing ? null : errorInvcm,

@@ -58,7 +58,7 @@ export function faultsOf(issues: readonly Issue[], input: unknown, place: Place,
           return { ...place([...issue.path, key]), code: parameter ? 'unknown_parameter' : 'unknown_field', detail: `${quoted(key)} is not known here.${near === null ? '' : ` Did you mean ${near}?`}` }
         })
       case 'invalid_type':
-        if (value === undefined) return [{ ...at, code: parameter ? 'missing_parameter' : 'missing_field', detail: `Needed and not given: ${named(issue.expected)}.` }]
+        if (value === undefined) return [{ ...at, code: parameter ? 'missing_parameter' : 'missing_field', detail: parameter ? `${String(issue.path.at(-1) ?? '')} is needed and was not given.` : `Needed and not given: ${named(issue.expected)}.` }]
         return [{ ...at, code: 'wrong_type', detail: `Give ${named(issue.expected)}; this is ${typeOf(value)}.` }]
       case 'invalid_value':
         if (value === undefined) return [{ ...at, code: parameter ? 'missing_parameter' : 'missing_field', detail: `Needed and not given: one of ${issue.values.map(String).join(', ')}.` }]

@@ -34,6 +34,11 @@ export function watchPeers(): void {
     const { request } = message as { request: IncomingMessage }
     request.headers[PEER_FIELD] = request.socket.remoteAddress ?? ''
     request.url = decodable(request.url ?? '/')
+    // the framework cannot make a Request of these two and answers 500; sent where nothing is, they get a problem
+    if (request.method === 'TRACE' || request.method === 'TRACK') {
+      request.method = 'GET'
+      request.url = '/api/v1/no-such-method'
+    }
   })
 }
 

@@ -2,7 +2,7 @@ import { AIR_FROM_NM, airWavelength, CONVENTIONAL_AIR_TO_NM, DEFAULT_AIR_FORMULA
 import { type Component as Splitting, weakFieldComponents } from '@/lib/atomic/components'
 import { PhysicsError } from '@/lib/atomic/errors'
 import { termNotPure } from '@/lib/atomic/adopted'
-import { GHZ_PER_INVCM } from '@/lib/atomic/constants'
+import { GHZ_PER_INVCM, MU_B_OVER_H_GHZ_PER_T } from '@/lib/atomic/constants'
 import { chooseG, type ChosenG, type GChoice } from '@/lib/prediction/g-values'
 import { type PhysicalLevel, twoJOf } from '@/lib/prediction/levels'
 import { componentUncertainty } from '@/lib/prediction/uncertainty'
@@ -28,7 +28,7 @@ export interface ComponentsAsked extends GChoice {
 }
 
 /** What the prediction needs of a transition: what `GET /transitions/{transition}` gives. */
-export type PredictedLine = Pick<TransitionDetail, 'id' | 'lower' | 'upper' | 'kind' | 'verdict' | 'wavenumber_invcm' | 'wavelength_vac_nm' | 'terms'>
+export type PredictedLine = Pick<TransitionDetail, 'id' | 'lower' | 'upper' | 'kind' | 'verdict' | 'wavenumber_invcm' | 'wavelength_vac_nm' | 'terms' | 'hyperfine'>
 
 /** The medium that shifts in wavelength are told in, judged on the centre; air that does not apply gives way to vacuum. */
 function mediumAt(vacuumNm: number, medium: Medium): 'air' | 'vacuum' {
@@ -107,6 +107,10 @@ const refuseUnknownG = (level: PredictedLine['lower'], { g, none }: ChosenG): vo
 function warningsOf(line: PredictedLine, asked: ComponentsAsked, ends: readonly (readonly [PhysicalLevel & { id: string }, ChosenG])[]): Warning[] {
   const warnings: Warning[] = []
   if (asked.model === 'auto') warnings.push({ code: 'intermediate_not_built', detail: 'model=auto is linear until the intermediate model is built; validity says where linear errs.' })
+  const kept = ends.filter(([level]) => asked.gS !== null && asked.gValues === 'adopted' && level.g_j.basis !== 'coupled' && level.g_j.adopted !== null)
+  if (kept.length > 0) {
+    warnings.push({ code: 'g_s_not_applied', detail: `g_s does not touch the adopted g_J of ${kept.map(([level]) => level.id).join(' and ')}, which is not computed from it; g_values=coupled or ls takes all from g_s.` })
+  }
   for (const [level, chosen] of ends) {
     if (asked.gValues === 'adopted' && level.g_j.basis === 'measured' && chosen.unc === null) {
       warnings.push({ code: 'g_unc_unknown', detail: `The measured g_J of ${level.id} has no stated uncertainty.` })
@@ -121,6 +125,21 @@ function warningsOf(line: PredictedLine, asked: ComponentsAsked, ends: readonly 
     warnings.push({ code: 'air_not_applicable', detail: 'Below 200 nm no air wavelength is given; shift_pm is in vacuum.' })
   }
   return warnings
+}
+
+/** Says what the stored constants A are beside the field's own splitting, for each end that has any. */
+function hyperfineWarnings({ lower, upper, hyperfine }: PredictedLine, fieldTesla: number, g: { lower: number | null; upper: number | null }): Warning[] {
+  return (['lower', 'upper'] as const).flatMap((end) => {
+    const level = end === 'lower' ? lower : upper
+    const told = hyperfine[end].flatMap(({ mass_number, a_mhz }) => (a_mhz === null ? [] : [`A = ${a_mhz} MHz for mass number ${mass_number}`]))
+    const splitting = g[end]
+    if (told.length === 0 || splitting === null) return []
+    const ghz = Math.abs(splitting) * MU_B_OVER_H_GHZ_PER_T * fieldTesla
+    return [{
+      code: 'hyperfine_ignored',
+      detail: `Hyperfine structure is left out: ${level.id} has ${told.join(', ')}; at this field g mu_B B / h is ${Number(ghz.toPrecision(3))} GHz. Where the two are comparable the pattern is not what the isotope shows.`,
+    }]
+  })
 }
 
 /**
@@ -159,7 +178,7 @@ export function predictComponents(line: PredictedLine, asked: ComponentsAsked): 
     components: splittings.map((split) => componentOf(split, place)),
     validity: linearValidity(line, asked, lower.g, upper.g),
   }
-  const warnings = warningsOf(line, asked, [[line.lower, lower], [line.upper, upper]])
+  const warnings = [...warningsOf(line, asked, [[line.lower, lower], [line.upper, upper]]), ...hyperfineWarnings(line, asked.fieldTesla, { lower: lower.g, upper: upper.g })]
   if (components.components.some((component) => component.wavelength_vac_nm === null)) {
     warnings.push({ code: 'level_crossing', detail: 'At this field an upper sublevel lies at or below a lower one; those components have no wavelength, and their wavenumber is not positive.' })
   }

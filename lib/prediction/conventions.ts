@@ -16,6 +16,7 @@ export const FIELD_CONVENTIONS = {
   shift: '(E_u(m_u) - E_u) - (E_l(m_l) - E_l); a positive shift is to higher wavenumber, to the blue. shift_pm is in wavelength: the opposite sign.',
   lorentz_unit: 'One Lorentz unit is mu_B B / hc.',
   g_l: 1,
+  nucleus: 'Hyperfine structure and isotope shifts are not in these positions.',
   normalisation: 'line: the strengths of each q sum to 1 at zero field.',
   intensity: 'Optically thin emission: strength times sin^2(theta)/2 for pi and (1 + cos^2(theta))/4 for each sigma; averaged over angle, strength/3, where no angle is given.',
   stokes: 'theta is the angle between the field and the direction from source to observer. V > 0 turns counter-clockwise as the observer sees it (IAU 1974); Q > 0 lies along the field projected on the sky; U = 0. Absorption removes what emission adds.',

@@ -126,6 +126,7 @@ export function transitionDetail(snapshot: Snapshot, i: number, j: number, kind?
   return {
     ...transition,
     terms: { lower: membersOf(snapshot, low), upper: membersOf(snapshot, high) },
+    hyperfine: { lower: [...snapshot.hyperfine(low)], upper: [...snapshot.hyperfine(high)] },
     links: linksOfTransition(transition.lower.id, transition.upper.id),
   }
 }

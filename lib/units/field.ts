@@ -48,6 +48,7 @@ export function checkFieldTesla(tesla: number): { code: string; detail: string }
 export function parseField(text: string): ParsedField {
   const split = splitQuantity(text)
   if (!split) return refuse('field_malformed', `${quoted(text)} is not a field: write a number and a unit, such as 1.5T or 15kG (units: ${KNOWN}; a bare number is tesla).`)
+  if (/^[,_]\d/.test(split.unitText)) return refuse('field_malformed', `${quoted(text)} is not a field: write one number with a decimal point and no separators, such as 1.5T.`)
   const unit = split.unitText === '' ? 'T' : readFieldUnit(split.unitText)
   if (!unit) {
     const nearest = FIELD_UNIT_NAMES.find((known) => FIELD_UNITS[known].spellings.some((s) => s.toLowerCase() === split.unitText.toLowerCase()))

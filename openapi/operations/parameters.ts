@@ -1,3 +1,4 @@
+import { parseSpecies } from '@/lib/atomic/elements'
 import { parseTerm, type Term } from '@/lib/atomic/term'
 import type { Parsed } from '@/lib/units/parsed'
 import { choiceParameter, fieldParameter, numberParameter, readBy } from '@/openapi/core/parameters'
@@ -5,12 +6,18 @@ import { LEVEL_ID, SPECIES_ID, TRANSITION_ID } from '@/openapi/schemas/common'
 
 /** Parameters that several reading operations share. Identifiers are checked for their form here; whether they exist is the table's to say. */
 
+/** What a mistyped species seems to mean: ` Did you mean Na-I?`, or nothing. */
+const meantSpecies = (text: string): string => {
+  const species = parseSpecies(text)
+  return species.ok ? ` Did you mean ${species.value.id}?` : ''
+}
+
 const identifier = (form: RegExp, what: string, example: string, code: string, description: string) =>
   readBy(
     (text): Parsed<string> =>
       form.test(text)
         ? { ok: true, value: text }
-        : { ok: false, code, detail: `${JSON.stringify(text.slice(0, 60))} is not ${what}: write it like ${example}.` },
+        : { ok: false, code, detail: `${JSON.stringify(text.slice(0, 60))} is not ${what}: write it like ${example}.${code === 'species_malformed' ? meantSpecies(text) : ''}` },
     { description, type: 'string', pattern: form.source, example },
   )
 

@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import { Kind, LevelId, TransitionId, ValueStatus } from './common'
-import { GJ, Level } from './level'
+import { GJ, HyperfineConstants, Level } from './level'
 
 export const RuleName = z
   .enum(['parity', 'delta_j', 'zero_zero', 'delta_s', 'delta_l', 'l_zero_zero', 'delta_m', 'm_zero_zero', 'zero_amplitude'])
@@ -71,6 +71,9 @@ export const TransitionDetail = Transition.extend({
   terms: z
     .strictObject({ lower: TermMembers, upper: TermMembers })
     .meta({ description: 'The levels of both terms, which is what the validity of the linear law is judged from.' }),
+  hyperfine: z
+    .strictObject({ lower: z.array(HyperfineConstants), upper: z.array(HyperfineConstants) })
+    .meta({ description: 'Hyperfine constants stored for both ends; the components leave hyperfine structure out.' }),
   links: z.strictObject({ self: z.string(), page: z.string(), components: z.string(), lower: z.string(), upper: z.string() }),
 }).meta({ id: 'TransitionDetail' })
 export type TransitionDetail = z.infer<typeof TransitionDetail>

@@ -74,9 +74,32 @@ describe('the sodium D lines at 1.5 T', () => {
 
   it('warns that auto is linear, and not when linear was asked', async () => {
     const auto = await get('/transitions/Na-I.1~Na-I.3/components?field=1.5T')
-    expect(of(auto.json.meta.warnings, 'code')).toEqual(['intermediate_not_built'])
+    expect(of(auto.json.meta.warnings, 'code')).toContain('intermediate_not_built')
     const linear = await get('/transitions/Na-I.1~Na-I.3/components?field=1.5T&model=linear')
-    expect(linear.json.meta?.warnings).toEqual([])
+    expect(of(linear.json.meta.warnings, 'code')).not.toContain('intermediate_not_built')
+  })
+
+  it('warns of the hyperfine structure that is left out, with its size beside that of the field', async () => {
+    const sodium = await get('/transitions/Na-I.1~Na-I.2/components?field=0.3T&model=linear')
+    const told = sodium.json.meta.warnings.filter((warning: { code: string }) => warning.code === 'hyperfine_ignored')
+    expect(of(told, 'detail')).toHaveLength(2)
+    // A of 3s, and 2.0023 x 13.996 GHz/T x 0.3 T
+    expect(told[0].detail).toMatch(/Na-I\.1 has A = 885\.8130644 MHz for mass number 23; at this field g mu_B B \/ h is 8\.41 GHz/)
+    const none = await get('/transitions/Ca-I.1~Ca-I.9/components?field=0.3T&model=linear')
+    expect(of(none.json.meta.warnings, 'code')).not.toContain('hyperfine_ignored')
+  })
+
+  it('says where g_s does not reach: adopted values that were measured', async () => {
+    const reply = await get('/transitions/Na-I.1~Na-I.3/components?field=1T&g_s=2')
+    expect(reply.json.meta.warnings).toContainEqual({ code: 'g_s_not_applied', detail: expect.stringContaining('Na-I.1') as string })
+    const coupled = await get('/transitions/Na-I.1~Na-I.3/components?field=1T&g_s=2&g_values=coupled')
+    expect(of(coupled.json.meta.warnings, 'code')).not.toContain('g_s_not_applied')
+  })
+
+  it('gives no error, rather than 0, where an incomplete term says nothing', async () => {
+    const { validity } = await components('Fe-I.21~Fe-I.30', 'field=1T')
+    expect(validity.positions).toMatchObject({ status: 'unknown', error_invcm: null, relative_error: null })
+    expect(validity.levels.lower).toMatchObject({ status: 'unknown', error_invcm: null, relative_to_shift: null })
   })
 
   it('takes either order of the levels and answers canonically', async () => {

@@ -114,6 +114,12 @@ describe('bodies', () => {
     expect(reply.status).toBe(413)
   })
 
+  it('names the species that was meant, the decimal point, and the parameter that is missing', async () => {
+    expect((await get('/levels?species=na+i')).json.errors[0].detail).toMatch(/Did you mean Na-I\?/)
+    expect((await get('/transitions/Na-I.1~Na-I.2/components?field=1,5T')).json.detail).toMatch(/decimal point/)
+    expect((await get('/transitions/Na-I.1~Na-I.2/components')).json.detail).toMatch(/^field is needed/)
+  })
+
   it('answers a body of countless unknown keys, and a parameter of endless length, briefly', async () => {
     const many = await ask('post', at, { body: Object.fromEntries(Array.from({ length: 60_000 }, (_, index) => [`k${index}`, 1])) })
     expect(many.status).toBe(400)

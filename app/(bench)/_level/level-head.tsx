@@ -7,11 +7,10 @@ import { Configuration } from '@/app/_components/configuration'
 import { useEdition } from '@/app/_components/data/edition'
 import { Evidence } from '@/app/_components/evidence'
 import { speciesPage, speciesText } from '@/app/_components/names'
-import { halves } from '@/app/_components/number'
+import { decimalsOf, halves } from '@/app/_components/number'
 import { PageHead } from '@/app/_components/page-head'
 import { Quantity } from '@/app/_components/quantity'
 import { TermSymbol } from '@/app/_components/term-symbol'
-import { decimalsOf } from '../_parts/stored'
 import { decodedTerm } from './term-words'
 
 /** The level by its name, what the name says in words, and its two chief values. */
@@ -47,7 +46,7 @@ export function LevelHead({ level }: { level: LevelDetail }) {
             </span>
           </Fact>
           <Fact name={<>Landé factor g<sub>J</sub>, adopted</>}>
-            <Quantity value={level.g_j.adopted} unc={level.g_j.adopted_unc} decimals={6} className="text-xl" absent={level.g_j.status === 'not_applicable' ? 'not_applicable' : 'unknown'} />
+            <Quantity value={level.g_j.adopted} unc={level.g_j.adopted_unc} decimals={level.g_j.basis === 'coupled' || level.g_j.adopted === null ? 6 : decimalsOf(level.g_j.adopted)} className="text-xl" absent={level.g_j.status === 'not_applicable' ? 'not_applicable' : 'unknown'} />
             <span className="note mt-0.5 block">{basisText(level)}</span>
           </Fact>
         </dl>

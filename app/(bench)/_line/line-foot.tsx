@@ -15,7 +15,7 @@ import { RequestPanel } from '@/app/_components/request-panel'
 import { SourceRef } from '@/app/_components/source-ref'
 import { TermSymbol } from '@/app/_components/term-symbol'
 import { RulesList } from '../_parts/rules-list'
-import { decimalsOf } from '../_parts/stored'
+import { decimalsOf } from '@/app/_components/number'
 
 /** What stands below a line's bench: rules, moments, where both levels come from, the request. */
 export const LineFoot = memo(function LineFoot({ line, kind }: { line: TransitionDetail; kind: string | null }) {

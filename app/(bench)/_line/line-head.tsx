@@ -5,10 +5,14 @@ import type { Level } from '@/openapi/schemas/level'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
 import { Configuration } from '@/app/_components/configuration'
 import { useEdition } from '@/app/_components/data/edition'
+import { nm } from '@/app/_components/line-columns'
 import { levelPage, speciesPage, speciesText } from '@/app/_components/names'
 import { PageHead } from '@/app/_components/page-head'
 import { Quantity } from '@/app/_components/quantity'
 import { TermSymbol } from '@/app/_components/term-symbol'
+
+/** Five decimals in the optical; far in the infrared the table's figures end sooner. */
+const shown = (nanometres: number): { decimals: number } | { digits: number } => (nanometres < 30_000 ? { decimals: 5 } : { digits: 8 })
 
 /** The line by its species and conventional wavelength, both levels, and its place on every scale. */
 export function LineHead({ line }: { line: TransitionDetail }) {
@@ -26,7 +30,7 @@ export function LineHead({ line }: { line: TransitionDetail }) {
         }
         title={
           <>
-            {speciesText(lower.species)} <span className="num">{line.wavelength_conventional_nm.toFixed(4)}</span>&#8239;nm
+            {speciesText(lower.species)} <span className="num">{nm(line.wavelength_conventional_nm)}</span>&#8239;nm
             <span className="ml-2 text-[0.6em] text-muted">in {line.conventional_medium === 'air' ? 'air' : 'vacuum'}</span>
           </>
         }
@@ -38,8 +42,8 @@ export function LineHead({ line }: { line: TransitionDetail }) {
         </span>
       </PageHead>
       <dl className="mb-6 grid grid-cols-2 gap-px overflow-hidden border border-rule bg-rule sm:grid-cols-3 xl:grid-cols-6">
-        <Fact name="In air">{line.wavelength_air_nm === null ? <span className="text-muted">does not apply</span> : <Quantity value={line.wavelength_air_nm} decimals={5} unit="nm" />}</Fact>
-        <Fact name="In vacuum"><Quantity value={line.wavelength_vac_nm} decimals={5} unit="nm" /></Fact>
+        <Fact name="In air">{line.wavelength_air_nm === null ? <span className="text-muted">does not apply</span> : <Quantity value={line.wavelength_air_nm} {...shown(line.wavelength_air_nm)} unit="nm" />}</Fact>
+        <Fact name="In vacuum"><Quantity value={line.wavelength_vac_nm} {...shown(line.wavelength_vac_nm)} unit="nm" /></Fact>
         <Fact name="Wavenumber"><Quantity value={line.wavenumber_invcm} unc={line.wavenumber_unc_invcm} decimals={4} unit="cm⁻¹" /></Fact>
         <Fact name="Frequency"><Quantity value={line.frequency_thz} decimals={6} unit="THz" /></Fact>
         <Fact name="Effective g">

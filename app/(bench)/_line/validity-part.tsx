@@ -28,7 +28,7 @@ export function ValidityPart({ validity, fieldTesla }: { validity: Validity; fie
   const rows: Row[] = [
     { name: 'Positions of the line', status: positions.status, invcm: positions.error_invcm, relative: positions.relative_error, against: 'largest shift', limit: positions.field_limit_tesla },
     { name: 'Strengths of the line', status: strengths.status, invcm: null, relative: strengths.relative_error, against: 'largest in its q', limit: strengths.field_limit_tesla },
-    ...(['lower', 'upper'] as const).map((end): Row => ({ name: `Positions of the ${end} level`, status: levels[end].status, invcm: levels[end].error_invcm, relative: levels[end].relative_to_shift, against: 'its own largest shift', limit: levels[end].field_limit_tesla })),
+    ...(['lower', 'upper'] as const).map((end): Row => ({ name: `Positions of the ${end} level`, status: levels[end].status, invcm: levels[end].error_invcm, relative: levels[end].relative_error, against: `μB·B${levels[end].relative_to_shift === null ? '' : `; ${percent(levels[end].relative_to_shift)} of its own largest shift`}`, limit: levels[end].field_limit_tesla })),
   ]
   return (
     <Part title="How far the linear law holds" aside={`At ${fieldTesla}\u202fT, tolerance ${percent(positions.tolerance)}`}>

@@ -12,7 +12,7 @@ import { EmptyState } from '../../_components/empty-state'
 import { EvidenceKey } from '../../_components/evidence'
 import { levelColumns } from '../../_components/level-columns'
 import { levelPage, speciesText } from '../../_components/names'
-import { fixed, halves, plural } from '../../_components/number'
+import { decimalsOf, fixed, halves, plural } from '../../_components/number'
 import { PageHead, Part } from '../../_components/page-head'
 import { TermDiagram } from '../../_components/plots/term-diagram'
 import { ProblemView } from '../../_components/problem-view'
@@ -39,7 +39,7 @@ function Facts({ species }: { species: Species }) {
       <dd>{species.core_configuration === '' ? 'none' : <Configuration text={species.core_configuration} />}</dd>
       <dt>Ionisation energy</dt>
       <dd className="flex flex-wrap items-baseline gap-x-4">
-        <Quantity value={species.ionisation_energy_invcm} decimals={4} unit="cm⁻¹" />
+        <Quantity value={species.ionisation_energy_invcm} decimals={species.ionisation_energy_invcm === null ? 0 : decimalsOf(species.ionisation_energy_invcm)} unit="cm⁻¹" />
         {species.ionisation_energy_invcm === null ? null : <SourceRef source={species.ionisation_source} evidence={species.ionisation_evidence} />}
       </dd>
       {species.note ? (<><dt>Note</dt><dd>{species.note}</dd></>) : null}
