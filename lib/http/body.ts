@@ -4,7 +4,7 @@ import { type Fault, Problem } from '@/lib/problem'
 
 export const BODY_LIMIT_BYTES = 1_048_576
 
-const tooLarge = () => new Problem('body_too_large', `The body is larger than ${BODY_LIMIT_BYTES} bytes; reading stopped there.`)
+const tooLarge = () => new Problem('body_too_large', `The body is larger than ${BODY_LIMIT_BYTES} bytes, which is the most that is taken; send less.`)
 
 /** Refuses a body of another media type before a byte of it is read. */
 export function checkContentType(contentType: string | null, hasBody: boolean): void {
@@ -18,39 +18,40 @@ export function checkContentType(contentType: string | null, hasBody: boolean): 
 /** Whether a request carries a body, by its framing fields. */
 export const hasBody = (headers: Headers): boolean => headers.has('transfer-encoding') || Number(headers.get('content-length') ?? '0') > 0
 
-const LINGER_BYTES = 64 * BODY_LIMIT_BYTES
+/** Nothing of it is kept. */
+const DRAIN_BYTES = 64 * BODY_LIMIT_BYTES
 
 /**
- * Goes on reading a refused body for a while and throws it away. A client that is still sending would else find the
- * connection closed under it before it could read why.
+ * Reads a refused body to its end, or as far as anyone sends by mistake, and throws it away, before the refusal is sent: a client that is
+ * still sending would else find the connection closed under it before it could read why.
  */
-async function linger(reader: ReadableStreamDefaultReader<Uint8Array>): Promise<void> {
+async function drain(reader: ReadableStreamDefaultReader<Uint8Array>): Promise<void> {
   let length = 0
   try {
-    for (let step = await reader.read(); !step.done && length < LINGER_BYTES; step = await reader.read()) length += step.value.byteLength
+    for (let step = await reader.read(); !step.done && length < DRAIN_BYTES; step = await reader.read()) length += step.value.byteLength
     await reader.cancel()
   } catch {
     // the client has gone: nobody waits for the answer
   }
 }
 
-/** Keeps at most BODY_LIMIT_BYTES; a declared length beyond that is refused before anything is read. */
+/** Keeps at most BODY_LIMIT_BYTES; a declared length beyond that is refused without keeping anything. */
 export async function readText(request: Request): Promise<string> {
   const declared = Number(request.headers.get('content-length') ?? '0')
   if (request.body === null) return ''
   const reader = request.body.getReader()
-  const refuse = (): never => {
-    void linger(reader)
+  const refuse = async (): Promise<never> => {
+    await drain(reader)
     throw tooLarge()
   }
-  if (declared > BODY_LIMIT_BYTES) refuse()
+  if (declared > BODY_LIMIT_BYTES) await refuse()
   const pieces: Uint8Array[] = []
   let length = 0
   for (;;) {
     const step = await reader.read()
     if (step.done) break
     length += step.value.byteLength
-    if (length > BODY_LIMIT_BYTES) refuse()
+    if (length > BODY_LIMIT_BYTES) await refuse()
     pieces.push(step.value)
   }
   try {
