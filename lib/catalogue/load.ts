@@ -1,6 +1,6 @@
-import { and, eq, gt, isNull, lte, or, type SQL } from 'drizzle-orm'
-import type { AnyPgColumn } from 'drizzle-orm/pg-core'
+import { eq } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
+import { inEdition } from '@/db/edition-content'
 import {
   hyperfineConstants,
   hyperfineRevisions,
@@ -17,10 +17,6 @@ import {
 import { toRoman } from '@/lib/atomic/elements'
 import type { EditionContent, SpeciesRow } from '@/lib/catalogue/shape'
 import type { Isotope } from '@/openapi/schemas/species'
-
-/** The range condition that makes an edition: published_from <= n and not yet ended at n. */
-export const inEdition = (t: { publishedFrom: AnyPgColumn; publishedUntil: AnyPgColumn }, n: number): SQL | undefined =>
-  and(lte(t.publishedFrom, n), or(isNull(t.publishedUntil), gt(t.publishedUntil, n)))
 
 async function readSpecies(db: Db | Tx, n: number): Promise<SpeciesRow[]> {
   const isotopeRows = await db

@@ -11,3 +11,12 @@ export const editionParam = (query: PageQuery): number | undefined => {
   const text = one(query, 'edition')
   return text !== undefined && /^[1-9]\d{0,8}$/.test(text) ? Number(text) : undefined
 }
+
+/** A segment of the address as text; one whose encoding is broken stands as it is, and names nothing. */
+export function segment(text: string): string {
+  try {
+    return decodeURIComponent(text)
+  } catch {
+    return text
+  }
+}

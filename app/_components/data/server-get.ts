@@ -26,13 +26,16 @@ const READS: readonly { path: RegExp; open: () => Promise<{ GET: Handler }> }[] 
 /** What a visitor's request says about who they are and where they come from; nothing else of it concerns the API. */
 const CARRIED = ['cookie', 'x-lodeterm-peer', 'x-forwarded-for', 'user-agent'] as const
 
-/**
- * Reads the API on the server, within the process, as the visitor. Null where it refuses or fails: the browser then asks
- * itself and shows the problem.
- */
-export async function serverGet<T>(path: string, query?: ApiQuery): Promise<ApiAnswer<T> | null> {
+/** `missing`: the API says that there is no such thing. An answer that could not be had for other reasons is null without it. */
+export interface ServerAnswer<T> { answer: ApiAnswer<T> | null; missing: boolean }
+
+/** A name of the wrong form names nothing. */
+const MISNAMED = /^(species|level|transition|identifier)_malformed$/
+
+/** Reads the API on the server, within the process, as the visitor. */
+export async function serverRead<T>(path: string, query?: ApiQuery): Promise<ServerAnswer<T>> {
   const read = READS.find((candidate) => candidate.path.test(path))
-  if (read === undefined) return null
+  if (read === undefined) return { answer: null, missing: false }
   // Outside of the try: at build time this throws to say that the page belongs to a request and is not made beforehand.
   const incoming = await headers()
   try {
@@ -42,8 +45,16 @@ export async function serverGet<T>(path: string, query?: ApiQuery): Promise<ApiA
       if (value !== null) sent.set(name, value)
     }
     const { GET } = await read.open()
-    return await readAnswer<ApiAnswer<T>>(await GET(new Request(`http://127.0.0.1${apiPath(path, query)}`, { headers: sent })))
+    const response = await GET(new Request(`http://127.0.0.1${apiPath(path, query)}`, { headers: sent }))
+    if (!response.ok) {
+      const { status, code } = (await response.json()) as { status: number; code: string }
+      return { answer: null, missing: status === 404 || MISNAMED.test(code) }
+    }
+    return { answer: await readAnswer<ApiAnswer<T>>(response), missing: false }
   } catch {
-    return null
+    return { answer: null, missing: false }
   }
 }
+
+/** The same where only the answer matters: null where the API refuses or fails, and the browser then asks itself and shows the problem. */
+export const serverGet = async <T>(path: string, query?: ApiQuery): Promise<ApiAnswer<T> | null> => (await serverRead<T>(path, query)).answer

@@ -11,7 +11,7 @@ export async function generateMetadata({ params }: Props): Promise<Metadata> {
 
 export default async function EditionPage({ params }: Props) {
   const { n } = await params
-  const state = await prefetch([[`/editions/${encodeURIComponent(n)}`]])
+  const state = await prefetch([[`/editions/${encodeURIComponent(n)}`]], { subject: true })
   return (
     <HydrationBoundary state={state}>
       <EditionView n={n} />
