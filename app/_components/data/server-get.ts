@@ -30,7 +30,7 @@ const CARRIED = ['cookie', 'x-lodeterm-peer', 'x-forwarded-for', 'user-agent'] a
 export interface ServerAnswer<T> { answer: ApiAnswer<T> | null; missing: boolean }
 
 /** A name of the wrong form names nothing. */
-const MISNAMED = /^(species|level|transition|identifier)_malformed$/
+const MISNAMED = /^((species|level|transition|identifier|encoding)_malformed|nul_byte)$/
 
 /** Reads the API on the server, within the process, as the visitor. */
 export async function serverRead<T>(path: string, query?: ApiQuery): Promise<ServerAnswer<T>> {
