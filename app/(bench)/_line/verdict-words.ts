@@ -22,7 +22,7 @@ function mixing(level: Level, validity: LevelValidity, members: TransitionDetail
   const names = js.map(halves)
   const last = names.pop()
   const who = names.length === 0 ? `J = ${last} mixes with others` : `J = ${names.join(', ')} and ${last} are mixing`
-  return `${who}: linear is off by ${percent(error)} of the splitting of J = ${halves(level.term.j)} here.`
+  return `${who}: linear is off by ${percent(error)} of the linear shift of J = ${halves(level.term.j)} here.`
 }
 
 /** The judgement of the linear law in a line or two, for the place where the field is set. */
