@@ -3,6 +3,7 @@ import { PhysicsError } from '@/lib/atomic/errors'
 import { formatHalf, isTriangle, magneticNumbers, type TwoJ } from '@/lib/atomic/half'
 import { type ComponentRule, forbiddingComponentRule, type Kind, rankOf } from '@/lib/atomic/rules'
 import { squared3jNumber } from '@/lib/atomic/wigner'
+import { plusZero } from '@/lib/units/number'
 
 /** q = 0 is pi, q = +1 sigma+, q = -1 sigma-; the |q| = 2 of E2 are named by q itself. */
 export type Polarisation = 'pi' | 'sigma+' | 'sigma-' | 'q=+2' | 'q=-2'
@@ -56,9 +57,6 @@ export function shiftLorentz(gLower: number | null, twoMLower: TwoJ, gUpper: num
   if (gUpper === null) return plusZero((-gLower * twoMLower) / 2)
   return plusZero(((gUpper - gLower) * twoMUpper + gLower * (twoMUpper - twoMLower)) / 2)
 }
-
-/** -0 is no physics: it would print as a minus sign. */
-const plusZero = (value: number): number => (value === 0 ? 0 : value)
 
 /**
  * Angular factors for one unit of strength, optically thin, theta between the field and the direction to the observer.

@@ -3,10 +3,12 @@ import { type Component as Splitting, weakFieldComponents } from '@/lib/atomic/c
 import { PhysicsError } from '@/lib/atomic/errors'
 import { termNotPure } from '@/lib/atomic/adopted'
 import { GHZ_PER_INVCM, MU_B_OVER_H_GHZ_PER_T } from '@/lib/atomic/constants'
+import { AIR_EXTRAPOLATED, INTERMEDIATE_NOT_BUILT } from '@/lib/prediction/conventions'
 import { chooseG, type ChosenG, type GChoice } from '@/lib/prediction/g-values'
 import { type PhysicalLevel, twoJOf } from '@/lib/prediction/levels'
 import { componentUncertainty } from '@/lib/prediction/uncertainty'
 import { linearValidity } from '@/lib/prediction/validity'
+import { plusZero } from '@/lib/units/number'
 import { thzOfWavenumber, vacuumNmOfWavenumber } from '@/lib/units/spectral'
 import type { Medium, Model } from '@/openapi/schemas/common'
 import type { Component, Components } from '@/openapi/schemas/components'
@@ -46,8 +48,6 @@ function shiftPm(centreNm: number, shiftInvcm: number, wavenumber: number, mediu
   const r = refractivity(DEFAULT_AIR_FORMULA, centreNm + vacuum)
   return plusZero((1000 * (vacuum * (1 + r0) - centreNm * (r - r0))) / ((1 + r) * (1 + r0)))
 }
-
-const plusZero = (value: number): number => (value === 0 ? 0 : value)
 
 interface Place {
   line: PredictedLine
@@ -120,7 +120,7 @@ function warningsOf(line: PredictedLine, asked: ComponentsAsked, ends: readonly 
     }
   }
   const { extrapolated } = airWavelength(line.wavelength_vac_nm)
-  if (extrapolated) warnings.push({ code: 'air_extrapolated', detail: 'Beyond 1690 nm the formula of air is extrapolated.' })
+  if (extrapolated) warnings.push({ code: 'air_extrapolated', detail: AIR_EXTRAPOLATED })
   if (asked.medium === 'air' && line.wavelength_vac_nm < AIR_FROM_NM) {
     warnings.push({ code: 'air_not_applicable', detail: 'Below 200 nm no air wavelength is given; shift_pm is in vacuum.' })
   }
@@ -148,7 +148,7 @@ function hyperfineWarnings({ lower, upper, hyperfine }: PredictedLine, fieldTesl
  * `no_ls_g`, `g_unknown`.
  */
 export function predictComponents(line: PredictedLine, asked: ComponentsAsked): { components: Components; warnings: Warning[] } {
-  if (asked.model === 'intermediate') throw new PhysicsError('intermediate_not_built', 'The intermediate model is not built yet; use model=linear or model=auto.', 'model')
+  if (asked.model === 'intermediate') throw new PhysicsError('intermediate_not_built', INTERMEDIATE_NOT_BUILT, 'model')
   refuseForbidden(line)
   const [lower, upper] = [chooseG(line.lower, asked, 'lower'), chooseG(line.upper, asked, 'upper')]
   refuseUnknownG(line.lower, lower)

@@ -1,4 +1,8 @@
-import { AIR_FORMULAS, DEFAULT_AIR_FORMULA } from '@/lib/atomic/air'
+import { AIR_FORMULAS, AIR_MEASURED_TO_NM, DEFAULT_AIR_FORMULA } from '@/lib/atomic/air'
+
+/** Sentences of warnings and refusals that several answers give. */
+export const AIR_EXTRAPOLATED = `Beyond ${AIR_MEASURED_TO_NM} nm the formula of air is extrapolated.`
+export const INTERMEDIATE_NOT_BUILT = 'The intermediate model is not built yet; use model=linear or model=auto.'
 
 /** What numbers mean where something was computed: `meta.conventions`. */
 export const AIR = `Air wavelengths: ${AIR_FORMULAS[DEFAULT_AIR_FORMULA].source}; standard air, ${AIR_FORMULAS[DEFAULT_AIR_FORMULA].air}; from 200 nm (vacuum) up.`

@@ -2,6 +2,7 @@ import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 import { PhysicsError } from '@/lib/atomic/errors'
 import { linearSublevels } from '@/lib/atomic/sublevels'
 import { bodyProblem, type Fault, faultsProblem, Problem } from '@/lib/problem'
+import { INTERMEDIATE_NOT_BUILT } from '@/lib/prediction/conventions'
 import { chooseG, type GChoice } from '@/lib/prediction/g-values'
 import { inlineFaults, inlineLevel, type InlineLevelGiven } from '@/lib/prediction/inline'
 import { twice, twoJOf } from '@/lib/prediction/levels'
@@ -10,7 +11,6 @@ import type { GValues, Model } from '@/openapi/schemas/common'
 import type { SublevelMatrix } from '@/openapi/schemas/computed'
 import type { Level, Sublevel } from '@/openapi/schemas/level'
 
-export const INTERMEDIATE_NOT_BUILT = 'The intermediate model is not built yet; use model=linear or model=auto.'
 
 /** Numbers in one answer: energies and derivatives together. */
 export const SUBLEVEL_VALUES_MAX = 1_000_000

@@ -19,3 +19,6 @@ export function quoted(text: string): string {
   const clean = text.replace(/[\u0000-\u001f\u007f-\u009f\u2028\u2029]/g, '\u00b7')
   return `"${clean.length > 60 ? `${clean.slice(0, 57)}...` : clean}"`
 }
+
+/** -0 is no physics: it would print as a minus sign. */
+export const plusZero = (value: number): number => (value === 0 ? 0 : value)

@@ -6,7 +6,7 @@ import { LINE_EXCLUSIONS, passes, pairMask } from '@/lib/catalogue/line-scan'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { Problem } from '@/lib/problem'
 import { predictComponents } from '@/lib/prediction/components'
-import { FIELD_CONVENTIONS, LINE_CONVENTIONS } from '@/lib/prediction/conventions'
+import { AIR_EXTRAPOLATED, FIELD_CONVENTIONS, LINE_CONVENTIONS } from '@/lib/prediction/conventions'
 import { judgeInline } from '@/lib/prediction/judge'
 import { limitOf, pageOf, type Position } from '@/lib/prediction/paging'
 import { levelIndex, speciesIndex, transitionIndices } from '@/lib/prediction/resolve'
@@ -20,7 +20,7 @@ type Warn = (code: string, detail: string) => void
 
 /** Air wavelengths beyond the range in which the formula of air was measured are told, with a warning. */
 export function warnOfAir(lines: readonly Pick<Transition, 'wavelength_vac_nm'>[], warn: Warn): void {
-  if (lines.some((line) => line.wavelength_vac_nm > AIR_MEASURED_TO_NM)) warn('air_extrapolated', `Beyond ${AIR_MEASURED_TO_NM} nm the formula of air is extrapolated.`)
+  if (lines.some((line) => line.wavelength_vac_nm > AIR_MEASURED_TO_NM)) warn('air_extrapolated', AIR_EXTRAPOLATED)
 }
 
 const staleCursor = () =>

@@ -2,7 +2,7 @@ import type { z } from 'zod'
 import { CONSTANTS } from '@/lib/units/codata'
 import { bodyProblem } from '@/lib/problem'
 import { airOf, convert } from '@/lib/prediction/convert'
-import { SUBLEVEL_CONVENTIONS } from '@/lib/prediction/conventions'
+import { AIR_EXTRAPOLATED, SUBLEVEL_CONVENTIONS } from '@/lib/prediction/conventions'
 import { termSublevels } from '@/lib/prediction/sublevels'
 import { decodeTerm } from '@/lib/prediction/terms'
 import type { Term } from '@/lib/atomic/term'
@@ -20,7 +20,7 @@ export function termAnswer(term: Term, gS: number | undefined) {
 /** One position on every scale. */
 export function conversionAnswer(query: z.output<(typeof convertWavelength)['query']>, warn: Warn) {
   const { conversion, extrapolated } = convert(query.value, query.from, query.to, query.formula)
-  if (extrapolated) warn('air_extrapolated', 'Beyond 1690 nm the formula of air is extrapolated.')
+  if (extrapolated) warn('air_extrapolated', AIR_EXTRAPOLATED)
   return { data: conversion, meta: { conventions: { air: airOf(query.formula), chain: 'h, c and e are exact; 1 cm^-1 = 29.9792458 GHz.' } } }
 }
 
