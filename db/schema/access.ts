@@ -1,10 +1,10 @@
 import { sql } from 'drizzle-orm'
-import { bigint, boolean, check, customType, index, integer, jsonb, pgTable, primaryKey, text, timestamp, uniqueIndex, uuid } from 'drizzle-orm/pg-core'
+import { type AnyPgColumn, bigint, boolean, check, customType, index, integer, jsonb, pgTable, primaryKey, text, uniqueIndex, uuid } from 'drizzle-orm/pg-core'
+import { instant } from './instant'
 
 export const ROLES = ['reader', 'curator', 'admin'] as const
 
 const bytes = customType<{ data: Buffer; driverData: Buffer }>({ dataType: () => 'bytea' })
-const instant = (name: string) => timestamp(name, { withTimezone: true, mode: 'date' })
 
 /** People and service accounts. Never deleted: `active` false closes one, so that what it did keeps its name. */
 export const users = pgTable(
@@ -18,6 +18,8 @@ export const users = pgTable(
     passwordHash: text('password_hash'),
     active: boolean('active').notNull().default(true),
     demo: boolean('demo').notNull().default(false),
+    /** Raised by every change that others make to the account: role, name, open or closed. */
+    version: integer('version').notNull().default(1),
     createdAt: instant('created_at').notNull().defaultNow(),
     updatedAt: instant('updated_at').notNull().defaultNow(),
   },
@@ -26,6 +28,7 @@ export const users = pgTable(
     check('users_role', sql`${t.role} in ('reader', 'curator', 'admin')`),
     check('users_email_shape', sql`${t.email} ~ '^[^@[:space:]]+@[^@[:space:]]+$' and length(${t.email}) <= 320`),
     check('users_name', sql`length(btrim(${t.name})) between 1 and 200`),
+    check('users_version', sql`${t.version} >= 1`),
   ],
 )
 
@@ -61,6 +64,9 @@ export const apiKeys = pgTable(
     prefix: text('prefix').notNull(),
     sha256: bytes('sha256').notNull(),
     role: text('role', { enum: ROLES }).notNull(),
+    /** The key it was made with, which takes it along when it is revoked; null where a person at a browser made it. */
+    // RESTRICT: keys are revoked, never deleted.
+    madeWith: uuid('made_with').references((): AnyPgColumn => apiKeys.id, { onDelete: 'restrict' }),
     createdAt: instant('created_at').notNull().defaultNow(),
     expiresAt: instant('expires_at'),
     revokedAt: instant('revoked_at'),

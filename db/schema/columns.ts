@@ -1,11 +1,10 @@
 import { sql, type SQL } from 'drizzle-orm'
-import { type AnyPgColumn, bigint, check, integer, text, timestamp, uuid } from 'drizzle-orm/pg-core'
+import { type AnyPgColumn, bigint, check, integer, text, uuid } from 'drizzle-orm/pg-core'
 import { amendments } from './amendments'
+import { instant } from './instant'
 
 /** How far a value was checked against its source; the grade it came with, never raised. */
 export const EVIDENCE = ['read', 'quoted', 'recalled', 'computed'] as const
-
-export const instant = (name: string) => timestamp(name, { withTimezone: true, mode: 'date' })
 
 /**
  * What every revision row carries beside its values.

@@ -1,6 +1,8 @@
 import { sql } from 'drizzle-orm'
-import { check, integer, jsonb, pgTable, text, timestamp, uuid } from 'drizzle-orm/pg-core'
+import { bigint, check, index, integer, jsonb, pgTable, text, uuid } from 'drizzle-orm/pg-core'
 import { users } from './access'
+import { CHANGE_ACTIONS, CHANGE_KINDS } from './amendments'
+import { instant } from './instant'
 
 export interface EditionCounts {
   species: number
@@ -23,11 +25,28 @@ export const editions = pgTable(
     counts: jsonb('counts').$type<EditionCounts>().notNull(),
     /** Edition of the fundamental constants that computed answers use. */
     constants: text('constants').notNull(),
-    publishedAt: timestamp('published_at', { withTimezone: true, mode: 'date' }).notNull().defaultNow(),
+    publishedAt: instant('published_at').notNull().defaultNow(),
     // RESTRICT: who published stays known. Null for the edition a new installation is loaded with.
     publishedBy: uuid('published_by').references(() => users.id, { onDelete: 'restrict' }),
     /** The name that person had then: an edition, and what is told of it, never changes. */
     publisherName: text('publisher_name'),
   },
   (t) => [check('editions_number', sql`${t.number} >= 1`), check('editions_checksum', sql`${t.checksum} ~ '^[0-9a-f]{64}$'`)],
+)
+
+/** The feed of changes: one row for each thing that an edition made, replaced or retired, in one sequence over all editions. */
+export const editionChanges = pgTable(
+  'edition_changes',
+  {
+    sequence: bigint('sequence', { mode: 'number' }).primaryKey().generatedAlwaysAsIdentity(),
+    /** Its foreign key is deferred and stands in the migration: the edition's row is written last. */
+    edition: integer('edition').notNull(),
+    kind: text('kind', { enum: CHANGE_KINDS }).notNull(),
+    subject: text('subject').notNull(),
+    action: text('action', { enum: CHANGE_ACTIONS }).notNull(),
+    /** The amendment and change it came by. RESTRICT stands in the migration with the foreign keys: a published change is kept. */
+    amendmentId: uuid('amendment_id').notNull(),
+    changeId: uuid('change_id').notNull(),
+  },
+  (t) => [index('edition_changes_edition').on(t.edition, t.sequence), index('edition_changes_subject').on(t.kind, t.subject)],
 )

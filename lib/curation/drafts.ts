@@ -57,8 +57,8 @@ export async function changeAmendment(db: Db, acting: Acting, id: string, given:
     if (row === undefined) throw missing()
     if (row.author.id !== caller.userId && caller.role !== 'admin') throw new Problem('not_the_author', 'Only its author or an admin may change a draft.')
     check(shown(row))
-    if (row.amendment.state !== 'draft' && row.amendment.state !== 'returned') {
-      throw new Problem('state_conflict', `This amendment is ${row.amendment.state}; only a draft or a returned one can be changed.`, { extra: { state: row.amendment.state, possible_states: ['draft', 'returned'] } })
+    if (row.amendment.state !== 'draft') {
+      throw new Problem('state_conflict', `This amendment is ${row.amendment.state}; only a draft can be changed.`, { extra: { state: row.amendment.state, possible_states: ['draft'] } })
     }
     const { title, note, version } = row.amendment
     const next = { title: given.title ?? title, note: given.note ?? note }

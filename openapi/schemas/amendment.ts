@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import { Instant } from './session'
 
-export const AmendmentState = z.enum(['draft', 'in_review', 'accepted', 'published', 'returned', 'withdrawn']).meta({ id: 'AmendmentState' })
+export const AmendmentState = z.enum(['draft', 'in_review', 'accepted', 'published', 'withdrawn']).meta({ id: 'AmendmentState' })
 
 export const Amendment = z
   .strictObject({
