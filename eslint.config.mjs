@@ -7,14 +7,15 @@ const rooms = {
   'lib/units': [],
   'lib/atomic': ['lib/units'],
   'lib/problem': [],
+  'lib/entity-tag': ['lib/problem'],
   'lib/config': ['lib/problem'],
   openapi: ['lib/atomic', 'lib/units', 'lib/problem'],
   db: ['lib/config'],
-  'lib/access': ['db', 'openapi', 'lib/problem', 'lib/config'],
+  'lib/access': ['db', 'openapi', 'lib/problem', 'lib/entity-tag', 'lib/config'],
   'lib/catalogue': ['db', 'lib/atomic', 'lib/units', 'openapi', 'lib/problem', 'lib/config'],
-  'lib/curation': ['db', 'lib/atomic', 'lib/units', 'openapi', 'lib/problem', 'lib/config', 'lib/access', 'lib/catalogue'],
+  'lib/curation': ['db', 'lib/atomic', 'lib/units', 'openapi', 'lib/problem', 'lib/entity-tag', 'lib/config', 'lib/access', 'lib/catalogue'],
   'lib/prediction': ['db', 'lib/atomic', 'lib/units', 'openapi', 'lib/problem', 'lib/config', 'lib/catalogue'],
-  'lib/http': ['openapi', 'lib/access', 'lib/problem', 'lib/config', 'lib/units', 'lib/atomic'],
+  'lib/http': ['openapi', 'lib/access', 'lib/problem', 'lib/entity-tag', 'lib/config', 'lib/units', 'lib/atomic'],
   seeds: ['db', 'lib/atomic', 'lib/units', 'lib/problem', 'lib/config', 'lib/access', 'openapi'],
 }
 const all = [...Object.keys(rooms), 'app', 'tests']

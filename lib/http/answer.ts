@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto'
 import { writeCursor } from '@/lib/http/cursor'
-import { entityTag, noneMatchHits } from '@/lib/http/etag'
+import { entityTag } from '@/lib/entity-tag'
+import { noneMatchHits } from '@/lib/http/etag'
 import type { House } from '@/lib/http/house'
 import { API_PREFIX, type ReadRequest } from '@/lib/http/request'
 import type { Answer, Warning } from '@/lib/http/types'

@@ -1,12 +1,7 @@
-import { createHash } from 'node:crypto'
 import { Problem } from '@/lib/problem'
 
 /** Raised whenever the form of stored answers changes, so that no cache goes on with the old form under the old tag. */
 export const FORM_VERSION = 1
-
-/** A strong entity tag from whatever decides a representation, byte for byte. */
-export const entityTag = (...parts: readonly (string | number | null)[]): string =>
-  `"${createHash('sha256').update(JSON.stringify(parts)).digest('base64url').slice(0, 27)}"`
 
 const listOf = (field: string): string[] => field.match(/(?:W\/)?"[^"]*"|\*/g) ?? []
 
@@ -25,9 +20,4 @@ export function readIfMatch(field: string | null): string {
   const [tag] = tags
   if (tag === undefined || tags.length > 1 || tag === '*' || tag.startsWith('W/')) throw new Problem('if_match_malformed', 'If-Match must be one strong entity tag in quotes, as ETag gave it.')
   return tag
-}
-
-/** 412 where the version there now is not the one the change was made from. */
-export function requireVersion(ifMatch: string | null, current: string): void {
-  if (ifMatch !== current) throw new Problem('etag_stale', 'This was changed after you read it; nothing was overwritten. Read it again and make your change on what is there now.')
 }

@@ -2,7 +2,7 @@ import { actingOf, addressOf } from '@/app/api/acting'
 import { endpoint, resource } from '@/app/api/endpoint'
 import { getDb } from '@/db/client'
 import { createKey, keyVersion, listKeys } from '@/lib/access/key-store'
-import { entityTag } from '@/lib/http/etag'
+import { entityTag } from '@/lib/entity-tag'
 import { pageOf } from '@/lib/http/pages'
 import * as account from '@/openapi/operations/account'
 

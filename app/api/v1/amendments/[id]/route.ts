@@ -2,7 +2,7 @@ import { actingOf } from '@/app/api/acting'
 import { endpoint, resource } from '@/app/api/endpoint'
 import { getDb } from '@/db/client'
 import { amendmentVersion, changeAmendment, readAmendment } from '@/lib/curation/drafts'
-import { entityTag, requireVersion } from '@/lib/http/etag'
+import { entityTag, requireVersion } from '@/lib/entity-tag'
 import * as operations from '@/openapi/operations/amendments'
 
 export const { GET, HEAD, OPTIONS, POST, PUT, PATCH, DELETE } = resource(

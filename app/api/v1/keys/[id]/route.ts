@@ -2,7 +2,7 @@ import { actingOf } from '@/app/api/acting'
 import { endpoint, resource } from '@/app/api/endpoint'
 import { getDb } from '@/db/client'
 import { keyVersion, readKey, revokeKey } from '@/lib/access/key-store'
-import { entityTag, requireVersion } from '@/lib/http/etag'
+import { entityTag, requireVersion } from '@/lib/entity-tag'
 import * as account from '@/openapi/operations/account'
 
 export const { GET, HEAD, OPTIONS, POST, PUT, PATCH, DELETE } = resource(
