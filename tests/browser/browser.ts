@@ -18,8 +18,8 @@ export interface Visit {
 }
 
 /** A fresh visitor. Motion is reduced, so that nothing is caught half-way. */
-export async function visit(browser: Browser, { theme = 'light', width = 1440, height = 900 }: { theme?: Theme; width?: number; height?: number } = {}): Promise<Visit> {
-  const context = await browser.newContext({ baseURL: base, colorScheme: theme, reducedMotion: 'reduce', viewport: { width, height } })
+export async function visit(browser: Browser, { theme = 'light', width = 1440, height = 900, at = base }: { theme?: Theme; width?: number; height?: number; at?: string } = {}): Promise<Visit> {
+  const context = await browser.newContext({ baseURL: at, colorScheme: theme, reducedMotion: 'reduce', viewport: { width, height } })
   const page = await context.newPage()
   const complaints: string[] = []
   page.on('console', (message) => {

@@ -3,7 +3,6 @@ import { expect, inject } from 'vitest'
 import { type Answered, conformanceFaults } from './conformance'
 
 export const base = inject('baseUrl')
-const agent = supertest(base)
 
 export interface Sending {
   key?: string
@@ -25,8 +24,7 @@ export type Json = ReturnType<typeof JSON.parse>
 
 type Verb = 'get' | 'head' | 'options' | 'post' | 'put' | 'patch' | 'delete'
 
-/** Asks the server under test; every answer is checked against the OpenAPI document before anyone sees it. `at` begins below /api/v1. */
-export async function ask(method: Verb | string, at: string, sending: Sending = {}): Promise<Reply> {
+async function askAt(agent: ReturnType<typeof supertest>, method: Verb | string, at: string, sending: Sending): Promise<Reply> {
   const url = `/api/v1${at}`
   let request = agent[method.toLowerCase() as Verb](url).redirects(0).ok(() => true).buffer(true).parse((response, done) => {
     const pieces: Buffer[] = []
@@ -55,7 +53,14 @@ function safeJson(text: string): Json {
   }
 }
 
-export const get = (at: string, sending?: Sending): Promise<Reply> => ask('get', at, sending)
+/** Asks a server; every answer is checked against the OpenAPI document before anyone sees it. `at` begins below /api/v1. */
+export function clientAt(address: string) {
+  const agent = supertest(address)
+  const ask = (method: Verb | string, at: string, sending: Sending = {}): Promise<Reply> => askAt(agent, method, at, sending)
+  return { ask, get: (at: string, sending?: Sending): Promise<Reply> => ask('get', at, sending) }
+}
+/** The server under test that all share. */
+export const { ask, get } = clientAt(base)
 
 /** The codes in a problem's `errors`, with their places. */
 export const faultsOf = (reply: Reply): string[] => ((reply.json.errors ?? []) as unknown as { parameter?: string; pointer?: string; code: string }[]).map((fault) => `${fault.parameter ?? fault.pointer ?? ''} ${fault.code}`)
