@@ -36,7 +36,7 @@ export async function refusal(client: pg.Client, text: string, values: unknown[]
 
 export const DENIED = '42501'
 export const GUARDED = 'LD001'
-export const EXCLUDED = '23P01'
+export const EXCLUDED = '23505'
 export const CHECKED = '23514'
 
 /** Inserts a revision of a level like the one named, with some columns changed. */
