@@ -4,60 +4,69 @@ import { type Fault, Problem } from '@/lib/problem'
 
 export const BODY_LIMIT_BYTES = 1_048_576
 
-const tooLarge = () => new Problem('body_too_large', `The body is larger than ${BODY_LIMIT_BYTES} bytes, which is the most that is taken; send less.`)
+const tooLarge = (limit: number) => new Problem('body_too_large', `The body is larger than ${limit} bytes, which is the most that is taken; send less.`)
 
 /** Refuses a body of another media type before a byte of it is read. */
-export function checkContentType(contentType: string | null, hasBody: boolean): void {
+export function checkContentType(contentType: string | null, hasBody: boolean, wanted = 'application/json'): void {
   if (!hasBody) return
   const type = (contentType ?? '').split(';')[0]?.trim().toLowerCase() ?? ''
-  if (type !== 'application/json') {
-    throw new Problem('unsupported_media_type', contentType === null ? 'The body has no Content-Type; send application/json.' : `The body is ${JSON.stringify(type.slice(0, 100))}; send application/json.`, { headers: { 'accept': 'application/json' } })
+  if (type !== wanted) {
+    throw new Problem('unsupported_media_type', contentType === null ? `The body has no Content-Type; send ${wanted}.` : `The body is ${JSON.stringify(type.slice(0, 100))}; send ${wanted}.`, { headers: { 'accept': wanted } })
   }
 }
 
 /** Whether a request carries a body, by its framing fields. */
 export const hasBody = (headers: Headers): boolean => headers.has('transfer-encoding') || Number(headers.get('content-length') ?? '0') > 0
 
-/** Nothing of it is kept. */
+/** How much of a refused body is read: what anyone sends by mistake. Nothing of it is kept. */
 const DRAIN_BYTES = 64 * BODY_LIMIT_BYTES
 
 /**
  * Reads a refused body to its end, or as far as anyone sends by mistake, and throws it away, before the refusal is sent: a client that is
  * still sending would else find the connection closed under it before it could read why.
  */
-async function drain(reader: ReadableStreamDefaultReader<Uint8Array>): Promise<void> {
+async function drain(reader: ReadableStreamDefaultReader<Uint8Array>, most: number): Promise<void> {
   let length = 0
   try {
-    for (let step = await reader.read(); !step.done && length < DRAIN_BYTES; step = await reader.read()) length += step.value.byteLength
+    for (let step = await reader.read(); !step.done && length < most; step = await reader.read()) length += step.value.byteLength
     await reader.cancel()
   } catch {
     // the client has gone: nobody waits for the answer
   }
 }
 
-/** Keeps at most BODY_LIMIT_BYTES; a declared length beyond that is refused without keeping anything. */
-export async function readText(request: Request): Promise<string> {
+/** The body's bytes, at most `limit` of them; a declared length beyond that is refused without keeping anything. */
+export async function readBytes(request: Request, limit: number): Promise<Buffer> {
   const declared = Number(request.headers.get('content-length') ?? '0')
-  if (request.body === null) return ''
+  if (request.body === null) return Buffer.alloc(0)
   const reader = request.body.getReader()
   const refuse = async (): Promise<never> => {
-    await drain(reader)
-    throw tooLarge()
+    await drain(reader, Math.max(DRAIN_BYTES, 4 * limit))
+    throw tooLarge(limit)
   }
-  if (declared > BODY_LIMIT_BYTES) await refuse()
+  if (declared > limit) await refuse()
+  // with a declared length the pieces go straight to their place, so that a large file stands in memory once
+  const whole = declared > BODY_LIMIT_BYTES ? Buffer.allocUnsafe(declared) : null
   const pieces: Uint8Array[] = []
   let length = 0
   for (;;) {
     const step = await reader.read()
     if (step.done) break
+    const from = length
     length += step.value.byteLength
-    if (length > BODY_LIMIT_BYTES) await refuse()
-    pieces.push(step.value)
+    if (length > (whole?.byteLength ?? limit)) await refuse()
+    if (whole === null) pieces.push(step.value)
+    else whole.set(step.value, from)
   }
+  return whole === null ? Buffer.concat(pieces) : whole.subarray(0, length)
+}
+
+export async function readText(request: Request): Promise<string> {
   try {
-    return new TextDecoder('utf-8', { fatal: true }).decode(Buffer.concat(pieces))
-  } catch {
-    throw new Problem('body_not_json', 'The body is not valid UTF-8, which JSON has to be.')
+    return new TextDecoder('utf-8', { fatal: true }).decode(await readBytes(request, BODY_LIMIT_BYTES))
+  } catch (error) {
+    if (error instanceof TypeError) throw new Problem('body_not_json', 'The body is not valid UTF-8, which JSON has to be.')
+    throw error
   }
 }
 

@@ -122,7 +122,7 @@ async function perform<S>(house: House<S>, planned: Map<string, Planned<S>>, one
     return { written, repeat }
   }
   const key = operation.idempotent ? headers.get('idempotency-key') : null
-  return key === null || progress.caller.userId === null ? (await act()).written : actOnce(house, operation, { key, userId: progress.caller.userId, path: where.path, search: where.search, body: read.bodyText }, act)
+  return key === null || progress.caller.userId === null ? (await act()).written : actOnce(house, operation, { key, userId: progress.caller.userId, path: where.path, search: where.search, body: read.bodyIdentity }, act)
 }
 
 /** Authenticates, counts and authorises. A request whose key does not hold counts against its address. */

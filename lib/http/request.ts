@@ -1,9 +1,10 @@
 import type { z } from 'zod'
-import { checkContentType, hasBody, readBody, readText } from '@/lib/http/body'
+import { BODY_LIMIT_BYTES, checkContentType, hasBody, readBody, readBytes, readText } from '@/lib/http/body'
 import { readIfMatch } from '@/lib/http/etag'
+import { boundaryOf, readForm } from '@/lib/http/multipart'
 import { type PathPlan, planPath, planQuery, type QueryPlan, readPath, readQuery } from '@/lib/http/query'
 import { type Fault, faultsProblem, Problem } from '@/lib/problem'
-import type { Operation } from '@/openapi/core/define'
+import { bodyType, type Operation } from '@/openapi/core/define'
 
 export const API_PREFIX = '/api/v1'
 
@@ -29,29 +30,38 @@ export interface ReadRequest {
   path: Record<string, string>
   ifMatch: string | null
   body: unknown
-  bodyText: string
+  /** What makes two bodies the same: the text itself, or a digest of the parts of a form, whose boundary differs each time. */
+  bodyIdentity: string
+}
+
+interface ReadBody { value: unknown; faults: Fault[]; identity: string }
+
+const missingBody = (type: string): ReadBody => ({ value: undefined, faults: [{ pointer: '', code: 'body_missing', detail: `Send a body with Content-Type: ${type}.` }], identity: '' })
+
+async function readJsonBody(schema: z.ZodType, request: Request): Promise<ReadBody> {
+  const text = await readText(request)
+  return text === '' ? missingBody('application/json') : { ...readBody(schema, text), identity: text }
+}
+
+async function readFormBody(schema: z.ZodType, request: Request, limitBytes: number): Promise<ReadBody> {
+  const bytes = await readBytes(request, limitBytes + BODY_LIMIT_BYTES)
+  return bytes.byteLength === 0 ? missingBody('multipart/form-data') : readForm(schema, bytes, boundaryOf(request.headers.get('content-type')))
 }
 
 /** Everything a request says, parsed; throws one Problem with all faults of path, query and body together. */
 export async function readRequest(operation: Operation, plan: RequestPlan, request: Request, address: { path: string; search: string }): Promise<ReadRequest> {
   const sent = hasBody(request.headers)
-  if (operation.body !== undefined) checkContentType(request.headers.get('content-type'), sent)
+  if (operation.body !== undefined) checkContentType(request.headers.get('content-type'), sent, bodyType(operation))
   const path = readPath(plan.path, address.path)
   const query = readQuery(plan.query, address.search)
   const faults: Fault[] = [...path.faults, ...query.faults]
   if (faults.length === 0 && operation.check !== undefined) faults.push(...operation.check(query.value as z.output<z.ZodObject>))
   const ifMatch = operation.ifMatch ? readIfMatch(request.headers.get('if-match')) : null
-  let body: unknown
-  let bodyText = ''
+  let body: ReadBody | undefined
   if (operation.body !== undefined) {
-    bodyText = await readText(request)
-    if (bodyText === '') faults.push({ pointer: '', code: 'body_missing', detail: 'Send a JSON body with Content-Type: application/json.' })
-    else {
-      const read = readBody(operation.body, bodyText)
-      body = read.value
-      faults.push(...read.faults)
-    }
+    body = operation.multipart === null ? await readJsonBody(operation.body, request) : await readFormBody(operation.body, request, operation.multipart.limitBytes)
+    faults.push(...body.faults)
   } else if (sent) throw new Problem('body_unexpected', 'This operation takes no body; send the request without one.')
   if (faults.length > 0) throw faultsProblem(faults)
-  return { params: path.value, query: query.value, asked: query.asked, path: path.raw, ifMatch, body, bodyText }
+  return { params: path.value, query: query.value, asked: query.asked, path: path.raw, ifMatch, body: body?.value, bodyIdentity: body?.identity ?? '' }
 }

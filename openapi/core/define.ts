@@ -47,6 +47,8 @@ export interface Operation<
   readonly query: Q
   readonly check?: (query: z.output<Q>) => ParameterFault[]
   readonly body?: B
+  /** The body is multipart/form-data, its parts the members of `body`; a file of at most so many bytes may be among them. */
+  readonly multipart: { readonly limitBytes: number } | null
   /** The shape of `data` in the envelope; for a list, of its array. */
   readonly answer: R
   readonly list: L
@@ -55,6 +57,8 @@ export interface Operation<
   readonly editionIn: 'query' | 'path'
   readonly formats: readonly Format[]
   readonly status: 200 | 201 | 204
+  /** May also answer 202, with the same shape: begun and not yet done. */
+  readonly accepts202: boolean
   /** Needs If-Match with the entity tag last read. */
   readonly ifMatch: boolean
   /** Accepts Idempotency-Key. */
@@ -95,7 +99,9 @@ export function defineOperation<
     description: undefined,
     sessionOnly: false,
     params: NO_PARAMETERS as unknown as P,
+    multipart: null,
     status: 200,
+    accepts202: false,
     ifMatch: false,
     idempotent: false,
     problems: [],
@@ -111,6 +117,9 @@ export function defineOperation<
 
 /** The parameters that `defineOperation` adds, as they come to a handler. */
 export type SharedQuery<L extends boolean> = L extends true ? { limit: number } : unknown
+
+/** Media type of an operation's body. */
+export const bodyType = (operation: Pick<Operation, 'multipart'>): string => (operation.multipart === null ? 'application/json' : 'multipart/form-data')
 
 /** Whether an operation changes anything; a POST that reads an edition or only computes does not. */
 export const writes = (operation: Pick<Operation, 'method' | 'edition' | 'role'>): boolean =>

@@ -1,6 +1,6 @@
 import { OpenApiGeneratorV31, OpenAPIRegistry, type ResponseConfig, type RouteConfig } from '@asteasolutions/zod-to-openapi'
 import { z } from 'zod'
-import { MEDIA_TYPES, type Operation, writes } from '@/openapi/core/define'
+import { bodyType, MEDIA_TYPES, type Operation, writes } from '@/openapi/core/define'
 import { Meta, Page, ProblemDocument } from '@/openapi/schemas/envelope'
 import { kindOf, type ProblemKind } from '@/lib/problem'
 
@@ -32,7 +32,7 @@ function wrapperCodes(operation: Operation): string[] {
   if (operation.sessionOnly) codes.push('session_required')
   if (writes(operation) && operation.role !== 'public') codes.push('cross_site')
   if (operation.body === undefined) codes.push('body_unexpected')
-  else codes.push('body_missing', 'body_not_json', 'missing_field', 'unknown_field', 'wrong_type', 'body_too_large', 'unsupported_media_type')
+  else codes.push('body_missing', ...(operation.multipart === null ? ['body_not_json'] : ['multipart_malformed', 'part_repeated']), 'missing_field', 'unknown_field', 'wrong_type', 'body_too_large', 'unsupported_media_type')
   codes.push('not_acceptable')
   if (operation.ifMatch) codes.push('if_match_missing', 'if_match_malformed')
   if (operation.idempotent) codes.push('idempotency_key_malformed', 'idempotency_running', 'idempotency_mismatch')
@@ -112,9 +112,9 @@ function routeOf(operation: Operation): RouteConfig {
     request: {
       ...(Object.keys(operation.params.shape).length > 0 ? { params: operation.params } : {}),
       ...(Object.keys(operation.query.shape).length > 0 ? { query: operation.query } : {}),
-      ...(operation.body === undefined ? {} : { body: { required: true, content: { 'application/json': { schema: operation.body, ...(example === undefined ? {} : { example }) } } } }),
+      ...(operation.body === undefined ? {} : { body: { required: true, content: { [bodyType(operation)]: { schema: operation.body, ...(example === undefined ? {} : { example }) } } } }),
     },
-    responses: { [operation.status]: goodResponse(operation), ...(operation.method === 'get' ? { 304: NOT_MODIFIED } : {}), ...problemResponses(operation) },
+    responses: { [operation.status]: goodResponse(operation), ...(operation.accepts202 ? { 202: { ...goodResponse(operation), description: 'Begun: the answer tells how far it is, and where to ask again.' } } : {}), ...(operation.method === 'get' ? { 304: NOT_MODIFIED } : {}), ...problemResponses(operation) },
   }
 }
 
