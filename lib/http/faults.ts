@@ -1,7 +1,7 @@
 import type { z } from 'zod'
 import { quoted } from '@/lib/units/number'
 import type { Fault } from '@/lib/problem'
-import { nearest } from '@/lib/http/nearest'
+import { nearest } from '@/lib/problem/nearest'
 
 /** Unknown keys of one place that are told one by one: no honest body has more, and a hostile one should not be answered at length. */
 const MOST_KEYS = 50

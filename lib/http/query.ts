@@ -1,6 +1,6 @@
 import type { z } from 'zod'
 import { faultsOf, knownKeys, parameterPlace } from '@/lib/http/faults'
-import { nearest } from '@/lib/http/nearest'
+import { nearest } from '@/lib/problem/nearest'
 import type { Fault } from '@/lib/problem'
 import { quoted } from '@/lib/units/number'
 
