@@ -1,22 +1,9 @@
-import { and, eq, gt, isNull, lte, or, type SQL } from 'drizzle-orm'
+import { createHash } from 'node:crypto'
+import { and, eq, gt, isNull, lte, or, sql, type SQL } from 'drizzle-orm'
 import type { AnyPgColumn } from 'drizzle-orm/pg-core'
-import { canonicalJson, canonicalSha256, type Json } from './canonical'
+import type { Json } from './canonical'
 import type { Db, Tx } from './client'
-import {
-  type EditionCounts,
-  editions,
-  hyperfineConstants,
-  hyperfineRevisions,
-  isotopeRevisions,
-  isotopes,
-  levelRevisions,
-  levels,
-  measuredG,
-  measuredGRevisions,
-  sourceRevisions,
-  species,
-  speciesRevisions,
-} from './schema'
+import { type EditionCounts, editions } from './schema'
 
 type Entity = { readonly id: string; readonly [field: string]: Json }
 
@@ -34,61 +21,65 @@ export interface EditionContent {
 export const inEdition = (t: { publishedFrom: AnyPgColumn; publishedUntil: AnyPgColumn }, edition: number): SQL | undefined =>
   and(lte(t.publishedFrom, edition), or(isNull(t.publishedUntil), gt(t.publishedUntil, edition)))
 
-const byId = (entities: Entity[]): Entity[] =>
-  entities
-    .map((entity) => ({ entity, text: canonicalJson(entity) }))
-    .sort((a, b) => (a.entity.id < b.entity.id ? -1 : a.entity.id > b.entity.id ? 1 : a.text < b.text ? -1 : 1))
-    .map(({ entity }) => entity)
+/** The same on a table called `r` in a query written out. */
+const within = (n: number): SQL => sql`r.published_from <= ${n} and (r.published_until is null or r.published_until > ${n})`
+
+/**
+ * One query for each kind, the fields in the order of their names: so the text that JSON.stringify makes of a row is its
+ * canonical one (RFC 8785), since a row is flat and its numbers are finite. The order of the kinds is that of their names too.
+ */
+const KINDS: { [kind in keyof EditionContent]: (n: number, species: readonly string[]) => SQL } = {
+  hyperfine_constants: (n) => sql`
+    select r.a_mhz, r.a_unc_mhz, r.b_mhz, r.b_unc_mhz, r.evidence, h.level_id as id, h.isotope_id as isotope, r.note, r.source
+    from hyperfine_revisions r join hyperfine_constants h on h.id = r.hyperfine_id where ${within(n)}`,
+  isotopes: (n) => sql`
+    select r.abundance_percent, r.evidence, r.g_i, r.isotope_id as id, i.mass_number, r.mass_u, r.note, r.source, i.species_id as species, r.two_i
+    from isotope_revisions r join isotopes i on i.id = r.isotope_id where ${within(n)}`,
+  levels: (n, species) => sql`
+    select r.alternative_name, r.configuration, r.core_l, r.core_two_j, r.core_two_s, r.coupling, r.energy_evidence, r.energy_invcm, r.energy_literal,
+      r.energy_source, r.energy_unc_invcm, r.g_chosen, r.g_chosen_reason, r.level_id as id, r.l, r.l_outer, r.label, r.line_checked, r.note, l.ordinal,
+      r.outer_two_j, r.parity, r.repeat_index, r.retired_reason, r.revision, r.species_id as species, r.status, r.successor, r.two_j, r.two_k, r.two_s
+    from level_revisions r join levels l on l.id = r.level_id where r.species_id = any(${sql.param(species)}) and ${within(n)}`,
+  measured_g: (n) => sql`
+    select r.evidence, g.level_id as id, r.literal, r.note, r.source, r.unc, r.value
+    from measured_g_revisions r join measured_g g on g.id = r.measured_g_id where ${within(n)}`,
+  sources: (n) => sql`
+    select r.authors, r.citation, r.doi, r.source_key as id, r.journal, r.kind, r.note, r.title, r.year
+    from source_revisions r where ${within(n)}`,
+  species: (n) => sql`
+    select r.charge, r.core_configuration, r.element, r.species_id as id, r.ionisation_energy_invcm, r.ionisation_evidence, r.ionisation_source, r.name,
+      r.note, s.ordinal, r.z
+    from species_revisions r join species s on s.id = r.species_id where ${within(n)}`,
+}
+const KIND_NAMES = Object.keys(KINDS) as (keyof EditionContent)[]
+
+/** Species whose levels are read together: a large edition passes through memory in parts. */
+const SPECIES_AT_ONCE = 20
+
+const ascending = (a: string, b: string): number => (a < b ? -1 : a > b ? 1 : 0)
+
+/**
+ * One kind's entities with their canonical texts, part by part, in the order of their ids (several values of one level in the
+ * order of their text). Levels come species by species: the dot ends a species' name before any letter, so that the whole is in order.
+ */
+async function* entitiesOf(db: Db | Tx, n: number, kind: keyof EditionContent): AsyncGenerator<{ entity: Entity; text: string }[]> {
+  const parts: (readonly string[])[] = []
+  if (kind === 'levels') {
+    const { rows } = await db.execute<{ id: string }>(sql`select id from species`)
+    const ids = rows.map(({ id }) => id).sort((a, b) => ascending(`${a}.`, `${b}.`))
+    for (let i = 0; i < ids.length; i += SPECIES_AT_ONCE) parts.push(ids.slice(i, i + SPECIES_AT_ONCE))
+  } else parts.push([])
+  for (const part of parts) {
+    const { rows } = await db.execute<Entity>(KINDS[kind](n, part))
+    yield rows.map((entity) => ({ entity, text: JSON.stringify(entity) })).sort((a, b) => ascending(a.entity.id, b.entity.id) || ascending(a.text, b.text))
+  }
+}
 
 /** Reads all that edition `n` shows, each kind in the order of its ids (several values of one level in the order of their text). */
 export async function readEditionContent(db: Db | Tx, n: number): Promise<EditionContent> {
-  const s = speciesRevisions
-  const speciesRows = await db
-    .select({
-      id: s.speciesId, ordinal: species.ordinal, name: s.name, element: s.element, z: s.z, charge: s.charge, core_configuration: s.coreConfiguration,
-      ionisation_energy_invcm: s.ionisationEnergyInvcm, ionisation_source: s.ionisationSource, ionisation_evidence: s.ionisationEvidence, note: s.note,
-    })
-    .from(s).innerJoin(species, eq(species.id, s.speciesId)).where(inEdition(s, n))
-  const i = isotopeRevisions
-  const isotopeRows = await db
-    .select({
-      id: i.isotopeId, species: isotopes.speciesId, mass_number: isotopes.massNumber, mass_u: i.massU, two_i: i.twoI, abundance_percent: i.abundancePercent,
-      g_i: i.gI, source: i.source, evidence: i.evidence, note: i.note,
-    })
-    .from(i).innerJoin(isotopes, eq(isotopes.id, i.isotopeId)).where(inEdition(i, n))
-  const o = sourceRevisions
-  const sourceRows = await db
-    .select({ id: o.sourceKey, citation: o.citation, kind: o.kind, authors: o.authors, title: o.title, journal: o.journal, year: o.year, doi: o.doi, note: o.note })
-    .from(o).where(inEdition(o, n))
-  const l = levelRevisions
-  const levelRows = await db
-    .select({
-      id: l.levelId, species: l.speciesId, ordinal: levels.ordinal, revision: l.revision, configuration: l.configuration, coupling: l.coupling, label: l.label,
-      two_s: l.twoS, l: l.l, two_j: l.twoJ, two_k: l.twoK, core_two_s: l.coreTwoS, core_l: l.coreL, core_two_j: l.coreTwoJ, l_outer: l.lOuter, outer_two_j: l.outerTwoJ,
-      parity: l.parity, repeat_index: l.repeatIndex, alternative_name: l.alternativeName, energy_invcm: l.energyInvcm, energy_unc_invcm: l.energyUncInvcm,
-      energy_literal: l.energyLiteral, energy_source: l.energySource, energy_evidence: l.energyEvidence, line_checked: l.lineChecked, note: l.note,
-      status: l.status, retired_reason: l.retiredReason, successor: l.successor, g_chosen: l.gChosen, g_chosen_reason: l.gChosenReason,
-    })
-    .from(l).innerJoin(levels, eq(levels.id, l.levelId)).where(inEdition(l, n))
-  const g = measuredGRevisions
-  const measuredRows = await db
-    .select({ id: measuredG.levelId, value: g.value, unc: g.unc, literal: g.literal, source: g.source, evidence: g.evidence, note: g.note })
-    .from(g).innerJoin(measuredG, eq(measuredG.id, g.measuredGId)).where(inEdition(g, n))
-  const h = hyperfineRevisions
-  const hyperfineRows = await db
-    .select({
-      id: hyperfineConstants.levelId, isotope: hyperfineConstants.isotopeId, a_mhz: h.aMhz, a_unc_mhz: h.aUncMhz, b_mhz: h.bMhz, b_unc_mhz: h.bUncMhz,
-      source: h.source, evidence: h.evidence, note: h.note,
-    })
-    .from(h).innerJoin(hyperfineConstants, eq(hyperfineConstants.id, h.hyperfineId)).where(inEdition(h, n))
-  return {
-    species: byId(speciesRows),
-    isotopes: byId(isotopeRows),
-    sources: byId(sourceRows),
-    levels: byId(levelRows),
-    measured_g: byId(measuredRows),
-    hyperfine_constants: byId(hyperfineRows),
-  }
+  const content: EditionContent = { species: [], isotopes: [], sources: [], levels: [], measured_g: [], hyperfine_constants: [] }
+  for (const kind of KIND_NAMES) for await (const part of entitiesOf(db, n, kind)) for (const { entity } of part) content[kind].push(entity)
+  return content
 }
 
 /** How much there is of each kind; of levels, the active ones. */
@@ -105,29 +96,58 @@ interface EditionHead {
   number: number
   label: string
   notes: string
-  counts: EditionCounts
   constants: string
+  /** As they are stored with the edition; counted anew where it has none yet. */
+  counts?: EditionCounts
 }
 
-/** SHA-256 (hexadecimal) of an edition's canonical content: what it is called, how much it holds, and all that it shows. */
-export const editionChecksum = ({ number, label, notes, counts, constants }: EditionHead, content: EditionContent): string =>
-  canonicalSha256({ number, label, notes, counts: { ...counts }, constants, content: { ...content } })
+/**
+ * The canonical text of an edition, piece by piece: one JSON object with what the edition is called, how much it holds, and all
+ * that it shows, in the one form of RFC 8785. Returns what it counted at its end.
+ */
+export async function* canonicalEdition(db: Db | Tx, { number, label, notes, constants, counts: stored }: EditionHead): AsyncGenerator<string, EditionCounts> {
+  const counts: EditionCounts = { species: 0, levels: 0, sources: 0, measured_g: 0, isotopes: 0, hyperfine_constants: 0 }
+  yield `{"constants":${JSON.stringify(constants)},"content":{`
+  for (const [at, kind] of KIND_NAMES.entries()) {
+    yield `${at === 0 ? '' : ','}"${kind}":[`
+    let begun = false
+    for await (const part of entitiesOf(db, number, kind)) {
+      if (part.length === 0) continue
+      yield `${begun ? ',' : ''}${part.map(({ text }) => text).join(',')}`
+      begun = true
+      counts[kind] += kind === 'levels' ? part.reduce((sum, { entity }) => sum + (entity.status === 'active' ? 1 : 0), 0) : part.length
+    }
+    yield ']'
+  }
+  const ordered = Object.entries(stored ?? counts).sort(([a], [b]) => ascending(a, b))
+  yield `},"counts":${JSON.stringify(Object.fromEntries(ordered))},"label":${JSON.stringify(label)},"notes":${JSON.stringify(notes)},"number":${number}}`
+  return counts
+}
+
+/** SHA-256 (hexadecimal) of an edition's canonical text, and its counts. */
+async function sumOf(db: Db | Tx, head: EditionHead): Promise<{ checksum: string; counts: EditionCounts }> {
+  const hash = createHash('sha256')
+  const parts = canonicalEdition(db, head)
+  for (;;) {
+    const { value, done } = await parts.next()
+    if (done) return { checksum: hash.digest('hex'), counts: value }
+    hash.update(value, 'utf8')
+  }
+}
 
 /** Writes the edition's row, last in its transaction, over the revisions already written for it; from then on it is sealed. */
 export async function sealEdition(
   tx: Tx,
-  edition: { number: number; label: string; notes: string; constants: string; publishedBy: string | null },
+  edition: EditionHead & { publishedBy: string | null; publisherName?: string },
 ): Promise<{ checksum: string; counts: EditionCounts }> {
-  const content = await readEditionContent(tx, edition.number)
-  const counts = countContent(content)
-  const checksum = editionChecksum({ ...edition, counts }, content)
-  await tx.insert(editions).values({ ...edition, counts, checksum })
-  return { checksum, counts }
+  const sealed = await sumOf(tx, edition)
+  await tx.insert(editions).values({ ...edition, ...sealed })
+  return sealed
 }
 
 /** Whether the stored content still is what was published: computes the checksum anew and compares. */
 export async function verifyEdition(db: Db | Tx, n: number): Promise<{ stored: string; computed: string } | null> {
   const [row] = await db.select().from(editions).where(eq(editions.number, n))
   if (row === undefined) return null
-  return { stored: row.checksum, computed: editionChecksum(row, await readEditionContent(db, n)) }
+  return { stored: row.checksum, computed: (await sumOf(db, row)).checksum }
 }

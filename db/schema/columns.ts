@@ -11,8 +11,8 @@ export const EVIDENCE = ['read', 'quoted', 'recalled', 'computed'] as const
  *
  * `publishedFrom` and `publishedUntil` are edition numbers; the row stands in the editions n with
  * publishedFrom <= n < publishedUntil (no upper end while null). A null publishedFrom is a draft: it belongs to an amendment
- * and no edition shows it. Both point at editions.number; that foreign key is deferred, so that an edition's row (with the
- * checksum of its content) may be written last, and it stands in the migration that guards published rows.
+ * and no edition shows it. Both are numbers in editions_begun, by the guards in the migrations; an edition's row (with the checksum
+ * of its content) is written last.
  */
 export const revisionColumns = () => ({
   id: bigint('id', { mode: 'number' }).primaryKey().generatedAlwaysAsIdentity(),

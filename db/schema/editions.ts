@@ -39,14 +39,19 @@ export const editionChanges = pgTable(
   'edition_changes',
   {
     sequence: bigint('sequence', { mode: 'number' }).primaryKey().generatedAlwaysAsIdentity(),
-    /** Its foreign key is deferred and stands in the migration: the edition's row is written last. */
     edition: integer('edition').notNull(),
     kind: text('kind', { enum: CHANGE_KINDS }).notNull(),
     subject: text('subject').notNull(),
     action: text('action', { enum: CHANGE_ACTIONS }).notNull(),
-    /** The amendment and change it came by. RESTRICT stands in the migration with the foreign keys: a published change is kept. */
+    /** The amendment and change it came by; a trigger sees to it that they are there and published, since published changes stay. */
     amendmentId: uuid('amendment_id').notNull(),
     changeId: uuid('change_id').notNull(),
   },
   (t) => [index('edition_changes_edition').on(t.edition, t.sequence), index('edition_changes_subject').on(t.kind, t.subject)],
 )
+
+/**
+ * Numbers that revisions enter or leave at. The guards of the revisions write here the edition being made, and the deferred
+ * foreign key (in the migration) sees at the end of the transaction that it was published: once, not once for each revision.
+ */
+export const editionsBegun = pgTable('editions_begun', { number: integer('number').primaryKey() })
