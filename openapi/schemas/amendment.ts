@@ -3,6 +3,7 @@ import { Person } from './change'
 import { Instant } from './session'
 
 export const AmendmentState = z.enum(['draft', 'in_review', 'accepted', 'published', 'withdrawn']).meta({ id: 'AmendmentState', description: 'A returned amendment is a draft again; reviews tell of the return.' })
+export type AmendmentState = z.infer<typeof AmendmentState>
 
 export const Review = z
   .strictObject({

@@ -1,0 +1,64 @@
+import { formatHalf, parseHalf, type TwoJ } from '@/lib/atomic/half'
+import { lsTerm, parseTerm, printTerm, type Term } from '@/lib/atomic/term'
+import { quoted } from '@/lib/units/number'
+import type { Coupling, Parity } from '@/openapi/schemas/common'
+import type { LevelRow } from '../rows'
+
+/** What a term symbol says of a level. Without an odd mark the parity is even: the table's symbols always carry theirs. */
+export interface LevelTerm { label: string | null; term: Term | null; twoJ: TwoJ; parity: Parity }
+type Reading = { ok: true; value: LevelTerm } | { ok: false; code: string; detail: string }
+
+const UNASSIGNED = /^(?:([A-Za-z]{1,4})\s+)?J\s*=\s*([0-9./]+)\s*([*°o]?)$/
+/** The letters before a repeated term: `z5P*2`, `a 5D4`, `y(1/2,3/2)*1`. */
+const LABELLED = /^([A-Za-z]{1,4})\s*(?=[\d([⁰¹²³⁴-⁹])(.+)$/s
+
+const REMEMBERED = 20_000
+const readings = new Map<string, Reading>()
+
+function read(text: string, coupling: Coupling): Reading {
+  const unassigned = UNASSIGNED.exec(text)
+  if (coupling === 'unassigned') {
+    if (unassigned === null) return { ok: false, code: 'term_malformed', detail: `${quoted(text)} is not how an unassigned level is named: write J=3/2, or J=3/2* where it is odd.` }
+    const j = parseHalf(unassigned[2] ?? '')
+    if (!j.ok) return j
+    return { ok: true, value: { label: unassigned[1] ?? null, term: null, twoJ: j.value, parity: unassigned[3] ? 'odd' : 'even' } }
+  }
+  if (unassigned !== null) return { ok: false, code: 'coupling_mismatch', detail: `${quoted(text)} names a level of no coupling: set coupling to unassigned, or give its ${coupling} symbol.` }
+  const labelled = LABELLED.exec(text)
+  const term = parseTerm(labelled?.[2] ?? text)
+  if (!term.ok) return { ok: false, code: term.code, detail: term.detail }
+  const { value } = term
+  if (value.kind !== coupling) return { ok: false, code: 'coupling_mismatch', detail: `${quoted(text)} is a symbol of ${value.kind} coupling, and the level is given as ${coupling}: mend the coupling or the symbol.` }
+  if (value.twoJ === null) return { ok: false, code: 'j_missing', detail: `${quoted(text)} has no J: a level's symbol ends with it, such as ${printTerm({ ...value, twoJ: value.kind === 'LS' ? Math.abs(value.twoS - 2 * value.l) : 0 }, 'ascii')}.` }
+  return { ok: true, value: { label: labelled?.[1] ?? value.label, term: value, twoJ: value.twoJ, parity: value.parity ?? 'even' } }
+}
+
+/** Reads the symbol of a level with its J, remembering it by its text. */
+export function readLevelTerm(text: string, coupling: Coupling): Reading {
+  const key = `${coupling}|${text}`
+  const known = readings.get(key)
+  if (known !== undefined) return known
+  const made = read(text, coupling)
+  if (readings.size >= REMEMBERED) readings.clear()
+  readings.set(key, made)
+  return made
+}
+
+/** The symbol of a level as a curator would write it: label, term, odd mark and J. */
+export function printLevelTerm(row: Pick<LevelRow, 'coupling' | 'label' | 'twoS' | 'l' | 'twoJ' | 'twoK' | 'coreTwoJ' | 'outerTwoJ' | 'parity'>): string {
+  const { twoJ, parity } = row
+  const label = row.label === null ? '' : `${row.label} `
+  if (row.coupling === 'LS') return label + printTerm(lsTerm(row.twoS ?? 0, row.l ?? 0, twoJ, parity), 'ascii')
+  if (row.coupling === 'J1K') return label + printTerm({ kind: 'J1K', twoK: row.twoK ?? 0, twoJ, parity, label: null }, 'ascii')
+  if (row.coupling === 'jj') return label + printTerm({ kind: 'jj', twoJ1: row.coreTwoJ ?? 0, twoJ2: row.outerTwoJ ?? 0, twoJ, parity, label: null }, 'ascii')
+  return `${label}J=${formatHalf(twoJ)}${parity === 'odd' ? '*' : ''}`
+}
+
+/** The parity of the core that an outer electron couples to: the level's, less that electron's. */
+const coreParity = (row: Pick<LevelRow, 'parity' | 'lOuter'>): Parity => (((row.parity === 'odd' ? 1 : 0) + (row.lOuter ?? 0)) % 2 === 0 ? 'even' : 'odd')
+
+/** The core's term with its J, `2P*3/2`; null where the level has none. */
+export function printCore(row: Pick<LevelRow, 'coreTwoS' | 'coreL' | 'coreTwoJ' | 'parity' | 'lOuter'>): string | null {
+  if (row.coreTwoS === null || row.coreL === null || row.coreTwoJ === null) return null
+  return printTerm(lsTerm(row.coreTwoS, row.coreL, row.coreTwoJ, row.lOuter === null ? null : coreParity(row)), 'ascii')
+}
