@@ -11,10 +11,12 @@ const rooms = {
   'lib/config': ['lib/problem'],
   openapi: ['lib/atomic', 'lib/units', 'lib/problem'],
   db: ['lib/config'],
+  'lib/mail': ['lib/config', 'openapi'],
   'lib/access': ['db', 'openapi', 'lib/problem', 'lib/entity-tag', 'lib/config'],
   'lib/catalogue': ['db', 'lib/atomic', 'lib/units', 'openapi', 'lib/problem', 'lib/config'],
   'lib/curation': ['db', 'lib/atomic', 'lib/units', 'openapi', 'lib/problem', 'lib/entity-tag', 'lib/config', 'lib/access', 'lib/catalogue'],
   'lib/prediction': ['db', 'lib/atomic', 'lib/units', 'openapi', 'lib/problem', 'lib/config', 'lib/catalogue'],
+  'lib/notices': ['db', 'lib/atomic', 'lib/units', 'openapi', 'lib/problem', 'lib/config', 'lib/access', 'lib/catalogue', 'lib/prediction', 'lib/mail', 'lib/entity-tag'],
   'lib/http': ['openapi', 'lib/access', 'lib/problem', 'lib/entity-tag', 'lib/config', 'lib/units', 'lib/atomic'],
   seeds: ['db', 'lib/atomic', 'lib/units', 'lib/problem', 'lib/config', 'lib/access', 'openapi'],
 }

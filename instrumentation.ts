@@ -3,5 +3,8 @@ export async function register(): Promise<void> {
   if (process.env.NEXT_RUNTIME === 'nodejs') {
     const { watchPeers } = await import('@/lib/http/peer')
     watchPeers()
+    if (process.env.NEXT_PHASE === 'phase-production-build') return
+    const [{ startNotices }, { processLog }, { getConfig }] = await Promise.all([import('@/lib/notices/loop'), import('@/lib/http/log'), import('@/lib/config')])
+    startNotices((reason) => processLog(getConfig().logLevel).error({ reason }, 'notices could not be spread'))
   }
 }

@@ -1,7 +1,7 @@
 // npm start: serves what prepare.mjs has put in place, and ends everything it started on a signal.
 import fs from 'node:fs'
 import path from 'node:path'
-import { checkListen, database, endServer, main, releaseDatabase, root, serve, sessionSecret } from './steps.mjs'
+import { checkListen, database, endServer, keepsMail, mailStandIn, main, releaseDatabase, root, serve, sessionSecret } from './steps.mjs'
 
 const host = process.env.HOST || '127.0.0.1'
 const port = process.env.PORT || '3000'
@@ -12,17 +12,21 @@ await main(async () => {
   const env = { ...(await database('lodeterm')), SESSION_SECRET_FILE: sessionSecret(process.env.SESSION_SECRET_FILE || '.data/session-secret') }
   let wanted = false
   let serving
+  let mail
   const end = async () => {
     if (wanted) return
     wanted = true
     if (serving) await endServer(serving.child)
+    if (mail) await endServer(mail.child)
     await releaseDatabase()
     process.exit(0)
   }
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, () => void end())
-  serving = await serve(host, port, env)
+  if (keepsMail(host)) mail = await mailStandIn(process.env.OUTBOX_FOLDER || '.data/outbox')
+  serving = await serve(host, port, { ...env, ...mail?.env })
   serving.child.once('exit', async (code) => {
     if (wanted) return
+    if (mail) await endServer(mail.child)
     await releaseDatabase()
     process.exit(code ?? 1)
   })

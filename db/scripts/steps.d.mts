@@ -26,6 +26,8 @@ export function sourcesStamp(): string
 export function isBuilt(): boolean
 export function build(): Promise<void>
 export function sessionSecret(file: string): string
+export function keepsMail(host: string): boolean
+export function mailStandIn(folder: string): Promise<{ child: ChildProcess; env: Environment }>
 export function serve(host: string, port: string, env: Environment): Promise<{ child: ChildProcess; base: string }>
 export function endServer(child: ChildProcess): Promise<void>
 export function freePort(): Promise<string>

@@ -181,6 +181,33 @@ export function sessionSecret(file) {
   return full
 }
 
+// ---- mail
+
+const LOOPBACK = /^(localhost|::1|127(\.\d{1,3}){3})$/
+const yes = (text) => /^(1|true|yes|on)$/i.test(text ?? '')
+
+/** Whether mail is kept here for want of a mail server: for a table that only this machine reaches, or one that is a demo. */
+export const keepsMail = (host) => !process.env.SMTP_URL && (LOOPBACK.test(host) || yes(process.env.DEMO))
+
+/**
+ * Starts the stand-in for a mail server on a free port of loopback; resolves to its process and what the web server has to be told.
+ * It ends with this program, whatever ends that.
+ */
+export function mailStandIn(folder) {
+  const outbox = path.resolve(root, folder)
+  const child = spawn(process.execPath, ['lib/mail/fake.mjs', outbox], { cwd: root, stdio: ['pipe', 'pipe', 2] })
+  return new Promise((resolve, reject) => {
+    let output = ''
+    child.on('error', (error) => reject(new StepError(`the stand-in for a mail server could not be run: ${error.message}`)))
+    child.once('exit', (code, signal) => reject(new StepError(`the stand-in for a mail server ended with ${signal ?? code}`)))
+    child.stdin.on('error', () => undefined)
+    child.stdout.on('data', (chunk) => {
+      output += chunk
+      if (/^\d+\n/.test(output)) resolve({ child, env: { SMTP_URL: `smtp://127.0.0.1:${output.trim()}`, OUTBOX_FOLDER: outbox } })
+    })
+  })
+}
+
 // ---- serving
 
 /** Starts the built server and resolves to its process once it answers; rejects when it ends before. */

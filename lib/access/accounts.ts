@@ -4,6 +4,7 @@ import { users } from '@/db/schema'
 import { type Acting, recordAudit } from '@/lib/access/audit'
 import type { Caller } from '@/lib/access/caller'
 import { checkPassword, hashPassword, verifyPassword } from '@/lib/access/passwords'
+import { voidResets } from '@/lib/access/resets'
 import { endOtherSessions } from '@/lib/access/sessions'
 import { beginAttempt, subjectOf, succeed } from '@/lib/access/throttle'
 import { forgetVerified } from '@/lib/access/verified'
@@ -48,6 +49,7 @@ export async function changePassword(db: Db, acting: Acting, given: { password: 
   const passwordHash = await hashPassword(given.new_password)
   await db.transaction(async (tx) => {
     await tx.update(users).set({ passwordHash, updatedAt: new Date() }).where(eq(users.id, user.id))
+    await voidResets(tx, user.id)
     if (caller.kind === 'session') await endOtherSessions(tx, user.id, caller.sessionId)
     await recordAudit(tx, acting, { action: 'password.change', subjectKind: 'user', subjectId: user.id })
   })

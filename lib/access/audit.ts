@@ -1,6 +1,6 @@
-import { and, desc, eq, lt, type SQL } from 'drizzle-orm'
+import { and, desc, eq, gte, lt, type SQL } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
-import { auditEvents, users } from '@/db/schema'
+import { apiKeys, auditEvents, users } from '@/db/schema'
 import type { Caller } from '@/lib/access/caller'
 import type { AuditEvent } from '@/openapi/schemas/audit'
 
@@ -26,7 +26,7 @@ export async function recordAudit(tx: Tx | Db, acting: Acting, entry: AuditEntry
   })
 }
 
-export interface AuditFilter { action?: string; subject_kind?: string; subject_id?: string; actor?: string }
+export interface AuditFilter { action?: string; subject_kind?: string; subject_id?: string; actor?: string; key?: string; session?: string; from?: string; until?: string }
 
 /** Newest first; `beforeId` is the last one already given. One row more than `limit` tells that there is a next page. */
 export async function listAudit(db: Db, filter: AuditFilter, beforeId: number | null, limit: number): Promise<AuditEvent[]> {
@@ -36,14 +36,18 @@ export async function listAudit(db: Db, filter: AuditFilter, beforeId: number | 
   if (filter.subject_kind !== undefined) conditions.push(eq(auditEvents.subjectKind, filter.subject_kind))
   if (filter.subject_id !== undefined) conditions.push(eq(auditEvents.subjectId, filter.subject_id))
   if (filter.actor !== undefined) conditions.push(eq(auditEvents.actorUser, filter.actor))
+  if (filter.key !== undefined) conditions.push(eq(auditEvents.actorKey, filter.key))
+  if (filter.session !== undefined) conditions.push(eq(auditEvents.actorSession, filter.session))
+  if (filter.from !== undefined) conditions.push(gte(auditEvents.at, new Date(filter.from)))
+  if (filter.until !== undefined) conditions.push(lt(auditEvents.at, new Date(filter.until)))
   const rows = await db
-    .select({ event: auditEvents, actorName: users.name })
-    .from(auditEvents).leftJoin(users, eq(users.id, auditEvents.actorUser))
+    .select({ event: auditEvents, actorName: users.name, keyName: apiKeys.name })
+    .from(auditEvents).leftJoin(users, eq(users.id, auditEvents.actorUser)).leftJoin(apiKeys, eq(apiKeys.id, auditEvents.actorKey))
     .where(and(...conditions)).orderBy(desc(auditEvents.id)).limit(limit + 1)
-  return rows.map(({ event, actorName }) => ({
+  return rows.map(({ event, actorName, keyName }) => ({
     id: event.id, at: event.at.toISOString(), action: event.action,
     actor: event.actorUser === null ? null : { id: event.actorUser, name: actorName ?? '' },
-    key: event.actorKey, session: event.actorSession,
+    key: event.actorKey, key_name: keyName, session: event.actorSession,
     subject: { kind: event.subjectKind, id: event.subjectId },
     before: event.before ?? null, after: event.after ?? null, ip: event.ip, request_id: event.requestId,
   }))

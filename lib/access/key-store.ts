@@ -1,5 +1,5 @@
-import { and, count, desc, eq, gt, isNull, lt, or, type SQL } from 'drizzle-orm'
-import type { Db } from '@/db/client'
+import { and, count, desc, eq, gt, isNull, lt, or, sql, type SQL } from 'drizzle-orm'
+import type { Db, Tx } from '@/db/client'
 import { apiKeys, users } from '@/db/schema'
 import { type Acting, recordAudit } from '@/lib/access/audit'
 import { knownCaller } from '@/lib/access/accounts'
@@ -18,7 +18,7 @@ const stateOf = (key: Row['key']): ApiKey['state'] =>
   key.revokedAt !== null ? 'revoked' : key.expiresAt !== null && key.expiresAt.getTime() <= Date.now() ? 'expired' : 'active'
 
 const shown = ({ key, owner }: Row): ApiKey => ({
-  id: key.id, name: key.name, start: key.prefix, role: key.role, owner, state: stateOf(key), created_at: key.createdAt.toISOString(),
+  id: key.id, name: key.name, start: key.prefix, role: key.role, owner, made_with: key.madeWith, state: stateOf(key), created_at: key.createdAt.toISOString(),
   expires_at: key.expiresAt?.toISOString() ?? null, revoked_at: key.revokedAt?.toISOString() ?? null, last_used_at: key.lastUsedAt?.toISOString() ?? null,
 })
 
@@ -66,31 +66,51 @@ export async function createKey(db: Db, acting: Acting, given: NewKeyRequest): P
   const minted = mintKey()
   const made = await db.transaction(async (tx) => {
     // the owner's row is locked, so that two keys made at once are counted one after the other
-    const [owner] = await tx.select({ id: users.id, name: users.name }).from(users).where(eq(users.id, caller.userId)).for('update')
+    const [owner] = await tx.select({ id: users.id, name: users.name }).from(users).where(and(eq(users.id, caller.userId), eq(users.active, true))).for('update')
     if (owner === undefined) throw missing()
+    await requireUnrevoked(tx, caller)
     const [used] = await tx.select({ number: count() }).from(apiKeys)
       .where(and(eq(apiKeys.userId, owner.id), isNull(apiKeys.revokedAt), or(isNull(apiKeys.expiresAt), gt(apiKeys.expiresAt, new Date()))))
     if ((used?.number ?? 0) >= MOST_KEYS) throw new Problem('too_many_keys', `You have ${MOST_KEYS} keys in use; revoke one first.`)
-    const [row] = await tx.insert(apiKeys).values({ userId: owner.id, createdAt: new Date(), name: given.name, prefix: minted.prefix, sha256: minted.sha256, role, expiresAt }).returning()
+    const [row] = await tx.insert(apiKeys).values({ userId: owner.id, createdAt: new Date(), name: given.name, prefix: minted.prefix, sha256: minted.sha256, role, expiresAt, madeWith: caller.kind === 'key' ? caller.keyId : null }).returning()
     if (row === undefined) throw new Error('The key was not stored')
     const key = shown({ key: row, owner })
-    await recordAudit(tx, acting, { action: 'key.create', subjectKind: 'key', subjectId: row.id, after: { name: key.name, role: key.role, expires_at: key.expires_at } })
+    await recordAudit(tx, acting, { action: 'key.create', subjectKind: 'key', subjectId: row.id, after: { name: key.name, role: key.role, expires_at: key.expires_at, made_with: key.made_with } })
     return key
   })
   return { ...made, key: minted.key }
 }
 
-/** Revokes a key at once, in every process. `check` sees the key as it is, under lock, and may refuse. Revoking twice is no error. */
+/** Whoever revokes a key holds its owner's row; after that a key that was revoked meanwhile makes no others. */
+async function requireUnrevoked(tx: Tx, caller: Caller): Promise<void> {
+  if (caller.kind !== 'key') return
+  const [own] = await tx.select({ id: apiKeys.id }).from(apiKeys).where(and(eq(apiKeys.id, caller.keyId), isNull(apiKeys.revokedAt)))
+  if (own === undefined) throw new Problem('key_revoked', 'This key was revoked; make a new one.', { headers: { 'www-authenticate': 'Bearer realm="lodeterm", error="invalid_token"' } })
+}
+
+/** A key and all that were made with it, and with those. */
+const descended = (id: string) => sql`${apiKeys.id} in (with recursive line(id) as (select ${id}::uuid union select made.id from api_keys made join line on made.made_with = line.id) select id from line)`
+
+/**
+ * Revokes a key at once, in every process, and the keys that were made with it. `check` sees the key as it is, under lock, and may
+ * refuse. Revoking twice is no error.
+ */
 export async function revokeKey(db: Db, acting: Acting, id: string, check: (key: ApiKey) => void): Promise<ApiKey> {
   const key = await db.transaction(async (tx) => {
-    const [row] = await tx.select(COLUMNS).from(apiKeys).innerJoin(users, eq(users.id, apiKeys.userId)).where(and(eq(apiKeys.id, id), visible(acting.caller))).for('update', { of: apiKeys })
+    const [named] = await tx.select({ owner: apiKeys.userId }).from(apiKeys).where(and(eq(apiKeys.id, id), visible(acting.caller)))
+    if (named === undefined) throw missing()
+    await tx.select({ id: users.id }).from(users).where(eq(users.id, named.owner)).for('update')
+    const [row] = await tx.select(COLUMNS).from(apiKeys).innerJoin(users, eq(users.id, apiKeys.userId)).where(eq(apiKeys.id, id)).for('update', { of: apiKeys })
     if (row === undefined) throw missing()
     check(shown(row))
     if (row.key.revokedAt !== null) return shown(row)
-    const [revoked] = await tx.update(apiKeys).set({ revokedAt: new Date() }).where(eq(apiKeys.id, id)).returning()
-    if (revoked === undefined) throw missing()
-    await recordAudit(tx, acting, { action: 'key.revoke', subjectKind: 'key', subjectId: id, before: { revoked_at: null }, after: { revoked_at: revoked.revokedAt?.toISOString() ?? null } })
-    return shown({ key: revoked, owner: row.owner })
+    const revokedAt = new Date()
+    const revoked = await tx.update(apiKeys).set({ revokedAt }).where(and(descended(id), isNull(apiKeys.revokedAt))).returning({ id: apiKeys.id })
+    for (const one of revoked) {
+      const along = one.id === id ? {} : { along_with: id }
+      await recordAudit(tx, acting, { action: 'key.revoke', subjectKind: 'key', subjectId: one.id, before: { revoked_at: null }, after: { revoked_at: revokedAt.toISOString(), ...along } })
+    }
+    return shown({ key: { ...row.key, revokedAt }, owner: row.owner })
   })
   forgetVerified()
   return key

@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto'
 import { eq, sql } from 'drizzle-orm'
-import type { Db } from '@/db/client'
+import type { Db, Tx } from '@/db/client'
 import { users } from '@/db/schema'
 import { type Acting, recordAudit } from '@/lib/access/audit'
 import type { Caller } from '@/lib/access/caller'
@@ -25,18 +25,27 @@ export async function signIn(db: Db, given: { email: string; password: string },
   const known = device !== null && user !== undefined && device.subject === user.id ? device.id : null
   const attempt = await beginAttempt(db, subjectOf(email, known), from.ip, known !== null)
   const fits = await verifyPassword(user?.active === true ? user.passwordHash : null, given.password)
-  if (!fits || user === undefined) throw new Problem('sign_in_refused', 'The address and the password do not belong together.', { headers: { 'www-authenticate': 'Bearer realm="lodeterm"' } })
+  if (!fits || user === undefined) throw refused()
   await succeed(db, attempt)
-  const session = await db.transaction(async (tx) => {
-    const begun = await beginSession(tx, user.id, from)
-    const caller: Caller = { kind: 'session', role: user.role, userId: user.id, sessionId: begun.id, name: user.name }
-    await recordAudit(tx, { caller, ip: from.ip, requestId: from.requestId }, { action: 'session.begin', subjectKind: 'session', subjectId: begun.id })
-    return begun
+  return db.transaction(async (tx) => {
+    // an account that was closed, or given another password, while this one was looked at, is not signed in to
+    const [now] = await tx.select().from(users).where(eq(users.id, user.id)).for('share')
+    if (now === undefined || !now.active || now.passwordHash !== user.passwordHash) throw refused()
+    return enter(tx, now, from, known ?? randomUUID())
   })
-  const token = await deviceToken(user.id, known ?? randomUUID())
+}
+
+const refused = (): Problem => new Problem('sign_in_refused', 'The address and the password do not belong together.', { headers: { 'www-authenticate': 'Bearer realm="lodeterm"' } })
+
+/** Begins a session of an account that has proved who it is: what the answer says, and the cookies that carry it. */
+export async function enter(tx: Tx, user: typeof users.$inferSelect, from: SignInFrom, device: string): Promise<{ data: SignedIn; cookies: string[]; session: string }> {
+  const begun = await beginSession(tx, user.id, from)
+  const caller: Caller = { kind: 'session', role: user.role, userId: user.id, sessionId: begun.id, name: user.name }
+  await recordAudit(tx, { caller, ip: from.ip, requestId: from.requestId }, { action: 'session.begin', subjectKind: 'session', subjectId: begun.id })
   return {
-    data: { user: { id: user.id, email: user.email, name: user.name, role: user.role }, expires_at: session.expiresAt.toISOString() },
-    cookies: [sessionCookie(session.token), deviceCookie(token)],
+    data: { user: { id: user.id, email: user.email, name: user.name, role: user.role }, expires_at: begun.expiresAt.toISOString() },
+    cookies: [sessionCookie(begun.token), deviceCookie(await deviceToken(user.id, device))],
+    session: begun.id,
   }
 }
 

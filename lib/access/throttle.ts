@@ -32,11 +32,14 @@ async function waitFor(db: Pick<Db, 'select'>, where: SQL, free: number, now: nu
 /** What attempts are counted under: the address typed, alone or with the device that has signed in to it before. */
 export const subjectOf = (email: string, device: string | null): string => (device === null ? email : `${email} on ${device}`)
 
+const throttled = (seconds: number): Problem =>
+  new Problem('sign_in_throttled', `After several failures the next attempt has to wait ${seconds} s.`, { headers: { 'retry-after': String(seconds) } })
+
 /**
  * Counts an attempt before it is judged, as failed, so that attempts side by side cannot pass together; `succeed` corrects it.
  * Throws 429 `sign_in_throttled` with Retry-After where it has to wait. `subject` is that of `subjectOf`.
  */
-export async function beginAttempt(db: Db, subject: string, ip: string, knownDevice = false): Promise<Attempt> {
+export async function beginAttempt(db: Db, subject: string, ip: string, knownDevice = false, refuse = throttled): Promise<Attempt> {
   return db.transaction(async (tx) => {
     await tx.execute(sql`select pg_advisory_xact_lock(hashtext(${subject}))`)
     const now = Date.now()
@@ -45,10 +48,7 @@ export async function beginAttempt(db: Db, subject: string, ip: string, knownDev
       // a success says nothing about other accounts tried from the address, so only failures are looked at there
       knownDevice ? 0 : await waitFor(tx, and(eq(signInAttempts.ip, ip), eq(signInAttempts.succeeded, false)) ?? sql`false`, FREE.address, now),
     )
-    if (wait > 0) {
-      const seconds = Math.ceil(wait / 1000)
-      throw new Problem('sign_in_throttled', `After several failures the next attempt has to wait ${seconds} s.`, { headers: { 'retry-after': String(seconds) } })
-    }
+    if (wait > 0) throw refuse(Math.ceil(wait / 1000))
     const [row] = await tx.insert(signInAttempts).values({ email: subject, ip, succeeded: false, at: new Date(now) }).returning({ id: signInAttempts.id })
     if (row === undefined) throw new Error('The attempt was not stored')
     return row

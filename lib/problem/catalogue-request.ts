@@ -8,6 +8,7 @@ export const REQUEST_PROBLEMS = {
   unknown_field: { status: 400, title: 'Unknown body field', explanation: 'The body carries a key that the operation does not have. Nothing is ignored in silence.', cure: 'Remove the key or use the nearest known one given in the detail.' },
   wrong_type: { status: 400, title: 'Wrong type', explanation: 'A value is of another JSON type than the contract wants, for example text where a number is meant.', cure: 'Give the type named in the detail.' },
   value_not_listed: { status: 400, title: 'Value not in the list', explanation: 'The value must be one of a few words and is not.', cure: 'Use one of the words listed in the detail, spelt exactly so.' },
+  time_malformed: { status: 400, title: 'Not a time', explanation: 'A time with zone in ISO 8601 was expected, or a day.', cure: 'Write it like 2030-01-31T12:00:00Z or 2030-01-31.' },
   number_malformed: { status: 400, title: 'Not a number', explanation: 'A decimal number was expected: digits, an optional sign, point and exponent.', cure: 'Write the number plainly, such as 589.16 or 1.2e-3, without a unit unless the parameter takes one.' },
   number_out_of_range: { status: 400, title: 'Number out of range', explanation: 'The number is outside the bounds of this parameter.', cure: 'Give a number within the bounds named in the detail.' },
   range_reversed: { status: 400, title: 'Range reversed', explanation: 'The lower bound of a window is above its upper bound, so nothing can lie inside.', cure: 'Exchange the two bounds.' },

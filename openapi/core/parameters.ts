@@ -71,6 +71,14 @@ export const flagParameter = (description: string, byDefault = false) =>
 export const textParameter = (description: string, { max = 200, example }: { max?: number; example?: string } = {}) =>
   z.string().trim().min(1).max(max).meta({ description, ...(example === undefined ? {} : { example }) })
 
+/** A time with zone, or a day, which is its first moment in UTC. Its code is `time_malformed`. */
+export const instantParameter = (description: string) =>
+  readBy((text) => {
+    const written = /^\d{4}-\d{2}-\d{2}$/.test(text) ? `${text}T00:00:00Z` : text
+    const time = z.iso.datetime({ offset: true }).safeParse(written).success ? new Date(written).getTime() : Number.NaN
+    return Number.isNaN(time) ? { ok: false, code: 'time_malformed', detail: `${quoted(text)} is no time: write it like 2030-01-31T12:00:00Z, or a day like 2030-01-31.` } : { ok: true, value: new Date(time).toISOString() }
+  }, { description, type: 'string', example: '2030-01-31' })
+
 /** One of a few words. */
 export const choiceParameter = <const T extends readonly [string, ...string[]]>(words: T, description: string, byDefault?: T[number]) => {
   const choice = z.enum(words)

@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import { defineOperation } from '@/openapi/core/define'
-import { textParameter } from '@/openapi/core/parameters'
+import { instantParameter, textParameter } from '@/openapi/core/parameters'
 import { AuditEvent } from '@/openapi/schemas/audit'
 import { Live, OpenApiDocument, Ready } from '@/openapi/schemas/health'
 
@@ -16,6 +16,10 @@ export const listAudit = defineOperation({
     subject_kind: textParameter('Only about things of this kind.', { example: 'key' }).optional(),
     subject_id: textParameter('Only about this thing.').optional(),
     actor: z.uuid().optional().meta({ description: 'Only what this person did.' }),
+    key: z.uuid().optional().meta({ description: 'Only what was done with this key.' }),
+    session: z.uuid().optional().meta({ description: 'Only what was done in this browser session.' }),
+    from: instantParameter('Only what was done at this time or later.').optional(),
+    until: instantParameter('Only what was done before this time.').optional(),
   }),
   answer: AuditEvent,
   list: true,

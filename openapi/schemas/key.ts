@@ -7,6 +7,7 @@ const KEY = {
   start: z.string().meta({ description: 'Visible start of the key, to tell keys apart.', example: 'ldt_7Gx2Qa' }),
   role: RoleName,
   owner: z.strictObject({ id: z.uuid(), name: z.string() }),
+  made_with: z.uuid().nullable().meta({ description: 'The key it was made with, which takes it along when it is revoked.' }),
   state: z.enum(['active', 'expired', 'revoked']),
   created_at: Instant,
   expires_at: Instant.nullable(),

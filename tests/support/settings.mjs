@@ -1,7 +1,7 @@
 // What a test run sets, wherever it begins: its own database, secret and demo accounts, beside those of the running table.
 import fs from 'node:fs'
 import path from 'node:path'
-import { database, freePort, migrate, root, seed, serve, sessionSecret } from '../../db/scripts/steps.mjs'
+import { database, freePort, mailStandIn, migrate, root, seed, serve, sessionSecret } from '../../db/scripts/steps.mjs'
 
 export const folder = path.join(root, '.data/test')
 export const DATABASE = 'lodeterm_test'
@@ -36,6 +36,8 @@ export async function testDatabase() {
 export async function testServer(env) {
   const port = await freePort()
   const base = `http://127.0.0.1:${port}`
-  const { child } = await serve('127.0.0.1', port, { ...env, BASE_URL: base })
+  const mail = await mailStandIn(path.join(folder, 'outbox'))
+  const { child } = await serve('127.0.0.1', port, { ...env, ...mail.env, BASE_URL: base })
+  child.once('exit', () => mail.child.kill())
   return { child, env: { ...env, BASE_URL: base, TEST_BASE_URL: base } }
 }
