@@ -16,6 +16,8 @@ export interface LevelParts {
   energyUncInvcm: number | null
   energyLiteral: string | null
   measured: MeasuredGRow[] | null
+  /** The one measured g_J was given as g_j_measured. */
+  shortG: boolean
   gChosen: number | null
 }
 export interface LevelReading { row: LevelRow | null; parts: LevelParts; findings: Finding[] }
@@ -68,7 +70,7 @@ export function readLevelValues(given: LevelValues, { atom }: { atom: Atom | nul
   const measured = readMeasured(findings, given)
   const chosen = readChosen(findings, given)
   const repeatIndex = readGivenNumber(findings, 'repeat_index', given.repeat_index, { integer: true, min: 1, max: 1000 })
-  const parts: LevelParts = { configuration, momenta, ...energy, measured, gChosen: chosen.gChosen }
+  const parts: LevelParts = { configuration, momenta, ...energy, measured, shortG: isGiven(given.g_j_measured), gChosen: chosen.gChosen }
   if (findings.errors > 0 || configuration === null || momenta === null || energy.energyInvcm === null || energySource === null || energyEvidence === null || measured === null) {
     return { row: null, parts, findings: findings.list }
   }
