@@ -40,7 +40,9 @@ function checkZero(levels: readonly UnionLevel[], works: readonly Work[]): void 
     const before = work.published?.row as LevelRow | undefined
     return before !== undefined && before.status === 'active' && before.energyInvcm === 0
   })
-  const told = removing.length > 0 ? removing : works.slice(0, 1)
+  // where there was none before, the first change that makes or moves a level says so
+  const making = works.filter(({ row, published }) => row !== null && (row as LevelRow).status === 'active' && (published?.row as LevelRow | undefined)?.energyInvcm !== (row as LevelRow).energyInvcm)
+  const told = removing.length > 0 ? removing : making.slice(0, 1)
   for (const work of told) work.findings.warning('no_zero', 'energy_invcm', 'No level of the species would lie at zero: energies are counted from the ground level.')
 }
 
