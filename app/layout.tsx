@@ -1,12 +1,15 @@
 import type { Metadata, Viewport } from 'next'
 import { HydrationBoundary } from '@tanstack/react-query'
+import { headers } from 'next/headers'
 import { Suspense } from 'react'
+import type { Account } from '@/openapi/schemas/session'
 import '@fontsource-variable/inter/wght.css'
 import '@fontsource-variable/stix-two-text/wght.css'
 import '@fontsource-variable/stix-two-text/wght-italic.css'
 import '@fontsource-variable/jetbrains-mono/wght.css'
 import './globals.css'
 import { prefetch } from './_components/data/prefetch'
+import { serverGet } from './_components/data/server-get'
 import { Footer } from './_components/shell/footer'
 import { HeaderBar } from './_components/shell/header'
 import { Providers } from './_components/shell/providers'
@@ -22,9 +25,16 @@ export const viewport: Viewport = {
   ],
 }
 
+/** Strangers, who bring no cookie, are not asked after. */
+async function isCurator(): Promise<boolean> {
+  if (!/lodeterm=/.test((await headers()).get('cookie') ?? '')) return false
+  const me = await serverGet<Account>('/me')
+  return me !== null && me.data.role_in_force !== 'reader'
+}
+
 export default async function RootLayout({ children }: { children: React.ReactNode }) {
   // Every page says which edition is in force, so the list of editions comes with the first answer.
-  const state = await prefetch([['/editions']])
+  const [state, curator] = await Promise.all([prefetch([['/editions']]), isCurator()])
   return (
     <html lang="en" suppressHydrationWarning>
       <body>
@@ -33,7 +43,7 @@ export default async function RootLayout({ children }: { children: React.ReactNo
           <HydrationBoundary state={state}>
             <header className="no-print bg-sheet">
               <Suspense fallback={<div className="h-14" />}>
-                <HeaderBar />
+                <HeaderBar curator={curator} />
               </Suspense>
               <div aria-hidden="true" className="scale-edge border-t border-rule-strong" />
             </header>

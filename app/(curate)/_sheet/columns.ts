@@ -53,7 +53,7 @@ export function withMeasuredG(values: Values, list: readonly Record<string, unkn
 
 /** A column of the first measured g_J; a level that has several shows the others beside the table. */
 const firstG = (member: 'value' | 'unc' | 'source' | 'evidence') => ({
-  fields: member === 'value' ? ['measured_g', 'g_j_measured', 'g_j'] : [SHORT_G[member] ?? member, `measured_g.${member}`],
+  fields: member === 'value' ? ['measured_g', 'g_j_measured', 'g_j', 'measured_g.0.value', 'measured_g.0.literal'] : [SHORT_G[member] ?? member, `measured_g.0.${member}`],
   read: (values: Values) => {
     const first = measuredG(values)[0]
     return first === undefined ? '' : cellText(member === 'value' ? (first.literal ?? first.value) : first[member])
@@ -100,7 +100,7 @@ export const COLUMNS: readonly SheetColumn[] = [
 export const columnById = (id: string): SheetColumn | undefined => COLUMNS.find((column) => column.id === id)
 /** The column that a finding or a difference is about. */
 export const columnOfField = (field: string | null): SheetColumn | undefined =>
-  field === null ? undefined : (COLUMNS.find((column) => column.fields.includes(field)) ?? COLUMNS.find((column) => column.fields.some((name) => field.startsWith(`${name}.`) || field.startsWith(`${name}/`) || field.startsWith(`${name}[`))))
+  field === null ? undefined : (COLUMNS.find((column) => column.fields.includes(field)) ?? COLUMNS.find((column) => column.fields.some((name) => field.startsWith(`${name}.`))))
 
 const FIELD_WORDS: Record<string, string> = {
   energy_literal: 'Energy as printed', energy_invcm: 'Energy', measured_g: 'Measured g', g_j_measured: 'Measured g', status: 'State',

@@ -44,14 +44,10 @@ export class Sheet {
   #order: string[] = []
   readonly #rows = new Map<string, SheetRow>()
   #history: History<ChangeState | null> = emptyHistory()
-  #view: SheetView
+  #view: SheetView = { order: [], rows: new Map(), canUndo: null, canRedo: null }
   readonly #listeners = new Set<() => void>()
   #made = 0
   #held = 0
-
-  constructor() {
-    this.#view = this.#look()
-  }
 
   readonly subscribe = (listener: () => void): (() => void) => {
     this.#listeners.add(listener)
@@ -66,7 +62,10 @@ export class Sheet {
   }
 
   #look(): SheetView {
-    return { order: [...this.#order], rows: new Map(this.#rows), canUndo: this.#history.done.at(-1)?.label ?? null, canRedo: this.#history.undone.at(-1)?.label ?? null }
+    const order = this.#order.filter((key) => this.#rows.get(key)?.gone !== true)
+    // the same list as long as no row comes or goes, so that what is drawn from it stands still while one types
+    const same = order.length === this.#view.order.length && order.every((key, at) => key === this.#view.order[at])
+    return { order: same ? this.#view.order : order, rows: new Map(this.#rows), canUndo: this.#history.done.at(-1)?.label ?? null, canRedo: this.#history.undone.at(-1)?.label ?? null }
   }
   /** Several changes told of as one. */
   together(work: () => void): void {
@@ -167,9 +166,10 @@ export class Sheet {
   set(wanted: Wanted): void {
     for (const [key, state] of wanted) {
       const row = this.#rows.get(key)
-      if (row === undefined || row.save === 'conflict') continue
+      if (row === undefined) continue
       const next: SheetRow = { ...row, wanted: state, gone: row.gone && state === null }
-      const quiet = row.save === 'saving' ? 'saving' : isDirty(next) ? 'waiting' : 'saved'
+      // what is typed while two versions wait for a choice is kept as mine
+      const quiet = row.save === 'saving' || row.save === 'conflict' ? row.save : isDirty(next) ? 'waiting' : 'saved'
       this.#rows.set(key, { ...next, save: quiet, problem: null })
     }
     this.#tell()

@@ -21,6 +21,8 @@ const READS: readonly { path: RegExp; open: () => Promise<{ GET: Handler }> }[] 
   { path: /^\/transitions\/[^/]+$/, open: () => import('@/app/api/v1/transitions/[transition]/route') },
   { path: /^\/transitions\/[^/]+\/components$/, open: () => import('@/app/api/v1/transitions/[transition]/components/route') },
   { path: /^\/me$/, open: () => import('@/app/api/v1/me/route') },
+  { path: /^\/amendments$/, open: () => import('@/app/api/v1/amendments/route') },
+  { path: /^\/amendments\/[^/]+$/, open: () => import('@/app/api/v1/amendments/[id]/route') },
 ]
 
 /** What a visitor's request says about who they are and where they come from; nothing else of it concerns the API. */

@@ -7,11 +7,12 @@ import { Mark } from './mark'
 import { SearchBox } from './search-box'
 import { ThemeSwitch } from './theme-switch'
 
-const ROOMS = [
-  { href: '/', label: 'Find', is: (path: string) => path === '/' || path.startsWith('/levels') || path.startsWith('/species') || path.startsWith('/sources') },
-  { href: '/lines', label: 'Lines', is: (path: string) => path.startsWith('/lines') },
-  { href: '/editions', label: 'Editions', is: (path: string) => path.startsWith('/editions') },
-  { href: '/api-docs', label: 'API', is: (path: string) => path.startsWith('/api-docs') || path.startsWith('/problems') },
+const ROOMS: readonly { href: string; label: string; curators?: boolean; is: (path: string) => boolean }[] = [
+  { href: '/', label: 'Find', is: (path) => path === '/' || path.startsWith('/levels') || path.startsWith('/species') || path.startsWith('/sources') },
+  { href: '/lines', label: 'Lines', is: (path) => path.startsWith('/lines') },
+  { href: '/editions', label: 'Editions', is: (path) => path.startsWith('/editions') },
+  { href: '/curate', label: 'Curate', curators: true, is: (path) => path.startsWith('/curate') },
+  { href: '/api-docs', label: 'API', is: (path) => path.startsWith('/api-docs') || path.startsWith('/problems') },
 ]
 
 /** The edition that every number on the page comes from; pinned ones can be let go. */
@@ -32,7 +33,8 @@ function EditionMark() {
   )
 }
 
-export function HeaderBar() {
+/** `curator`: whether who looks may work on amendments; others find no room there. */
+export function HeaderBar({ curator = false }: { curator?: boolean }) {
   const path = usePathname()
   return (
     <div className="page flex flex-wrap items-center gap-x-5 gap-y-1 pt-2.5 pb-1.5 lg:flex-nowrap">
@@ -42,7 +44,7 @@ export function HeaderBar() {
       </Link>
       <nav aria-label="Main" className="order-3 -mx-2 w-full lg:order-2 lg:w-auto">
         <ul className="flex">
-          {ROOMS.map((room) => {
+          {ROOMS.filter((room) => curator || room.curators !== true).map((room) => {
             const here = room.is(path)
             return (
               <li key={room.href}>

@@ -83,7 +83,7 @@ describe('columns', () => {
     expect(column('g').write({ g_j_measured: 1.5 }, '')).toEqual({ measured_g: null })
   })
   it('findings find their column', () => {
-    expect([columnOfField('energy_unc_invcm')?.id, columnOfField('measured_g/0/value')?.id, columnOfField(null), columnOfField('status')]).toEqual(['energy_unc', 'g', undefined, undefined])
+    expect(['energy_unc_invcm', 'measured_g.0.value', 'measured_g.0.unc', 'measured_g.1.unc', null, 'status'].map((field) => columnOfField(field)?.id)).toEqual(['energy_unc', 'g', 'g_unc', 'g', undefined, undefined])
   })
 })
 

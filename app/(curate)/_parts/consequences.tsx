@@ -1,0 +1,56 @@
+'use client'
+import Link from 'next/link'
+import type { Consequences, LineConsequence } from '@/openapi/schemas/change'
+import { DataTable, type Column } from '../../_components/data-table'
+import { linePage } from '../../_components/names'
+import { fixed, plural, significant } from '../../_components/number'
+
+const EFFECT: Record<LineConsequence['effect'], string> = { moved: 'moves', g_changed: 'g changes', new: 'new line', gone: 'no longer there' }
+
+/** In words: how many lines do what. */
+export function consequencesText({ counts, edition }: Consequences): string {
+  const parts = [
+    counts.moved > 0 ? `${plural(counts.moved, 'line')} ${counts.moved === 1 ? 'moves' : 'move'}` : '',
+    counts.g_changed > 0 ? `${plural(counts.g_changed, 'line')} ${counts.g_changed === 1 ? 'has' : 'have'} another g only` : '',
+    counts.new > 0 ? `${plural(counts.new, 'line')} ${counts.new === 1 ? 'is' : 'are'} new` : '',
+    counts.gone > 0 ? `${plural(counts.gone, 'line')} ${counts.gone === 1 ? 'goes' : 'go'} away` : '',
+  ].filter((part) => part !== '')
+  return parts.length === 0 ? `No line of edition ${edition} moves, and no effective g changes.` : `${parts.join(', ')}, against edition ${edition}.`
+}
+
+const shift = (value: number | null, digits = 3) => (value === null ? null : `${value > 0 ? '+' : ''}${significant(value, digits)}`)
+const arrow = (before: string | null, after: string | null) => (
+  <span className="num whitespace-nowrap">
+    {before ?? <span className="text-muted">none</span>} <span aria-label="to">→</span> {after ?? <span className="text-muted">none</span>}
+  </span>
+)
+const wavelength = (value: number | null): string | null => (value === null ? null : fixed(value, value < 30_000 ? 5 : 2))
+const g = (value: number | null): string | null => (value === null ? null : fixed(value, 5))
+
+const COLUMNS: Column<LineConsequence>[] = [
+  {
+    name: 'transition', header: 'Line', rowHeader: true, value: (line) => line.transition, sort: true,
+    cell: (line) => (line.effect === 'new' ? <code className="text-xs">{line.transition}</code> : <Link className="link" href={linePage(line.transition)} prefetch={false}><code className="text-xs">{line.transition}</code></Link>),
+  },
+  { name: 'effect', header: 'Effect', value: (line) => EFFECT[line.effect], sort: true },
+  { name: 'wavelength_before_nm', header: 'Before', only: 'copy', value: (line) => line.wavelength_before_nm },
+  { name: 'wavelength_after_nm', header: 'Wavelength, nm', value: (line) => line.wavelength_after_nm, sort: true, cell: (line) => arrow(wavelength(line.wavelength_before_nm), wavelength(line.wavelength_after_nm)) },
+  { name: 'shift_pm', header: 'Shift, pm', align: 'right', value: (line) => line.shift_pm, sort: (line) => (line.shift_pm === null ? null : Math.abs(line.shift_pm)), cell: (line) => <span className="num">{shift(line.shift_pm) ?? ''}</span> },
+  { name: 'shift_invcm', header: <>Shift, cm<sup>−1</sup></>, align: 'right', value: (line) => line.shift_invcm, cell: (line) => <span className="num">{shift(line.shift_invcm) ?? ''}</span> },
+  { name: 'g_eff_before', header: 'g before', only: 'copy', value: (line) => line.g_eff_before },
+  {
+    name: 'g_eff_after', header: <>g<sub>eff</sub></>, value: (line) => line.g_eff_after,
+    cell: (line) => (g(line.g_eff_before) === g(line.g_eff_after) ? <span className="num text-muted">{g(line.g_eff_after) ?? ''}</span> : arrow(g(line.g_eff_before), g(line.g_eff_after))),
+  },
+]
+
+/** The lines that a change moves, from where to where. */
+export function ConsequencesView({ consequences, caption }: { consequences: Consequences; caption: string }) {
+  const { lines, complete } = consequences
+  return (
+    <div>
+      <p className="mb-2 text-sm">{consequencesText(consequences)}</p>
+      {lines.length === 0 ? null : <DataTable columns={COLUMNS} rows={lines} rowKey={(line) => `${line.transition} ${line.kind}`} caption={caption} hideCaption summary={complete ? undefined : `the ${lines.length} that move most`} />}
+    </div>
+  )
+}
