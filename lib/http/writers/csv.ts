@@ -1,17 +1,9 @@
 import type { Column, Table } from '@/lib/http/writers/table'
+import { escapeText, unescapeText } from '@/openapi/core/cell-text'
 
-const FORMULA = /^[=+\-@\t\r]/
-const ESCAPED = /^'['=+\-@\t\r]/
+export { escapeText, unescapeText }
+
 const NEEDS_QUOTES = /[",\r\n]/
-
-/**
- * Text that a spreadsheet would run as a formula (it begins with = + - @ tab or CR) gets an apostrophe before it, and an
- * apostrophe that stands first is doubled, so that `unescapeText` undoes exactly this. Text cells only: negative numbers stay numbers.
- */
-export const escapeText = (text: string): string => (text.startsWith("'") || FORMULA.test(text) ? `'${text}` : text)
-
-/** The inverse of `escapeText`, for import. */
-export const unescapeText = (text: string): string => (ESCAPED.test(text) ? text.slice(1) : text)
 
 const quote = (text: string): string => (text === '' || NEEDS_QUOTES.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
 

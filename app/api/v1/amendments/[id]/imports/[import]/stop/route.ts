@@ -1,0 +1,8 @@
+import { endpoint, resource } from '@/app/api/endpoint'
+import { getDb } from '@/db/client'
+import { stopImport } from '@/lib/curation/import'
+import * as operations from '@/openapi/operations/imports'
+
+export const { GET, HEAD, OPTIONS, POST, PUT, PATCH, DELETE } = resource(
+  endpoint(operations.stopImport, async ({ params }) => ({ data: await stopImport(getDb(), params.id, params.import) })),
+)

@@ -1,0 +1,77 @@
+import { sql } from 'drizzle-orm'
+import type { Tx } from '@/db/client'
+import type { Finding } from '@/openapi/schemas/change'
+import { type AmendmentRow, insertChanges, noteEdit, type PreparedChange, recordAuthors, reserveOrdinals, storable } from '../editing'
+import type { LoadedGround } from './ground'
+import { type PlannedRow, renamed, type RowChange, type Steps, turn } from './plan'
+
+interface Target { amendment: AmendmentRow; author: string; importId: string; ground: LoadedGround; others: ReadonlyMap<string, { row: unknown; findings: Finding[] }> }
+type Making = PlannedRow & { change: RowChange }
+
+const BATCH = 1000
+
+/** Gives new levels their ordinals, in the order of the file; by row, what each is called. Species in one order, so that two imports never wait for each other. */
+async function nameNewLevels(tx: Tx, making: readonly Making[]): Promise<Map<number, string>> {
+  const bySpecies = new Map<string, Making[]>()
+  for (const one of making) if (one.change.known === null) bySpecies.set(one.change.speciesId, [...(bySpecies.get(one.change.speciesId) ?? []), one])
+  const names = new Map<number, string>()
+  for (const species of [...bySpecies.keys()].sort()) {
+    const rows = bySpecies.get(species) ?? []
+    let next = await reserveOrdinals(tx, species, rows.length)
+    for (const { row } of rows) names.set(row, `${species}.${next++}`)
+  }
+  return names
+}
+
+/** Takes out changes whose rows say what is published. */
+async function takeOut(tx: Tx, rows: readonly PlannedRow[]): Promise<boolean> {
+  const ids = rows.flatMap((one) => (one.takeOut === null ? [] : [one.takeOut]))
+  if (ids.length > 0) await tx.execute(sql`delete from amendment_changes where id in (select jsonb_array_elements_text(${JSON.stringify(ids)}::jsonb)::uuid)`)
+  return ids.length > 0
+}
+
+/** What is found anew about changes that were there before. */
+async function storeOtherFindings(tx: Tx, { ground, others }: Target): Promise<void> {
+  const moved = ground.own.flatMap(({ id, findings }) => {
+    const now = others.get(id)?.findings
+    return now === undefined || JSON.stringify(now) === JSON.stringify(findings) ? [] : [{ id, findings: now, errors: now.filter((one) => one.severity === 'error').length, warnings: now.filter((one) => one.severity === 'warning').length }]
+  })
+  for (let from = 0; from < moved.length; from += BATCH) {
+    await tx.execute(sql`update amendment_changes c set findings = r.findings, errors = r.errors, warnings = r.warnings
+      from jsonb_to_recordset(${storable(moved.slice(from, from + BATCH))}::jsonb) as r (id uuid, findings jsonb, errors int, warnings int) where c.id = r.id`)
+  }
+}
+
+/**
+ * Writes what the rows make of the amendment, and raises its version; null where they make nothing. The rows get the levels that were
+ * made for them. To be called with the amendment's row locked.
+ */
+export async function writePlan(tx: Tx, target: Target, rows: readonly PlannedRow[], steps: Steps): Promise<AmendmentRow | null> {
+  const { amendment, author, importId, ground } = target
+  const making = rows.filter((one): one is Making => one.change !== null)
+  const takes = await takeOut(tx, rows)
+  if (making.length === 0 && !takes) return null
+  const comments = new Map(ground.own.map(({ id, comment }) => [id, comment]))
+  const names = await nameNewLevels(tx, making)
+  const nameOf = (row: number): string => names.get(row) ?? `row ${row}`
+  for (let from = 0; from < making.length; from += BATCH) {
+    steps.tell(from / making.length)
+    await turn(steps)
+    const prepared = making.slice(from, from + BATCH).map((planned): PreparedChange => {
+      const { row, change } = planned
+      const { known } = change
+      const subject = known?.id ?? nameOf(row)
+      const findings = renamed(change.findings, nameOf)
+      Object.assign(planned, { level: subject, findings })
+      return {
+        kind: 'level', action: known === null || known.published === null ? 'create' : 'replace', subject, speciesId: change.speciesId, given: change.given, row: change.row, findings,
+        reason: null, successor: null, comment: known === null || known.changeId === null ? null : (comments.get(known.changeId) ?? null),
+        baseRevision: ground.table.levels.get(subject)?.revision ?? null, importId, importRow: row,
+      }
+    })
+    await insertChanges(tx, amendment.id, author, prepared)
+  }
+  await storeOtherFindings(tx, target)
+  await recordAuthors(tx, amendment.id, author)
+  return noteEdit(tx, amendment, author)
+}
