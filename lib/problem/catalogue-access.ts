@@ -17,8 +17,6 @@ export const ACCESS_PROBLEMS = {
   expiry_beyond_own: { status: 403, title: 'Expiry beyond your own', explanation: 'A key made with another key cannot outlive it.', cure: 'Give an expiry no later than that of the key you are using, or make the key in the browser.' },
   too_many_keys: { status: 409, title: 'Too many keys', explanation: 'An account can have a hundred keys in use at once.', cure: 'Revoke those that are no longer needed.' },
   key_not_found: { status: 404, title: 'No such key', explanation: 'You have no key of this identifier.', cure: 'GET /keys lists yours.' },
-  amendment_unknown: { status: 404, title: 'No such amendment', explanation: 'There is no amendment of this identifier.', cure: 'GET /amendments lists them.' },
-  not_the_author: { status: 403, title: 'Not your amendment', explanation: 'Only its author or an admin may change a draft.', cure: 'Ask the author, or make an amendment of your own.' },
   password_too_short: { status: 422, title: 'Password too short', explanation: 'A password has at least 8 characters.', cure: 'Choose a longer one; a few words together are good.' },
   password_too_long: { status: 422, title: 'Password too long', explanation: 'A password has at most 128 characters.', cure: 'Choose a shorter one.' },
   password_common: { status: 422, title: 'Password too common', explanation: 'The password is among those that are tried first by anyone who guesses.', cure: 'Choose another; a few unrelated words together are good.' },

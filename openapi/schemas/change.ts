@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { checkRequest } from '@/openapi/core/change-request'
 import { Coupling, Evidence, LevelId, SpeciesId, TransitionId } from './common'
 import { Instant } from './session'
 
@@ -73,20 +74,23 @@ export const VALUES = { level: LevelValues, source: SourceValues, species: Speci
 export type Values = LevelValues | SourceValues | SpeciesValues | IsotopeValues | HyperfineValues
 const AnyValues = z.union([LevelValues, SourceValues, SpeciesValues, IsotopeValues, HyperfineValues])
 
+const REQUEST = {
+  kind: ChangeKind.optional().meta({ description: 'level where it is left out.' }),
+  action: ChangeAction,
+  species: SpeciesId.optional(),
+  level: LevelId.optional(),
+  source: z.string().regex(/^[a-z0-9]+(-[a-z0-9]+)*$/).max(100).optional().meta({ description: 'Key of the source: small letters, digits, hyphens.', example: 'kramida-2019-zn' }),
+  mass_number: z.int().min(1).max(400).optional(),
+  values: z.record(z.string(), z.unknown()).optional().meta({ description: 'LevelValues, SourceValues, SpeciesValues, IsotopeValues or HyperfineValues, by kind. Not for retire.' }),
+  reason: text.meta({ description: 'Why; a level is retired with a reason.' }),
+  successor: LevelId.nullish().meta({ description: 'The level that takes the place of a retired one.' }),
+  comment: text.meta({ description: 'Why a warning is no ground to hold the change back.' }),
+}
+
 /** Which members name the subject: level {species} to create and {level} else; source {source}; species {species}; isotope {species, mass_number}; hyperfine {level, mass_number}. */
 export const ChangeRequest = z
-  .strictObject({
-    kind: ChangeKind.optional().meta({ description: 'level where it is left out.' }),
-    action: ChangeAction,
-    species: SpeciesId.optional(),
-    level: LevelId.optional(),
-    source: z.string().regex(/^[a-z0-9]+(-[a-z0-9]+)*$/).max(100).optional().meta({ description: 'Key of the source: small letters, digits, hyphens.', example: 'kramida-2019-zn' }),
-    mass_number: z.int().min(1).max(400).optional(),
-    values: z.record(z.string(), z.unknown()).optional().meta({ description: 'LevelValues, SourceValues, SpeciesValues, IsotopeValues or HyperfineValues, by kind. Not for retire.' }),
-    reason: text.meta({ description: 'Why; a level is retired with a reason.' }),
-    successor: LevelId.nullish().meta({ description: 'The level that takes the place of a retired one.' }),
-    comment: text.meta({ description: 'Why a warning is no ground to hold the change back.' }),
-  })
+  .strictObject(REQUEST)
+  .superRefine((request, context) => checkRequest(request, VALUES, context))
   .meta({ id: 'ChangeRequest', example: { action: 'replace', level: 'Na-I.3', values: { configuration: '3p', coupling: 'LS', term: '2P*3/2', energy_literal: '16973.36619', energy_unc_invcm: null, energy_source: 'sansonetti-2008-na', energy_evidence: 'quoted' }, comment: 'Digits checked against the printed table.' } })
 export type ChangeRequest = z.infer<typeof ChangeRequest>
 
@@ -166,7 +170,13 @@ export const AmendmentChangeDetail = z
 export type AmendmentChangeDetail = z.infer<typeof AmendmentChangeDetail>
 
 /** One of several changes written or checked together: with `change` an existing one is replaced, whose `etag` must still hold. */
-export const BatchItem = z.strictObject({ ...ChangeRequest.shape, change: z.uuid().optional(), etag: z.string().max(100).optional() }).meta({ id: 'BatchItem' })
+export const BatchItem = z
+  .strictObject({ ...REQUEST, change: z.uuid().optional(), etag: z.string().max(100).optional() })
+  .superRefine((request, context) => {
+    checkRequest(request, VALUES, context)
+    if ((request.change === undefined) !== (request.etag === undefined)) context.addIssue({ code: 'custom', path: [request.change === undefined ? 'change' : 'etag'], message: 'change and etag go together: the change that is edited, and its etag as last read.', params: { code: 'missing_field' } })
+  })
+  .meta({ id: 'BatchItem' })
 export type BatchItem = z.infer<typeof BatchItem>
 export const ChangeBatch = z
   .strictObject({ changes: z.array(BatchItem).min(1).max(1000), remove: z.array(z.strictObject({ change: z.uuid(), etag: z.string().max(100) })).max(1000).optional() })

@@ -1,8 +1,8 @@
 import { actingOf, addressOf } from '@/app/api/acting'
+import { amendmentAnswer } from '@/app/api/amendments'
 import { endpoint, resource } from '@/app/api/endpoint'
 import { getDb } from '@/db/client'
-import { amendmentVersion, createAmendment, listAmendments } from '@/lib/curation/drafts'
-import { entityTag } from '@/lib/entity-tag'
+import { createAmendment, listAmendments } from '@/lib/curation/amendments'
 import { pageOf } from '@/lib/http/pages'
 import * as operations from '@/openapi/operations/amendments'
 
@@ -11,6 +11,6 @@ export const { GET, HEAD, OPTIONS, POST, PUT, PATCH, DELETE } = resource(
     pageOf(await listAmendments(getDb(), query, after, query.limit), query.limit, (amendment) => [amendment.created_at, amendment.id])),
   endpoint(operations.createAmendment, async (call) => {
     const data = await createAmendment(getDb(), actingOf(call), call.body)
-    return { data, etag: entityTag(...amendmentVersion(data)), headers: { location: addressOf(`/amendments/${data.id}`) } }
+    return amendmentAnswer(data, { location: addressOf(`/amendments/${data.id}`) })
   }),
 )
