@@ -105,7 +105,7 @@ function without(whole: unknown, at: readonly (string | number)[]): unknown {
 
 const resolve = (schema: Schema): Schema => (typeof schema.$ref === 'string' ? (document.components.schemas[schema.$ref.split('/').at(-1) ?? ''] as Schema) : schema)
 
-describe.each(documented.filter((one) => one.operation.requestBody !== undefined))('the body of $method $path', (one) => {
+describe.each(documented.filter((one) => one.operation.requestBody?.content['application/json'] !== undefined))('the body of $method $path', (one) => {
   const baseline = baselineOf(one)
   const json = { ...baseline.headers, 'content-type': 'application/json' }
 
@@ -130,6 +130,36 @@ describe.each(documented.filter((one) => one.operation.requestBody !== undefined
         const reply = await ask(one.method, addressOf(one.path, baseline), withCredentials(one, { headers: baseline.headers, body }))
         expect(reply.status, `${JSON.stringify(at)}: ${JSON.stringify(body).slice(0, 200)} -> ${reply.text.slice(0, 200)}`).toBeLessThan(500)
       }
+    }
+  })
+})
+
+describe.each(documented.filter((one) => one.operation.requestBody?.content['multipart/form-data'] !== undefined))('the form of $method $path', (one) => {
+  const baseline = baselineOf(one)
+  const boundary = { ...baseline.headers, 'content-type': 'multipart/form-data; boundary=x' }
+  const file = 'Content-Disposition: form-data; name="file"; filename="a.csv"'
+
+  it('refuses what is no form, is cut short, too large, or has no boundary', async () => {
+    for (const raw of ['', '{}', '--x', '--x--', '--x\r\n\r\n--x--', `--x\r\n${file}`, `--x\r\n${file}\r\n\r\nabc`, `--x\r\nno field\r\n\r\na\r\n--x--`, `--y\r\n${file}\r\n\r\na\r\n--y--`]) await refused(one, baseline, raw, { raw, headers: boundary })
+    for (const type of ['multipart/form-data', 'multipart/mixed; boundary=x', 'application/json', 'text/csv']) await refused(one, baseline, type, { raw: '--x--', headers: { ...baseline.headers, 'content-type': type } })
+    await refused(one, baseline, 'large', { raw: Buffer.alloc(70 * 1_048_576, 'a'), headers: boundary })
+  })
+
+  it('refuses unknown and repeated parts, and parts that cannot mean anything', async () => {
+    await refused(one, { ...baseline, form: { ...baseline.form, surely_unknown: '1' } }, 'unknown part')
+    for (const name of Object.keys((resolve(one.operation.requestBody?.content['multipart/form-data']?.schema as Schema).properties ?? {}) as object).filter((key) => key !== 'file')) {
+      for (const text of ['a\u0000b', '\u2603', 'x'.repeat(300_000), '{"a":', '[]', '{"a":1}']) {
+        const { raw, headers } = sendingOf({ ...baseline, form: { ...baseline.form, [name]: text } })
+        const reply = await ask(one.method, addressOf(one.path, baseline), withCredentials(one, { raw, headers }))
+        expect(reply.status, `${name}=${text.slice(0, 40)}`).toBeLessThan(500)
+      }
+    }
+  })
+
+  it('never fails, whatever the file holds', async () => {
+    for (const content of ['', '\u0000', '"', '\ufeff', ',,,\n,,', 'id\n"', `${'a,'.repeat(5000)}\n1`, '__proto__,constructor\n1,2', '\ud800']) {
+      const reply = await ask(one.method, addressOf(one.path, baseline), withCredentials(one, sendingOf({ ...baseline, form: { ...baseline.form, file: content } })))
+      expect(reply.status, JSON.stringify(content.slice(0, 40))).toBeLessThan(500)
     }
   })
 })

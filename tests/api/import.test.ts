@@ -1,7 +1,8 @@
 import { parse } from 'csv-parse/sync'
 import { beforeAll, describe, expect, it } from 'vitest'
 import { ask, get } from './helpers/client'
-import { formOf, importFile, newAmendment, reportOf } from './helpers/import'
+import { formOf } from './helpers/form'
+import { importFile, newAmendment, reportOf } from './helpers/import'
 import { makeKey } from './helpers/people'
 
 let key = ''
@@ -73,7 +74,7 @@ describe('a changed row', () => {
 
     // the edition's own row takes the change out again
     const back = (await importFile(key, amendment, tableOf(rowOf('Na-I.3')))).json.data
-    expect(back.counts).toEqual({ ...SAME, changed: 1 })
+    expect(back.counts).toEqual({ ...SAME, changed: 1, same: 0 })
     expect((await get(`/amendments/${amendment}`, { key })).json.data.counts.changes).toBe(0)
   })
 
@@ -105,11 +106,11 @@ describe('a file with a row in error', () => {
     const good = rowOf('Na-I.2', { note: 'good' })
     const bad = rowOf('Na-I.3', { energy_unc_invcm: '-1' })
     const contradicting = rowOf('Na-I.4', { j: '7.5' })
-    const reply = (await importFile(key, amendment, tableOf(good, bad, contradicting, rowOf('Na-I.3'), ['Na-I.5', 'Na-I']))).json.data
-    expect([reply.state, reply.counts]).toEqual(['refused', { ...SAME, changed: 1, same: 0, error: 4 }])
-    expect(reply.summary).toContain('4 rows have errors')
+    const reply = (await importFile(key, amendment, tableOf(good, bad, contradicting, rowOf('Na-I.6'), rowOf('Na-I.6', { note: 'again' }), ['Na-I.5', 'Na-I']))).json.data
+    expect([reply.state, reply.counts]).toEqual(['refused', { ...SAME, changed: 1, same: 0, error: 5 }])
+    expect(reply.summary).toContain('5 rows have errors')
     const report = await reportOf(key, amendment, reply.id, 'error')
-    expect(report.map(({ row, findings }) => [row, findings.map((one) => one.code)])).toEqual([[3, expect.arrayContaining(['uncertainty_negative', 'row_repeated'])], [4, ['column_contradicts', 'column_contradicts'].slice(0, report[1]?.findings.length)], [5, ['row_repeated']], [6, ['row_length']]])
+    expect(report.map(({ row, findings }) => [row, [...new Set(findings.map((one) => one.code))]])).toEqual([[3, ['uncertainty_negative']], [4, ['column_contradicts']], [5, ['row_repeated']], [6, ['row_repeated']], [7, ['row_length']]])
     const after = (await get(`/amendments/${amendment}`, { key })).json.data
     expect([after.version, after.counts.changes]).toEqual([1, 0])
   })

@@ -1,14 +1,7 @@
 import { ask, get, type Reply } from './client'
+import { formOf } from './form'
 
 export interface Upload { mapping?: unknown; defaults?: unknown; encoding?: string; delimiter?: string; decimal?: string }
-
-/** A multipart body of a file and the fields beside it. */
-export function formOf(file: string | Buffer, fields: Record<string, string> = {}, name = 'levels.csv'): { raw: Buffer; headers: Record<string, string> } {
-  const boundary = `lodeterm-${Math.random().toString(36).slice(2)}`
-  const parts = Object.entries(fields).map(([key, value]) => Buffer.from(`--${boundary}\r\nContent-Disposition: form-data; name="${key}"\r\n\r\n${value}\r\n`))
-  const head = Buffer.from(`--${boundary}\r\nContent-Disposition: form-data; name="file"; filename="${name}"\r\nContent-Type: text/csv\r\n\r\n`)
-  return { raw: Buffer.concat([...parts, head, Buffer.from(file), Buffer.from(`\r\n--${boundary}--\r\n`)]), headers: { 'content-type': `multipart/form-data; boundary=${boundary}` } }
-}
 
 export async function newAmendment(key: string, title = 'Import of a table'): Promise<string> {
   const reply = await ask('post', '/amendments', { key, body: { title } })

@@ -1,8 +1,9 @@
 import { type Documented, type ParameterDoc } from './conformance'
 import type { Sending } from './client'
+import { formOf } from './form'
 
 /** A request that an operation understands, made from the examples in the document. */
-export interface Baseline { path: Record<string, string>; query: [string, string][]; body: unknown; headers: Record<string, string> }
+export interface Baseline { path: Record<string, string>; query: [string, string][]; body: unknown; form: Record<string, string> | null; headers: Record<string, string> }
 
 const exampleOf = (parameter: ParameterDoc): unknown => parameter.example ?? parameter.schema.example
 
@@ -19,10 +20,11 @@ export function baselineOf({ operation }: Documented): Baseline {
     } else if (parameter.in === 'query' && parameter.example !== undefined) for (const text of textsOf(example)) query.push([parameter.name, text])
     else if (parameter.in === 'query' && parameter.required === true) throw new Error(`${operation.operationId}: ${parameter.name} is required and has no example in the document`)
   }
-  const content = operation.requestBody?.content['application/json']
+  const multipart = operation.requestBody?.content['multipart/form-data']
+  const content = multipart ?? operation.requestBody?.content['application/json']
   if (operation.requestBody !== undefined && content?.example === undefined) throw new Error(`${operation.operationId}: its body has no example in the document`)
   const needsTag = (operation.parameters ?? []).some((parameter) => parameter.name === 'If-Match')
-  return { path, query, body: content?.example, headers: needsTag ? { 'if-match': '"none"' } : {} }
+  return { path, query, body: multipart === undefined ? content?.example : undefined, form: (multipart?.example as Record<string, string> | undefined) ?? null, headers: needsTag ? { 'if-match': '"none"' } : {} }
 }
 
 /** Address below /api/v1 of a request. */
@@ -31,4 +33,9 @@ export function addressOf(template: string, { path, query }: Pick<Baseline, 'pat
   return query.length === 0 ? at : `${at}?${query.map(([name, text]) => `${encodeURIComponent(name)}=${encodeURIComponent(text)}`).join('&')}`
 }
 
-export const sendingOf = (baseline: Baseline): Sending => ({ headers: baseline.headers, ...(baseline.body === undefined ? {} : { body: baseline.body }) })
+export function sendingOf(baseline: Baseline): Sending {
+  if (baseline.form === null) return { headers: baseline.headers, ...(baseline.body === undefined ? {} : { body: baseline.body }) }
+  const { file = '', ...fields } = baseline.form
+  const { raw, headers } = formOf(file, fields)
+  return { raw, headers: { ...baseline.headers, ...headers } }
+}
