@@ -30,7 +30,7 @@ export function resetMail(given: { name: string; expires_at: string; token: stri
 }
 
 export interface ReviewNews { amendment: string; title: string; by: { name: string }; comment: string | null }
-const amendmentPage = (id: string): string => page(`/curate/amendments/${encodeURIComponent(id)}`)
+const amendmentPage = (id: string): string => page(`/curate/${encodeURIComponent(id)}`)
 const said = (who: string, comment: string | null): string => (comment === null || comment.trim() === '' ? '' : `${oneLine(who)} wrote:\n${quotation(comment)}`)
 
 export function reviewAskedMail(name: string, review: ReviewNews): Message {
@@ -39,7 +39,7 @@ export function reviewAskedMail(name: string, review: ReviewNews): Message {
     `Hello ${oneLine(name)},`,
     `${oneLine(review.by.name)} asks for a review of the amendment "${oneLine(review.title)}". You wrote none of it, so you may accept or return it.`,
     said(review.by.name, review.comment),
-    `The amendment: ${amendmentPage(review.amendment)}`,
+    `Review it here: ${amendmentPage(review.amendment)}?part=review`,
   )
 }
 

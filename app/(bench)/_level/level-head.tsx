@@ -5,6 +5,7 @@ import { EV_PER_INVCM } from '@/lib/atomic/constants'
 import type { Level, LevelDetail } from '@/openapi/schemas/level'
 import { Configuration } from '@/app/_components/configuration'
 import { useEdition } from '@/app/_components/data/edition'
+import { Follow } from '@/app/_components/follow'
 import { Evidence } from '@/app/_components/evidence'
 import { speciesPage, speciesText } from '@/app/_components/names'
 import { decimalsOf, halves } from '@/app/_components/number'
@@ -34,6 +35,7 @@ export function LevelHead({ level }: { level: LevelDetail }) {
             <TermSymbol term={level.term} />
           </span>
         }
+        aside={<Follow subject={level.id} />}
       />
       <div className="grid gap-x-10 gap-y-6 lg:grid-cols-[minmax(0,1fr)_20rem]">
         <Decoded level={level} />

@@ -5,6 +5,7 @@ import type { Level } from '@/openapi/schemas/level'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
 import { Configuration } from '@/app/_components/configuration'
 import { useEdition } from '@/app/_components/data/edition'
+import { Follow } from '@/app/_components/follow'
 import { nm } from '@/app/_components/line-columns'
 import { levelPage, speciesPage, speciesText } from '@/app/_components/names'
 import { PageHead } from '@/app/_components/page-head'
@@ -34,6 +35,7 @@ export function LineHead({ line }: { line: TransitionDetail }) {
             <span className="ml-2 text-[0.6em] text-muted">in {line.conventional_medium === 'air' ? 'air' : 'vacuum'}</span>
           </>
         }
+        aside={<Follow subject={line.id} />}
       >
         <span className="inline-flex flex-wrap items-baseline gap-x-3">
           <LevelLink level={lower} href={href} />

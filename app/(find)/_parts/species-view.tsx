@@ -9,6 +9,7 @@ import { DataTable, type Column } from '../../_components/data-table'
 import { apiPages, apiPath, apiQuery } from '../../_components/data/api'
 import { useEdition } from '../../_components/data/edition'
 import { EmptyState } from '../../_components/empty-state'
+import { Follow } from '../../_components/follow'
 import { EvidenceKey } from '../../_components/evidence'
 import { levelColumns } from '../../_components/level-columns'
 import { levelPage, speciesText } from '../../_components/names'
@@ -107,7 +108,7 @@ export function SpeciesView({ species: id }: { species: string }) {
   return (
     <div className="page">
       <PageHead title={<>{speciesText(id)}{species ? <span className="text-muted">, {species.name}</span> : null}</>} crumbs={<Link className="link" href={href('/')}>All species</Link>}
-        aside={<Link className="btn" href={href(`/lines?species=${encodeURIComponent(id)}`)}>Lines of {speciesText(id)}</Link>} />
+        aside={<div className="flex flex-wrap gap-3"><Follow subject={id} /><Link className="btn" href={href(`/lines?species=${encodeURIComponent(id)}`)}>Lines of {speciesText(id)}</Link></div>} />
       {isPending || species === undefined ? <Skeleton label="Loading the species" className="h-28 max-w-3xl" /> : (
         <>
           <Facts species={species} />

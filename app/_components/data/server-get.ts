@@ -20,6 +20,7 @@ const READS: readonly { path: RegExp; open: () => Promise<{ GET: Handler }> }[] 
   { path: /^\/transitions$/, open: () => import('@/app/api/v1/transitions/route') },
   { path: /^\/transitions\/[^/]+$/, open: () => import('@/app/api/v1/transitions/[transition]/route') },
   { path: /^\/transitions\/[^/]+\/components$/, open: () => import('@/app/api/v1/transitions/[transition]/components/route') },
+  { path: /^\/follows$/, open: () => import('@/app/api/v1/follows/route') },
   { path: /^\/me$/, open: () => import('@/app/api/v1/me/route') },
   { path: /^\/amendments$/, open: () => import('@/app/api/v1/amendments/route') },
   { path: /^\/amendments\/[^/]+$/, open: () => import('@/app/api/v1/amendments/[id]/route') },

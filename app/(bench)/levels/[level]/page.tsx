@@ -18,7 +18,7 @@ export async function generateMetadata({ params }: Props): Promise<Metadata> {
 export default async function LevelPage({ params, searchParams }: Props) {
   const id = segment((await params).level)
   const edition = editionParam(await searchParams)
-  const state = await prefetch([[`/levels/${encodeURIComponent(id)}`, { edition }], [`/levels/${encodeURIComponent(id)}/g-factor`, { edition }]], { subject: true })
+  const state = await prefetch([[`/levels/${encodeURIComponent(id)}`, { edition }], [`/levels/${encodeURIComponent(id)}/g-factor`, { edition }], ['/follows', { subject: id }]], { subject: true })
   return (
     <HydrationBoundary state={state}>
       <Suspense fallback={<BenchSkeleton />}>

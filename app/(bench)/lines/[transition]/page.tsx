@@ -19,7 +19,7 @@ export async function generateMetadata({ params }: Props): Promise<Metadata> {
 export default async function LinePage({ params, searchParams }: Props) {
   const id = segment((await params).transition)
   const query = await searchParams
-  const state = await prefetch([[`/transitions/${id}`, { kind: one(query, 'kind'), edition: editionParam(query) }]], { subject: true })
+  const state = await prefetch([[`/transitions/${id}`, { kind: one(query, 'kind'), edition: editionParam(query) }], ['/follows', { subject: id }]], { subject: true })
   return (
     <HydrationBoundary state={state}>
       <Suspense fallback={<BenchSkeleton />}>

@@ -15,7 +15,7 @@ export async function generateMetadata({ params }: Props): Promise<Metadata> {
 export default async function SpeciesPage({ params, searchParams }: Props) {
   const species = segment((await params).species)
   const edition = editionParam(await searchParams)
-  const state = await prefetch([[`/species/${encodeURIComponent(species)}`, { edition }], { path: '/levels', query: speciesLevels(species, edition), pages: true }], { subject: true })
+  const state = await prefetch([[`/species/${encodeURIComponent(species)}`, { edition }], { path: '/levels', query: speciesLevels(species, edition), pages: true }, ['/follows', { subject: species }]], { subject: true })
   return (
     <HydrationBoundary state={state}>
       <SpeciesView species={species} />
