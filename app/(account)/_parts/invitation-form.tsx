@@ -1,6 +1,7 @@
 'use client'
-import { useMutation, useQuery } from '@tanstack/react-query'
+import { useMutation, useQuery, useQueryClient } from '@tanstack/react-query'
 import Link from 'next/link'
+import { useRouter } from 'next/navigation'
 import type { FormEvent } from 'react'
 import type { InvitationOffer } from '@/openapi/schemas/people'
 import type { SignedIn } from '@/openapi/schemas/session'
@@ -13,14 +14,19 @@ import { Skeleton } from '../../_components/skeleton'
 import { faultOf, restOf } from './faults'
 import { Field } from './field'
 
-const HOME = '/account'
 const FIELDS = ['/name', '/password']
 
 function AcceptForm({ token, offer }: { token: string; offer: InvitationOffer }) {
+  const client = useQueryClient()
+  const router = useRouter()
   const accept = useMutation({
     mutationFn: (given: { name: string; password: string }) => apiSend<SignedIn>('POST', '/invitations/accept', { token, ...given }),
-    // A whole new page: nothing that was read as a stranger stays behind.
-    onSuccess: () => window.location.assign(HOME),
+    // Nothing that was read as a stranger stays behind.
+    onSuccess: () => {
+      client.clear()
+      router.push('/account')
+      router.refresh()
+    },
   })
   const submit = (event: FormEvent<HTMLFormElement>) => {
     event.preventDefault()
