@@ -70,14 +70,15 @@ export async function readText(request: Request): Promise<string> {
   }
 }
 
-function nulFaults(value: unknown, path: readonly PropertyKey[], faults: Fault[]): void {
-  const nul = String.fromCharCode(0)
+/** Characters that no text here can hold: NUL, and one half of a surrogate pair, which is no character at all. */
+function characterFaults(value: unknown, path: readonly PropertyKey[], faults: Fault[]): void {
   if (typeof value === 'string') {
-    if (value.includes(nul)) faults.push({ ...pointerPlace(path), code: 'nul_byte', detail: 'Text cannot hold a NUL character.' })
+    if (value.includes('\0')) faults.push({ ...pointerPlace(path), code: 'nul_byte', detail: 'Text cannot hold a NUL character.' })
+    if (!value.isWellFormed()) faults.push({ ...pointerPlace(path), code: 'format_mismatch', detail: 'The text holds half of a surrogate pair, which is no character.' })
   } else if (typeof value === 'object' && value !== null) {
     for (const [key, inside] of Object.entries(value)) {
-      if (key.includes(nul)) faults.push({ ...pointerPlace(path), code: 'nul_byte', detail: 'A key cannot hold a NUL character.' })
-      nulFaults(inside, [...path, key], faults)
+      if (key.includes('\0') || !key.isWellFormed()) faults.push({ ...pointerPlace(path), code: 'nul_byte', detail: 'A key cannot hold a NUL character, nor half of a surrogate pair.' })
+      characterFaults(inside, [...path, key], faults)
     }
   }
 }
@@ -115,7 +116,8 @@ function parseJson(text: string): unknown {
 export function readBody(schema: z.ZodType, text: string): { value: unknown; faults: Fault[] } {
   const json = parseJson(text)
   const nul: Fault[] = []
-  if (text.includes(String.fromCharCode(0)) || text.includes('\\u0000')) nulFaults(json, [], nul)
+  // both come in JSON only as escapes, NUL also as it is
+  if (text.includes('\0') || /\\u(?:0000|[dD][89a-fA-F])/.test(text)) characterFaults(json, [], nul)
   const result = schema.safeParse(json)
   if (result.success) return { value: result.data, faults: nul }
   return { value: undefined, faults: [...nul, ...faultsOf(result.error.issues, json, pointerPlace, (path) => knownKeys(schema, path))] }
