@@ -55,7 +55,7 @@ function Head({ amendment, room, onDone }: { amendment: AmendmentDetail; room: S
           <Actions amendment={amendment} room={room} onDone={onDone} />
         </div>
       )}
-      <div className="flex flex-wrap items-baseline gap-x-6 gap-y-1.5 border-t border-rule-strong pt-2.5 text-sm">
+      <div className="flex flex-wrap items-center gap-x-6 gap-y-1.5 border-t border-rule-strong pt-2.5 text-sm">
         <StateMark state={amendment.state} returned={isReturned(amendment)} />
         <span>{plural(counts.changes, 'change')}</span>
         {counts.changes > 0 ? <Tally errors={counts.errors} warnings={counts.warnings} /> : null}

@@ -6,7 +6,7 @@ import { apiQuery } from '../../_components/data/api'
 import { Menu } from '../../_components/menu'
 import { Part } from '../../_components/page-head'
 import { FindingsList, Tally } from '../_parts/marks'
-import { Differences } from '../_parts/values-text'
+import { Differences, differencesOf } from '../_parts/values-text'
 import { subjectName } from '../_sheet/change-state'
 import { fieldWords } from '../_sheet/columns'
 import { ConflictView } from '../_sheet/conflict-view'
@@ -33,7 +33,7 @@ function Entry({ row, room, canEdit, onOpen }: { row: SheetRow; room: SheetRoom;
       </div>
       {row.wanted !== null && row.server !== null ? (
         <div className="mt-2 space-y-2">
-          <Differences fields={row.server.fields} caption={`What changes in ${name}`} />
+          <Differences fields={differencesOf(row.server)} caption={`What changes in ${name}`} />
           {findings.length > 0 ? <FindingsList findings={findings} name={(finding) => (finding.field === null ? null : fieldWords(finding.field))} /> : null}
         </div>
       ) : null}

@@ -44,13 +44,34 @@ const COLUMNS: Column<LineConsequence>[] = [
   },
 ]
 
+/** The same in a narrow place: one line below the other. */
+function Narrow({ lines, caption }: { lines: readonly LineConsequence[]; caption: string }) {
+  return (
+    <ul aria-label={caption} className="border-t border-rule text-sm">
+      {lines.map((line) => (
+        <li key={`${line.transition} ${line.kind}`} className="border-b border-rule py-1.5">
+          <div className="flex flex-wrap items-baseline justify-between gap-x-3">
+            {line.effect === 'new' ? <code className="text-xs">{line.transition}</code> : <Link className="link font-mono text-xs" href={linePage(line.transition)} prefetch={false}>{line.transition}</Link>}
+            <span className="text-xs text-muted">{EFFECT[line.effect]}</span>
+          </div>
+          <p>{arrow(wavelength(line.wavelength_before_nm), wavelength(line.wavelength_after_nm))} <span className="text-muted">nm</span></p>
+          <p className="note num">
+            {[line.shift_pm === null ? '' : `${shift(line.shift_pm)} pm`, line.shift_invcm === null ? '' : `${shift(line.shift_invcm)} cm⁻¹`].filter((part) => part !== '').join(', ')}
+            {g(line.g_eff_before) === g(line.g_eff_after) ? null : <>{line.shift_pm === null ? '' : ', '}g<sub>eff</sub> {arrow(g(line.g_eff_before), g(line.g_eff_after))}</>}
+          </p>
+        </li>
+      ))}
+    </ul>
+  )
+}
+
 /** The lines that a change moves, from where to where. */
-export function ConsequencesView({ consequences, caption }: { consequences: Consequences; caption: string }) {
+export function ConsequencesView({ consequences, caption, narrow = false }: { consequences: Consequences; caption: string; narrow?: boolean }) {
   const { lines, complete } = consequences
   return (
     <div>
       <p className="mb-2 text-sm">{consequencesText(consequences)}</p>
-      {lines.length === 0 ? null : <DataTable columns={COLUMNS} rows={lines} rowKey={(line) => `${line.transition} ${line.kind}`} caption={caption} hideCaption summary={complete ? undefined : `the ${lines.length} that move most`} />}
+      {narrow ? (lines.length > 0 ? <Narrow lines={lines.slice(0, 20)} caption={caption} /> : null) : lines.length === 0 ? null : <DataTable columns={COLUMNS} rows={lines} rowKey={(line) => `${line.transition} ${line.kind}`} caption={caption} hideCaption summary={complete ? undefined : `the ${lines.length} that move most`} />}
     </div>
   )
 }

@@ -1,7 +1,11 @@
 import { CircleAlert, CircleCheck, CircleDot, CirclePause, CircleSlash, Eye, PencilLine, TriangleAlert } from 'lucide-react'
 import type { AmendmentState } from '@/openapi/schemas/amendment'
 import type { Finding } from '@/openapi/schemas/change'
+import { trueMinus } from '@/lib/units/print'
 import { plural } from '../../_components/number'
+
+/** What the checks say, set for reading: true minus signs and raised powers. */
+export const detailText = (text: string): string => trueMinus(text.replace(/cm\^-1/g, 'cm⁻¹'))
 
 const STATE: Record<AmendmentState, { word: string; icon: typeof Eye; tint: string }> = {
   draft: { word: 'Draft', icon: PencilLine, tint: 'text-ink' },
@@ -57,7 +61,7 @@ export function FindingsList({ findings, name }: { findings: readonly Finding[];
           <span className="min-w-0">
             <span className="sr-only">{finding.severity}: </span>
             {name?.(finding) ? <span className="mr-1.5 font-medium">{name(finding)}</span> : null}
-            {finding.detail}
+            {detailText(finding.detail)}
           </span>
         </li>
       ))}

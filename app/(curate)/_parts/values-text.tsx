@@ -1,4 +1,4 @@
-import type { FieldDifference } from '@/openapi/schemas/change'
+import type { AmendmentChange, FieldDifference } from '@/openapi/schemas/change'
 import { Configuration } from '../../_components/configuration'
 import { TermSymbol } from '../../_components/term-symbol'
 import { fieldWords, cellText } from '../_sheet/columns'
@@ -27,6 +27,16 @@ export function ValueText({ field, value }: { field: string; value: unknown }) {
   if (field === 'term' || field === 'core') return <TermSymbol term={splitTerm(text)} />
   return <span className="num [overflow-wrap:anywhere]">{text}</span>
 }
+
+/** What a change alters: as the server read it, or as it was typed where it cannot be read. */
+export function differencesOf(change: AmendmentChange): FieldDifference[] {
+  if (change.after !== null || change.action === 'retire') return change.fields
+  const [before, typed] = [{ ...change.before } as Record<string, unknown>, { ...change.values } as Record<string, unknown>]
+  return [...new Set([...Object.keys(typed), ...Object.keys(before)])]
+    .filter((field) => cellText(before[field]) !== cellText(typed[field]) && !(field === 'energy_invcm' && isBlank(typed[field])) && !(isBlank(before[field]) && isBlank(typed[field])))
+    .map((field) => ({ field, before: before[field] ?? null, after: typed[field] ?? null }))
+}
+const isBlank = (value: unknown): boolean => value === null || value === undefined || value === '' || value === false || (Array.isArray(value) && value.length === 0)
 
 /** Values before and after, only those that differ. */
 export function Differences({ fields, caption }: { fields: readonly FieldDifference[]; caption: string }) {

@@ -10,6 +10,8 @@ import type { SheetView } from './sheet'
 import type { GridControl } from './use-grid'
 
 const HEAD = 40
+/** Room for the bar that scrolls sideways. */
+const SCROLLBAR = 18
 const isPrintable = (event: KeyboardEvent): boolean => event.key.length === 1 && !event.ctrlKey && !event.metaKey && !event.altKey
 
 export interface GridProps {
@@ -124,7 +126,8 @@ export function Grid({ grid, view, keys, columns, canEdit, showBefore, sources, 
     <div ref={box} role="grid" aria-label={label} aria-rowcount={keys.length + 1} aria-colcount={columns.length} aria-multiselectable="true" aria-readonly={!canEdit || undefined}
       onKeyDown={press} onPointerDown={down} onPointerOver={drag} onClick={tap} onDoubleClick={(event) => { if (placeOf(event.target) !== null) grid.begin(null) }}
       onCopy={(event) => copy(event, false)} onCut={(event) => copy(event, canEdit)} onPaste={paste}
-      className="relative h-[clamp(18rem,62dvh,46rem)] overflow-auto overscroll-contain border border-rule-strong bg-sheet text-sm select-none">
+      style={{ height: HEAD + keys.length * height + SCROLLBAR }}
+      className="relative max-h-[clamp(18rem,62dvh,46rem)] overflow-auto overscroll-contain border border-rule-strong bg-sheet text-sm select-none">
       <div role="rowgroup" className="sticky top-0 z-[4]" style={{ width, height: 0 }}>
         <div role="row" aria-rowindex={1} className="flex border-b border-rule-strong bg-well" style={{ width, height: HEAD }}>
           {columns.map((column, place) => (

@@ -10,7 +10,7 @@ import { ProblemView } from '../../_components/problem-view'
 import { Skeleton } from '../../_components/skeleton'
 import { ConsequencesView } from '../_parts/consequences'
 import { FindingsList } from '../_parts/marks'
-import { Differences } from '../_parts/values-text'
+import { Differences, differencesOf } from '../_parts/values-text'
 import { subjectName } from './change-state'
 import { fieldWords } from './columns'
 import { MeasuredList } from './measured-list'
@@ -38,7 +38,7 @@ function Consequences({ amendment, row }: { amendment: string; row: SheetRow }) 
   if (error) return error && 'problem' in error && (error as { problem: { status: number } }).problem.status === 404 ? null : <ProblemView error={error} onRetry={() => void refetch()} heading="h3" />
   if (data === undefined || data.data.id !== server.id) return <Skeleton label="Working out the consequences" className="h-24 w-full" />
   const { consequences } = data.data
-  return consequences === null ? <p className="note">No consequences can be worked out while the values cannot be read.</p> : <ConsequencesView consequences={consequences} caption={`Lines that ${subjectName(row.subject)} moves`} />
+  return consequences === null ? <p className="note">No consequences can be worked out while the values cannot be read.</p> : <ConsequencesView narrow consequences={consequences} caption={`Lines that ${subjectName(row.subject)} moves`} />
 }
 
 function Section({ title, children }: { title: string; children: React.ReactNode }) {
@@ -67,7 +67,7 @@ export function RowPanel({ amendment, room, row, canEdit, onRetire, onConflict }
   }
   const published = row.base !== null && row.subject.level !== null
   return (
-    <aside aria-label={`The row in focus, ${name}`} className="space-y-4 border border-rule bg-paper p-4">
+    <aside aria-label={`The row in focus, ${name}`} className="space-y-4 border border-rule bg-paper p-4 xl:sticky xl:top-2 xl:max-h-[calc(100dvh-1rem)] xl:overflow-y-auto">
       <div className="flex flex-wrap items-baseline justify-between gap-x-4 gap-y-2">
         <h2 className="text-xl">{published ? <Link className="link" href={levelPage(row.subject.level ?? '')}>{name}</Link> : name}</h2>
         <span className="note">{wanted === null ? (row.base === null ? 'empty row' : 'as published') : isRetired(row) ? 'retired here' : row.base === null ? 'new level' : 'changed'}</span>
@@ -96,11 +96,11 @@ export function RowPanel({ amendment, room, row, canEdit, onRetire, onConflict }
       ) : null}
       {wanted !== null && server !== null && !isRetired(row) ? (
         <Section title="Before and after">
-          <Differences fields={server.fields} caption={`What changes in ${name}`} />
+          <Differences fields={differencesOf(server)} caption={`What changes in ${name}`} />
         </Section>
       ) : null}
-      {isRetired(row) ? null : <MeasuredList row={row} room={room} canEdit={canEdit} />}
       {wanted !== null ? <Section title="Consequences"><Consequences amendment={amendment} row={row} /></Section> : null}
+      {isRetired(row) ? null : <MeasuredList row={row} room={room} canEdit={canEdit} />}
       {canEdit ? (
         <div className="flex flex-wrap gap-2 border-t border-rule pt-3">
           {wanted !== null ? <button type="button" className="btn btn-small" onClick={() => { sheet.discard(row.key); void saver.now() }}>{row.base === null ? 'Take this level out' : 'Take this change out'}</button> : null}
