@@ -6,6 +6,6 @@ const config: NextConfig = {
   agentRules: false,
   experimental: { agentUpgrade: false },
   // The API sends its own validators and caching fields; Next's page ETags stay on.
-  serverExternalPackages: ['pg', 'pino', '@node-rs/argon2', 'nodemailer'],
+  serverExternalPackages: ['@citation-js/core', '@citation-js/plugin-bibtex', 'pg', 'pino', '@node-rs/argon2', 'nodemailer'],
 }
 export default config

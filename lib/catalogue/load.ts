@@ -1,4 +1,5 @@
-import { eq } from 'drizzle-orm'
+import { and, eq, sql, type SQL } from 'drizzle-orm'
+import type { AnyPgColumn } from 'drizzle-orm/pg-core'
 import type { Db, Tx } from '@/db/client'
 import { inEdition } from '@/db/edition-content'
 import {
@@ -59,7 +60,10 @@ async function readSpecies(db: Db | Tx, n: number): Promise<SpeciesRow[]> {
   return rows.map((row) => ({ ...row, stage: toRoman(row.charge + 1), isotopes: bySpecies.get(row.id) ?? [] }))
 }
 
-const readLevels = (db: Db | Tx, n: number) =>
+/** A list as one parameter, whatever its length; without one, no condition. */
+const among = (column: AnyPgColumn, ids: readonly string[] | undefined): SQL | undefined => (ids === undefined ? undefined : sql`${column} = any(${sql.param(ids)}::text[])`)
+
+const readLevels = (db: Db | Tx, n: number, ids?: readonly string[]) =>
   db
     .select({
       speciesId: levelRevisions.speciesId,
@@ -96,9 +100,9 @@ const readLevels = (db: Db | Tx, n: number) =>
     })
     .from(levelRevisions)
     .innerJoin(levels, eq(levels.id, levelRevisions.levelId))
-    .where(inEdition(levelRevisions, n))
+    .where(and(inEdition(levelRevisions, n), among(levelRevisions.levelId, ids)))
 
-const readMeasured = (db: Db | Tx, n: number) =>
+const readMeasured = (db: Db | Tx, n: number, ids?: readonly string[]) =>
   db
     .select({
       levelId: measuredG.levelId,
@@ -110,7 +114,7 @@ const readMeasured = (db: Db | Tx, n: number) =>
     })
     .from(measuredGRevisions)
     .innerJoin(measuredG, eq(measuredG.id, measuredGRevisions.measuredGId))
-    .where(inEdition(measuredGRevisions, n))
+    .where(and(inEdition(measuredGRevisions, n), among(measuredG.levelId, ids)))
     .orderBy(measuredG.id)
 
 const readHyperfine = (db: Db | Tx, n: number) =>
@@ -159,5 +163,17 @@ export async function loadEdition(db: Db | Tx, edition: number): Promise<Edition
     measuredG: await readMeasured(db, edition),
     hyperfine: await readHyperfine(db, edition),
     sources: await readSources(db, edition),
+  }
+}
+
+/** A few levels of an edition, retired ones too, with what their values are made from: for telling what differs, not for searching. */
+export async function loadLevels(db: Db | Tx, edition: number, ids: readonly string[]): Promise<EditionContent> {
+  return {
+    edition,
+    species: await readSpecies(db, edition),
+    levels: (await readLevels(db, edition, ids)).map((row) => ({ ...row, publishedFrom: row.publishedFrom ?? edition })),
+    measuredG: await readMeasured(db, edition, ids),
+    hyperfine: [],
+    sources: [],
   }
 }

@@ -3,10 +3,15 @@ import type { AnyRow, LevelRow } from './rows'
 import { differences, printLevelTerm } from './values'
 
 /** One change as the notes tell of it. */
-export interface NotedChange { kind: ChangeKind; action: ChangeAction; subject: string; before: AnyRow | null; after: AnyRow | null; reason: string | null; successor: string | null }
+export interface NotedChange { id: string; kind: ChangeKind; action: ChangeAction; subject: string; reason: string | null; successor: string | null }
+
+/** Its values, looked up for the few that are told one by one. */
+export interface ValuesOf { before: (change: NotedChange) => AnyRow | null; after: (change: NotedChange) => AnyRow | null }
 
 /** Bounds of what is told one by one; the rest is counted. */
 const LINES_PER_SPECIES = 12
+/** New levels say little one by one: a few are told where there are many. */
+const NEW_TOLD = 4
 const LINES_IN_ALL = 120
 const SPECIES_TOLD = 40
 const NAMES_TOLD = 12
@@ -32,8 +37,9 @@ function corrected(subject: string, before: LevelRow | null, after: LevelRow): s
   return `- ${subject} ${named(after)}: ${parts.length > 0 ? parts.join('; ') : 'entered again, no value differs'}`
 }
 
-function levelLine({ action, subject, before, after, reason, successor }: NotedChange): string {
-  const [was, is] = [levelOf(before), levelOf(after)]
+function levelLine(change: NotedChange, values: ValuesOf): string {
+  const { action, subject, reason, successor } = change
+  const [was, is] = [levelOf(values.before(change)), levelOf(values.after(change))]
   if (action === 'retire') return `- ${subject}${was === null ? '' : ` ${named(was)}`} retired${reason ? `: ${reason.replaceAll(/\s+/g, ' ').slice(0, 300)}` : ''}${successor === null ? '' : ` (${successor} takes its place)`}`
   if (is === null) return `- ${subject}`
   if (action === 'create') return `- ${subject} ${named(is)} new, at ${is.energyLiteral ?? printed(is.energyInvcm)} cm\u207b\u00b9`
@@ -57,7 +63,7 @@ function levelCounts(changes: readonly NotedChange[]): string {
 const speciesOf = (subject: string): string => /^[^./]+/.exec(subject)?.[0] ?? subject
 const spokenSpecies = (id: string): string => id.replace('-', ' ')
 
-function speciesPart(id: string, changes: readonly NotedChange[], lines: number): string[] {
+function speciesPart(id: string, changes: readonly NotedChange[], lines: number, values: ValuesOf): string[] {
   const levels = changes.filter(({ kind }) => kind === 'level')
   const head = [
     ...changes.filter(({ kind }) => kind === 'species').map(({ action }) => (action === 'create' ? 'new species' : 'species data corrected')),
@@ -72,7 +78,9 @@ function speciesPart(id: string, changes: readonly NotedChange[], lines: number)
       })
     }),
   ]
-  const told = levels.slice(0, lines).map(levelLine)
+  const fresh = levels.filter(({ action }) => action === 'create')
+  const old = levels.filter(({ action }) => action !== 'create')
+  const told = [...old, ...fresh.slice(0, fresh.length > LINES_PER_SPECIES ? NEW_TOLD : fresh.length)].slice(0, lines).map((change) => levelLine(change, values))
   return [`${spokenSpecies(id)}: ${head.join(', ')}.`, ...told, ...(lines > 0 && levels.length > told.length ? [`- and ${plural(levels.length - told.length, 'more level')}`] : [])]
 }
 
@@ -80,7 +88,7 @@ function speciesPart(id: string, changes: readonly NotedChange[], lines: number)
  * Notes of an edition, written from its changes: species by species in alphabetical order, each level with its old and new energy; then the sources.
  * Bounded: what is beyond it is counted.
  */
-export function editionNotes(changes: readonly NotedChange[], amendments: readonly string[]): string {
+export function editionNotes(changes: readonly NotedChange[], values: ValuesOf, amendments: readonly string[]): string {
   const bySpecies = new Map<string, NotedChange[]>()
   for (const change of changes) {
     if (change.kind === 'source') continue
@@ -95,7 +103,7 @@ export function editionNotes(changes: readonly NotedChange[], amendments: readon
   const parts: string[] = []
   if (amendments.length > 0) parts.push(`From ${plural(amendments.length, 'amendment')}: ${listed(amendments)}.`)
   for (const [id, list] of told) {
-    const part = speciesPart(id, list, Math.min(LINES_PER_SPECIES, left))
+    const part = speciesPart(id, list, Math.max(0, Math.min(LINES_PER_SPECIES, left)), values)
     left -= part.length - 1
     parts.push(part.join('\n'))
   }

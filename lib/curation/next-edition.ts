@@ -20,9 +20,8 @@ export function countChanges(changes: readonly AcceptedChange[]): NextEdition['c
 /** Notes of the edition, written from its changes. */
 export const suggestedNotes = ({ amendments, changes, table }: Accepted, checked: ReadonlyMap<string, Checked>): string =>
   editionNotes(
-    changes.map(({ id, kind, action, subject, reason, successor }) => ({
-      kind, action, subject, reason, successor, before: publishedIn(table, kind, subject)?.row ?? null, after: checked.get(id)?.row ?? null,
-    })),
+    changes,
+    { before: ({ kind, subject }) => publishedIn(table, kind, subject)?.row ?? null, after: ({ id }) => checked.get(id)?.row ?? null },
     amendments.map(({ title }) => `\u201c${title}\u201d`),
   )
 

@@ -46,16 +46,16 @@ const keyOf = ({ kind, subject }: { kind: ChangeKind; subject: string }): string
 /** Identifiers in a sentence: levels, hyperfine constants, isotopes, keys of sources. */
 const NAMED = /[A-Z][a-z]?-[IVXLC]+(?:\.[0-9]+)?(?:\/[0-9]+)?|[a-z0-9]+(?:-[a-z0-9]+)+/g
 
-type Group = Map<string, AcceptedChange[]>
-
-function grouped(changes: readonly AcceptedChange[]): Group {
-  const groups: Group = new Map()
+/** Things that more than one amendment changes; within one amendment a thing is changed once. */
+function changedTwice({ amendments, changes }: Pick<Accepted, 'amendments' | 'changes'>): AcceptedChange[][] {
+  if (amendments.length < 2) return []
+  const groups = new Map<string, AcceptedChange[]>()
   for (const change of changes) {
     const list = groups.get(keyOf(change))
     if (list === undefined) groups.set(keyOf(change), [change])
     else list.push(change)
   }
-  return groups
+  return [...groups.values()].filter(({ length }) => length > 1)
 }
 
 /**
@@ -65,13 +65,12 @@ function grouped(changes: readonly AcceptedChange[]): Group {
  */
 export function conflictsOf({ amendments, changes, table }: Accepted, checked: ReadonlyMap<string, Checked>): PublicationConflict[] {
   const titles = new Map(amendments.map(({ id, title }) => [id, title]))
-  const groups = grouped(changes)
   const part = (change: AcceptedChange) => ({ amendment: { id: change.amendment, title: titles.get(change.amendment) ?? '' }, change: change.id, subject: change.subject })
   const quoted = (list: readonly AcceptedChange[]): string => [...new Set(list.map(({ amendment }) => `\u201c${titles.get(amendment) ?? amendment}\u201d`))].join(' and ')
   const conflicts: PublicationConflict[] = []
-  for (const list of groups.values()) {
+  for (const list of changedTwice({ amendments, changes })) {
     const [first] = list
-    if (first === undefined || list.length < 2) continue
+    if (first === undefined) continue
     const detail = `${first.subject} is changed by ${quoted(list)}: take it out of one of them.`
     conflicts.push({ code: 'same_subject', kind: first.kind, subject: first.subject, detail, changes: list.map(part), base_revision: null, current_revision: null })
   }
@@ -83,8 +82,9 @@ export function conflictsOf({ amendments, changes, table }: Accepted, checked: R
     conflicts.push({ code: 'base_stale', kind: change.kind, subject: change.subject, detail, changes: [part(change)], base_revision: change.baseRevision, current_revision: current })
   }
   const seen = new Set(conflicts.map(({ changes: parts }) => parts.map(({ change }) => change).sort().join()))
-  const bySubject = new Map(changes.map((change) => [change.subject, change]))
-  for (const change of changes) {
+  const wrong = changes.filter(({ id }) => checked.get(id)?.findings.some(({ severity }) => severity === 'error'))
+  const bySubject = wrong.length === 0 ? new Map<string, AcceptedChange>() : new Map(changes.map((change) => [change.subject, change]))
+  for (const change of wrong) {
     for (const finding of checked.get(change.id)?.findings ?? []) {
       if (finding.severity !== 'error') continue
       const others = [...new Set(finding.detail.match(NAMED) ?? [])].flatMap((name) => bySubject.get(name) ?? []).filter((other) => other.id !== change.id)
@@ -100,8 +100,9 @@ export function conflictsOf({ amendments, changes, table }: Accepted, checked: R
 }
 
 /** Runs every check on the union of what is accepted; the process goes on answering meanwhile. */
-export async function checkUnion({ changes, table }: Accepted): Promise<Map<string, Checked>> {
-  const first = [...grouped(changes).values()].flatMap((list) => list.slice(0, 1))
+export async function checkUnion({ amendments, changes, table }: Accepted): Promise<Map<string, Checked>> {
+  const again = new Set(changedTwice({ amendments, changes }).flatMap((list) => list.slice(1)))
+  const first = again.size === 0 ? changes : changes.filter((change) => !again.has(change))
   const checked = await checkChangesInSteps(table, first)
   return new Map(checked.map((one, at) => [first[at]?.id ?? '', one]))
 }

@@ -5,6 +5,7 @@ import { noneMatchHits } from '@/lib/http/etag'
 import type { House } from '@/lib/http/house'
 import { API_PREFIX, type ReadRequest } from '@/lib/http/request'
 import type { Answer, Warning } from '@/lib/http/types'
+import { streamedText } from '@/lib/http/writers/stream'
 import type { Format, Operation } from '@/openapi/core/define'
 
 export interface Setting {
@@ -61,7 +62,10 @@ export async function writeAnswer<S>(house: House<S>, setting: Setting, answer: 
   let body: Written['body']
   let json: unknown = null
   const table = answer.table === undefined ? undefined : typeof answer.table === 'function' ? (format === 'json' && answer.data !== undefined ? undefined : answer.table()) : answer.table
-  if (format !== 'json' || answer.data === undefined) {
+  if (answer.text !== undefined) {
+    headers['content-type'] ??= 'application/json'
+    body = streamedText(answer.text)
+  } else if (format !== 'json' || answer.data === undefined) {
     if (table === undefined) throw new Error(`${operation.id} gave no table for ${format}`)
     const written = await house.writeTable(format, table, meta, page)
     headers['content-type'] = written.contentType

@@ -111,7 +111,7 @@ async function perform<S>(house: House<S>, planned: Map<string, Planned<S>>, one
   const setting: Setting = { operation, read, edition, fingerprint, format, warnings, path: where.path, noneMatch }
   const call = {
     params: read.params, query: read.query, body: read.body, edition, after, format, caller: progress.caller, requestId: progress.requestId, ifMatch: read.ifMatch, clientAddress: address, requestFields: headers,
-    snapshot: operation.edition === 'none' ? null : await house.snapshotFor(edition),
+    snapshot: operation.edition === 'none' || operation.numberOnly === true ? null : await house.snapshotFor(edition),
     warn: (code: string, detail: string) => void (warnings.some((warning) => warning.code === code && warning.detail === detail) || warnings.push({ code, detail })),
   } as unknown as Call<never, never, never, never>
   const act = async (): Promise<{ written: Written; repeat: unknown }> => {

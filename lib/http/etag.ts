@@ -1,7 +1,7 @@
 import { Problem } from '@/lib/problem'
 
 /** Raised whenever the form of stored answers changes, so that no cache goes on with the old form under the old tag. */
-export const FORM_VERSION = 1
+export const FORM_VERSION = 2
 
 const listOf = (field: string): string[] => field.match(/(?:W\/)?"[^"]*"|\*/g) ?? []
 

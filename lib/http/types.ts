@@ -41,6 +41,8 @@ export interface Answer<D> {
   meta?: Record<string, unknown>
   /** The same content as rows, for every format but JSON; a function, so that JSON does not pay for it. */
   table?: Table | (() => Table)
+  /** The whole body of an operation without envelope, piece by piece, where it is JSON made elsewhere. */
+  text?: AsyncIterable<string>
   status?: number
   headers?: Record<string, string>
   /** Set-Cookie fields. */

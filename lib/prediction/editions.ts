@@ -36,3 +36,10 @@ export async function readEdition(db: Db | Tx, number: number): Promise<Edition>
   if (!row) throw parameterProblem('n', 'edition_unknown', `There is no edition ${number}; GET /api/v1/editions lists all.`)
   return told(row)
 }
+
+/** What an edition's canonical text begins with; 404 `edition_unknown`. */
+export async function readEditionHead(db: Db | Tx, number: number) {
+  const [row] = await db.select().from(editions).where(eq(editions.number, number)).limit(1)
+  if (!row) throw parameterProblem('n', 'edition_unknown', `There is no edition ${number}; GET /api/v1/editions lists all.`)
+  return row
+}

@@ -55,6 +55,8 @@ export interface Operation<
   readonly edition: E
   /** Where the edition's number stands: the `edition` parameter, or path parameter `n`. */
   readonly editionIn: 'query' | 'path'
+  /** Only the edition's number counts: its table is not brought into memory for it. */
+  readonly numberOnly?: boolean
   readonly formats: readonly Format[]
   readonly status: 200 | 201 | 204
   /** May also answer 202, with the same shape: begun and not yet done. */

@@ -1,5 +1,8 @@
 import { computeSublevels, convertWavelength, decodeTerm } from './computed'
-import { downloadEditionLevels, getEdition, listEditionChanges, listEditions } from './editions'
+import {
+  downloadEditionLevels, getEdition, getEditionCitation, getEditionContent, getLevelHistory, getLevelMap, getSourceCitation, listChanges, listEditionChanges, listEditions, previewNextEdition,
+  publishEdition,
+} from './editions'
 import { find } from './find'
 import { getGFactor, getLevel, getSublevels, listLevels, listLevelTransitions } from './levels'
 import { getSource, getSpecies, listSources, listSpecies } from './species'
@@ -8,6 +11,6 @@ import { getComponents, getTransition, judgeTransition, listTransitions } from '
 /** Everything that reads the table or computes from it. */
 export const READING_OPERATIONS = [
   listSpecies, getSpecies, listLevels, getLevel, getGFactor, getSublevels, listLevelTransitions, listTransitions, getTransition, getComponents,
-  judgeTransition, decodeTerm, computeSublevels, convertWavelength, listEditions, getEdition, listEditionChanges, downloadEditionLevels,
-  listSources, getSource, find,
+  judgeTransition, decodeTerm, computeSublevels, convertWavelength, listEditions, previewNextEdition, publishEdition, getEdition, listEditionChanges, getLevelMap, downloadEditionLevels,
+  getEditionContent, getEditionCitation, listChanges, getLevelHistory, listSources, getSource, getSourceCitation, find,
 ]

@@ -140,3 +140,15 @@ export const Citation = z
   })
   .meta({ id: 'Citation' })
 export type Citation = z.infer<typeof Citation>
+
+const Entities = z.array(z.looseObject({ id: z.string() }))
+export const EditionContentDocument = z
+  .strictObject({
+    constants: z.string(),
+    content: z.strictObject({ hyperfine_constants: Entities, isotopes: Entities, levels: Entities, measured_g: Entities, sources: Entities, species: Entities }),
+    counts: z.record(z.string(), z.int()),
+    label: z.string(),
+    notes: z.string(),
+    number: z.int(),
+  })
+  .meta({ id: 'EditionContentDocument' })

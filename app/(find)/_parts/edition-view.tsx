@@ -51,7 +51,7 @@ function Changes({ edition }: { edition: Edition }) {
   if (isPending) return <Skeleton label="Loading the changes" className="h-20 w-full" />
   if (error) return <ProblemView error={error} onRetry={() => void refetch()} heading="h3" />
   const columns: Column<Change>[] = [
-    { name: 'level', header: 'Level', rowHeader: true, value: (row) => row.level, sort: true, cell: (row) => <Link className="link" href={`${levelPage(row.level)}?edition=${edition.number}`}>{row.level}</Link> },
+    { name: 'level', header: 'Level', rowHeader: true, value: (row) => row.subject, sort: true, cell: (row) => <Link className="link" href={`${levelPage(row.subject)}?edition=${edition.number}`}>{row.level}</Link> },
     { name: 'action', header: 'What happened', value: (row) => row.action, sort: true },
     {
       name: 'fields', header: 'Values', wrap: true, value: (row) => row.fields.map((field) => `${field.field}: ${fieldText(field.before)} -> ${fieldText(field.after)}`).join('; '),
@@ -61,7 +61,7 @@ function Changes({ edition }: { edition: Edition }) {
     },
   ]
   if (data.data.length === 0) return <p className="note">Nothing differs from the edition before.</p>
-  return <DataTable columns={columns} rows={data.data} rowKey={(row) => row.level} caption={`Changes in edition ${edition.number}`} hideCaption summary={data.page?.next_cursor ? `The first ${data.data.length} changes` : plural(data.data.length, 'change')} />
+  return <DataTable columns={columns} rows={data.data} rowKey={(row) => `${row.kind} ${row.subject}`} caption={`Changes in edition ${edition.number}`} hideCaption summary={data.page?.next_cursor ? `The first ${data.data.length} changes` : plural(data.data.length, 'change')} />
 }
 
 /** One edition: what it holds, its checksum, whole-table downloads, how to cite it, what changed. */

@@ -84,3 +84,21 @@ function joined(parts: readonly Uint8Array[], length: number): Uint8Array<ArrayB
   }
   return whole
 }
+
+/** Text that comes in time, such as from a database, as a stream: a piece is asked for when the last was taken. */
+export function streamedText(parts: AsyncIterable<string>): ReadableStream<Uint8Array> {
+  const pieces = parts[Symbol.asyncIterator]()
+  return new ReadableStream<Uint8Array>(
+    {
+      async pull(controller) {
+        const step = await pieces.next()
+        if (step.done) return controller.close()
+        controller.enqueue(encoder.encode(step.value))
+      },
+      async cancel() {
+        await pieces.return?.()
+      },
+    },
+    { highWaterMark: 1 },
+  )
+}

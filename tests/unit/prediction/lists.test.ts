@@ -1,9 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { changesBetween } from '@/lib/prediction/changes'
 import { pageOf, type Position } from '@/lib/prediction/paging'
 import { termSublevels } from '@/lib/prediction/sublevels'
-import { edition, level, SODIUM_LEVELS } from './edition'
 
 describe('pages', () => {
   it('to the end make the whole list, each row once, whatever the limit', () => {
@@ -23,31 +21,6 @@ describe('pages', () => {
         expect(pages).toBe(Math.max(1, Math.ceil(size / limit)))
       }),
     )
-  })
-})
-
-describe('changes between editions', () => {
-  const before = edition(SODIUM_LEVELS)
-  const after = edition(
-    [
-      ...SODIUM_LEVELS.slice(0, 1),
-      level({ ...SODIUM_LEVELS[1], energyInvcm: 16956.17, revision: 2 }),
-      level({ ...SODIUM_LEVELS[2], status: 'retired', retiredReason: 'not found again', publishedFrom: 2, revision: 2 }),
-      level({ ordinal: 4, configuration: '4s', energyInvcm: 25739.999 }),
-    ],
-    { edition: 2 },
-  )
-
-  it('tell what was replaced field by field, what came and what went, in the order of the table', () => {
-    const changes = changesBetween(before, after)
-    expect(changes.map(({ level: id, action }) => [id, action])).toEqual([['Na-I.2', 'replaced'], ['Na-I.3', 'retired'], ['Na-I.4', 'created']])
-    expect(changes[0]?.fields).toEqual([{ field: 'energy_invcm', before: 16956.17025, after: 16956.17 }])
-    expect(changes[1]?.fields).toContainEqual({ field: 'reason', before: null, after: 'not found again' })
-    expect(changes[2]?.fields).toContainEqual({ field: 'term.symbol', before: null, after: '2S1/2' })
-  })
-
-  it('are none between an edition and itself', () => {
-    expect(changesBetween(before, before)).toEqual([])
   })
 })
 
