@@ -38,7 +38,7 @@ function contentOf(table: PublishedTable): EditionContent {
       id, element: row.element, z: row.z, stage: toRoman(row.charge + 1), charge: row.charge, name: row.name, core_configuration: row.coreConfiguration,
       ionisation_energy_invcm: row.ionisationEnergyInvcm, ionisation_source: row.ionisationSource, ionisation_evidence: row.ionisationEvidence, note: row.note, isotopes: [],
     })),
-    levels: levels.map(([id, { revision, row: { outerTwoJ, measured: _, ...row } }]) => ({ ...row, speciesId: speciesOfLevel(id), ordinal: numberAfter(id, '.'), twoJOuter: outerTwoJ, publishedFrom: table.edition, revision })),
+    levels: levels.map(([id, { revision, row }]) => ({ ...row, speciesId: speciesOfLevel(id), ordinal: numberAfter(id, '.'), twoJOuter: row.outerTwoJ, publishedFrom: table.edition, revision })),
     measuredG: levels.flatMap(([levelId, { row }]) => row.measured.map(({ value, unc, source, evidence, note }) => ({ levelId, value, unc, source, evidence, note }))),
     hyperfine: [],
     sources: [],

@@ -104,8 +104,8 @@ export async function addChange(db: Db, acting: Acting, amendmentId: string, req
     const judged = await judge(tx, amendment, items, [], (_, subject, __, id) => { throw existsProblem(subject, id) })
     const [id = ''] = await store(tx, amendment, caller.userId, items, [], judged)
     await noteEdit(tx, amendment, caller.userId)
-    const { before: _, ...audit } = told(request, items[0]?.subject ?? '', null)
-    await recordAudit(tx, acting, { action: 'change.create', subjectKind: 'change', subjectId: id, after: { amendment: amendmentId, ...audit } })
+    const { subject, after } = told(request, items[0]?.subject ?? '', null)
+    await recordAudit(tx, acting, { action: 'change.create', subjectKind: 'change', subjectId: id, after: { amendment: amendmentId, subject, ...after } })
     return id
   })
 }
@@ -186,7 +186,7 @@ function refuseTaken(items: readonly Item[], taken: readonly { at: number; id: s
 
 async function judgeBatch(tx: Db | Tx, writing: Tx | null, amendment: AmendmentRow, batch: ChangeBatch): Promise<{ items: Item[]; removed: ChangeRow[]; judged: Judged }> {
   const rows = await named(tx, amendment, batch)
-  const requests = batch.changes.map(({ change, etag: _, ...request }: BatchItem) => ({ request, row: change === undefined ? null : (rows.get(change) ?? null) }))
+  const requests = batch.changes.map(({ change, ...request }: BatchItem) => ({ request, row: change === undefined ? null : (rows.get(change) ?? null) }))
   for (const { request, row } of requests) if (row !== null) requireSameSubject(request, row)
   const removed = (batch.remove ?? []).flatMap((one) => rows.get(one.change) ?? [])
   const items = await withSubjects(writing, requests)

@@ -5,10 +5,10 @@ export const TELLING_MOVE_INVCM = 0.001
 /** Beyond this many pairs of one species lines are not counted one by one. */
 const MOST_PAIRS = 4e7
 
-/** One standard deviation of an energy; the ground level's is exact. */
-const deviationOf = (level: UnionLevel): number => {
-  const before = level.before ?? level.row
-  return before.energyInvcm === 0 ? 0 : (before.energyUncInvcm ?? level.row.energyUncInvcm ?? Number.NaN)
+/** What is known of the deviation of an energy: for one that moves of both values; 0 where nothing is, or for the ground level. */
+function deviationOf({ row, before }: UnionLevel): number {
+  const [now, was] = [row.energyInvcm === 0 ? 0 : (row.energyUncInvcm ?? 0), before === null || before.energyInvcm === 0 ? 0 : (before.energyUncInvcm ?? 0)]
+  return before === null || before.energyInvcm === row.energyInvcm ? now : Math.hypot(now, was)
 }
 
 /**
