@@ -57,7 +57,7 @@ await main(async () => {
   if (failed !== undefined) throw failed.reason
   const env = { DATABASE_URL: address, DATABASE_APP_URL: '' }
   await migrate(env)
-  await node(['--import', 'tsx', 'db/cli/verify-edition.ts', '--database', '--all'], { env })
+  await node(['--import', 'tsx', 'lib/curation/cli/verify-edition.ts', '--database', '--all'], { env })
   say('restored')
   await releaseDatabase()
 })

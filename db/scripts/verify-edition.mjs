@@ -4,5 +4,5 @@ import { root } from './steps.mjs'
 
 const args = process.argv.slice(2)
 const before = args.includes('--database') ? ['db/scripts/run.mjs'] : ['--import', 'tsx']
-const { status } = spawnSync(process.execPath, [...before, 'db/cli/verify-edition.ts', ...args], { cwd: root, stdio: 'inherit' })
+const { status } = spawnSync(process.execPath, [...before, 'lib/curation/cli/verify-edition.ts', ...args], { cwd: root, stdio: 'inherit' })
 process.exit(status ?? 1)

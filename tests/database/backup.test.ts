@@ -103,7 +103,7 @@ describe('npm run restore', () => {
 })
 
 describe('npm run verify-edition', () => {
-  const verify = (args: string[], env: NodeJS.ProcessEnv = { ...process.env, DATABASE_URL: restored, DATABASE_APP_URL: '' }) => node(['--import', 'tsx', 'db/cli/verify-edition.ts', ...args], env)
+  const verify = (args: string[], env: NodeJS.ProcessEnv = { ...process.env, DATABASE_URL: restored, DATABASE_APP_URL: '' }) => node(['--import', 'tsx', 'lib/curation/cli/verify-edition.ts', ...args], env)
 
   it('agrees with what is stored, and differs as soon as a value does', async () => {
     expect(verify(['1', '--database'])).toMatchObject({ code: 0, out: expect.stringContaining('agrees') })
