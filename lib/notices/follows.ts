@@ -8,8 +8,8 @@ import type { Snapshot } from '@/lib/catalogue/snapshot'
 import { entityTag } from '@/lib/entity-tag'
 import { levelIndex, speciesIndex, transitionIndices } from '@/lib/prediction/resolve'
 import { orderedPair } from '@/lib/prediction/transition'
-import { Problem } from '@/lib/problem'
-import type { Follow } from '@/openapi/schemas/notices'
+import { bodyProblem, Problem } from '@/lib/problem'
+import type { Follow, NewFollow } from '@/openapi/schemas/notices'
 
 const MOST_FOLLOWS = 1000
 
@@ -47,9 +47,10 @@ function understood(snapshot: Snapshot | null, subject: string): Pick<Row, 'kind
 }
 
 /** Follows a species, level or line of the latest edition; what is followed already is given back as it is. */
-export async function follow(db: Db, acting: Acting, subject: string, snapshot: Snapshot | null): Promise<Follow> {
+export async function follow(db: Db, acting: Acting, given: NewFollow, snapshot: Snapshot | null): Promise<Follow> {
   const { userId } = knownCaller(acting.caller)
-  const wanted = understood(snapshot, subject)
+  const wanted = understood(snapshot, given.subject)
+  if (given.kind !== undefined && given.kind !== wanted.kind) throw bodyProblem('/kind', 'follow_kind_differs', `${given.subject} is a ${wanted.kind}; leave kind out, or name that.`)
   return db.transaction(async (tx) => {
     // the account's row is locked, so that two requests at once are counted one after the other
     await tx.select({ id: users.id }).from(users).where(eq(users.id, userId)).for('update')

@@ -71,7 +71,7 @@ export function startNotices(log: (reason: string) => void): void {
       send()
       deliver()
     }
-    const listener = listen(['lodeterm_notices'], spread, (connected) => connected && all())
+    const listener = listen(['lodeterm_notices'], all, (connected) => connected && all())
     const timers = [setInterval(all, EVERY_MS), setInterval(() => void tidy(getDb()).catch((error: unknown) => complain(reasonOf(error))), TIDY_MS)]
     for (const timer of timers) timer.unref()
     return { listener, timers }

@@ -34,6 +34,7 @@ export const ACCESS_PROBLEMS = {
   reset_unusable: { status: 410, title: 'This link is not valid', explanation: 'The link to set a password is not known, was used, is more than an hour old, or a newer one was asked for.', cure: 'Use the link of the newest mail, or ask for another.' },
   reset_throttled: { status: 429, title: 'Too many links asked for', explanation: 'After several requests for a link to set a password the next has to wait, never more than a quarter of an hour.', cure: 'Look for the mail, or wait as long as Retry-After says.' },
   follow_unknown: { status: 404, title: 'Not followed', explanation: 'You follow nothing under this identifier.', cure: 'GET /follows lists what you follow.' },
+  follow_kind_differs: { status: 422, title: 'The subject is of another kind', explanation: 'The form of a subject tells whether it is a species, a level or a line, and the kind given beside it is another.', cure: 'Leave the kind out, or name the one that the subject has.' },
   too_many_follows: { status: 409, title: 'Too many things followed', explanation: 'One account can follow a thousand species, levels and lines.', cure: 'Follow a whole species instead of its levels, or follow something no longer.' },
   webhook_unknown: { status: 404, title: 'No such webhook', explanation: 'There is no webhook of this identifier.', cure: 'GET /webhooks lists them.' },
   too_many_webhooks: { status: 409, title: 'Too many webhooks', explanation: 'A server keeps at most fifty webhooks.', cure: 'Remove one that is no longer needed.' },

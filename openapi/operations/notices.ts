@@ -19,7 +19,7 @@ export const createFollow = defineOperation({
   summary: 'Follow a species, level or line: a mail tells you when an edition changes a value of it',
   description: 'A line is told of where either of its levels changes. Following twice is following once.',
   body: NewFollow, answer: Follow, edition: 'none', status: 201, idempotent: true,
-  problems: ['species_unknown', 'level_unknown', 'level_retired', 'species_differ', 'zero_interval', 'too_many_follows', 'not_ready'], example: { body: { subject: 'Na-I.3' } },
+  problems: ['species_unknown', 'level_unknown', 'level_retired', 'species_differ', 'zero_interval', 'follow_kind_differs', 'too_many_follows', 'not_ready'], example: { body: { subject: 'Na-I.3' } },
 })
 
 export const deleteFollow = defineOperation({

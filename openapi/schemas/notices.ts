@@ -18,8 +18,9 @@ export const Follow = z
 export type Follow = z.infer<typeof Follow>
 
 export const NewFollow = z
-  .strictObject({ subject: z.string().max(60).regex(new RegExp(FOLLOWED)).meta({ description: 'A species, level or line: Na-I, Na-I.3, Na-I.1~Na-I.3.' }) })
+  .strictObject({ kind: FollowKind.optional().meta({ description: 'May be left out: the form of the subject tells it.' }), subject: z.string().max(60).regex(new RegExp(FOLLOWED)).meta({ description: 'A species, level or line: Na-I, Na-I.3, Na-I.1~Na-I.3.' }) })
   .meta({ id: 'NewFollow', example: { subject: 'Na-I.3' } })
+export type NewFollow = z.infer<typeof NewFollow>
 
 export const WebhookEvent = z.enum(['review.asked', 'review.returned', 'review.accepted', 'edition.published']).meta({ id: 'WebhookEvent' })
 export type WebhookEvent = z.infer<typeof WebhookEvent>

@@ -4,7 +4,7 @@ import os from 'node:os'
 import path from 'node:path'
 import pg from 'pg'
 import { inject } from 'vitest'
-import { endServer, freePort, migrate, root, seed, serve, sessionSecret } from '../../db/scripts/steps.mjs'
+import { endServer, freePort, mailStandIn, migrate, node, root, seed, serve, sessionSecret } from '../../db/scripts/steps.mjs'
 import { clientAt, type Reply, type Sending } from '../api/helpers/client'
 import type { DemoAccount } from './environment'
 
@@ -49,15 +49,24 @@ const withDatabase = (url: string, name: string): string => {
 const gone = (child: ChildProcess): Promise<void> =>
   child.exitCode !== null || child.signalCode !== null ? Promise.resolve() : new Promise((done) => void child.once('exit', () => done()))
 
-export async function startInstance(name: string, settings: Record<string, string> = {}): Promise<Instance> {
-  const common = inject('environment')
-  const owner = common.DATABASE_URL ?? ''
-  const database = `lodeterm_test_${name.replace(/[^a-z0-9]/g, '_')}`
+/** In the private cluster databases are made by its own script, since the owner's login may not; another server's login has to be able to. */
+async function makeDatabase(owner: string, database: string): Promise<void> {
+  if (!process.env.TEST_DATABASE_URL) {
+    await node(['db/scripts/pg.mjs', 'fresh', database], { capture: true })
+    return
+  }
   const server = new pg.Client({ connectionString: owner })
   await server.connect()
   await server.query(`drop database if exists ${pg.escapeIdentifier(database)} with (force)`)
   await server.query(`create database ${pg.escapeIdentifier(database)} template template0 encoding 'UTF8'`)
   await server.end()
+}
+
+export async function startInstance(name: string, settings: Record<string, string> = {}): Promise<Instance> {
+  const common = inject('environment')
+  const owner = common.DATABASE_URL ?? ''
+  const database = `lodeterm_test_${name.replace(/[^a-z0-9]/g, '')}`
+  await makeDatabase(owner, database)
 
   const folder = fs.mkdtempSync(path.join(os.tmpdir(), `lodeterm-${name}-`))
   const port = await freePort()
@@ -73,6 +82,9 @@ export async function startInstance(name: string, settings: Record<string, strin
     BASE_URL: base,
     ...settings,
   }
+  // mail goes to a stand-in, unless the test has a mail server of its own
+  const mail = settings.SMTP_URL === undefined ? await mailStandIn(env.OUTBOX_FOLDER ?? '') : undefined
+  Object.assign(env, mail?.env)
   await migrate(env)
   await seed(env)
   const accounts = JSON.parse(fs.readFileSync(env.DEMO_ACCOUNTS_FILE ?? '', 'utf8')) as DemoAccount[]
@@ -103,6 +115,7 @@ export async function startInstance(name: string, settings: Record<string, strin
     },
     end: async () => {
       await endServer(child)
+      mail?.child.kill()
       await pool.end()
       pool = new pg.Pool({ connectionString: owner, max: 1 })
       await pool.query(`drop database if exists ${pg.escapeIdentifier(database)} with (force)`)
