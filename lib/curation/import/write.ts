@@ -13,7 +13,12 @@ const BATCH = 1000
 /** Gives new levels their ordinals, in the order of the file; by row, what each is called. Species in one order, so that two imports never wait for each other. */
 async function nameNewLevels(tx: Tx, making: readonly Making[]): Promise<Map<number, string>> {
   const bySpecies = new Map<string, Making[]>()
-  for (const one of making) if (one.change.known === null) bySpecies.set(one.change.speciesId, [...(bySpecies.get(one.change.speciesId) ?? []), one])
+  for (const one of making) {
+    if (one.change.known !== null) continue
+    const before = bySpecies.get(one.change.speciesId)
+    if (before === undefined) bySpecies.set(one.change.speciesId, [one])
+    else before.push(one)
+  }
   const names = new Map<number, string>()
   for (const species of [...bySpecies.keys()].sort()) {
     const rows = bySpecies.get(species) ?? []
