@@ -23,7 +23,7 @@ await main(async () => {
   }
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, () => void end())
   if (keepsMail(host)) mail = await mailStandIn(process.env.OUTBOX_FOLDER || '.data/outbox')
-  serving = await serve(host, port, { ...env, ...mail?.env })
+  serving = await serve(host, port, { ...env, OUTBOX_FOLDER: '', ...mail?.env })
   serving.child.once('exit', async (code) => {
     if (wanted) return
     if (mail) await endServer(mail.child)
@@ -39,6 +39,6 @@ ${told === '' ? '' : `\n${told}\n`}
 Try:
   curl '${address}/api/v1/transitions/Na-I.1~Na-I.3/components?field=1.5T'
 
-Ctrl-C ends it.
+${mail ? `Mail is not sent but kept: ${address}/outbox\n\n` : ''}Ctrl-C ends it.
 `)
 })

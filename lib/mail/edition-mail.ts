@@ -10,7 +10,9 @@ export interface LevelNews { id: string; state: 'changed' | 'retired' | 'new'; f
 /** What an edition changed of one thing that somebody follows. */
 export interface FollowedNews { kind: 'species' | 'level' | 'line'; subject: string; fields: FieldNews[]; levels: LevelNews[]; moreLevels: number; line: LineNews | null }
 
+/** What one mail holds: the page of the edition tells the rest. */
 const MOST_THINGS = 100
+const MOST_TEXT = 100_000
 
 const page = (path: string): string => `${getConfig().baseUrl}${path}`
 const pageOf = (kind: FollowedNews['kind'], subject: string): string => page(`/${{ species: 'species', level: 'levels', line: 'lines' }[kind]}/${encodeURIComponent(subject)}`)
@@ -58,15 +60,21 @@ function newsText(news: FollowedNews): string {
   return lines.join('\n')
 }
 
+/** As many of the texts as fit, the first in any case. */
+function within(texts: readonly string[]): string[] {
+  let length = 0
+  return texts.filter((text, index) => (length += text.length) <= MOST_TEXT || index === 0)
+}
+
 /** One mail to one follower about everything followed that an edition changed. */
 export function editionMail(edition: { edition: number; label: string; since: number }, name: string, news: readonly FollowedNews[]): Message {
-  const told = news.slice(0, MOST_THINGS)
-  const subjects = told.slice(0, 3).map(({ subject }) => subject).join(', ')
+  const told = within(news.slice(0, MOST_THINGS).map(newsText))
+  const subjects = news.slice(0, 3).map(({ subject }) => subject).join(', ')
   const more = news.length > 3 ? ` and ${news.length - 3} more` : ''
   const parts = [
     `Hello ${oneLine(name)},`,
     `Edition ${edition.edition} (${oneLine(edition.label)}) is published. It changes ${news.length === 1 ? 'one thing' : `${news.length} things`} that you follow; values are those of edition ${edition.since} -> edition ${edition.edition}.`,
-    ...told.map(newsText),
+    ...told,
     ...(news.length > told.length ? [`and ${news.length - told.length} more things that you follow.`] : []),
     `All changes: ${page(`/editions/${edition.edition}?since=${edition.since}`)}\nEdition ${edition.since} stays as it was: add edition=${edition.since} to any address.`,
     `You get this because you follow these things. What you follow: ${page('/following')}`,

@@ -40,7 +40,7 @@ function runner(step: () => Promise<boolean>, complain: Complain, then: () => vo
 /** What has been told for long is of no more use; the audit keeps who did what. */
 async function tidy(db: Db): Promise<void> {
   const days = (number: number) => sql`now() - ${number} * interval '1 day'`
-  await db.delete(mails).where(and(sql`coalesce(${mails.sentAt}, ${mails.failedAt}) is not null`, lt(mails.createdAt, days(30))))
+  await db.delete(mails).where(lt(mails.createdAt, days(30)))
   await db.delete(webhookDeliveries).where(and(sql`coalesce(${webhookDeliveries.deliveredAt}, ${webhookDeliveries.failedAt}) is not null`, lt(webhookDeliveries.createdAt, days(90))))
   await db.delete(noticeEvents).where(and(sql`${noticeEvents.spreadAt} is not null`, lt(noticeEvents.createdAt, days(90))))
 }

@@ -4,7 +4,7 @@ import { mails } from '@/db/schema'
 import { canSend, failureOf, sendMail } from '@/lib/mail/transport'
 import { pauseAfter } from '@/lib/notices/backoff'
 
-const AT_ONCE = 10
+const AT_ONCE = 4
 
 /**
  * Hands the mails that are due to the mail server. Each is claimed by moving its next attempt on, so that another process leaves it
@@ -14,7 +14,7 @@ const AT_ONCE = 10
 export async function sendMails(db: Db): Promise<number> {
   if (!canSend()) return 0
   const due = db.select({ id: mails.id }).from(mails).where(and(isNull(mails.sentAt), isNull(mails.failedAt), lte(mails.nextAttemptAt, sql`now()`))).orderBy(mails.nextAttemptAt, mails.id).limit(AT_ONCE).for('update', { skipLocked: true })
-  const claimed = await db.update(mails).set({ attempts: sql`${mails.attempts} + 1`, nextAttemptAt: sql`now() + interval '2 minutes'` }).where(sql`${mails.id} in (${due})`).returning()
+  const claimed = await db.update(mails).set({ attempts: sql`${mails.attempts} + 1`, nextAttemptAt: sql`now() + interval '5 minutes'` }).where(sql`${mails.id} in (${due})`).returning()
   for (const mail of claimed.sort((a, b) => a.id - b.id)) {
     try {
       await sendMail({ to: mail.recipient, subject: mail.subject, text: mail.text })

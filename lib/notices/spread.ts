@@ -1,3 +1,4 @@
+import { setImmediate as pause } from 'node:timers/promises'
 import { and, asc, eq, inArray, isNull, notInArray, or, sql } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
 import type { EventKind, EventPayloads, ReviewPayload } from '@/db/events'
@@ -46,6 +47,8 @@ async function editionLetters(tx: Tx, edition: EventPayloads['edition.published'
   const byPerson = new Map<string, { name: string; news: FollowedNews[] }>()
   for (const { email, name, kind, subject } of followed) {
     const one = news.of(kind, subject)
+    // a species of many levels takes a while to compare, and this process answers requests too
+    await pause()
     if (one === null) continue
     const person = byPerson.get(email) ?? { name, news: [] }
     person.news.push(one)

@@ -1,0 +1,170 @@
+import { randomUUID } from 'node:crypto'
+import type { Browser, Page } from 'playwright-core'
+import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest'
+import { accessibilityFindings, go, openBrowser, overflow, type Theme, visit } from './browser'
+
+let browser: Browser
+beforeAll(async () => {
+  browser = await openBrowser()
+})
+afterAll(() => browser.close())
+
+const account = (role: string) => {
+  const found = inject('demoAccounts').find((one) => one.role === role)
+  if (found === undefined) throw new Error(`there is no demo account of a ${role}`)
+  return found
+}
+
+async function signIn(page: Page, role: string): Promise<void> {
+  const { email, password } = account(role)
+  await go(page, '/sign-in')
+  await page.getByLabel('Email').fill(email)
+  await page.getByLabel('Password').fill(password)
+  await page.getByRole('button', { name: 'Sign in' }).click()
+  await page.waitForURL(/\/account/)
+}
+
+const ADMIN_PAGES: readonly { path: string; shows: RegExp }[] = [
+  { path: '/account', shows: /API keys/ },
+  { path: '/people', shows: /Invite/ },
+  { path: '/webhooks', shows: /How to check a signature/ },
+  { path: '/audit', shows: /session\.begin/ },
+  { path: '/audit?action=session.begin', shows: /session\.begin/ },
+  { path: '/outbox', shows: /Mail that would have been sent/ },
+  { path: '/following', shows: /one mail an edition|follow nothing yet/i },
+]
+const OPEN_PAGES: readonly { path: string; shows: RegExp }[] = [
+  { path: '/reset-password', shows: /Send me a link/ },
+  { path: '/reset-password?token=made-up', shows: /New password again/ },
+  { path: '/sign-in', shows: /Forgotten your password/ },
+]
+
+describe.each<Theme>(['light', 'dark'])('in the %s theme', (theme) => {
+  it('the pages of an admin are accessible, quiet, and have their content', async () => {
+    const { context, page, complaints } = await visit(browser, { theme })
+    await signIn(page, 'admin')
+    for (const { path, shows } of ADMIN_PAGES) {
+      await go(page, path)
+      await expect.poll(() => page.locator('#main').innerText(), { timeout: 15_000, message: path }).toMatch(shows)
+      expect(await page.locator('h1').count(), path).toBe(1)
+      expect(await accessibilityFindings(page), path).toEqual([])
+    }
+    expect(complaints).toEqual([])
+    await context.close()
+  })
+
+  it('so are those that a link in a mail leads to', async () => {
+    const { context, page, complaints } = await visit(browser, { theme })
+    for (const { path, shows } of OPEN_PAGES) {
+      await go(page, path)
+      await expect.poll(() => page.locator('#main').innerText(), { timeout: 15_000, message: path }).toMatch(shows)
+      expect(await accessibilityFindings(page), path).toEqual([])
+    }
+    expect(complaints).toEqual([])
+    await context.close()
+  })
+})
+
+it.each([320, 390, 1440])('none of them scrolls sideways at %i pixels', async (width) => {
+  const { context, page } = await visit(browser, { width, height: 844 })
+  await signIn(page, 'admin')
+  for (const { path } of [...ADMIN_PAGES, ...OPEN_PAGES]) {
+    await go(page, path)
+    expect(await overflow(page), path).toBeLessThanOrEqual(0)
+  }
+  await context.close()
+})
+
+it('a stranger is asked to sign in, and comes back to the page', async () => {
+  const { context, page } = await visit(browser)
+  await go(page, '/following')
+  expect(page.url()).toMatch(/\/sign-in\?next=%2Ffollowing/)
+  const { email, password } = account('reader')
+  await page.getByLabel('Email').fill(email)
+  await page.getByLabel('Password').fill(password)
+  await page.getByRole('button', { name: 'Sign in' }).click()
+  await page.waitForURL(/\/following/)
+  expect(await page.getByRole('link', { name: 'People' }).count()).toBe(0)
+  await go(page, '/people')
+  await expect.poll(() => page.locator('#main').innerText()).toMatch(/needs the role admin/)
+  await context.close()
+})
+
+it('a person is invited, finds the mail, comes in, follows a level, and is closed', async () => {
+  const email = `by.page.${randomUUID().slice(0, 8)}@test.example`
+  const { context, page } = await visit(browser)
+  await signIn(page, 'admin')
+  await go(page, '/people')
+  const form = page.getByRole('form', { name: 'Invite a person' })
+  await form.getByLabel('Email').fill(email)
+  await form.getByLabel('Name').fill('Invited Person')
+  await form.getByLabel('Role').selectOption('curator')
+  await form.getByRole('button', { name: 'Invite' }).click()
+  await expect.poll(() => page.getByText('Invited Person is invited').count()).toBe(1)
+  await go(page, '/outbox')
+  const link = page.locator('details', { hasText: email }).locator('a[href*="/invitation?token="]')
+  await expect.poll(() => link.count(), { timeout: 15_000 }).toBe(1)
+  const address = (await link.getAttribute('href')) ?? ''
+
+  const guest = await visit(browser)
+  await go(guest.page, address)
+  await expect.poll(() => guest.page.getByLabel('Email').inputValue()).toBe(email)
+  expect(await accessibilityFindings(guest.page)).toEqual([])
+  await guest.page.getByLabel('Your name').fill('Chosen Name')
+  await guest.page.getByLabel('Password').fill('granite lantern orbit')
+  await guest.page.getByRole('button', { name: 'Make my account' }).click()
+  await guest.page.waitForURL(/\/account/)
+  await expect.poll(() => guest.page.locator('h1').innerText()).toBe('Chosen Name')
+  await go(guest.page, '/levels/Na-I.3')
+  await guest.page.getByRole('button', { name: 'Follow' }).click()
+  await expect.poll(() => guest.page.getByRole('button', { name: 'Following' }).getAttribute('aria-pressed')).toBe('true')
+  await go(guest.page, '/levels/Na-I.3')
+  await expect.poll(() => guest.page.getByRole('button', { name: 'Following' }).count()).toBe(1)
+  expect(await accessibilityFindings(guest.page)).toEqual([])
+  await go(guest.page, '/following')
+  await guest.page.getByRole('button', { name: 'Stop following Na-I.3' }).click()
+  await expect.poll(() => guest.page.locator('#main').innerText()).toMatch(/You follow nothing yet/)
+
+  await go(page, '/people')
+  await page.getByLabel('Search by name or address').fill(email)
+  await page.getByRole('button', { name: 'Change Chosen Name' }).click()
+  await expect.poll(() => page.getByRole('region', { name: 'Change Chosen Name' }).count()).toBe(1)
+  expect(await accessibilityFindings(page)).toEqual([])
+  await page.getByRole('button', { name: 'Close this account' }).click()
+  await page.getByRole('button', { name: 'Close the account' }).click()
+  await expect.poll(() => page.getByRole('row', { name: /Chosen Name/ }).innerText()).toMatch(/closed/)
+  await go(guest.page, '/following')
+  expect(guest.page.url()).toMatch(/\/sign-in/)
+  // the same link is good for nothing more
+  await go(guest.page, address)
+  await expect.poll(() => guest.page.locator('h1').innerText()).toMatch(/not valid/)
+  await Promise.all([context.close(), guest.context.close()])
+})
+
+it('a webhook shows its secret once, and a test that does not come through says so', async () => {
+  const { context, page } = await visit(browser)
+  await signIn(page, 'admin')
+  await go(page, '/webhooks')
+  const form = page.getByRole('form', { name: 'Set up a webhook' })
+  await form.getByLabel('Name').fill('to nowhere')
+  await form.getByLabel('Address').fill('http://127.0.0.1:9/')
+  await form.getByRole('button', { name: 'Set it up' }).click()
+  await expect.poll(() => form.innerText()).toMatch(/not public/)
+  // a public address that nothing is sent to: it is switched off at once
+  await form.getByLabel('Address').fill('https://1.1.1.1/lodeterm')
+  await form.getByRole('button', { name: 'Set it up' }).click()
+  await expect.poll(() => page.getByText('keep this secret now').count()).toBe(1)
+  expect(await accessibilityFindings(page)).toEqual([])
+  await page.getByRole('button', { name: 'I have kept it' }).click()
+  const card = page.getByRole('region', { name: 'to nowhere' })
+  await card.getByRole('button', { name: 'Switch off' }).click()
+  await expect.poll(() => card.innerText()).toMatch(/switched off/)
+  await card.getByRole('button', { name: 'Deliveries' }).click()
+  await expect.poll(() => card.innerText()).toMatch(/Nothing was sent yet/)
+  await card.getByRole('button', { name: 'Change', exact: true }).click()
+  expect(await accessibilityFindings(page)).toEqual([])
+  await card.getByRole('button', { name: 'Remove', exact: true }).click()
+  await card.getByRole('button', { name: 'Remove for good' }).click()
+  await expect.poll(() => card.count()).toBe(0)
+  await context.close()
+})
