@@ -71,7 +71,7 @@ function ActDialog({ act, amendment, room, onClose, onDone }: { act: Act; amendm
         ) : send.error ? <ProblemView problem={problemOf(send.error)} heading="h3" /> : null}
         <div>
           <label htmlFor={id} className="label">{words.comment}</label>
-          <textarea id={id} name="comment" rows={4} maxLength={10_000} className="input" autoFocus aria-invalid={missing || undefined} aria-describedby={missing ? `${id}-missing` : undefined} />
+          <textarea id={id} name="comment" rows={4} maxLength={10_000} className="input" aria-invalid={missing || undefined} aria-describedby={missing ? `${id}-missing` : undefined} />
           {missing ? <p id={`${id}-missing`} className="mt-1 text-sm text-bad">{act === 'return' ? 'Say what is to be put right.' : 'The warnings want a comment.'}</p> : null}
         </div>
         <div className="flex gap-2">

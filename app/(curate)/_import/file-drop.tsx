@@ -19,7 +19,7 @@ export function FileDrop({ onFile, disabled }: { onFile: (file: File) => void; d
         <p className="note">CSV or TSV with a header row, at most 100 000 rows and 64 MB. Drop it here or choose it.</p>
       </div>
       <input id={id} type="file" accept=".csv,.tsv,.txt,.dat,text/csv,text/tab-separated-values,text/plain" disabled={disabled}
-        className="max-w-full text-sm file:btn file:mr-3 file:cursor-pointer" onChange={(event) => { take(event.target.files); event.target.value = '' }} />
+        className="max-w-full text-sm file:mr-3 file:min-h-9 file:cursor-pointer file:rounded-sm file:border file:border-solid file:border-rule-strong file:bg-paper file:px-3 file:font-medium file:text-ink hover:file:border-lamp" onChange={(event) => { take(event.target.files); event.target.value = '' }} />
     </div>
   )
 }

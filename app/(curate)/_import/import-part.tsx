@@ -1,6 +1,7 @@
 'use client'
 import { useQuery } from '@tanstack/react-query'
 import { Square } from 'lucide-react'
+import { useQueryState } from 'nuqs'
 import { useState } from 'react'
 import type { Import, ImportColumn } from '@/openapi/schemas/import'
 import { apiQuery } from '../../_components/data/api'
@@ -24,7 +25,9 @@ function Progress({ control, sending }: { control: ImportControl; sending: boole
   return (
     <div className="max-w-3xl space-y-2" role="group" aria-label="Progress">
       <p role="status" className="text-sm">{doing}{now === null || now.rows_total === 0 ? '' : `: ${count(now.rows_done)} of ${count(now.rows_total)}`}</p>
-      <progress className="h-2 w-full accent-lamp" aria-label={doing} max={1} value={share ?? undefined} />
+      <div role="progressbar" aria-label={doing} aria-valuemin={0} aria-valuemax={100} aria-valuenow={share === null ? undefined : Math.round(100 * share)} className="h-2.5 border border-rule-strong bg-well">
+        {share === null ? <div className="skeleton h-full" /> : <div className="h-full bg-lamp transition-[width]" style={{ width: `${100 * share}%` }} />}
+      </div>
       {now !== null ? <button type="button" className="btn btn-small" disabled={stop.isPending || stop.isSuccess} onClick={() => stop.mutate()}><Square size={12} aria-hidden="true" />{stop.isSuccess ? 'Stopping' : 'Stop'}</button> : null}
     </div>
   )
@@ -37,11 +40,24 @@ const TITLE: Record<Import['state'], (shown: Import) => string> = {
   stopped: () => 'Stopped; nothing was written', failed: () => 'It failed; nothing was written', interrupted: () => 'The server stopped in the middle; nothing was written', running: () => '',
 }
 
-function Outcome({ shown }: { shown: Import }) {
+function Outcome({ shown, room }: { shown: Import; room: SheetRoom }) {
+  const [, setPart] = useQueryState('part')
+  const { saver } = room
+  if (wantsMapping(shown)) {
+    // unknown headers are named in the form below
+    const others = shown.problems.filter(({ code }) => code !== 'column_unknown')
+    return (
+      <Notice tone="warn" role="status" title="Say what the columns are">
+        <p>Not all headers of this file are ours. What they look like is chosen below: please check it. Nothing is written yet.</p>
+        {others.length > 0 ? <ul className="list-disc space-y-1 pl-5">{others.slice(0, 20).map((problem, index) => <li key={index}>{problem.detail}</li>)}</ul> : null}
+      </Notice>
+    )
+  }
   return (
     <Notice tone={TONE[shown.state]} role="status" title={TITLE[shown.state](shown)}>
       <p>{shown.summary}</p>
       {shown.problems.length > 0 ? <ul className="list-disc space-y-1 pl-5">{shown.problems.slice(0, 20).map((problem, index) => <li key={index}>{problem.detail}</li>)}</ul> : null}
+      {shown.state === 'done' && !shown.dry_run && shown.counts.new + shown.counts.changed > 0 ? <p><button type="button" className="btn btn-small mt-1" onClick={() => { void saver.now(); void setPart(null) }}>See them in the table</button></p> : null}
     </Notice>
   )
 }
@@ -86,7 +102,7 @@ export function ImportPart({ amendment, room, canEdit }: { amendment: string; ro
       {file !== null ? <p className="flex flex-wrap items-baseline gap-x-3"><span className="font-medium [overflow-wrap:anywhere]">{file.name}</span><span className="note">{bytesText(file.size)}</span></p> : null}
       {busy ? <Progress control={control} sending={send.isPending} /> : null}
       {error ? <ProblemView error={error} onRetry={file === null ? undefined : () => read(file, reading, true)} heading="h3" /> : null}
-      {now !== null && !busy ? <Outcome shown={now} /> : null}
+      {now !== null && !busy ? <Outcome shown={now} room={room} /> : null}
       {mapping !== null && now !== null ? (
         wantsMapping(now) ? <section><h2 className="mb-3">What the columns are</h2>{mapping}</section> : (
           <details className="group border-y border-rule py-2">

@@ -30,7 +30,7 @@ const COLUMNS: Column<ImportRow>[] = [
     cell: (row) => (
       <ul>
         {row.fields.slice(0, row.verdict === 'new' ? 4 : 12).map(({ field, before, after }) => (
-          <li key={field}><span className="text-muted">{fieldWords(field)}: </span>{row.verdict === 'new' ? null : <><ValueText field={field} value={before} /> <span aria-label="to">→</span> </>}<ValueText field={field} value={after} /></li>
+          <li key={field}><span className="text-muted">{fieldWords(field)}: </span>{row.verdict === 'new' ? null : <><ValueText field={field} value={before} /> <span className="text-muted">→</span> </>}<ValueText field={field} value={after} /></li>
         ))}
         {row.verdict === 'new' && row.fields.length > 4 ? <li className="note">and {row.fields.length - 4} more values</li> : null}
       </ul>

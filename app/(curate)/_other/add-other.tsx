@@ -36,9 +36,9 @@ export function AddOther({ amendment, kind, onReady, onClose }: { amendment: str
   return (
     <Dialog title={`Add or correct a ${KINDS[kind].word}`} onClose={onClose}>
       <form onSubmit={submit} className="space-y-4" noValidate>
-        {kind === 'source' ? <Field label="Key" name="source" maxLength={100} placeholder="kramida-2019-zn" autoComplete="off" autoFocus list="other-sources" error={fault ?? undefined} hint="A key of the table is corrected, another one is new." /> : null}
-        {kind === 'species' || kind === 'isotope' ? <Field label="Species" name="species" maxLength={20} placeholder="Na-I" autoComplete="off" autoFocus error={fault ?? undefined} /> : null}
-        {kind === 'hyperfine' ? <Field label="Level" name="level" maxLength={30} placeholder="Na-I.3" autoComplete="off" autoFocus error={fault ?? undefined} /> : null}
+        {kind === 'source' ? <Field label="Key" name="source" maxLength={100} placeholder="kramida-2019-zn" autoComplete="off" list="other-sources" error={fault ?? undefined} hint="A key of the table is corrected, another one is new." /> : null}
+        {kind === 'species' || kind === 'isotope' ? <Field label="Species" name="species" maxLength={20} placeholder="Na-I" autoComplete="off" error={fault ?? undefined} /> : null}
+        {kind === 'hyperfine' ? <Field label="Level" name="level" maxLength={30} placeholder="Na-I.3" autoComplete="off" error={fault ?? undefined} /> : null}
         {kind === 'isotope' || kind === 'hyperfine' ? <Field label="Mass number" name="mass" maxLength={3} inputMode="numeric" placeholder="23" autoComplete="off" /> : null}
         {look.error ? <ProblemView error={look.error} heading="h3" /> : null}
         <div className="flex gap-2">

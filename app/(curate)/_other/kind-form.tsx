@@ -63,7 +63,7 @@ export function KindForm({ row, room, canEdit, onClose, onConflict }: { row: She
   const rest = findings.filter((finding) => finding.field === null || !names.has(finding.field))
   const { wanted } = row
   return (
-    <Dialog title={subjectName(row.subject)} onClose={onClose} wide>
+    <Dialog title={subjectName(row.subject)} onClose={onClose}>
       <div className="space-y-4">
         {row.save === 'conflict' ? <Notice tone="bad" title="Someone else wrote this first"><p><button type="button" className="btn btn-small" onClick={onConflict}>Look at both versions</button></p></Notice> : null}
         {row.save === 'failed' && row.problem ? <Notice tone="bad" title={row.problem.title}><p>{row.problem.detail} What you typed is kept here. <button type="button" className="link" onClick={() => void saver.retry()}>Try again</button></p></Notice> : null}

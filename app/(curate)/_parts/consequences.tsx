@@ -19,10 +19,9 @@ export function consequencesText({ counts, edition }: Consequences): string {
 }
 
 const shift = (value: number | null, digits = 3) => (value === null ? null : `${value > 0 ? '+' : ''}${significant(value, digits)}`)
+/** From where to where; alone where there is no other end. */
 const arrow = (before: string | null, after: string | null) => (
-  <span className="num whitespace-nowrap">
-    {before ?? <span className="text-muted">none</span>} <span aria-label="to">→</span> {after ?? <span className="text-muted">none</span>}
-  </span>
+  <span className="num whitespace-nowrap">{before === null || after === null ? (before ?? after) : <>{before} <span className="text-muted">→</span> {after}</>}</span>
 )
 const wavelength = (value: number | null): string | null => (value === null ? null : fixed(value, value < 30_000 ? 5 : 2))
 const g = (value: number | null): string | null => (value === null ? null : fixed(value, 5))
@@ -57,7 +56,7 @@ function Narrow({ lines, caption }: { lines: readonly LineConsequence[]; caption
           <p>{arrow(wavelength(line.wavelength_before_nm), wavelength(line.wavelength_after_nm))} <span className="text-muted">nm</span></p>
           <p className="note num">
             {[line.shift_pm === null ? '' : `${shift(line.shift_pm)} pm`, line.shift_invcm === null ? '' : `${shift(line.shift_invcm)} cm⁻¹`].filter((part) => part !== '').join(', ')}
-            {g(line.g_eff_before) === g(line.g_eff_after) ? null : <>{line.shift_pm === null ? '' : ', '}g<sub>eff</sub> {arrow(g(line.g_eff_before), g(line.g_eff_after))}</>}
+            {g(line.g_eff_before) === g(line.g_eff_after) || line.effect === 'gone' ? null : <>{line.shift_pm === null ? '' : ', '}g<sub>eff</sub> {arrow(g(line.g_eff_before), g(line.g_eff_after))}</>}
           </p>
         </li>
       ))}

@@ -13,8 +13,11 @@ export function clashes(base: ChangeState | null, mine: ChangeState | null, thei
     ...[...names].map((field) => ({ field, of: (state: ChangeState | null) => (state?.values ?? {})[field] ?? null }))]
   return fields
     .map(({ field, of }): Clash => ({ field, base: of(base), mine: of(mine), theirs: of(theirs), differ: !same(of(mine), of(theirs)) }))
-    .filter((clash) => clash.differ || !same(clash.base, clash.mine))
+    .filter((clash) => clash.differ || (!same(clash.base, clash.mine) && !isFollowing(clash)))
 }
+
+/** The number of an energy goes when its digits are typed, and follows from them: nothing to be told. */
+const isFollowing = ({ field, mine, theirs }: Clash): boolean => field === 'energy_invcm' && (mine ?? null) === null && (theirs ?? null) === null
 
 const same = (a: unknown, b: unknown): boolean => canonical({ a }) === canonical({ a: b })
 

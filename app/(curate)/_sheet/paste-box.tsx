@@ -17,7 +17,7 @@ export function PasteBox({ onPaste, onClose }: { onPaste: (cells: string[][]) =>
         <p className="note">Copied from a spreadsheet, or text with tabs between columns. It goes down and right from the cell in focus; a first row of our headings places the columns. A report comes before anything is written.</p>
         <label className="block">
           <span className="label">Block</span>
-          <textarea className="input min-h-40 font-mono text-sm" value={text} onChange={(event) => setText(event.target.value)} spellCheck={false} autoFocus
+          <textarea className="input min-h-40 font-mono text-sm" value={text} onChange={(event) => setText(event.target.value)} spellCheck={false}
             onPaste={(event) => {
               const cells = clipboardBlock(event.clipboardData)
               if (text === '' && cells.length > 0 && (cells.length > 1 || (cells[0]?.length ?? 0) > 1)) { event.preventDefault(); onPaste(cells) }

@@ -23,7 +23,7 @@ export function RetireDialog({ row, onRetire, onClose }: { row: SheetRow; onReti
     <Dialog title={`Retire ${subjectName(row.subject)}`} onClose={onClose}>
       <form onSubmit={submit} className="space-y-4" noValidate>
         <p className="note">From the edition that this goes into, the level is no longer listed and makes no lines. Earlier editions keep it.</p>
-        <Field label="Reason" name="reason" maxLength={2000} defaultValue={row.wanted?.reason ?? ''} error={faults.reason} autoComplete="off" autoFocus />
+        <Field label="Reason" name="reason" maxLength={2000} defaultValue={row.wanted?.reason ?? ''} error={faults.reason} autoComplete="off" />
         <Field label="Level that takes its place, if any" name="successor" maxLength={40} defaultValue={row.wanted?.successor ?? ''} error={faults.successor} autoComplete="off" placeholder="Na-I.3" />
         <div className="flex flex-wrap gap-2">
           <button type="submit" className="btn btn-lamp">Retire</button>

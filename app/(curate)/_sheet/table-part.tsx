@@ -120,7 +120,7 @@ export function TablePart({ amendment, room, canEdit }: { amendment: string; roo
           </EmptyState>
         )
       ) : (
-        <div className="grid items-start gap-4 xl:grid-cols-[minmax(0,1fr)_25rem]">
+        <div className="grid grid-cols-[minmax(0,1fr)] items-start gap-4 xl:grid-cols-[minmax(0,1fr)_25rem]">
           <div className="min-w-0">
             <Grid grid={grid} view={view} keys={keys} columns={columns} canEdit={canEdit} showBefore={showBefore} sources={sourceKeys} label="Levels of this amendment"
               onPaste={propose} onCopied={(cells) => setSaid(`${plural(cells, 'cell')} copied.`)} />

@@ -22,6 +22,7 @@ const READS: readonly { path: RegExp; open: () => Promise<{ GET: Handler }> }[] 
   { path: /^\/transitions\/[^/]+\/components$/, open: () => import('@/app/api/v1/transitions/[transition]/components/route') },
   { path: /^\/follows$/, open: () => import('@/app/api/v1/follows/route') },
   { path: /^\/me$/, open: () => import('@/app/api/v1/me/route') },
+  { path: /^\/me\/tasks$/, open: () => import('@/app/api/v1/me/tasks/route') },
   { path: /^\/amendments$/, open: () => import('@/app/api/v1/amendments/route') },
   { path: /^\/amendments\/[^/]+$/, open: () => import('@/app/api/v1/amendments/[id]/route') },
 ]
