@@ -33,6 +33,9 @@ export function beforeAndAfter({ action, kind, row, before }: Omit<Told, 'given'
   }
 }
 
+/** Found on reading, not stored: it comes of an edition, not of an edit. */
+const STALE: Finding = { severity: 'error', code: 'base_stale', field: null, detail: 'An edition published since this was written has changed the same thing: look at its values of today, and save the change again.' }
+
 /** Changes as the API gives them, beside the values of the edition compared with. */
 export async function describeChanges(db: Db | Tx, rows: readonly ChangeRow[], edition: number): Promise<AmendmentChange[]> {
   if (rows.length === 0) return []
@@ -40,12 +43,13 @@ export async function describeChanges(db: Db | Tx, rows: readonly ChangeRow[], e
   const authors = await db.select({ id: users.id, name: users.name }).from(users).where(sql`${users.id} in (select (jsonb_array_elements_text(${JSON.stringify([...new Set(rows.map((row) => row.author))])}::jsonb))::uuid)`)
   return rows.map((change) => {
     const { kind, action, subject } = change
+    const now = published(kind, subject)
     return {
       id: change.id, amendment: change.amendmentId, kind, action, subject,
       species: change.speciesId, level: kind === 'level' ? subject : kind === 'hyperfine' ? subject.slice(0, subject.indexOf('/')) : null,
       values: action === 'retire' ? null : (change.given as Values), reason: change.reason, successor: change.successor, comment: change.comment, base_revision: change.baseRevision,
-      ...beforeAndAfter({ kind, action, row: change.row as AnyRow | null, before: published(kind, subject)?.row ?? null }),
-      findings: change.findings as Finding[],
+      ...beforeAndAfter({ kind, action, row: change.row as AnyRow | null, before: now?.row ?? null }),
+      findings: now?.revision === (change.baseRevision ?? undefined) ? (change.findings as Finding[]) : [STALE, ...(change.findings as Finding[])],
       author: authors.find((person) => person.id === change.author) ?? { id: change.author, name: '' },
       import_row: change.importRow, version: change.version, etag: changeTag(change), created_at: change.createdAt.toISOString(), updated_at: change.updatedAt.toISOString(),
     }

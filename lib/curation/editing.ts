@@ -89,8 +89,14 @@ export interface PreparedChange {
 
 const BATCH = 1000
 
-/** JSON that PostgreSQL takes: neither half of a surrogate pair nor NUL is a character to it. */
-export const storable = (value: unknown): string => JSON.stringify(value, (_, inner: unknown) => (typeof inner === 'string' ? inner.toWellFormed().replaceAll('\0', '\ufffd') : inner))
+const UNSTORABLE = /\\u(?:0000|d[89a-f])/
+
+/** JSON that PostgreSQL takes: neither half of a surrogate pair nor NUL is a character to it. Both come out of JSON.stringify as escapes. */
+export function storable(value: unknown): string {
+  const text = JSON.stringify(value)
+  if (!UNSTORABLE.test(text)) return text
+  return JSON.stringify(value, (_, inner: unknown) => (typeof inner === 'string' ? inner.toWellFormed().replaceAll('\0', '\ufffd') : inner))
+}
 
 const countOf = (findings: readonly Finding[], severity: Finding['severity']): number => findings.reduce((sum, one) => sum + (one.severity === severity ? 1 : 0), 0)
 

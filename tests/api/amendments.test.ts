@@ -1,4 +1,7 @@
+import { eq, sql } from 'drizzle-orm'
 import { describe, expect, it } from 'vitest'
+import { getDb } from '@/db/client'
+import { amendmentChanges, noticeEvents } from '@/db/schema'
 import { ask, faultsOf, get, type Json } from './helpers/client'
 import { begin, codesOf, replace, valuesOf } from './helpers/curation'
 import { makeKey, makePerson, SAME_SITE, signIn } from './helpers/people'
@@ -202,6 +205,31 @@ describe('talk and tasks', () => {
     expect([await lists(one.by.key), await lists(colleague.key)]).toEqual([['accepted'], ['accepted']])
     // accepted amendments of other tests are published by none
     await one.step('withdraw', one.by.key)
+  })
+
+  it('leaves word for those who are to be told', async () => {
+    const [one, colleague] = [await begin(undefined, 'told of'), await makeKey('curator')]
+    await one.add(await replace('Na-I.3', { note: 'a' }))
+    await one.step('submit', one.by.key, 'please')
+    await one.step('return', colleague.key, 'why?')
+    await one.step('submit', one.by.key)
+    await one.step('accept', colleague.key)
+    await one.step('withdraw', one.by.key)
+    const events = await getDb().select().from(noticeEvents).where(sql`${noticeEvents.payload} ->> 'amendment' = ${one.id}`).orderBy(noticeEvents.id)
+    expect(events.map((event) => [event.kind, (event.payload as Json).by.id, (event.payload as Json).comment])).toEqual([
+      ['review.asked', one.by.owner.id, 'please'], ['review.returned', colleague.owner.id, 'why?'], ['review.asked', one.by.owner.id, null], ['review.accepted', colleague.owner.id, null],
+    ])
+    expect(events[0]?.payload).toMatchObject({ title: 'told of', by: { name: 'Test curator' } })
+  })
+
+  it('refuses a review of what an edition has changed since', async () => {
+    const one = await begin()
+    const change = await one.add(await replace('Na-I.3', { note: 'a' }))
+    // as if it had been written from a revision that is not the newest
+    await getDb().update(amendmentChanges).set({ baseRevision: 7 }).where(eq(amendmentChanges.id, change.json.data.id))
+    expect(codesOf((await get(`${one.at}/changes/${change.json.data.id}`, { key: one.by.key })).json.data)).toEqual(['error base_stale'])
+    const refused = await one.step('submit', one.by.key)
+    expect([refused.status, refused.json.code, refused.json.changes]).toEqual([409, 'base_stale', [{ change: change.json.data.id, subject: 'Na-I.3' }]])
   })
 
   it('writes the audit of every step', async () => {

@@ -8,6 +8,8 @@ import type { LevelRow } from '../rows'
 export interface LevelTerm { label: string | null; term: Term | null; twoJ: TwoJ; parity: Parity }
 type Reading = { ok: true; value: LevelTerm } | { ok: false; code: string; detail: string }
 
+const unreadable = (code: string, detail: string): Reading => ({ ok: false, code, detail })
+
 const UNASSIGNED = /^(?:([A-Za-z]{1,4})\s+)?J\s*=\s*([0-9./]+)\s*([*°o]?)$/
 /** The letters before a repeated term: `z5P*2`, `a 5D4`, `y(1/2,3/2)*1`. */
 const LABELLED = /^([A-Za-z]{1,4})\s*(?=[\d([⁰¹²³⁴-⁹])(.+)$/s
@@ -18,18 +20,18 @@ const readings = new Map<string, Reading>()
 function read(text: string, coupling: Coupling): Reading {
   const unassigned = UNASSIGNED.exec(text)
   if (coupling === 'unassigned') {
-    if (unassigned === null) return { ok: false, code: 'term_malformed', detail: `${quoted(text)} is not how an unassigned level is named: write J=3/2, or J=3/2* where it is odd.` }
+    if (unassigned === null) return unreadable('term_malformed', `${quoted(text)} is not how an unassigned level is named: write J=3/2, or J=3/2* where it is odd.`)
     const j = parseHalf(unassigned[2] ?? '')
     if (!j.ok) return j
     return { ok: true, value: { label: unassigned[1] ?? null, term: null, twoJ: j.value, parity: unassigned[3] ? 'odd' : 'even' } }
   }
-  if (unassigned !== null) return { ok: false, code: 'coupling_mismatch', detail: `${quoted(text)} names a level of no coupling: set coupling to unassigned, or give its ${coupling} symbol.` }
+  if (unassigned !== null) return unreadable('coupling_mismatch', `${quoted(text)} names a level of no coupling: set coupling to unassigned, or give its ${coupling} symbol.`)
   const labelled = LABELLED.exec(text)
   const term = parseTerm(labelled?.[2] ?? text)
-  if (!term.ok) return { ok: false, code: term.code, detail: term.detail }
+  if (!term.ok) return term
   const { value } = term
-  if (value.kind !== coupling) return { ok: false, code: 'coupling_mismatch', detail: `${quoted(text)} is a symbol of ${value.kind} coupling, and the level is given as ${coupling}: mend the coupling or the symbol.` }
-  if (value.twoJ === null) return { ok: false, code: 'j_missing', detail: `${quoted(text)} has no J: a level's symbol ends with it, such as ${printTerm({ ...value, twoJ: value.kind === 'LS' ? Math.abs(value.twoS - 2 * value.l) : 0 }, 'ascii')}.` }
+  if (value.kind !== coupling) return unreadable('coupling_mismatch', `${quoted(text)} is a symbol of ${value.kind} coupling, and the level is given as ${coupling}: mend the coupling or the symbol.`)
+  if (value.twoJ === null) return unreadable('j_missing', `${quoted(text)} has no J: a level's symbol ends with it, such as ${printTerm({ ...value, twoJ: value.kind === 'LS' ? Math.abs(value.twoS - 2 * value.l) : 0 }, 'ascii')}.`)
   return { ok: true, value: { label: labelled?.[1] ?? value.label, term: value, twoJ: value.twoJ, parity: value.parity ?? 'even' } }
 }
 
