@@ -16,12 +16,20 @@ export interface Reader {
   places: ReadonlyMap<string, number>
   /** Columns that say something, from the file or for every row alike. */
   has: (name: string) => boolean
+  /** Whether any column says again what others say. */
+  controlled: boolean
+  /** What is made of cells that repeat all over a file, by their text. */
+  remembered: Map<string, unknown>
 }
 
 export function readerOf(layout: Layout, decimal: Decimal): Reader {
   const places = new Map(layout.columns.flatMap((column, i): [string, number][] => (column === null ? [] : [[column.name, i]])))
-  return { layout, decimal, places, has: (name) => places.has(name) || layout.defaults.has(name) }
+  return {
+    layout, decimal, places, has: (name) => places.has(name) || layout.defaults.has(name), controlled: layout.columns.some((column) => column?.use === 'control'), remembered: new Map(),
+  }
 }
+
+const REMEMBERED = 20_000
 
 const isBlank = (text: string): boolean => text.trim() === ''
 
@@ -34,6 +42,21 @@ export class RowCells {
 
   has(name: string): boolean {
     return this.reader.has(name)
+  }
+
+  get controlled(): boolean {
+    return this.reader.controlled
+  }
+
+  /** Makes something of the cells of some columns, once for all rows where they are the same. */
+  once<T>(columns: readonly string[], make: () => T): T {
+    const key = JSON.stringify(columns.map((name) => this.text(name)))
+    const { remembered } = this.reader
+    const known = remembered.get(key)
+    if (known !== undefined) return known as T
+    const made = make()
+    if (remembered.size < REMEMBERED) remembered.set(key, made)
+    return made
   }
 
   /** Null where the cell is empty or there is no such column. */

@@ -105,9 +105,10 @@ function aboutLevel(setting: Setting, row: number, cells: RowCells, level: Known
 
 function newLevel(setting: Setting, row: number, { cells, species }: Pick<Waiting, 'cells' | 'species'>): PlannedRow {
   const { values, faults } = valuesOf(cells, null)
-  const read = readLevelValues(values, { atom: atomFor(setting, species) })
-  if (read.row !== null) faults.push(...contradictions(cells, read.row))
-  if (faults.length > 0) return plannedError(row, [...faults, ...read.findings.filter((one) => one.severity === 'error')])
+  // the checks read it again: here only what contradicts itself is looked for
+  const read = faults.length > 0 || cells.controlled ? readLevelValues(values, { atom: atomFor(setting, species) }) : null
+  if (read !== null && read.row !== null) faults.push(...contradictions(cells, read.row))
+  if (read !== null && faults.length > 0) return plannedError(row, [...faults, ...read.findings.filter((one) => one.severity === 'error')])
   return { row, verdict: 'new', level: null, findings: NONE, fields: NONE, change: { subject: provisional(species, row), speciesId: species, known: null, given: values, row: null, findings: [] }, takeOut: null }
 }
 
@@ -145,33 +146,37 @@ function refuseRepeated(rows: PlannedRow[]): void {
   }
 }
 
-/** Matches every row with the table, and says what it makes of it. */
+/** Matches every row with the table, and says what it makes of it. Takes the rows out of the file as it goes, so that they need no memory longer than they must. */
 export async function planRows(file: ReadFile, ground: Ground, steps: Steps): Promise<PlannedRow[]> {
   const setting: Setting = { reader: file.reader, matcher: new Matcher(knownLevels(ground).values()), species: speciesOf(ground), atoms: new Map() }
   const planned: PlannedRow[] = []
   const waiting: { at: number; rest: Waiting }[] = []
   const taken = new Set<string>()
-  for (const [at, row] of file.rows.entries()) {
+  const total = file.rows.length
+  const rows = file.rows.reverse()
+  for (let row = rows.pop(); row !== undefined; row = rows.pop()) {
     const settled = settle(setting, row)
     if ('verdict' in settled) {
       planned.push(settled)
       if (settled.level !== null) taken.add(settled.level)
     } else {
+      waiting.push({ at: planned.length, rest: settled })
       planned.push(plannedError(row.row, NONE))
-      waiting.push({ at, rest: settled })
     }
-    if (at % PAUSE_EVERY === 0) {
-      steps.tell(at / file.rows.length)
+    if (planned.length % PAUSE_EVERY === 0) {
+      steps.tell(planned.length / total)
       await turn(steps)
     }
   }
-  for (const [count, { at, rest }] of waiting.entries()) {
+  waiting.reverse()
+  for (let next = waiting.pop(); next !== undefined; next = waiting.pop()) {
+    const { at, rest } = next
     const row = planned[at]?.row ?? 0
     const match = setting.matcher.nearly(rest.species, rest.named, taken)
     planned[at] = match.kind === 'level' ? aboutLevel(setting, row, rest.cells, match.level)
       : match.kind === 'ambiguous' ? { ...plannedError(row, [ambiguity(match.levels)]), verdict: 'ambiguous' }
         : newLevel(setting, row, rest)
-    if (count % PAUSE_EVERY === 0) await turn(steps)
+    if (waiting.length % PAUSE_EVERY === 0) await turn(steps)
   }
   refuseRepeated(planned)
   return planned

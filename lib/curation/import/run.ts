@@ -4,12 +4,13 @@ import { knownCaller } from '@/lib/access/accounts'
 import { type Acting, recordAudit } from '@/lib/access/audit'
 import { shared } from '@/lib/access/shared'
 import { Problem } from '@/lib/problem'
-import type { ImportReading, ImportUpload } from '@/openapi/schemas/import'
+import type { ImportUpload } from '@/openapi/schemas/import'
 import { lockForEdit } from '../editing'
 import { newestEdition } from '../table'
 import { loadGround, type LoadedGround } from './ground'
+import { collectAfter } from './memory'
 import { checkPlan, planRows, type PlannedRow, type Steps, turn } from './plan'
-import { readFile, type ReadFile, UnreadableFile } from './read-file'
+import { readFile, UnreadableFile } from './read-file'
 import { FileRefused, refused } from './refusal'
 import { beginImport, type Counts, type End, endImport, moveOn, noCounts, writeReport } from './store'
 import { writePlan } from './write'
@@ -103,27 +104,33 @@ async function commit(job: Job, ground: LoadedGround, rows: readonly PlannedRow[
   })
 }
 
-async function attempt(job: Job, file: ReadFile, reading: ImportReading, progress: Progress): Promise<void> {
-  const ground = await loadGround(job.db, job.amendment, file)
-  const rows = await planRows(file, ground, progress.stage('plan'))
-  const others = await checkPlan(rows, ground, progress.stage('check'))
-  const counts = countsOf(rows)
-  const bad = counts.error + counts.ambiguous > 0
-  const end: End = { state: bad ? 'refused' : 'done', reading, rowsTotal: file.rows.length, counts, problems: [] }
-  const steps = progress.stage('write')
-  if (bad || job.dryRun) await job.db.transaction((tx) => conclude(tx, job, end, rows, steps))
-  else await commit(job, ground, rows, others, end, steps)
-}
-
-async function work(job: Job, progress: Progress): Promise<void> {
+/** Reads, matches, checks and writes once; of the file nothing stays in memory but its bytes. */
+async function attempt(job: Job, progress: Progress): Promise<void> {
   const file = await readFile(job.bytes, job.upload, (rows) => {
     progress.total = rows
     progress.signal.throwIfAborted()
   })
-  progress.total = file.rows.length
+  const total = file.rows.length
+  progress.total = total
+  collectAfter(total)
+  const ground = await loadGround(job.db, job.amendment, file)
+  const rows = await planRows(file, ground, progress.stage('plan'))
+  collectAfter(total)
+  const others = await checkPlan(rows, ground, progress.stage('check'))
+  collectAfter(total)
+  const counts = countsOf(rows)
+  const bad = counts.error + counts.ambiguous > 0
+  const end: End = { state: bad ? 'refused' : 'done', reading: file.reading, rowsTotal: total, counts, problems: [] }
+  const steps = progress.stage('write')
+  if (bad || job.dryRun) await job.db.transaction((tx) => conclude(tx, job, end, rows, steps))
+  else await commit(job, ground, rows, others, end, steps)
+  collectAfter(total)
+}
+
+async function work(job: Job, progress: Progress): Promise<void> {
   for (let tries = 1; ; tries += 1) {
     try {
-      return await attempt(job, file, file.reading, progress)
+      return await attempt(job, progress)
     } catch (error) {
       if (!(error instanceof GroundMoved)) throw error
       if (tries === ATTEMPTS) throw refused('amendment_changed', 'The amendment or the newest edition changed again and again while the rows were being checked; import the file again when nobody else is at work on it.')

@@ -8,7 +8,7 @@ import { fault, type RowCells } from './cells'
 import { ownOf } from './own'
 
 /** A level's symbol put together from the columns that speak of it; `text` is null where none does. */
-export interface ComposedTerm { text: string | null; coupling: string | null; faults: Finding[] }
+export interface ComposedTerm { text: string | null; coupling: string | null; faults: readonly Finding[] }
 
 const LABELLED = /^\s*([A-Za-z]{1,4})\s*(?=[\d([⁰¹²³⁴-⁹])(.+)$/s
 const UNASSIGNED = /^\s*(?:([A-Za-z]{1,4})\s+)?J\s*=/
@@ -64,8 +64,12 @@ function fromBase(base: LevelRow, said: Said, cells: RowCells): string {
   return `${label === null ? '' : `${label} `}${String(ownOf(changed, 'term'))}`
 }
 
+const SPEAKING = ['term', 'label', 'j', 'parity', 'coupling']
+
 /** Puts together what the columns term, label, j, parity and coupling say; what the file has no column for comes from `base`. */
-export function composeTerm(cells: RowCells, base: LevelRow | null): ComposedTerm {
+export const composeTerm = (cells: RowCells, base: LevelRow | null): ComposedTerm => (base === null ? cells.once(SPEAKING, () => compose(cells, null)) : compose(cells, base))
+
+function compose(cells: RowCells, base: LevelRow | null): ComposedTerm {
   const faults: Finding[] = []
   const said = saidBeside(cells, faults)
   const stated = cells.text('coupling')?.trim() ?? null
