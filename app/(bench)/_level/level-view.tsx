@@ -7,6 +7,7 @@ import { ProblemView } from '@/app/_components/problem-view'
 import { Warnings } from '@/app/_components/warnings'
 import { BenchSkeleton } from '../_parts/bench-skeleton'
 import { GPart } from './g-part'
+import { HistoryPart } from './history-part'
 import { LevelBench } from './level-bench'
 import { LevelFoot } from './level-foot'
 import { LevelHead } from './level-head'
@@ -32,6 +33,7 @@ export function LevelView({ id }: { id: string }) {
       <GPart level={level} />
       <LevelBench level={level} />
       <TransitionsPart level={level} />
+      <HistoryPart level={level} />
       <LevelFoot level={level} />
     </div>
   )

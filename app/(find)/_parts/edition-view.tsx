@@ -1,18 +1,19 @@
 'use client'
 import Link from 'next/link'
 import { useQuery } from '@tanstack/react-query'
-import { useSyncExternalStore } from 'react'
-import type { Change, Edition } from '@/openapi/schemas/edition'
+import { parseAsInteger, useQueryState } from 'nuqs'
+import type { Edition } from '@/openapi/schemas/edition'
+import { HowToCite } from '../../_components/citation'
 import { CopyButton } from '../../_components/copy-button'
-import { DataTable, type Column } from '../../_components/data-table'
 import { apiPath, apiQuery } from '../../_components/data/api'
-import { levelPage } from '../../_components/names'
-import { count, plural } from '../../_components/number'
+import { editionsQuery } from '../../_components/data/edition'
+import { count } from '../../_components/number'
 import { PageHead, Part } from '../../_components/page-head'
 import { ProblemView } from '../../_components/problem-view'
 import { RequestPanel } from '../../_components/request-panel'
 import { Skeleton } from '../../_components/skeleton'
 import { day } from '../../_components/day'
+import { Comparison, EditionChoice } from './comparison'
 
 const FORMATS = [
   { id: 'json', label: 'JSON', what: 'everything, nested' },
@@ -27,41 +28,41 @@ const COUNTS: readonly { name: keyof Edition['counts']; label: string }[] = [
   { name: 'hyperfine_constants', label: 'hyperfine constants' }, { name: 'isotopes', label: 'isotopes' }, { name: 'sources', label: 'sources' },
 ]
 
-const never = () => () => undefined
-const useOrigin = (): string => useSyncExternalStore(never, () => window.location.origin, () => '')
-
-function Cite({ edition }: { edition: Edition }) {
-  const origin = useOrigin()
-  const text = `Lodeterm, a reviewed table of atomic levels, edition ${edition.number} (${edition.label}), published ${day(edition.published_at)}, ${origin}/editions/${edition.number}, SHA-256 ${edition.checksum}.`
+/** What it shows otherwise than another edition, the one before unless the address names one. */
+function Changes({ edition }: { edition: Edition }) {
+  const { data } = useQuery(editionsQuery())
+  const [since, setSince] = useQueryState('since', parseAsInteger.withOptions({ history: 'push' }))
+  const others = [...(data?.data ?? [])].filter(({ number }) => number !== edition.number).sort((a, b) => b.number - a.number)
+  const from = since ?? edition.number - 1
+  if (edition.number === 1 && others.length === 0) return <p className="prose-text">This is the first edition: all of its {count(edition.counts.levels)} levels are new.</p>
   return (
     <>
-      <blockquote className="prose-text border-l-2 border-lamp pl-4 [overflow-wrap:anywhere]">{text}</blockquote>
-      <p className="note mt-3 max-w-[42rem]">Please cite the sources of the values you use as well: every level names its own.</p>
-      <div className="mt-3"><CopyButton text={text} label="Copy citation" /></div>
+      <div className="no-print mb-5 flex flex-wrap items-end gap-x-5 gap-y-3">
+        <EditionChoice label="Compared with edition" value={from} editions={others} empty onChange={(n) => void setSince(n)} />
+        <Link className="link min-h-8 text-sm" href={`/editions/compare?from=${from}&to=${edition.number}`}>Compare any two</Link>
+      </div>
+      {from === 0 && edition.number === 1 && since === null ? <p className="prose-text">This is the first edition: all of its {count(edition.counts.levels)} levels are new. Choose a later one to see what has changed since.</p>
+        : from === edition.number ? <p className="note">This is the edition itself.</p> : <Comparison from={from} to={edition.number} />}
     </>
   )
 }
 
-const fieldText = (value: unknown): string => (value === null || value === undefined ? 'nothing' : typeof value === 'object' ? JSON.stringify(value) : String(value))
-
-function Changes({ edition }: { edition: Edition }) {
-  const first = edition.number === 1
-  const { data, error, isPending, refetch } = useQuery({ ...apiQuery<Change[]>(`/editions/${edition.number}/changes`, { limit: 200 }), enabled: !first })
-  if (first) return <p className="prose-text">This is the first edition: all of its {count(edition.counts.levels)} levels are new.</p>
-  if (isPending) return <Skeleton label="Loading the changes" className="h-20 w-full" />
-  if (error) return <ProblemView error={error} onRetry={() => void refetch()} heading="h3" />
-  const columns: Column<Change>[] = [
-    { name: 'level', header: 'Level', rowHeader: true, value: (row) => row.subject, sort: true, cell: (row) => <Link className="link" href={`${levelPage(row.subject)}?edition=${edition.number}`}>{row.level}</Link> },
-    { name: 'action', header: 'What happened', value: (row) => row.action, sort: true },
-    {
-      name: 'fields', header: 'Values', wrap: true, value: (row) => row.fields.map((field) => `${field.field}: ${fieldText(field.before)} -> ${fieldText(field.after)}`).join('; '),
-      cell: (row) => (row.action === 'created' ? <span className="text-muted">new in this edition</span> : (
-        <ul>{row.fields.map((field) => <li key={field.field}><code className="mr-2 text-lamp-ink">{field.field}</code>{fieldText(field.before)} → {fieldText(field.after)}</li>)}</ul>
-      )),
-    },
-  ]
-  if (data.data.length === 0) return <p className="note">Nothing differs from the edition before.</p>
-  return <DataTable columns={columns} rows={data.data} rowKey={(row) => `${row.kind} ${row.subject}`} caption={`Changes in edition ${edition.number}`} hideCaption summary={data.page?.next_cursor ? `The first ${data.data.length} changes` : plural(data.data.length, 'change')} />
+/** The checksum, and the two ways to make it again. */
+function Checksum({ edition }: { edition: Edition }) {
+  const content = apiPath(`/editions/${edition.number}/content`)
+  const command = `npm run verify-edition -- ${edition.number}`
+  return (
+    <>
+      <p className="note mb-2 max-w-[42rem]">SHA-256 of the canonical content (RFC 8785): two copies of the table with this checksum hold the same values.</p>
+      <p className="flex flex-wrap items-center gap-3"><code className="text-sm [overflow-wrap:anywhere]">{edition.checksum}</code><CopyButton text={edition.checksum} label="Copy checksum" /></p>
+      <dl className="facts mt-4">
+        <dt>Make it again</dt>
+        <dd>The SHA-256 of <a className="link" href={content} download={`lodeterm-edition-${edition.number}-content.json`}>the content file</a>, as it comes, is the checksum.</dd>
+        <dt>By command</dt>
+        <dd className="flex flex-wrap items-center gap-3"><code className="text-sm [overflow-wrap:anywhere]">{command}</code><CopyButton text={command} label="Copy command" /></dd>
+      </dl>
+    </>
+  )
 }
 
 /** One edition: what it holds, its checksum, whole-table downloads, how to cite it, what changed. */
@@ -100,12 +101,12 @@ export function EditionView({ n }: { n: string }) {
                 ))}
               </ul>
             </Part>
-            <Part title="How to cite"><Cite edition={edition} /></Part>
+            <Part title="How to cite">
+              <HowToCite path={path} name={`edition ${edition.number}`} />
+              <p className="note mt-3 max-w-[42rem]">Please cite the sources of the values you use as well: every level names its own, and a source’s page says how.</p>
+            </Part>
           </div>
-          <Part title="Checksum">
-            <p className="note mb-2">SHA-256 of the canonical content: two copies of the table with this checksum hold the same values.</p>
-            <p className="flex flex-wrap items-center gap-3"><code className="text-sm [overflow-wrap:anywhere]">{edition.checksum}</code><CopyButton text={edition.checksum} label="Copy checksum" /></p>
-          </Part>
+          <Part title="Checksum"><Checksum edition={edition} /></Part>
           <Part title="What changed"><Changes edition={edition} /></Part>
         </>
       )}

@@ -2,6 +2,7 @@
 import Link from 'next/link'
 import { useQuery } from '@tanstack/react-query'
 import { editionsQuery } from '../../_components/data/edition'
+import { useMe } from '../../_components/data/me'
 import { EmptyState } from '../../_components/empty-state'
 import { count } from '../../_components/number'
 import { PageHead } from '../../_components/page-head'
@@ -13,10 +14,16 @@ import { day } from '../../_components/day'
 /** Every edition, the newest first. */
 export function EditionsList() {
   const { data, error, isPending, refetch } = useQuery(editionsQuery())
+  const { me } = useMe()
   const editions = [...(data?.data ?? [])].sort((a, b) => b.number - a.number)
   return (
     <div className="page">
-      <PageHead title="Editions">
+      <PageHead title="Editions" aside={
+        <div className="flex flex-wrap gap-2">
+          {editions.length > 1 ? <Link className="btn" href="/editions/compare">Compare two</Link> : null}
+          {me !== null && me.role_in_force !== 'reader' ? <Link className="btn" href="/editions/next">Next edition</Link> : null}
+        </div>
+      }>
         <p>An edition is a frozen, numbered publication of the whole table. A request that names its edition gives the same stored values for ever; one that names none reads the latest.</p>
       </PageHead>
       {isPending ? <Skeleton label="Loading the editions" className="h-32 w-full" /> : error ? <ProblemView error={error} onRetry={() => void refetch()} /> : editions.length === 0 ? (

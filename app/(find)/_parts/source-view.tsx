@@ -3,7 +3,7 @@ import Link from 'next/link'
 import { useQuery } from '@tanstack/react-query'
 import type { Level } from '@/openapi/schemas/level'
 import type { Source } from '@/openapi/schemas/source'
-import { CopyButton } from '../../_components/copy-button'
+import { HowToCite } from '../../_components/citation'
 import { DataTable } from '../../_components/data-table'
 import { apiQuery } from '../../_components/data/api'
 import { useEdition } from '../../_components/data/edition'
@@ -34,7 +34,7 @@ export function SourceView({ source: key }: { source: string }) {
       <PageHead title={<span className="text-[0.8em]">{source?.title ?? source?.citation ?? 'Source'}</span>} crumbs={<Link className="link" href={href('/sources')}>All sources</Link>} />
       {isPending || source === undefined ? <Skeleton label="Loading the source" className="h-28 max-w-3xl" /> : (
         <dl className="facts max-w-4xl">
-          <dt>As it was given</dt><dd>{source.citation} <span className="no-print ml-2"><CopyButton text={source.citation} label="Copy" /></span></dd>
+          <dt>As it was given</dt><dd>{source.citation}</dd>
           {source.authors ? <><dt>Authors</dt><dd>{source.authors}</dd></> : null}
           {source.journal ? <><dt>In</dt><dd>{source.journal}{source.year ? ` (${source.year})` : ''}</dd></> : null}
           {source.doi ? <><dt>DOI</dt><dd><a className="link" href={`https://doi.org/${source.doi}`} rel="noreferrer">{source.doi}</a></dd></> : null}
@@ -44,6 +44,7 @@ export function SourceView({ source: key }: { source: string }) {
           <dt>Rests on it</dt><dd>{uses.length === 0 ? 'nothing in this edition' : uses.join(', ')}</dd>
         </dl>
       )}
+      {source ? <Part title="How to cite"><HowToCite path={path} query={{ edition: param }} name={source.key} /></Part> : null}
       <Part title="Levels with a value from here">
         {levels.isPending ? <TableSkeleton label="Loading the levels" /> : levels.error ? <ProblemView error={levels.error} onRetry={() => void levels.refetch()} heading="h3" /> : levels.data.data.length === 0 ? (
           <p className="note">No level of this edition has a value from this source.</p>
