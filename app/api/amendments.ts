@@ -2,7 +2,7 @@ import { getDb } from '@/db/client'
 import { snapshotsOfAmendment, snapshotsOfChange } from '@/lib/curation/amended'
 import { readChange } from '@/lib/curation/change-view'
 import type { Answer } from '@/lib/http/types'
-import { consequencesOf } from '@/lib/prediction/consequences'
+import { consequencesInSteps, consequencesOf } from '@/lib/prediction/consequences'
 import type { AmendmentDetail } from '@/openapi/schemas/amendment'
 import type { AmendmentChangeDetail, Consequences } from '@/openapi/schemas/change'
 
@@ -23,5 +23,5 @@ export async function changeAnswer(amendment: string, id: string, headers: Recor
 }
 
 export async function consequencesAnswer(amendment: string): Promise<Answer<Consequences>> {
-  return { data: consequencesOf({ ...(await snapshotsOfAmendment(getDb(), amendment)), limit: LINES_OF_AMENDMENT }) }
+  return { data: await consequencesInSteps({ ...(await snapshotsOfAmendment(getDb(), amendment)), limit: LINES_OF_AMENDMENT }) }
 }

@@ -131,6 +131,8 @@ export async function changeAmendment(db: Db, acting: Acting, id: string, given:
     await requireAmendment(tx, row, ifMatch, acting.caller)
     const { title, note, state, version } = row
     const next = { title: given.title ?? title, note: given.note ?? note }
+    // what says the same again is no edit: it must not void a review
+    if (next.title === title && next.note === note) return describeDetail(tx, row, acting.caller)
     const changed = await noteEdit(tx, row, caller.userId, next)
     await recordAudit(tx, acting, { action: 'amendment.change', subjectKind: 'amendment', subjectId: id, before: { title, note, state, version }, after: { ...next, state: changed.state, version: changed.version } })
     return describeDetail(tx, changed, acting.caller)

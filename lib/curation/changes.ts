@@ -211,6 +211,19 @@ export async function checkBatch(db: Db, amendmentId: string, batch: ChangeBatch
   })
 }
 
+/** Beyond this many changes an audit row names them without their values. */
+const MOST_TOLD = 50
+
+/** What the audit tells of a batch. */
+function batchTold(items: readonly Item[], removed: readonly ChangeRow[], ids: readonly string[]): { before: unknown; after: unknown } {
+  const whole = items.length + removed.length <= MOST_TOLD
+  const was = (row: ChangeRow) => ({ change: row.id, subject: row.subject, action: row.action, ...(whole ? { values: row.given } : {}) })
+  return {
+    before: { changed: items.flatMap(({ row }) => (row === null ? [] : [was(row)])), removed: removed.map(was) },
+    after: { written: items.map((item, at) => ({ change: ids[at], subject: item.subject, action: item.request.action, ...(whole ? { values: item.request.values ?? null, ...wordsOf(item.request) } : {}) })), removed: removed.map((row) => row.id) },
+  }
+}
+
 /** Writes a batch, all of it or nothing. */
 export async function writeBatch(db: Db, acting: Acting, amendmentId: string, batch: ChangeBatch): Promise<{ changes: AmendmentChange[]; removed: string[] }> {
   const caller = knownCaller(acting.caller)
@@ -219,11 +232,7 @@ export async function writeBatch(db: Db, acting: Acting, amendmentId: string, ba
     const { items, removed, judged } = await judgeBatch(tx, tx, amendment, batch)
     const ids = await store(tx, amendment, caller.userId, items, removed, judged)
     await noteEdit(tx, amendment, caller.userId)
-    await recordAudit(tx, acting, {
-      action: 'change.batch', subjectKind: 'amendment', subjectId: amendmentId,
-      before: { changed: items.flatMap(({ row }) => (row === null ? [] : [{ change: row.id, subject: row.subject, action: row.action, values: row.given }])), removed: removed.map((row) => ({ change: row.id, subject: row.subject, action: row.action, values: row.given })) },
-      after: { written: items.map((item, at) => ({ change: ids[at], subject: item.subject, action: item.request.action, values: item.request.values ?? null, ...wordsOf(item.request) })), removed: removed.map((row) => row.id) },
-    })
+    await recordAudit(tx, acting, { action: 'change.batch', subjectKind: 'amendment', subjectId: amendmentId, ...batchTold(items, removed, ids) })
     const rows = await tx.select().from(amendmentChanges).where(inArray(amendmentChanges.id, ids))
     const described = await describeChanges(tx, rows, judged.edition)
     const byId = new Map(described.map((change) => [change.id, change]))

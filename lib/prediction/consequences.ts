@@ -107,12 +107,10 @@ class Foremost {
   }
 }
 
-/**
- * Which allowed E1 lines two states of the table do not have in common: those that move (and by how much), those whose g_eff changes,
- * new ones and gone ones. Only pairs with a level that differs are looked at, so the cost is the changed levels times those of
- * their species. `limit` lines are told, those that move most first; the counts are of all.
- */
-export function consequencesOf({ before, after, edition, limit }: { before: Snapshot; after: Snapshot; edition: number; limit: number }): Consequences {
+interface Asked { before: Snapshot; after: Snapshot; edition: number; limit: number }
+
+/** Yields after each changed level, so that whoever drives it may pause. */
+function* steps({ before, after, edition, limit }: Asked): Generator<void, Consequences, void> {
   const counts: Consequences['counts'] = { moved: 0, g_changed: 0, new: 0, gone: 0 }
   const foremost = new Foremost(limit)
   let pairs = 0
@@ -131,9 +129,39 @@ export function consequencesOf({ before, after, edition, limit }: { before: Snap
       }
       pairs += ends.touched.length
       cut = pairs > MOST_PAIRS
+      yield
     }
   }
   const total = counts.moved + counts.g_changed + counts.new + counts.gone
   const list = foremost.list()
   return { edition, counts, lines: list.map((one) => told(before, after, one)), complete: !cut && total === list.length }
+}
+
+/**
+ * Which allowed E1 lines two states of the table do not have in common: those that move (and by how much), those whose g_eff changes,
+ * new ones and gone ones. Only pairs with a level that differs are looked at, so the cost is the changed levels times those of
+ * their species. `limit` lines are told, those that move most first; the counts are of all.
+ */
+export function consequencesOf(asked: Asked): Consequences {
+  const run = steps(asked)
+  for (;;) {
+    const step = run.next()
+    if (step.done === true) return step.value
+  }
+}
+
+/** Longest piece of work between two turns of the event loop. */
+const PIECE_MS = 20
+
+/** The same for many changes, giving the event loop back regularly. */
+export async function consequencesInSteps(asked: Asked): Promise<Consequences> {
+  const run = steps(asked)
+  let begun = performance.now()
+  for (;;) {
+    const step = run.next()
+    if (step.done === true) return step.value
+    if (performance.now() - begun < PIECE_MS) continue
+    await new Promise((resolve) => void setImmediate(resolve))
+    begun = performance.now()
+  }
 }

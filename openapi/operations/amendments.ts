@@ -97,7 +97,7 @@ export const checkBatch = defineOperation({
   summary: 'Check changes without writing anything',
   description: 'Findings are those that the changes would have beside the ones that the amendment has already.',
   params: byId, body: ChangeBatch, answer: z.strictObject({ changes: z.array(CheckedChange) }).meta({ id: 'CheckedBatch' }),
-  problems: [...editing, 'change_unknown', 'change_exists', 'subject_mismatch', ...values], example: { ...at, body: { changes: [CHANGE] } },
+  problems: [...editing, 'change_unknown', 'change_exists', 'subject_mismatch', 'etag_stale', ...values], example: { ...at, body: { changes: [CHANGE] } },
 })
 
 export const writeBatch = defineOperation({

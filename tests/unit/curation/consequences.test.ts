@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { amendedSnapshot, snapshotOf } from '@/lib/curation/amended'
 import type { LevelRow } from '@/lib/curation/rows'
-import { consequencesOf } from '@/lib/prediction/consequences'
+import { consequencesInSteps, consequencesOf } from '@/lib/prediction/consequences'
 import { smallTable } from './table'
 
 const table = smallTable()
@@ -39,7 +39,7 @@ describe('consequences', () => {
     expect(made.lines[1]).toMatchObject({ wavenumber_before_invcm: null, wavenumber_after_invcm: 30266.99, shift_invcm: null, shift_pm: null })
   })
 
-  it('are quick for a species of a thousand levels that all move, and tell the farthest', () => {
+  it('are quick for a species of a thousand levels that all move, and tell the farthest', async () => {
     const big = smallTable()
     for (let i = 10; i < 1010; i += 1) big.levels.set(`Na-I.${i}`, { revision: 1, row: { ...table.levels.get(i % 2 === 0 ? 'Na-I.3' : 'Na-I.4')!.row, repeatIndex: i, energyInvcm: 20000 + 3 * i } })
     const changes = [...big.levels].filter(([id, { row }]) => id.startsWith('Na-I.') && row.status === 'active').map(([subject, { row }], at) => ({ kind: 'level' as const, subject, row: { ...row, energyInvcm: row.energyInvcm === 0 ? 0 : row.energyInvcm + at / 100 } }))
@@ -47,6 +47,11 @@ describe('consequences', () => {
     const found = consequencesOf({ ...amendedSnapshot(big, changes), edition: 1, limit: 500 })
     expect(performance.now() - started).toBeLessThan(5000)
     expect(found.lines).toHaveLength(500)
+    let turns = 0
+    const timer = setInterval(() => (turns += 1), 1)
+    expect(await consequencesInSteps({ ...amendedSnapshot(big, changes), edition: 1, limit: 500 })).toEqual(found)
+    clearInterval(timer)
+    expect(turns).toBeGreaterThan(1)
     expect(found.complete).toBe(false)
     expect(found.counts.moved).toBeGreaterThan(200_000)
     const shifts = found.lines.map((line) => Math.abs(line.shift_invcm ?? 0))
