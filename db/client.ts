@@ -46,6 +46,8 @@ function held(): Held {
   })
   // An idle connection that breaks is replaced at next use; without a listener its error would end the process.
   pool.on('error', () => undefined)
+  // The same for one that breaks while a transaction holds it between two statements: the next statement says so.
+  pool.on('connect', (client) => void client.on('error', () => undefined))
   const made = { pool, db: drizzle(pool, { schema }) }
   holder[slot] = made
   return made

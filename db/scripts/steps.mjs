@@ -224,8 +224,8 @@ export async function serve(host, port, env) {
   const base = `http://${name}:${port}`
   for (let i = 0; i < 600; i++) {
     if (ended !== undefined) throw new StepError(`the server ended at once (${ended})`)
-    const answer = await fetch(`${base}/api/v1/health/live`, { signal: AbortSignal.timeout(5_000) }).catch(() => undefined)
-    await answer?.arrayBuffer()
+    // a machine that has much to do answers late, and in the middle of an answer too
+    const answer = await fetch(`${base}/api/v1/health/live`, { signal: AbortSignal.timeout(5_000) }).then(async (response) => ({ ok: response.ok, body: await response.arrayBuffer() })).catch(() => undefined)
     if (answer?.ok) return { child, base }
     await new Promise((done) => setTimeout(done, 100))
   }

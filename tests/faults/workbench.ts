@@ -88,8 +88,20 @@ export async function wholeEditions(instance: Instance): Promise<number> {
 /** When a key or session was last used is no content; attempts to sign in and claims of Idempotency-Keys keep themselves. */
 const NOT_CONTENT: Record<string, string[]> = { api_keys: ['last_used_at'], sessions: ['last_seen_at'] }
 
+/** Until whatever is on its way by mail or webhook has gone: it is told of after the fact, in its own time. */
+async function settled(instance: Instance): Promise<void> {
+  for (let patience = 0; patience < 200; patience += 1) {
+    const [row] = await instance.query<{ waiting: number }>(
+      'select ((select count(*) from notice_events where spread_at is null) + (select count(*) from mails where sent_at is null and failed_at is null))::int as waiting')
+    if (row?.waiting === 0) return
+    await wait(50)
+  }
+  throw new Error('mails are still waiting')
+}
+
 /** One sum for each table, over all that its rows hold. */
 export async function fingerprint(instance: Instance): Promise<Record<string, string | null>> {
+  await settled(instance)
   const tables = await instance.query<{ name: string }>("select tablename as name from pg_tables where schemaname = 'public' order by 1")
   const sums: Record<string, string | null> = {}
   for (const { name } of tables) {

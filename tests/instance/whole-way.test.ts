@@ -28,7 +28,7 @@ describe('a sodium level is corrected', () => {
 
   it('is drafted; findings and the lines that move are told at once', async () => {
     for (const at of PINNED) pinned.set(at, await instance.get(at))
-    const follow = await instance.ask('post', '/follows', { ...reader, body: { kind: 'line', subject: D2 } })
+    const follow = await instance.ask('post', '/follows', { ...reader, body: { subject: D2 } })
     expect(follow.status, follow.text).toBe(201)
     const made = await instance.ask('post', '/amendments', { ...author, body: { title: 'Na I 3p 2P*3/2 from an invented comb measurement' } })
     expect(made.status, made.text).toBe(201)
@@ -118,7 +118,7 @@ describe('a sodium level is corrected', () => {
 
   it('has a checksum that anyone can make again from the download', () => {
     for (const n of ['1', '2']) {
-      const verified = spawnSync(process.execPath, ['db/scripts/run.mjs', 'lib/curation/cli/verify-edition.ts', n, '--url', instance.base], { cwd: projectFolder, encoding: 'utf8', env: { ...process.env, ...instance.env } })
+      const verified = spawnSync(process.execPath, ['db/scripts/verify-edition.mjs', n, '--url', instance.base], { cwd: projectFolder, encoding: 'utf8', env: { ...process.env, ...instance.env } })
       expect(verified.status, `${verified.stdout}${verified.stderr}`).toBe(0)
     }
   })
