@@ -36,8 +36,14 @@ export interface Instance {
   kill: () => Promise<void>
   /** Starts it again, on the same port. */
   start: () => Promise<void>
-  /** Ends server and connections. The database stays until it is made anew: what a failed test left can be looked at. */
+  /** Ends server, connections and database. */
   end: () => Promise<void>
+}
+
+const withDatabase = (url: string, name: string): string => {
+  const changed = new URL(url)
+  changed.pathname = `/${name}`
+  return changed.toString()
 }
 
 const gone = (child: ChildProcess): Promise<void> =>
@@ -58,17 +64,17 @@ async function makeDatabase(owner: string, database: string): Promise<void> {
 
 export async function startInstance(name: string, settings: Record<string, string> = {}): Promise<Instance> {
   const common = inject('environment')
-  const database = `lodeterm_${name.replace(/[^a-z0-9]/g, '_')}_test`
-  const owner = await node(['db/scripts/pg.mjs', 'fresh', database], { capture: true })
-  const app = await node(['db/scripts/pg.mjs', 'url', database, '--app'], { capture: true })
+  const owner = common.DATABASE_URL ?? ''
+  const database = `lodeterm_test_${name.replace(/[^a-z0-9]/g, '')}`
+  await makeDatabase(owner, database)
 
   const folder = fs.mkdtempSync(path.join(os.tmpdir(), `lodeterm-${name}-`))
   const port = await freePort()
   const base = `http://127.0.0.1:${port}`
   const env: Record<string, string> = {
     ...common,
-    DATABASE_URL: owner,
-    DATABASE_APP_URL: app,
+    DATABASE_URL: withDatabase(owner, database),
+    ...(common.DATABASE_APP_URL ? { DATABASE_APP_URL: withDatabase(common.DATABASE_APP_URL, database) } : {}),
     DEMO: '1',
     DEMO_ACCOUNTS_FILE: path.join(folder, 'demo-accounts.json'),
     SESSION_SECRET_FILE: sessionSecret(path.join(folder, 'session-secret')),
@@ -82,7 +88,7 @@ export async function startInstance(name: string, settings: Record<string, strin
   await migrate(env)
   await seed(env)
   const accounts = JSON.parse(fs.readFileSync(env.DEMO_ACCOUNTS_FILE ?? '', 'utf8')) as DemoAccount[]
-  const pool = new pg.Pool({ connectionString: owner, max: 2 })
+  let pool = new pg.Pool({ connectionString: env.DATABASE_URL, max: 2 })
   // a test may cut it: the next question opens another
   pool.on('error', () => undefined)
   let { child } = await serve('127.0.0.1', port, env)
@@ -110,6 +116,9 @@ export async function startInstance(name: string, settings: Record<string, strin
     end: async () => {
       await endServer(child)
       mail?.child.kill()
+      await pool.end()
+      pool = new pg.Pool({ connectionString: owner, max: 1 })
+      await pool.query(`drop database if exists ${pg.escapeIdentifier(database)} with (force)`)
       await pool.end()
       fs.rmSync(folder, { recursive: true, force: true })
     },
