@@ -89,9 +89,9 @@ export interface PreparedChange {
 
 const BATCH = 1000
 
-const UNSTORABLE = /\\u(?:0000|d[89a-f])/
+const UNSTORABLE = /\\u(?:0000|d[89a-f])/i
 
-/** JSON that PostgreSQL takes: neither half of a surrogate pair nor NUL is a character to it. Both come out of JSON.stringify as escapes. */
+/** JSON that PostgreSQL takes: neither half of a surrogate pair nor NUL is a character to it. Few texts hold any, and looking at each value costs. */
 export function storable(value: unknown): string {
   const text = JSON.stringify(value)
   if (!UNSTORABLE.test(text)) return text

@@ -87,6 +87,7 @@ describe('the way of an amendment', () => {
     expect(done.json.data).toMatchObject({ state: 'accepted', review: { outcome: 'accepted' } })
     expect(done.json.data.reviews).toHaveLength(2)
     expect((await one.step('return', colleague.key, 'x')).json.code).toBe('state_conflict')
+    await one.step('withdraw', one.by.key)
   })
 
   it('keeps an author from accepting under any key or role, and a colleague who edited a change too', async () => {
@@ -103,6 +104,7 @@ describe('the way of an amendment', () => {
     const inBrowser = await ask('post', `${one.at}/accept`, { cookie: await signIn(person), headers: { ...SAME_SITE, 'if-match': etag }, body: {} })
     expect([inBrowser.status, inBrowser.json.code]).toEqual([403, 'own_amendment'])
     expect((await one.step('accept', (await makeKey('admin')).key)).status).toBe(200)
+    await one.step('withdraw', admin.key)
   })
 
   it('is a draft again after any edit, its review void', async () => {
@@ -203,7 +205,6 @@ describe('talk and tasks', () => {
     await one.step('submit', one.by.key)
     await one.step('accept', colleague.key)
     expect([await lists(one.by.key), await lists(colleague.key)]).toEqual([['accepted'], ['accepted']])
-    // accepted amendments of other tests are published by none
     await one.step('withdraw', one.by.key)
   })
 

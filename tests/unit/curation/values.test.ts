@@ -30,6 +30,23 @@ describe('printed digits', () => {
   })
 })
 
+describe('whatever is written', () => {
+  const WRONG = [null, '', ' ', 'x', '\u2603', '\u202e3p', '(', '[', '3p\u0000', '1e999', '-0', '0', '1/2', 'NaN', '2P*3/2', '3p'.repeat(60), '\ufffd', '=1+1', 'J=', 'J=1/3', 'z', '2[', '(1/2', '1.5(2)']
+
+  it('is read, or said to be wrong; never anything else', () => {
+    const full: LevelValues = { ...values('2p5.(2P*3/2).3s', '2[3/2]*2', 134041.84, { coupling: 'J1K', core: '2P*3/2', l_outer: 0, repeat_index: 1, g_j_chosen: 1.5, g_j_chosen_reason: 'x', energy_unc_invcm: 1 }), energy_literal: '134041.84' }
+    expect(read(full, 'Ne-I').findings).toEqual([])
+    for (const field of [...Object.keys(full), 'g_j_measured', 'g_j_measured_unc', 'g_source', 'g_evidence', 'alternative_name'] as (keyof LevelValues)[]) {
+      for (const wrong of WRONG) {
+        const { row: made, findings } = read({ ...full, [field]: wrong } as LevelValues, 'Ne-I')
+        expect(made === null, `${field} ${JSON.stringify(wrong)}`).toBe(findings.some((one) => one.severity === 'error'))
+        if (made === null) continue
+        expect(row(writeLevelValues(made), 'Ne-I'), `${field} ${JSON.stringify(wrong)}`).toEqual(made)
+      }
+    }
+  })
+})
+
 describe('the values of a level', () => {
   it('are read with the energy from the printed digits, and its uncertainty from their bracket', () => {
     expect(row(values('3p', '2P*3/2', 0, { energy_invcm: null, energy_literal: '16973.36619(2)' }))).toMatchObject({ energyInvcm: 16973.36619, energyUncInvcm: 0.00002, energyLiteral: '16973.36619(2)' })
