@@ -69,8 +69,17 @@ async function* entitiesOf(db: Db | Tx, n: number, kind: keyof EditionContent): 
     const ids = rows.map(({ id }) => id).sort((a, b) => ascending(`${a}.`, `${b}.`))
     for (let i = 0; i < ids.length; i += SPECIES_AT_ONCE) parts.push(ids.slice(i, i + SPECIES_AT_ONCE))
   } else parts.push([])
-  for (const part of parts) {
-    const { rows } = await db.execute<Entity>(KINDS[kind](n, part))
+  const ask = (part: readonly string[]) => {
+    const asked = db.execute<Entity>(KINDS[kind](n, part))
+    // awaited below, unless whoever reads stops before
+    asked.catch(() => undefined)
+    return asked
+  }
+  // the database reads the next part while this one is written out
+  let asked = ask(parts[0] ?? [])
+  for (let at = 0; at < parts.length; at += 1) {
+    const { rows } = await asked
+    if (at + 1 < parts.length) asked = ask(parts[at + 1] ?? [])
     yield rows.map((entity) => ({ entity, text: JSON.stringify(entity) })).sort((a, b) => ascending(a.entity.id, b.entity.id) || ascending(a.text, b.text))
   }
 }

@@ -78,38 +78,57 @@ function actionOf(was: string | null, is: string | null, differs: boolean, backw
 
 const numberAfter = (mark: string, text: string): number => Number(text.slice(text.lastIndexOf(mark) + 1))
 
-/** Place of a thing among those of its kind: by species, then by number; hyperfine constants by level and mass number. Species have up to 10 million levels, isotopes up to a thousand nucleons. */
+/** Place of a thing among those of its kind: by species, then by number; hyperfine constants by level and mass number. Sources have none and go by their keys. */
 function placeOf({ kind, subject, species }: Difference, ordinals: ReadonlyMap<string, number>): number {
   const base = (ordinals.get(species ?? '') ?? 0) * 1e10
-  if (kind === 'level') return base + numberAfter('.', subject) * 1e3
   if (kind === 'isotope') return base + numberAfter('/', subject)
   return kind === 'hyperfine' ? base + Number(subject.slice(subject.indexOf('.') + 1, subject.indexOf('/'))) * 1e3 + numberAfter('/', subject) : base
 }
 
-/** In the order of the table; sources, which have no place in it, by key. */
-function inOrder(differences: readonly Difference[], ordinals: ReadonlyMap<string, number>): Difference[] {
-  const places = Float64Array.from(differences, (difference) => placeOf(difference, ordinals))
-  const order = Uint32Array.from(differences.keys())
-  order.sort((i, k) => (places[i] ?? 0) - (places[k] ?? 0) || ((differences[i]?.subject ?? '') < (differences[k]?.subject ?? '') ? -1 : 1))
-  return Array.from(order, (i) => differences[i] as Difference)
+const actionIn = (backwards: boolean, was: string | null, is: string | null, differs: boolean): ComparedAction | null => (backwards ? actionOf(is, was, differs, true) : actionOf(was, is, differs, false))
+
+interface LevelRows extends Record<string, unknown> { species: string; was: string | null; is: string | null; differs: boolean; ordinals: string }
+
+/** Levels, of which there may be 100 000: the database gives the ordinals of a species together, and not a row for each. */
+async function compareLevels(db: Db, low: number, high: number, backwards: boolean, ordinals: ReadonlyMap<string, number>): Promise<Difference[]> {
+  const measured = await measuredDiffers(db, low, high)
+  const { rows } = await db.execute<LevelRows>(sql`
+    select species, was, "is", differs, string_agg(split_part(subject, '.', 2), ' ') as ordinals from (${sides('level', low, high)}) one group by species, was, "is", differs`)
+  rows.sort((a, b) => (ordinals.get(a.species) ?? 0) - (ordinals.get(b.species) ?? 0))
+  const differences: Difference[] = []
+  for (let from = 0; from < rows.length; ) {
+    const species = rows[from]?.species ?? ''
+    const found: { ordinal: number; difference: Difference }[] = []
+    for (; rows[from]?.species === species; from += 1) {
+      const { was, is, differs, ordinals: list } = rows[from] as LevelRows
+      const [told, toldIfMeasured] = [actionIn(backwards, was, is, differs), actionIn(backwards, was, is, true)]
+      for (const ordinal of list.split(' ')) {
+        const subject = `${species}.${ordinal}`
+        const action = measured.size > 0 && measured.has(subject) ? toldIfMeasured : told
+        if (action !== null) found.push({ ordinal: Number(ordinal), difference: { kind: 'level', subject, species, action } })
+      }
+    }
+    for (const { difference } of found.sort((a, b) => a.ordinal - b.ordinal)) differences.push(difference)
+  }
+  return differences
+}
+
+async function compareOthers(db: Db, kind: Exclude<ChangeKind, 'level'>, low: number, high: number, backwards: boolean, ordinals: ReadonlyMap<string, number>): Promise<Difference[]> {
+  const { rows } = await db.execute<Row>(sides(kind, low, high))
+  const differences = rows.flatMap(({ subject, species, was, is, differs }): Difference[] => {
+    const action = actionIn(backwards, was, is, differs)
+    return action === null ? [] : [{ kind, subject, species, action }]
+  })
+  const place = new Map(differences.map((difference) => [difference, placeOf(difference, ordinals)]))
+  return differences.sort((a, b) => (place.get(a) ?? 0) - (place.get(b) ?? 0) || (a.subject < b.subject ? -1 : 1))
 }
 
 async function compare(db: Db, n: number, since: number): Promise<Difference[]> {
   const [low, high, backwards] = since < n ? [since, n, false] : [n, since, true]
-  const measured = await measuredDiffers(db, low, high)
-  const { rows: species } = await db.execute<{ id: string; ordinal: number }>(sql`select id, ordinal from species`)
-  const ordinals = new Map(species.map(({ id, ordinal }) => [id, ordinal]))
+  const { rows } = await db.execute<{ id: string; ordinal: number }>(sql`select id, ordinal from species`)
+  const ordinals = new Map(rows.map(({ id, ordinal }) => [id, ordinal]))
   const all: Difference[][] = []
-  for (const kind of KINDS) {
-    const { rows } = await db.execute<Row>(sides(kind, low, high))
-    const differences: Difference[] = []
-    for (const { subject, species, was, is, differs } of rows) {
-      const any = differs || (kind === 'level' && measured.has(subject))
-      const action = backwards ? actionOf(is, was, any, true) : actionOf(was, is, any, false)
-      if (action !== null) differences.push({ kind, subject, species, action })
-    }
-    all.push(inOrder(differences, ordinals))
-  }
+  for (const kind of KINDS) all.push(kind === 'level' ? await compareLevels(db, low, high, backwards, ordinals) : await compareOthers(db, kind, low, high, backwards, ordinals))
   return all.flat()
 }
 

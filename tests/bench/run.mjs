@@ -105,6 +105,11 @@ await main(async () => {
   console.log(`       the same at a field never asked before: ${(medians.anew / medians.constant).toFixed(2)}`)
   say('searching an invented edition of 100 species with 1000 levels each')
   await node(['--import', 'tsx', 'tests/bench/search.mjs']).catch(() => broken.push('search'))
+  say('publishing and comparing editions of 100 000 levels')
+  const editions = { ...env, ...(await database('lodeterm_editions_test_bench', { fresh: true })) }
+  await migrate(editions)
+  await seed(editions)
+  await node(['--import', 'tsx', 'tests/bench/editions.mjs'], { env: editions }).catch(() => broken.push('editions'))
   say('weighing the first page')
   const { files, bytes } = await firstPage(env)
   tell(`script of the first page, ${files} files, gzip`, bytes / 1000, LIMITS.scriptKb, ' kB')
