@@ -1,6 +1,9 @@
 import { parse } from 'csv-parse/sync'
 import { beforeAll, describe, expect, it } from 'vitest'
-import { ask, get } from './helpers/client'
+import { getDb } from '@/db/client'
+import { imports, users } from '@/db/schema'
+import { inventedTable } from '../bench/import-table'
+import { ask, base, get } from './helpers/client'
 import { formOf } from './helpers/form'
 import { importFile, newAmendment, reportOf } from './helpers/import'
 import { makeKey } from './helpers/people'
@@ -239,6 +242,45 @@ describe('an import as a job', () => {
     const [first, second] = [await send(), await send()]
     expect(second.json.data.id).toBe(first.json.data.id)
     expect((await get(`/amendments/${amendment}/imports`, { key })).json.data).toHaveLength(1)
+  })
+
+  it('is stopped, and then nothing of it is written', async () => {
+    const amendment = await newAmendment(key)
+    await ask('post', `/amendments/${amendment}/changes`, { key, body: { kind: 'source', action: 'create', source: 'invented-levels', values: { citation: 'Invented', kind: 'other' } } })
+    const { version } = (await get(`/amendments/${amendment}`, { key })).json.data
+    const begun = (await importFile(key, amendment, inventedTable(20_000), '?wait=false')).json.data
+    expect(begun.state).toBe('running')
+    // one at a time
+    expect((await importFile(key, amendment, exported)).json.code).toBe('import_running')
+    const stopped = (await ask('post', `/amendments/${amendment}/imports/${begun.id}/stop`, { key })).json.data
+    expect([stopped.state, stopped.summary]).toEqual(['stopped', 'Stopped; nothing was written.'])
+    const next = (await importFile(key, amendment, exported, '?dry_run=true')).json.data
+    expect(next.counts.same).toBe(rows.length)
+    const after = (await get(`/amendments/${amendment}`, { key })).json.data
+    expect([after.version, after.counts.changes]).toEqual([version, 1])
+    expect((await get(`/amendments/${amendment}/imports/${begun.id}`, { key })).json.data.state).toBe('stopped')
+  })
+
+  it('goes on when whoever sent it goes away', async () => {
+    const amendment = await newAmendment(key)
+    const leaving = new AbortController()
+    const form = formOf(exported)
+    const sent = fetch(`${base}/api/v1/amendments/${amendment}/import?dry_run=true`, { method: 'POST', body: new Uint8Array(form.raw), headers: { ...form.headers, authorization: `Bearer ${key}` }, signal: leaving.signal })
+    const list = async (): Promise<{ state: string }[]> => (await get(`/amendments/${amendment}/imports`, { key })).json.data
+    for (let i = 0; i < 200 && (await list()).length === 0; i += 1) await new Promise((done) => setTimeout(done, 20))
+    leaving.abort()
+    await sent.catch(() => undefined)
+    for (let i = 0; i < 100 && (await list())[0]?.state === 'running'; i += 1) await new Promise((done) => setTimeout(done, 100))
+    expect((await list()).map((one) => one.state)).toEqual(['done'])
+  })
+
+  it('whose process ended shows so, and keeps nobody from importing again', async () => {
+    const amendment = await newAmendment(key)
+    const [user] = await getDb().select({ id: users.id }).from(users).limit(1)
+    await getDb().insert(imports).values({ amendmentId: amendment, author: user?.id ?? '', fileName: 'lost.csv', sha256: '0'.repeat(64), bytes: 1, dryRun: false, reading: {}, rowsTotal: 10, rowsDone: 4, aliveAt: new Date(Date.now() - 60_000) })
+    const [lost] = (await get(`/amendments/${amendment}/imports`, { key })).json.data
+    expect([lost.state, lost.summary]).toEqual(['interrupted', expect.stringContaining('nothing was written')])
+    expect((await importFile(key, amendment, exported, '?dry_run=true')).json.data.state).toBe('done')
   })
 
   it('puts an amendment in review back to draft, and is refused by one that is withdrawn', async () => {

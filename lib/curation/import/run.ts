@@ -100,6 +100,7 @@ async function commit(job: Job, ground: LoadedGround, rows: readonly PlannedRow[
         after: { version: written.version, state: written.state, import: job.id, file_name: job.upload.file.name, sha256: sha256(job.bytes), counts: end.counts },
       })
     }
+    collectAfter(rows.length)
     await conclude(tx, job, end, rows, steps)
   })
 }

@@ -3,12 +3,14 @@ import type { Tx } from '@/db/client'
 import type { Finding } from '@/openapi/schemas/change'
 import { type AmendmentRow, insertChanges, noteEdit, type PreparedChange, recordAuthors, reserveOrdinals, storable } from '../editing'
 import type { LoadedGround } from './ground'
+import { collectAfter } from './memory'
 import { type PlannedRow, renamed, type RowChange, type Steps, turn } from './plan'
 
 interface Target { amendment: AmendmentRow; author: string; importId: string; ground: LoadedGround; others: ReadonlyMap<string, { row: unknown; findings: Finding[] }> }
 type Making = PlannedRow & { change: RowChange }
 
 const BATCH = 1000
+const COLLECT_EVERY = 20 * BATCH
 
 /** Gives new levels their ordinals, in the order of the file; by row, what each is called. Species in one order, so that two imports never wait for each other. */
 async function nameNewLevels(tx: Tx, making: readonly Making[]): Promise<Map<number, string>> {
@@ -59,10 +61,12 @@ export async function writePlan(tx: Tx, target: Target, rows: readonly PlannedRo
   const comments = new Map(ground.own.map(({ id, comment }) => [id, comment]))
   const names = await nameNewLevels(tx, making)
   const nameOf = (row: number): string => names.get(row) ?? `row ${row}`
-  for (let from = 0; from < making.length; from += BATCH) {
-    steps.tell(from / making.length)
+  const total = making.length
+  let written = 0
+  while (making.length > 0) {
+    steps.tell(written / total)
     await turn(steps)
-    const prepared = making.slice(from, from + BATCH).map((planned): PreparedChange => {
+    const prepared = making.slice(0, BATCH).map((planned): PreparedChange => {
       const { row, change } = planned
       const { known } = change
       const subject = known?.id ?? nameOf(row)
@@ -75,6 +79,9 @@ export async function writePlan(tx: Tx, target: Target, rows: readonly PlannedRo
       }
     })
     await insertChanges(tx, amendment.id, author, prepared)
+    // what is written is needed no longer
+    for (const planned of making.splice(0, BATCH)) (planned as PlannedRow).change = null
+    if ((written += prepared.length) % COLLECT_EVERY === 0) collectAfter(total)
   }
   await storeOtherFindings(tx, target)
   await recordAuthors(tx, amendment.id, author)
