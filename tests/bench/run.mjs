@@ -32,7 +32,7 @@ async function environment() {
   return env
 }
 
-const makeKey = async (env) => (await node(['--import', 'tsx', 'lib/access/cli/key.ts', '--role', 'reader', '--name', 'bench'], { env, capture: true })).match(/ldt_\S+/)[0]
+const makeKey = async (env, role = 'reader') => (await node(['--import', 'tsx', 'lib/access/cli/key.ts', '--role', role, '--name', 'bench'], { env, capture: true })).match(/ldt_\S+/)[0]
 
 /** The three route handlers that are compared live in a small application of their own: a bare one has no place in the product. */
 async function serveRoutes(env) {
@@ -88,6 +88,17 @@ async function firstPage(env) {
   }
 }
 
+/** A large table imported into the built product. */
+async function importTable(env) {
+  await build()
+  const { child, base } = await serve('127.0.0.1', await freePort(), env)
+  try {
+    await node(['--import', 'tsx', 'tests/bench/import.mjs'], { env: { BENCH_BASE: base, BENCH_PID: String(child.pid), BENCH_KEY: await makeKey(env, 'curator') } })
+  } finally {
+    await endServer(child)
+  }
+}
+
 await main(async () => {
   const broken = []
   const tell = (what, value, limit, unit = '') => {
@@ -110,6 +121,8 @@ await main(async () => {
   await migrate(editions)
   await seed(editions)
   await node(['--import', 'tsx', 'tests/bench/editions.mjs'], { env: editions }).catch(() => broken.push('editions'))
+  say('importing a table of 100 000 rows')
+  await importTable(env).catch((error) => broken.push(`import (${error.message})`))
   say('weighing the first page')
   const { files, bytes } = await firstPage(env)
   tell(`script of the first page, ${files} files, gzip`, bytes / 1000, LIMITS.scriptKb, ' kB')
