@@ -97,7 +97,7 @@ export type ChangeRequest = z.infer<typeof ChangeRequest>
 export const Finding = z
   .strictObject({
     severity: z.enum(['error', 'warning']).meta({ description: 'An error blocks submission; a warning wants a comment.' }),
-    code: z.string(),
+    code: z.string().meta({ description: 'What was found. Warnings: energy_moved, lines_moved, energy_above_ionisation, interval_ratio, g_far_from_coupled, digits_beyond_uncertainty, no_zero, values_dropped; everything else is an error.', example: 'energy_moved' }),
     field: z.string().nullable().meta({ description: 'Name of the value it is about; null for the change as a whole.' }),
     detail: z.string(),
   })

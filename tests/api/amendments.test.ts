@@ -31,6 +31,8 @@ describe('an amendment', () => {
     const tag = read.headers.etag ?? ''
     const changed = await ask('patch', at, { key, headers: { 'if-match': tag }, body: { note: 'checked' } })
     expect(changed.json.data).toMatchObject({ title: 'Zn I energies', note: 'checked', version: 2 })
+    const same = await ask('patch', at, { key, headers: { 'if-match': changed.headers.etag ?? '' }, body: { note: 'checked' } })
+    expect([same.status, same.headers.etag], 'the same again is no edit').toEqual([200, changed.headers.etag])
     const stale = await ask('patch', at, { key, headers: { 'if-match': tag }, body: { note: 'lost?' } })
     expect([stale.status, stale.json.code]).toEqual([412, 'etag_stale'])
     expect(stale.json.current).toMatchObject({ id: made.json.data.id, note: 'checked', version: 2 })

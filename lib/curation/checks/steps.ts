@@ -114,6 +114,8 @@ function unionLevels(union: Union, touched: ReadonlyMap<string, Touched>): Map<s
   for (const [id, work] of union.levelWorks) {
     const row = work.row as LevelRow | null
     const before = (work.published?.row as LevelRow | undefined) ?? null
+    // a half-typed change leaves its level where it was
+    if (row === null && before?.status === 'active') levels.get(speciesOfLevel(id))?.push({ id, row: before, work: null, before })
     if (row?.status === 'active') levels.get(speciesOfLevel(id))?.push({ id, row, work, before: before?.status === 'active' ? before : null })
   }
   return levels

@@ -90,6 +90,17 @@ describe('errors of a level', () => {
   })
 })
 
+describe('a half-typed change', () => {
+  it('leaves its level where it was for the others', () => {
+    expect(found(replaced('Na-I.1', { term: 'x' }))).toEqual(['error term_malformed term'])
+    expect(found(replaced('Na-I.3', { energy_source: null }), change.create('Na-I.6', values('3p', '2P*3/2', 17000)))).toEqual(['error duplicate_level term'])
+  })
+
+  it('is checked as far as it can be read', () => {
+    expect(found(replaced('Na-I.3', { energy_source: null, energy_invcm: -4, term: '2P3/2' }))).toEqual(expect.arrayContaining(['error energy_negative energy_invcm', 'error missing_source energy_source', 'error parity_mismatch term']))
+  })
+})
+
 describe('errors of retiring', () => {
   it.each([
     ['without reason', change.retire('Na-I.4', ' '), 'error reason_missing reason'],
