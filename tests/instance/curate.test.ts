@@ -237,6 +237,68 @@ describe('a block from a spreadsheet', () => {
   })
 })
 
+describe('what is not corrected but made or ended', () => {
+  it('a source, a new level that names it, a level retired with its reason, each taken out again', async () => {
+    const author = await as('curator')
+    const { page } = author
+    const id = await begun(author, 'New and retired')
+    await openTable(page, id)
+    await page.getByRole('button', { name: 'Add or correct' }).click()
+    await page.getByRole('menuitem', { name: 'Sources' }).click()
+    await page.getByLabel('Key').fill('Not a key')
+    await page.keyboard.press('Enter')
+    expect(await page.getByRole('dialog').innerText()).toMatch(/small letters, digits and hyphens/)
+    await page.getByLabel('Key').fill('invented-2030')
+    await page.keyboard.press('Enter')
+    await page.getByLabel('Reference in full').fill('An invented reference, 2030.')
+    await page.getByLabel('Kind').selectOption('report')
+    await page.getByRole('button', { name: 'Done' }).click()
+    await expect.poll(async () => (await storedOf(author, id, 'invented-2030'))?.values).toEqual({ citation: 'An invented reference, 2030.', kind: 'report' })
+
+    await page.getByRole('button', { name: /^New level of Na/ }).click()
+    for (const text of ['6s', 'LS', '2S1/2', '36372.618', '', 'invented-2030', 'read']) {
+      if (text !== '') await page.keyboard.type(text)
+      await page.keyboard.press('Tab')
+    }
+    await isSaved(page)
+    const made = (await stored(author, id)).find((change) => change.action === 'create' && change.values.term === '2S1/2')
+    expect(made).toMatchObject({ values: { configuration: '6s', energy_literal: '36372.618', energy_source: 'invented-2030', energy_evidence: 'read' }, findings: [] })
+
+    await (await cell(page, 'Na-I.11', 'Energy')).click()
+    await page.getByRole('button', { name: 'Retire this level' }).click()
+    await page.getByRole('dialog').getByRole('button', { name: 'Retire' }).click()
+    expect(await page.getByRole('dialog').innerText()).toMatch(/Say why/)
+    await page.getByLabel('Reason').fill('Never seen again.')
+    await page.getByRole('dialog').getByRole('button', { name: 'Retire' }).click()
+    await expect.poll(async () => (await storedOf(author, id, 'Na-I.11'))?.action).toBe('retire')
+    await expect.poll(() => panel(page), { timeout: 15_000 }).toMatch(/no longer there/)
+    await page.getByRole('button', { name: 'Take this change out' }).click()
+    await expect.poll(async () => storedOf(author, id, 'Na-I.11')).toBeUndefined()
+    await (await cell(page, made?.subject ?? '', 'Energy')).click()
+    await page.getByRole('button', { name: 'Take this level out' }).click()
+    await expect.poll(async () => (await stored(author, id)).map((change) => change.subject)).toEqual(['invented-2030'])
+    expect(author.complaints).toEqual([])
+    await author.context.close()
+  })
+
+  it('title and note are edited in place; a withdrawn amendment can only be read', async () => {
+    const author = await as('curator')
+    const { page } = author
+    const id = await begun(author, 'A slip')
+    await go(page, `/curate/${id}`)
+    await page.getByRole('button', { name: 'Edit title and note' }).click()
+    await page.getByLabel('Title').fill('No slip')
+    await page.getByLabel('Note').fill('As it should be called.')
+    await page.getByRole('button', { name: 'Save' }).click()
+    await page.getByRole('heading', { name: 'No slip' }).waitFor()
+    await page.getByRole('button', { name: 'Withdraw' }).click()
+    await page.getByRole('dialog').getByRole('button', { name: 'Withdraw' }).click()
+    await expect.poll(() => page.getByRole('main').innerText()).toMatch(/Withdrawn[\s\S]*Read only/)
+    expect(await page.getByRole('button', { name: 'Edit title and note' }).count()).toBe(0)
+    await author.context.close()
+  })
+})
+
 describe('two curators at one row', () => {
   it('both versions stand side by side, value by value, and nothing typed is lost', async () => {
     const [one, two] = [await as('curator'), await as('second.curator')]

@@ -33,7 +33,7 @@ function Entry({ row, room, canEdit, onOpen }: { row: SheetRow; room: SheetRoom;
       </div>
       {row.wanted !== null && row.server !== null ? (
         <div className="mt-2 space-y-2">
-          <Differences fields={differencesOf(row.server)} caption={`What changes in ${name}`} />
+          <Differences fields={differencesOf(row.server)} fresh={row.base === null} caption={`What changes in ${name}`} />
           {findings.length > 0 ? <FindingsList findings={findings} name={(finding) => (finding.field === null ? null : fieldWords(finding.field))} /> : null}
         </div>
       ) : null}

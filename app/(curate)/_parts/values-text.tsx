@@ -38,19 +38,19 @@ export function differencesOf(change: AmendmentChange): FieldDifference[] {
 }
 const isBlank = (value: unknown): boolean => value === null || value === undefined || value === '' || value === false || (Array.isArray(value) && value.length === 0)
 
-/** Values before and after, only those that differ. */
-export function Differences({ fields, caption }: { fields: readonly FieldDifference[]; caption: string }) {
+/** Values before and after, only those that differ. Of something new (`fresh`) there is nothing to compare with. */
+export function Differences({ fields, caption, fresh = false }: { fields: readonly FieldDifference[]; caption: string; fresh?: boolean }) {
   if (fields.length === 0) return <p className="note">Nothing differs from the newest edition.</p>
   return (
     <div className="scroll-x" tabIndex={0} role="region" aria-label={`${caption}, scrolls sideways`}>
       <table className="ruled">
         <caption className="sr-only">{caption}</caption>
-        <thead><tr><th scope="col">Value</th><th scope="col">Before</th><th scope="col">After</th></tr></thead>
+        <thead><tr><th scope="col">Value</th>{fresh ? null : <th scope="col">Before</th>}<th scope="col">{fresh ? 'New' : 'After'}</th></tr></thead>
         <tbody>
           {fields.map(({ field, before, after }) => (
             <tr key={field}>
               <th scope="row" className="text-muted">{fieldWords(field)}</th>
-              <td className="whitespace-normal! text-muted"><del className="no-underline"><ValueText field={field} value={before} /></del></td>
+              {fresh ? null : <td className="whitespace-normal! text-muted"><del className="no-underline"><ValueText field={field} value={before} /></del></td>}
               <td className="whitespace-normal!"><ins className="no-underline"><ValueText field={field} value={after} /></ins></td>
             </tr>
           ))}

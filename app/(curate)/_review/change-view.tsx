@@ -45,7 +45,7 @@ export function ChangeView({ amendment, change, threads }: { amendment: string; 
               <dt>Reason</dt><dd>{change.reason}</dd>
               <dt>Successor</dt><dd>{change.successor ? <Link className="link" href={levelPage(change.successor)}>{change.successor}</Link> : 'none'}</dd>
             </dl>
-          ) : <Differences fields={differencesOf(change)} caption={`What changes in ${change.subject}`} />}
+          ) : <Differences fields={differencesOf(change)} fresh={change.action === 'create'} caption={`What changes in ${change.subject}`} />}
         </div>
         <div className="min-w-0 space-y-3">
           {change.findings.length > 0 ? <FindingsList findings={change.findings} name={(finding) => (finding.field === null ? null : fieldWords(finding.field))} /> : null}

@@ -44,7 +44,7 @@ export function Grid({ grid, view, keys, columns, canEdit, showBefore, sources, 
   const width = edges.at(-1) ?? 0
   // eslint-disable-next-line react-hooks/incompatible-library -- this component is drawn anew with every change of the sheet
   const rows = useVirtualizer({
-    count: keys.length, getScrollElement: () => box.current, estimateSize: () => height, overscan: 8, paddingStart: HEAD, scrollPaddingStart: HEAD,
+    count: keys.length, getScrollElement: () => box.current, estimateSize: () => height, overscan: 6, paddingStart: HEAD, scrollPaddingStart: HEAD,
     // the row in focus is always there, so that the focus is never lost by scrolling
     rangeExtractor: (range) => [...new Set([...defaultRangeExtractor(range), ...(head.row < keys.length ? [head.row] : [])])].sort((a, b) => a - b),
   })

@@ -95,8 +95,8 @@ export function RowPanel({ amendment, room, row, canEdit, onRetire, onConflict }
         </Section>
       ) : null}
       {wanted !== null && server !== null && !isRetired(row) ? (
-        <Section title="Before and after">
-          <Differences fields={differencesOf(server)} caption={`What changes in ${name}`} />
+        <Section title={row.base === null ? 'Values' : 'Before and after'}>
+          <Differences fields={differencesOf(server)} fresh={row.base === null} caption={`What changes in ${name}`} />
         </Section>
       ) : null}
       {wanted !== null ? <Section title="Consequences"><Consequences amendment={amendment} row={row} /></Section> : null}

@@ -20,6 +20,7 @@ export interface Transport {
 
 interface Task { key: string; sent: ChangeState | null; row: SheetRow }
 const AT_ONCE = 500
+const LONGEST_MS = 1000
 const WAITS_MS = [2000, 5000, 10_000, 30_000]
 
 /** No answer, a fault of the server, too many requests: the same again may work. Anything else was decided. */
@@ -29,20 +30,25 @@ const mayWork = (problem: ProblemDocument): boolean => problem.status === 0 || p
 export class Saver {
   #timer: ReturnType<typeof setTimeout> | null = null
   #running: Promise<void> | null = null
+  /** When the first letter came that waits. */
+  #since: number | null = null
   #failures = 0
   /** Keys of requests that make something, so that one sent twice makes it once. */
   readonly #keys = new Map<string, { of: string; key: string }>()
 
   constructor(readonly sheet: Sheet, readonly transport: Transport, readonly onSaved: () => void = () => undefined) {}
 
+  /** A moment after the last letter, and while someone types on and on once a second. */
   later(wait = 600): void {
     if (this.#timer !== null) clearTimeout(this.#timer)
-    this.#timer = setTimeout(() => void this.now(), wait)
+    this.#since ??= Date.now()
+    this.#timer = setTimeout(() => void this.now(), Math.max(0, Math.min(wait, this.#since + LONGEST_MS - Date.now())))
   }
   /** Resolves when all that waited was written or found impossible to write. */
   async now(): Promise<void> {
     if (this.#timer !== null) clearTimeout(this.#timer)
     this.#timer = null
+    this.#since = null
     while (this.#running !== null) await this.#running
     this.#running = this.#work()
     await this.#running

@@ -1,10 +1,7 @@
 import type { AmendmentChange, AmendmentChangeDetail, LevelValues } from '@/openapi/schemas/change'
-import { API_BASE, ApiError, apiGet, apiSend } from '../../_components/data/api'
+import { API_BASE, ApiError, apiGet, apiSend, KEEPALIVE_BYTES } from '../../_components/data/api'
 import type { Values } from './change-state'
 import type { Transport } from './saver'
-
-/** A browser sends at most 64 kB along with a page that closes. */
-const FAREWELL_BYTES = 60_000
 
 export async function listChanges(amendment: string, signal?: AbortSignal): Promise<AmendmentChange[]> {
   const changes: AmendmentChange[] = []
@@ -30,11 +27,12 @@ function plain(detail: AmendmentChangeDetail): AmendmentChange {
 
 export function apiTransport(amendment: string): Transport {
   const changes = `/amendments/${amendment}/changes`
+  const outlive = { outlive: true }
   return {
-    create: async (item, key) => plain((await apiSend<AmendmentChangeDetail>('POST', changes, item, { 'idempotency-key': key })).data),
-    replace: async (change, etag, item) => plain((await apiSend<AmendmentChangeDetail>('PUT', `${changes}/${change}`, item, { 'if-match': etag })).data),
-    remove: async (change, etag) => void (await apiSend<null>('DELETE', `${changes}/${change}`, undefined, { 'if-match': etag })),
-    batch: async (items, remove, key) => (await apiSend<{ changes: AmendmentChange[] }>('POST', `${changes}/batch`, { changes: items, remove }, { 'idempotency-key': key })).data.changes,
+    create: async (item, key) => plain((await apiSend<AmendmentChangeDetail>('POST', changes, item, { 'idempotency-key': key }, outlive)).data),
+    replace: async (change, etag, item) => plain((await apiSend<AmendmentChangeDetail>('PUT', `${changes}/${change}`, item, { 'if-match': etag }, outlive)).data),
+    remove: async (change, etag) => void (await apiSend<null>('DELETE', `${changes}/${change}`, undefined, { 'if-match': etag }, outlive)),
+    batch: async (items, remove, key) => (await apiSend<{ changes: AmendmentChange[] }>('POST', `${changes}/batch`, { changes: items, remove }, { 'idempotency-key': key }, outlive)).data.changes,
     read: async (change) => {
       try {
         return plain((await apiGet<AmendmentChangeDetail>(`${changes}/${change}`)).data)
@@ -53,7 +51,9 @@ export function apiTransport(amendment: string): Transport {
         }).catch(() => undefined)
       if (items.length === 0) for (const { change, etag } of remove) send('DELETE', `${changes}/${change}`, undefined, { 'if-match': etag })
       else {
-        const fitting = items.filter((_, index) => JSON.stringify(items.slice(0, index + 1)).length < FAREWELL_BYTES)
+        // the first rows that fit: bytes are counted, since letters may take several
+        let room = KEEPALIVE_BYTES - 200 - 160 * remove.length
+        const fitting = items.filter((item) => (room -= new Blob([JSON.stringify(item)]).size + 1) > 0)
         send('POST', `${changes}/batch`, { changes: fitting, remove })
       }
     },

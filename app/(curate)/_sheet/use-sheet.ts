@@ -34,15 +34,19 @@ export function useSheet(amendment: string): SheetRoom {
   useEffect(() => {
     const leave = () => saver.farewell()
     const hide = () => { if (document.visibilityState === 'hidden') void saver.now() }
+    // what the server would not take cannot be sent along either: the browser asks before the page goes
+    const ask = (event: BeforeUnloadEvent) => { if (sheet.rows().some((row) => row.save === 'failed' || row.save === 'conflict')) event.preventDefault() }
+    window.addEventListener('beforeunload', ask)
     window.addEventListener('pagehide', leave)
     document.addEventListener('visibilitychange', hide)
     return () => {
+      window.removeEventListener('beforeunload', ask)
       window.removeEventListener('pagehide', leave)
       document.removeEventListener('visibilitychange', hide)
       // another page of this site: the tab goes on, and so may the saving
       void saver.now()
     }
-  }, [saver])
+  }, [sheet, saver])
   const reload = useCallback(async () => {
     await saver.now()
     await refetch()

@@ -104,15 +104,22 @@ export async function apiGet<T>(path: string, query?: ApiQuery, signal?: AbortSi
   return readAnswer(await send(apiPath(path, query), { signal, headers: { accept: 'application/json' } }))
 }
 
-/** A write by the signed-in person. The browser's own Origin and Sec-Fetch-Site fields answer the forgery check. */
+/** A browser finishes at most this much for a page that has gone. */
+export const KEEPALIVE_BYTES = 60_000
+
+/**
+ * A write by the signed-in person. The browser's own Origin and Sec-Fetch-Site fields answer the forgery check.
+ * `outlive`: it goes on when the page closes meanwhile, where it is not too long for that.
+ */
 export async function apiSend<T>(
-  method: 'POST' | 'PUT' | 'PATCH' | 'DELETE', path: string, body?: unknown, headers: Record<string, string> = {},
+  method: 'POST' | 'PUT' | 'PATCH' | 'DELETE', path: string, body?: unknown, headers: Record<string, string> = {}, { outlive = false } = {},
 ): Promise<ApiAnswer<T>> {
   const init: RequestInit = { method, headers: { accept: 'application/json', ...headers } }
   if (body !== undefined) {
     init.body = JSON.stringify(body)
     init.headers = { ...init.headers, 'content-type': 'application/json' }
   }
+  if (outlive) init.keepalive = new Blob([typeof init.body === 'string' ? init.body : '']).size <= KEEPALIVE_BYTES
   return readAnswer(await send(apiPath(path), init))
 }
 

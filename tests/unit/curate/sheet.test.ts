@@ -1,4 +1,4 @@
-import { beforeEach, describe, expect, it } from 'vitest'
+import { beforeEach, describe, expect, it, vi } from 'vitest'
 import type { Subject } from '@/app/(curate)/_sheet/change-state'
 import { Saver } from '@/app/(curate)/_sheet/saver'
 import { Sheet, type SheetRow } from '@/app/(curate)/_sheet/sheet'
@@ -53,6 +53,31 @@ describe('typing into a published row', () => {
     expect(row().server?.values).toMatchObject({ energy_literal: '12' })
     expect(row()).toMatchObject({ save: 'saved' })
     expect(row().wanted?.values).toMatchObject({ energy_literal: '12' })
+  })
+})
+
+describe('while someone types', () => {
+  it('a moment after the last letter is soon enough, and a second after the first one at the latest', async () => {
+    vi.useFakeTimers()
+    try {
+      const letter = async (wait: number) => {
+        type(KEY, 'note', `${Date.now()}`)
+        saver.later()
+        await vi.advanceTimersByTimeAsync(wait)
+      }
+      await letter(500)
+      await letter(400)
+      expect(server.changes.size).toBe(0)
+      await letter(150)
+      expect(server.changes.size).toBe(1)
+      const writes = server.calls.length
+      await letter(599)
+      expect(server.calls).toHaveLength(writes)
+      await vi.advanceTimersByTimeAsync(2)
+      expect(server.calls).toHaveLength(writes + 1)
+    } finally {
+      vi.useRealTimers()
+    }
   })
 })
 
