@@ -23,7 +23,15 @@ const printed = (value: number): string => String(value).replace('-', '\u2212')
 const shift = (value: number): string => `${value < 0 ? '\u2212' : '+'}${Number(Math.abs(value).toPrecision(6))}`
 
 const levelOf = (row: AnyRow | null): LevelRow | null => row as LevelRow | null
-const named = (row: LevelRow): string => `${row.configuration} ${printLevelTerm(row)}`
+const RAISED = '\u2070\u00b9\u00b2\u00b3\u2074\u2075\u2076\u2077\u2078\u2079'
+const LOWERED: Record<string, string> = Object.fromEntries([...'0123456789'].map((digit, at) => [digit, String.fromCharCode(0x2080 + at)]))
+
+/** A term as it is set in running text: `2P*3/2` is ²P°₃/₂. */
+const setTerm = (symbol: string): string =>
+  symbol.replace(/^((?:[A-Za-z]{1,4} )?)(\d*)(\S*?)(\*?)(\d+(?:\/2)?)$/, (_, label: string, multiplicity: string, letter: string, odd: string, j: string) =>
+    `${label}${[...multiplicity].map((digit) => RAISED[Number(digit)] ?? '').join('')}${letter}${odd === '*' ? '\u00b0' : ''}${[...j].map((sign) => LOWERED[sign] ?? sign).join('')}`)
+
+const named = (row: LevelRow): string => `${row.configuration} ${row.coupling === 'LS' ? setTerm(printLevelTerm(row)) : printLevelTerm(row)}`
 
 /** What a correction changes, in words: the energy with both values, the rest by name. */
 function corrected(subject: string, before: LevelRow | null, after: LevelRow): string {

@@ -66,7 +66,7 @@ function changedTwice({ amendments, changes }: Pick<Accepted, 'amendments' | 'ch
 export function conflictsOf({ amendments, changes, table }: Accepted, checked: ReadonlyMap<string, Checked>): PublicationConflict[] {
   const titles = new Map(amendments.map(({ id, title }) => [id, title]))
   const part = (change: AcceptedChange) => ({ amendment: { id: change.amendment, title: titles.get(change.amendment) ?? '' }, change: change.id, subject: change.subject })
-  const quoted = (list: readonly AcceptedChange[]): string => [...new Set(list.map(({ amendment }) => `\u201c${titles.get(amendment) ?? amendment}\u201d`))].join(' and ')
+  const quoted = (list: readonly AcceptedChange[]): string => [...new Set(list.map(({ amendment }) => amendment))].map((id) => `\u201c${titles.get(id) ?? id}\u201d`).join(' and ')
   const conflicts: PublicationConflict[] = []
   for (const list of changedTwice({ amendments, changes })) {
     const [first] = list

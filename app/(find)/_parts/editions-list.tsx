@@ -37,7 +37,7 @@ export function EditionsList() {
                 <span className="min-w-0">
                   <span className="font-text text-xl group-hover:underline">{edition.label}</span>
                   {index === 0 ? <span className="ml-3 text-xs text-good">latest</span> : null}
-                  <span className="mt-1 line-clamp-2 block max-w-[40rem] text-muted">{edition.notes}</span>
+                  <span className="mt-1 line-clamp-2 max-w-[40rem] text-muted">{edition.notes}</span>
                 </span>
                 <span className="note sm:text-right">
                   {day(edition.published_at)}

@@ -24,7 +24,7 @@ describe('notes of an edition', () => {
       ['\u201cSodium\u201d'],
     )
     expect(notes).toBe(
-      'From 1 amendment: \u201cSodium\u201d.\n\nNa I: 1 level corrected, 1 retired.\n- Na-I.3 3p 2P*3/2: 16973.36619 \u2192 16973.36650 cm\u207b\u00b9 (+0.00031)\n- Na-I.9 3p 2P*3/2 retired: Not found again. (Na-I.10 takes its place)\n\nSources added: new-2020.',
+      'From 1 amendment: \u201cSodium\u201d.\n\nNa I: 1 level corrected, 1 retired.\n- Na-I.3 3p \u00b2P\u00b0\u2083/\u2082: 16973.36619 \u2192 16973.36650 cm\u207b\u00b9 (+0.00031)\n- Na-I.9 3p \u00b2P\u00b0\u2083/\u2082 retired: Not found again. (Na-I.10 takes its place)\n\nSources added: new-2020.',
     )
   })
 
