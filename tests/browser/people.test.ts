@@ -3,6 +3,9 @@ import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest'
 import { accessibilityFindings, go, openBrowser, overflow, type Theme, visit } from './browser'
 
+/** Looks again and again until it is so: pages ask the API, and the API asks the mail. */
+const soon = { timeout: 15_000 }
+
 let browser: Browser
 beforeAll(async () => {
   browser = await openBrowser()
@@ -86,12 +89,13 @@ it('a stranger is asked to sign in, and comes back to the page', async () => {
   await page.waitForURL(/\/following/)
   expect(await page.getByRole('link', { name: 'People' }).count()).toBe(0)
   await go(page, '/people')
-  await expect.poll(() => page.locator('#main').innerText()).toMatch(/needs the role admin/)
+  await expect.poll(() => page.locator('#main').innerText(), soon).toMatch(/needs the role admin/)
   await context.close()
 })
 
 it('a person is invited, finds the mail, comes in, follows a level, and is closed', async () => {
   const email = `by.page.${randomUUID().slice(0, 8)}@test.example`
+  const chosen = `Person ${randomUUID().slice(0, 8)}`
   const { context, page } = await visit(browser)
   await signIn(page, 'admin')
   await go(page, '/people')
@@ -100,71 +104,72 @@ it('a person is invited, finds the mail, comes in, follows a level, and is close
   await form.getByLabel('Name').fill('Invited Person')
   await form.getByLabel('Role').selectOption('curator')
   await form.getByRole('button', { name: 'Invite' }).click()
-  await expect.poll(() => page.getByText('Invited Person is invited').count()).toBe(1)
+  await expect.poll(() => page.getByText('Invited Person is invited').count(), soon).toBe(1)
   await go(page, '/outbox')
   const link = page.locator('details', { hasText: email }).locator('a[href*="/invitation?token="]')
-  await expect.poll(() => link.count(), { timeout: 15_000 }).toBe(1)
+  await expect.poll(() => link.count(), soon).toBe(1)
   const address = (await link.getAttribute('href')) ?? ''
 
   const guest = await visit(browser)
   await go(guest.page, address)
-  await expect.poll(() => guest.page.getByLabel('Email').inputValue()).toBe(email)
+  await expect.poll(() => guest.page.getByLabel('Email').inputValue(), soon).toBe(email)
   expect(await accessibilityFindings(guest.page)).toEqual([])
-  await guest.page.getByLabel('Your name').fill('Chosen Name')
+  await guest.page.getByLabel('Your name').fill(chosen)
   await guest.page.getByLabel('Password').fill('granite lantern orbit')
   await guest.page.getByRole('button', { name: 'Make my account' }).click()
   await guest.page.waitForURL(/\/account/)
-  await expect.poll(() => guest.page.locator('h1').innerText()).toBe('Chosen Name')
+  await expect.poll(() => guest.page.locator('h1').innerText(), soon).toBe(chosen)
   await go(guest.page, '/levels/Na-I.3')
   await guest.page.getByRole('button', { name: 'Follow' }).click()
-  await expect.poll(() => guest.page.getByRole('button', { name: 'Following' }).getAttribute('aria-pressed')).toBe('true')
+  await expect.poll(() => guest.page.getByRole('button', { name: 'Following' }).getAttribute('aria-pressed'), soon).toBe('true')
   await go(guest.page, '/levels/Na-I.3')
-  await expect.poll(() => guest.page.getByRole('button', { name: 'Following' }).count()).toBe(1)
+  await expect.poll(() => guest.page.getByRole('button', { name: 'Following' }).count(), soon).toBe(1)
   expect(await accessibilityFindings(guest.page)).toEqual([])
   await go(guest.page, '/following')
   await guest.page.getByRole('button', { name: 'Stop following Na-I.3' }).click()
-  await expect.poll(() => guest.page.locator('#main').innerText()).toMatch(/You follow nothing yet/)
+  await expect.poll(() => guest.page.locator('#main').innerText(), soon).toMatch(/You follow nothing yet/)
 
   await go(page, '/people')
   await page.getByLabel('Search by name or address').fill(email)
-  await page.getByRole('button', { name: 'Change Chosen Name' }).click()
-  await expect.poll(() => page.getByRole('region', { name: 'Change Chosen Name' }).count()).toBe(1)
+  await page.getByRole('button', { name: `Change ${chosen}` }).click()
+  await expect.poll(() => page.getByRole('region', { name: `Change ${chosen}` }).count(), soon).toBe(1)
   expect(await accessibilityFindings(page)).toEqual([])
   await page.getByRole('button', { name: 'Close this account' }).click()
   await page.getByRole('button', { name: 'Close the account' }).click()
-  await expect.poll(() => page.getByRole('row', { name: /Chosen Name/ }).innerText()).toMatch(/closed/)
+  await expect.poll(() => page.getByRole('row', { name: new RegExp(chosen) }).innerText(), soon).toMatch(/closed/)
   await go(guest.page, '/following')
   expect(guest.page.url()).toMatch(/\/sign-in/)
   // the same link is good for nothing more
   await go(guest.page, address)
-  await expect.poll(() => guest.page.locator('h1').innerText()).toMatch(/not valid/)
+  await expect.poll(() => guest.page.locator('h1').innerText(), soon).toMatch(/not valid/)
   await Promise.all([context.close(), guest.context.close()])
 })
 
 it('a webhook shows its secret once, and a test that does not come through says so', async () => {
+  const name = `to nowhere ${randomUUID().slice(0, 8)}`
   const { context, page } = await visit(browser)
   await signIn(page, 'admin')
   await go(page, '/webhooks')
   const form = page.getByRole('form', { name: 'Set up a webhook' })
-  await form.getByLabel('Name').fill('to nowhere')
+  await form.getByLabel('Name').fill(name)
   await form.getByLabel('Address').fill('http://127.0.0.1:9/')
   await form.getByRole('button', { name: 'Set it up' }).click()
-  await expect.poll(() => form.innerText()).toMatch(/not public/)
+  await expect.poll(() => form.innerText(), soon).toMatch(/not public/)
   // a public address that nothing is sent to: it is switched off at once
   await form.getByLabel('Address').fill('https://1.1.1.1/lodeterm')
   await form.getByRole('button', { name: 'Set it up' }).click()
-  await expect.poll(() => page.getByText('keep this secret now').count()).toBe(1)
+  await expect.poll(() => page.getByText('keep this secret now').count(), soon).toBe(1)
   expect(await accessibilityFindings(page)).toEqual([])
   await page.getByRole('button', { name: 'I have kept it' }).click()
-  const card = page.getByRole('region', { name: 'to nowhere' })
+  const card = page.getByRole('region', { name })
   await card.getByRole('button', { name: 'Switch off' }).click()
-  await expect.poll(() => card.innerText()).toMatch(/switched off/)
+  await expect.poll(() => card.innerText(), soon).toMatch(/switched off/)
   await card.getByRole('button', { name: 'Deliveries' }).click()
-  await expect.poll(() => card.innerText()).toMatch(/Nothing was sent yet/)
+  await expect.poll(() => card.innerText(), soon).toMatch(/Nothing was sent yet/)
   await card.getByRole('button', { name: 'Change', exact: true }).click()
   expect(await accessibilityFindings(page)).toEqual([])
   await card.getByRole('button', { name: 'Remove', exact: true }).click()
   await card.getByRole('button', { name: 'Remove for good' }).click()
-  await expect.poll(() => card.count()).toBe(0)
+  await expect.poll(() => card.count(), soon).toBe(0)
   await context.close()
 })

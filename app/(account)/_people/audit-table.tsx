@@ -16,7 +16,7 @@ function By({ event, onFilter }: { event: AuditEvent; onFilter: Filter }) {
   const { key, session, actor } = event
   if (key !== null) return <Narrow label={`Only what was done with the key ${event.key_name ?? key}`} onClick={() => onFilter('key', key)}>key {event.key_name ?? short(key)}</Narrow>
   if (session !== null) return <Narrow label={`Only what was done in session ${session}`} onClick={() => onFilter('session', session)}>session <code className="text-xs">{short(session)}</code></Narrow>
-  return <span className="text-muted">{actor === null && event.ip === null ? 'command line' : 'neither'}</span>
+  return <span className="text-muted">{actor === null && event.ip === null ? 'command line' : 'no session'}</span>
 }
 
 function Changes({ event }: { event: AuditEvent }) {
