@@ -1,4 +1,5 @@
 import { parse } from 'csv-parse/sync'
+import { sql } from 'drizzle-orm'
 import { beforeAll, describe, expect, it } from 'vitest'
 import { getDb } from '@/db/client'
 import { imports, users } from '@/db/schema'
@@ -103,9 +104,19 @@ describe('a changed row', () => {
   })
 })
 
+/** All that an import could write to, as text. */
+async function stateOf(amendment: string): Promise<string> {
+  const { rows: found } = await getDb().execute(sql`select
+    (select to_jsonb(a) from amendments a where a.id = ${amendment}) amendment, (select jsonb_agg(c order by c.id) from amendment_changes c where c.amendment_id = ${amendment}) changes,
+    (select jsonb_agg(w) from amendment_authors w where w.amendment_id = ${amendment}) authors, (select jsonb_agg(o order by o.species_id) from ordinal_counters o) ordinals,
+    (select count(*) from amendment_changes) all_changes, (select max(id) from level_revisions) revisions, (select max(id) from audit_events) audit`)
+  return JSON.stringify(found)
+}
+
 describe('a file with a row in error', () => {
   it('changes nothing', async () => {
     const amendment = await newAmendment(key)
+    const before = await stateOf(amendment)
     const good = rowOf('Na-I.2', { note: 'good' })
     const bad = rowOf('Na-I.3', { energy_unc_invcm: '-1' })
     const contradicting = rowOf('Na-I.4', { j: '7.5' })
@@ -114,6 +125,7 @@ describe('a file with a row in error', () => {
     expect(reply.summary).toContain('5 rows have errors')
     const report = await reportOf(key, amendment, reply.id, 'error')
     expect(report.map(({ row, findings }) => [row, [...new Set(findings.map((one) => one.code))]])).toEqual([[3, ['uncertainty_negative']], [4, ['column_contradicts']], [5, ['row_repeated']], [6, ['row_repeated']], [7, ['row_length']]])
+    expect(await stateOf(amendment)).toBe(before)
     const after = (await get(`/amendments/${amendment}`, { key })).json.data
     expect([after.version, after.counts.changes]).toEqual([1, 0])
   })
@@ -259,6 +271,23 @@ describe('an import as a job', () => {
     const after = (await get(`/amendments/${amendment}`, { key })).json.data
     expect([after.version, after.counts.changes]).toEqual([version, 1])
     expect((await get(`/amendments/${amendment}/imports/${begun.id}`, { key })).json.data.state).toBe('stopped')
+  })
+
+  it('raced by edits of the amendment is written whole or not at all', async () => {
+    const amendment = await newAmendment(key)
+    await ask('post', `/amendments/${amendment}/changes`, { key, body: { kind: 'source', action: 'create', source: 'invented-levels', values: { citation: 'Invented', kind: 'other' } } })
+    const own = `/amendments/${amendment}/imports/${(await importFile(key, amendment, inventedTable(3000), '?wait=false')).json.data.id}`
+    let etag = (await get(`/amendments/${amendment}`, { key })).json.data.etag
+    let edits = 0
+    while ((await get(own, { key })).json.data.state === 'running') {
+      const edited = await ask('patch', `/amendments/${amendment}`, { key, headers: { 'if-match': etag }, body: { note: `edit ${(edits += 1)}` } })
+      etag = edited.status === 200 ? edited.json.data.etag : (await get(`/amendments/${amendment}`, { key })).json.data.etag
+      await new Promise((done) => setTimeout(done, 50))
+    }
+    const ended = (await get(own, { key })).json.data
+    const { changes } = (await get(`/amendments/${amendment}`, { key })).json.data.counts
+    if (ended.state === 'done') expect([ended.counts.new, changes]).toEqual([3000, 3001])
+    else expect([ended.state, ended.problems[0].code, changes]).toEqual(['refused', 'amendment_changed', 1])
   })
 
   it('goes on when whoever sent it goes away', async () => {

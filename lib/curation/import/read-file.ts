@@ -19,18 +19,20 @@ export class UnreadableFile extends FileRefused {
 /** Rows whose numbers vote on the decimal mark, and longest text of which one copy serves all rows. */
 const VOTERS = 2000
 const SHORT = 40
+const MOST_TEXTS = 2000
 
 export type Asked = Pick<ImportUpload, 'mapping' | 'defaults' | 'encoding' | 'delimiter' | 'decimal'>
 
-/** One copy of each short text, since most cells of a column repeat. */
+/** One copy of each text that repeats in its column, as most do; a column of ever new texts is given up on. */
 class Texts {
-  private readonly kept = new Map<string, string>()
+  private readonly columns: Map<string, string>[] = []
 
-  one(text: string): string {
+  one(text: string, column: number): string {
     if (text.length > SHORT) return text
-    const found = this.kept.get(text)
+    const kept = (this.columns[column] ??= new Map())
+    const found = kept.get(text)
     if (found !== undefined) return found
-    if (this.kept.size < 20_000) this.kept.set(text, text)
+    if (kept.size < MOST_TEXTS) kept.set(text, text)
     return text
   }
 }
@@ -44,7 +46,7 @@ async function rowsOf(bytes: Buffer, asked: Asked, tell: (rows: number) => void)
   let header: string[] | null = null
   for await (const { row, cells } of recordsOf(decoding, delimiter)) {
     if (header === null) header = cells
-    else rows.push({ row, cells: cells.map((cell) => texts.one(cell)) })
+    else rows.push({ row, cells: cells.map((cell, column) => texts.one(cell, column)) })
     if (rows.length > ROW_LIMIT) throw refused('table_too_long', `The file has more than ${ROW_LIMIT} rows; divide it and import the parts one after the other.`)
     if (rows.length % 1000 === 0) tell(rows.length)
   }
