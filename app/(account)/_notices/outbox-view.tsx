@@ -15,13 +15,11 @@ function Mail({ mail, open }: { mail: OutboxMail; open: boolean }) {
     <details className="sheet group" open={open}>
       <summary className="flex min-h-11 flex-wrap items-baseline justify-between gap-x-6 gap-y-0.5 px-4 py-2.5 hover:bg-lamp-wash">
         <span className="font-medium">{mail.subject}</span>
-        <span className="note">{moment(mail.at)}</span>
+        <span className="note">{mail.to.join(', ')}, {moment(mail.at)}</span>
       </summary>
       <div className="border-t border-rule px-4 py-3">
         <dl className="facts note max-w-3xl"><dt>To</dt><dd>{mail.to.join(', ')}</dd><dt>From</dt><dd>{mail.from}</dd></dl>
-        <div className="scroll-x mt-3 border-t border-rule pt-3" tabIndex={0} role="region" aria-label={`Text of ${mail.subject}`}>
-          <pre className="text-sm whitespace-pre-wrap [overflow-wrap:anywhere]"><LinkedText text={mail.text.trimEnd()} /></pre>
-        </div>
+        <pre className="mt-3 border-t border-rule pt-3 text-sm whitespace-pre-wrap [overflow-wrap:anywhere]"><LinkedText text={mail.text.trimEnd()} /></pre>
       </div>
     </details>
   )

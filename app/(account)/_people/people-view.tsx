@@ -15,13 +15,13 @@ import { PersonForm } from './person-form'
 function columnsOf(edit: (person: PersonAccount) => void): Column<PersonAccount>[] {
   return [
     { name: 'name', header: 'Name', rowHeader: true, value: (row) => row.name, cell: (row) => <span className={row.active ? 'font-medium' : 'text-muted line-through'}>{row.name}</span> },
+    { name: 'change', header: <span className="sr-only">Change</span>, only: 'screen', value: () => null, cell: (row) => <button type="button" className="btn btn-small" aria-label={`Change ${row.name}`} onClick={() => edit(row)}>Change</button> },
     { name: 'email', header: 'Email', value: (row) => row.email },
     { name: 'role', header: 'Role', value: (row) => row.role },
     { name: 'active', header: 'Account', value: (row) => (row.active ? 'open' : 'closed'), cell: (row) => <>{row.active ? 'open' : 'closed'}{row.signs_in ? null : <span className="text-muted">, keys only</span>}{row.demo ? <span className="text-muted">, demo</span> : null}</> },
     { name: 'keys_in_use', header: 'Keys in use', align: 'right', value: (row) => row.keys_in_use },
     { name: 'last_seen_at', header: 'Last seen', value: (row) => row.last_seen_at, cell: (row) => (row.last_seen_at ? moment(row.last_seen_at) : <span className="text-muted">not yet</span>) },
     { name: 'created_at', header: 'Since', value: (row) => row.created_at, cell: (row) => day(row.created_at) },
-    { name: 'change', header: <span className="sr-only">Change</span>, only: 'screen', value: () => null, cell: (row) => <button type="button" className="btn btn-small" aria-label={`Change ${row.name}`} onClick={() => edit(row)}>Change</button> },
   ]
 }
 
