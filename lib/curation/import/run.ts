@@ -13,7 +13,7 @@ import { checkPlan, planRows, type PlannedRow, type Steps, turn } from './plan'
 import { readFile, UnreadableFile } from './read-file'
 import { FileRefused, refused } from './refusal'
 import { beginImport, type Counts, type End, endImport, moveOn, noCounts, writeReport } from './store'
-import { writePlan } from './write'
+import { type Reserved, reserveFor, writePlan } from './write'
 
 /** How often a running import says how far it is, in milliseconds. */
 const BEAT = 500
@@ -29,7 +29,7 @@ class Stopped extends Error {}
 /** Amendment or edition are not as they were when the rows were checked. */
 class GroundMoved extends Error {}
 
-interface Job { db: Db; acting: Acting; id: string; amendment: string; bytes: Buffer; upload: ImportUpload; dryRun: boolean }
+interface Job { db: Db; acting: Acting; id: string; amendment: string; bytes: Buffer; upload: ImportUpload; dryRun: boolean; reserved: Reserved }
 
 /** How far a job is, told to the database at every beat and not oftener. */
 class Progress {
@@ -90,10 +90,11 @@ async function conclude(tx: Tx, job: Job, end: End, rows: readonly PlannedRow[],
 
 /** Writes the changes, if the amendment and the edition are as they were when these were checked. */
 async function commit(job: Job, ground: LoadedGround, rows: readonly PlannedRow[], others: Awaited<ReturnType<typeof checkPlan>>, end: End, steps: Steps): Promise<void> {
+  await reserveFor(job.db, rows, job.reserved)
   await job.db.transaction(async (tx) => {
     const amendment = await lockForEdit(tx, job.amendment)
     if (amendment.version !== ground.version || (await newestEdition(tx)) !== ground.table.edition) throw new GroundMoved()
-    const written = await writePlan(tx, { amendment, author: knownCaller(job.acting.caller).userId, importId: job.id, ground, others }, rows, steps)
+    const written = await writePlan(tx, { amendment, author: knownCaller(job.acting.caller).userId, importId: job.id, ground, reserved: job.reserved, others }, rows, steps)
     if (written !== null) {
       await recordAudit(tx, job.acting, {
         action: 'amendment.import', subjectKind: 'amendment', subjectId: job.amendment, before: { version: amendment.version, state: amendment.state },
@@ -185,6 +186,6 @@ export async function startImport(db: Db, acting: Acting, amendment: string, upl
     await lockForEdit(tx, amendment)
     return beginImport(tx, { amendment, author: knownCaller(acting.caller).userId, fileName: file.name === '' ? 'table' : file.name, sha256: sha256(file.bytes), bytes: file.bytes.byteLength, dryRun })
   })
-  return { id, finished: run({ db, acting, id, amendment, bytes: file.bytes, upload, dryRun }) }
+  return { id, finished: run({ db, acting, id, amendment, bytes: file.bytes, upload, dryRun, reserved: new Map() }) }
 }
 

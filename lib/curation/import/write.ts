@@ -1,31 +1,48 @@
 import { sql } from 'drizzle-orm'
-import type { Tx } from '@/db/client'
+import type { Db, Tx } from '@/db/client'
 import type { Finding } from '@/openapi/schemas/change'
 import { type AmendmentRow, insertChanges, noteEdit, type PreparedChange, recordAuthors, reserveOrdinals, storable } from '../editing'
 import type { LoadedGround } from './ground'
 import { collectAfter } from './memory'
 import { type PlannedRow, renamed, type RowChange, type Steps, turn } from './plan'
 
-interface Target { amendment: AmendmentRow; author: string; importId: string; ground: LoadedGround; others: ReadonlyMap<string, { row: unknown; findings: Finding[] }> }
+interface Target { amendment: AmendmentRow; author: string; importId: string; ground: LoadedGround; reserved: Reserved; others: ReadonlyMap<string, { row: unknown; findings: Finding[] }> }
 type Making = PlannedRow & { change: RowChange }
 
 const BATCH = 1000
 const COLLECT_EVERY = 20 * BATCH
 
-/** Gives new levels their ordinals, in the order of the file; by row, what each is called. Species in one order, so that two imports never wait for each other. */
-async function nameNewLevels(tx: Tx, making: readonly Making[]): Promise<Map<number, string>> {
-  const bySpecies = new Map<string, Making[]>()
-  for (const one of making) {
-    if (one.change.known !== null) continue
-    const before = bySpecies.get(one.change.speciesId)
-    if (before === undefined) bySpecies.set(one.change.speciesId, [one])
-    else before.push(one)
+/** Ordinals kept for an import by species; those of an attempt that failed serve the next. */
+export type Reserved = Map<string, number[]>
+
+/**
+ * Keeps as many ordinals as the rows make levels, each species in a transaction of its own: in that of the import whoever else makes a
+ * level of the species would wait until all rows are written. Numbers of an import that is not written are never given again.
+ */
+export async function reserveFor(db: Db, rows: readonly PlannedRow[], reserved: Reserved): Promise<void> {
+  const needed = new Map<string, number>()
+  for (const { change } of rows) if (change !== null && change.known === null) needed.set(change.speciesId, (needed.get(change.speciesId) ?? 0) + 1)
+  for (const [species, count] of needed) {
+    const kept = reserved.get(species) ?? []
+    reserved.set(species, kept)
+    const missing = count - kept.length
+    if (missing <= 0) continue
+    const first = await db.transaction((tx) => reserveOrdinals(tx, species, missing))
+    for (let i = 0; i < missing; i += 1) kept.push(first + i)
   }
+}
+
+/** What new levels are called, by row, in the order of the file. */
+function nameNewLevels(making: readonly Making[], reserved: Reserved): Map<number, string> {
+  const given = new Map<string, number>()
   const names = new Map<number, string>()
-  for (const species of [...bySpecies.keys()].sort()) {
-    const rows = bySpecies.get(species) ?? []
-    let next = await reserveOrdinals(tx, species, rows.length)
-    for (const { row } of rows) names.set(row, `${species}.${next++}`)
+  for (const { row, change } of making) {
+    if (change.known !== null) continue
+    const at = given.get(change.speciesId) ?? 0
+    const ordinal = reserved.get(change.speciesId)?.[at]
+    if (ordinal === undefined) throw new Error(`No ordinal was kept for row ${row}`)
+    given.set(change.speciesId, at + 1)
+    names.set(row, `${change.speciesId}.${ordinal}`)
   }
   return names
 }
@@ -59,7 +76,7 @@ export async function writePlan(tx: Tx, target: Target, rows: readonly PlannedRo
   const takes = await takeOut(tx, rows)
   if (making.length === 0 && !takes) return null
   const comments = new Map(ground.own.map(({ id, comment }) => [id, comment]))
-  const names = await nameNewLevels(tx, making)
+  const names = nameNewLevels(making, target.reserved)
   const nameOf = (row: number): string => names.get(row) ?? `row ${row}`
   const total = making.length
   let written = 0
