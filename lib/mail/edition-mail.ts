@@ -76,7 +76,7 @@ export function editionMail(edition: { edition: number; label: string; since: nu
     `Edition ${edition.edition} (${oneLine(edition.label)}) is published. It changes ${news.length === 1 ? 'one thing' : `${news.length} things`} that you follow; values are those of edition ${edition.since} -> edition ${edition.edition}.`,
     ...told,
     ...(news.length > told.length ? [`and ${news.length - told.length} more things that you follow.`] : []),
-    `All changes: ${page(`/editions/${edition.edition}?since=${edition.since}`)}\nEdition ${edition.since} stays as it was: add edition=${edition.since} to any address.`,
+    `All changes: ${page(`/editions/compare?from=${edition.since}&to=${edition.edition}`)}\nEdition ${edition.since} stays as it was: add edition=${edition.since} to any address.`,
     `You get this because you follow these things. What you follow: ${page('/following')}`,
   ]
   return { subject: `Edition ${edition.edition} changes ${subjects}${more}`, text: parts.join('\n\n') }

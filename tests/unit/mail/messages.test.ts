@@ -69,7 +69,7 @@ describe('the mail about an edition', () => {
     expect(text).toContain('and 2 more')
     expect(text).toContain('Na-I.9 is retired: never seen again')
     expect(text).toContain(`Its successor is Na-I.12: ${BASE}/levels/Na-I.12`)
-    expect(text).toContain(`${BASE}/editions/2?since=1`)
+    expect(text).toContain(`${BASE}/editions/compare?from=1&to=2`)
     expect(text).toContain(`${BASE}/following`)
   })
 
