@@ -47,7 +47,7 @@ describe('following', () => {
     expect((await end(mine.key, data.etag)).status).toBe(204)
     expect((await end(mine.key, data.etag)).status).toBe(404)
     expect((await get('/follows', { key: theirs.key })).json.data).toEqual([])
-    const rows = await getDb().select().from(auditEvents).where(eq(auditEvents.actorUser, mine.owner.id))
+    const rows = await getDb().select().from(auditEvents).where(eq(auditEvents.actorUser, mine.owner.id)).orderBy(auditEvents.id)
     expect(rows.map((row) => [row.action, row.subjectKind, row.subjectId])).toEqual([['follow.create', 'level', 'Na-I.3'], ['follow.delete', 'level', 'Na-I.3']])
   })
 
