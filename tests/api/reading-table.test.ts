@@ -253,7 +253,7 @@ describe('sources, editions and find', () => {
   })
 
   it('changes since the empty table are its levels, field by field', async () => {
-    const { rows } = await toTheEnd('/editions/1/changes?since=0&limit=100')
+    const { rows } = await toTheEnd('/editions/1/changes?since=0&kind=level&limit=100')
     expect(rows).toHaveLength(407)
     const sodium = rows.find((row) => row.level === ('Na-I.3' as unknown))
     expect(sodium).toMatchObject({ species: 'Na-I', action: 'created' })
