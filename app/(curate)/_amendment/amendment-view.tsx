@@ -58,7 +58,7 @@ function Head({ amendment, room, onDone }: { amendment: AmendmentDetail; room: S
       <div className="flex flex-wrap items-center gap-x-6 gap-y-1.5 border-t border-rule-strong pt-2.5 text-sm">
         <StateMark state={amendment.state} returned={isReturned(amendment)} />
         <span>{plural(counts.changes, 'change')}</span>
-        {counts.changes > 0 ? <Tally errors={counts.errors} warnings={counts.warnings} /> : null}
+        {counts.changes > 0 ? <Tally changes errors={counts.errors} warnings={counts.warnings} /> : null}
         <span className="text-muted">by {amendment.author.name}{others.length > 0 ? ` with ${others.map((person) => person.name).join(', ')}` : ''}</span>
       </div>
       {told ? <p className="note mt-1.5">{told}{comment ? <> “<span className="text-ink">{comment}</span>”</> : null}</p> : null}

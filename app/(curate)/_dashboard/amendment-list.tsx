@@ -19,7 +19,7 @@ const COLUMNS: Column<Amendment>[] = [
   { name: 'title', header: 'Title', rowHeader: true, wrap: true, value: (row) => row.title, cell: (row) => <Link className="link" href={`/curate/${row.id}`}>{row.title}</Link> },
   { name: 'state', header: 'State', value: (row) => row.state, cell: (row) => <span className="inline-flex items-baseline gap-2"><StateMark state={row.state} returned={isReturned(row)} />{row.published_in === null ? null : <Link className="link" href={`/editions/${row.published_in}`}>edition {row.published_in}</Link>}</span> },
   { name: 'changes', header: 'Changes', align: 'right', value: (row) => row.counts.changes },
-  { name: 'findings', header: 'Findings', value: (row) => row.counts.errors + row.counts.warnings, cell: (row) => (row.counts.changes === 0 ? null : <Tally errors={row.counts.errors} warnings={row.counts.warnings} clear="none" />) },
+  { name: 'findings', header: 'Findings', value: (row) => row.counts.errors + row.counts.warnings, cell: (row) => (row.counts.changes === 0 ? null : <Tally changes errors={row.counts.errors} warnings={row.counts.warnings} clear="none" />) },
   { name: 'author', header: 'Begun by', value: (row) => row.author.name },
   { name: 'updated_at', header: 'Last edit', value: (row) => row.updated_at, cell: (row) => day(row.updated_at) },
 ]

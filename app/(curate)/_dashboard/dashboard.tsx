@@ -29,7 +29,7 @@ function TaskList({ rows, none, tells }: { rows: readonly Amendment[]; none: str
           <Link className="link font-medium" href={`/curate/${row.id}`}>{row.title}</Link>
           <p className="note flex flex-wrap gap-x-4">
             <span>{plural(row.counts.changes, 'change')}</span>
-            {row.counts.errors + row.counts.warnings > 0 ? <Tally errors={row.counts.errors} warnings={row.counts.warnings} /> : null}
+            {row.counts.errors + row.counts.warnings > 0 ? <Tally changes errors={row.counts.errors} warnings={row.counts.warnings} /> : null}
             {row.counts.open_comments > 0 ? <span>{plural(row.counts.open_comments, 'open thread')}</span> : null}
             <span>{tells(row)}</span>
           </p>

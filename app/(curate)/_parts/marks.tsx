@@ -39,13 +39,13 @@ export const findingsText = (findings: readonly Pick<Finding, 'severity'>[]): st
   return [errors > 0 ? plural(errors, 'error') : '', warnings > 0 ? plural(warnings, 'warning') : ''].filter((part) => part !== '').join(', ')
 }
 
-/** How many errors and warnings, each with its mark; a tick where there are none. */
-export function Tally({ errors, warnings, clear = 'no findings' }: { errors: number; warnings: number; clear?: string | null }) {
+/** How many errors and warnings (or, of an amendment, how many `changes` have any), each with its mark; a tick where there are none. */
+export function Tally({ errors, warnings, clear = 'no findings', changes = false }: { errors: number; warnings: number; clear?: string | null; changes?: boolean }) {
   if (errors === 0 && warnings === 0) return clear === null ? null : <span className="inline-flex items-center gap-1 whitespace-nowrap text-good"><CircleCheck size={15} aria-hidden="true" />{clear}</span>
   return (
     <span className="inline-flex flex-wrap items-center gap-x-3">
-      {errors > 0 ? <span className="inline-flex items-center gap-1 whitespace-nowrap text-bad"><Mark severity="error" />{plural(errors, 'error')}</span> : null}
-      {warnings > 0 ? <span className="inline-flex items-center gap-1 whitespace-nowrap text-warn"><Mark severity="warning" />{plural(warnings, 'warning')}</span> : null}
+      {errors > 0 ? <span className="inline-flex items-center gap-1 whitespace-nowrap text-bad"><Mark severity="error" />{changes ? `${errors} with errors` : plural(errors, 'error')}</span> : null}
+      {warnings > 0 ? <span className="inline-flex items-center gap-1 whitespace-nowrap text-warn"><Mark severity="warning" />{changes ? `${warnings} with warnings` : plural(warnings, 'warning')}</span> : null}
     </span>
   )
 }

@@ -85,7 +85,7 @@ export function ReviewPart({ amendment, room, onDone }: { amendment: AmendmentDe
         {error ? <ProblemView error={error} heading="h3" /> : <Threads amendment={id} threads={threads.filter((thread) => thread.first.change === null || !known.has(thread.first.change))} about="the amendment" />}
       </Part>
       <Reviews amendment={amendment} />
-      <Part title="Your decision"><Actions amendment={amendment} room={room} onDone={onDone} /></Part>
+      <div className="no-print"><Part title="Your decision"><Actions amendment={amendment} room={room} onDone={onDone} /></Part></div>
     </div>
   )
 }

@@ -34,7 +34,7 @@ function Lines({ row, checked }: { row: PastedRow; checked: CheckedChange | null
   const height = row.cells.length + (rest.length > 0 ? 1 : 0)
   const head = <th scope="rowgroup" rowSpan={height} className="align-top"><code className="text-xs">{row.target.name}</code></th>
   return (
-    <tbody className="border-b border-rule">
+    <tbody className="border-b border-rule [&_td]:align-top [&_td:first-child]:pl-0">
       {row.cells.map((cell, index) => (
         <tr key={cell.column.id} className="border-b-0!">
           {index === 0 ? head : null}
