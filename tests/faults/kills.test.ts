@@ -85,7 +85,7 @@ describe('publishing, killed at any moment', () => {
 const ROWS = 3000
 /** Invented levels, told apart by their repeat index. */
 function table(note: string): string {
-  const rows = Array.from({ length: ROWS }, (_, k) => `Na-I,9p,LS,2P*1/2,${k + 1},${(40_000 + k * 0.01).toFixed(2)},sansonetti-2008-na,computed,${note}`)
+  const rows = Array.from({ length: ROWS }, (_, k) => `Na-I,${8 + (k % 5)}p,LS,2P*1/2,${Math.floor(k / 5) + 1},${(40_000 + k * 0.01).toFixed(2)},sansonetti-2008-na,computed,${note}`)
   return ['species,configuration,coupling,term,repeat_index,energy_literal,energy_source,energy_evidence,note', ...rows].join('\r\n')
 }
 
