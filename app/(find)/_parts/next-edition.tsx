@@ -1,7 +1,7 @@
 'use client'
 import Link from 'next/link'
 import { useQuery } from '@tanstack/react-query'
-import type { NextEdition, PublicationConflict } from '@/openapi/schemas/edition'
+import type { NextEdition } from '@/openapi/schemas/edition'
 import type { Account } from '@/openapi/schemas/session'
 import { apiQuery } from '../../_components/data/api'
 import { EmptyState } from '../../_components/empty-state'
@@ -11,6 +11,7 @@ import { PageHead, Part } from '../../_components/page-head'
 import { ProblemView } from '../../_components/problem-view'
 import { RequestPanel } from '../../_components/request-panel'
 import { Skeleton } from '../../_components/skeleton'
+import { Conflicts } from './publication-conflicts'
 import { PublishForm } from './publish-form'
 
 export const nextEditionQuery = () => ({ ...apiQuery<NextEdition>('/editions/next'), staleTime: 0 })
@@ -29,27 +30,6 @@ function Counts({ counts }: { counts: NextEdition['counts'] }) {
         </div>
       ))}
     </dl>
-  )
-}
-
-/** What keeps the amendments from being published together, each with where to go to mend it. */
-export function Conflicts({ conflicts }: { conflicts: readonly PublicationConflict[] }) {
-  return (
-    <Notice tone="bad" role="alert" title={`${plural(conflicts.length, 'conflict')} ${conflicts.length === 1 ? 'stands' : 'stand'} in the way`}>
-      <ul className="list-disc space-y-2 pl-5">
-        {conflicts.map((conflict, at) => (
-          <li key={at}>
-            {conflict.detail}
-            <span className="note block">
-              {conflict.changes.map(({ amendment, change, subject }, place) => (
-                <span key={change}>{place > 0 ? ' · ' : ''}<Link className="link" href={`/curate/${amendment.id}`}>{subject} in “{amendment.title}”</Link></span>
-              ))}
-            </span>
-          </li>
-        ))}
-      </ul>
-      <p>Nothing can be published until one of them is edited and accepted again, or withdrawn.</p>
-    </Notice>
   )
 }
 

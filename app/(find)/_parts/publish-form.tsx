@@ -7,7 +7,7 @@ import { ApiError, apiSend } from '../../_components/data/api'
 import { Notice } from '../../_components/notice'
 import { plural } from '../../_components/number'
 import { ProblemView } from '../../_components/problem-view'
-import { Conflicts } from './next-edition'
+import { Conflicts } from './publication-conflicts'
 
 const NOTES_MAX = 20_000
 
