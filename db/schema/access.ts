@@ -18,6 +18,8 @@ export const users = pgTable(
     passwordHash: text('password_hash'),
     active: boolean('active').notNull().default(true),
     demo: boolean('demo').notNull().default(false),
+    /** Closed because demo accounts are not allowed here, not by anybody: the same setting opens it again. */
+    closedBySetting: boolean('closed_by_setting').notNull().default(false),
     /** Raised by every change that others make to the account: role, name, open or closed. */
     version: integer('version').notNull().default(1),
     createdAt: instant('created_at').notNull().defaultNow(),
@@ -130,6 +132,8 @@ export const idempotencyKeys = pgTable(
     status: integer('status'),
     headers: jsonb('headers'),
     body: jsonb('body'),
+    /** Set in the transaction of the effect: from then on the request is never performed again, whether its answer was kept or not. */
+    committed: boolean('committed').notNull().default(false),
     createdAt: instant('created_at').notNull().defaultNow(),
   },
   (t) => [primaryKey({ columns: [t.userId, t.operation, t.key] }), index('idempotency_keys_age').on(t.createdAt)],
