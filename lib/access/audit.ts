@@ -2,14 +2,18 @@ import { and, desc, eq, gte, lt, type SQL } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
 import { apiKeys, auditEvents, users } from '@/db/schema'
 import type { Caller } from '@/lib/access/caller'
+import { commitClaim, type HeldClaim } from '@/lib/access/idempotency'
 import type { AuditEvent } from '@/openapi/schemas/audit'
 
-/** Where a change came from: who, from which address, in which request. */
-export interface Acting { caller: Caller; ip: string | null; requestId: string | null }
+/** Where a change came from: who, from which address, in which request, under which claim of an Idempotency-Key. */
+export interface Acting { caller: Caller; ip: string | null; requestId: string | null; claim?: HeldClaim | null }
 
 export interface AuditEntry { action: string; subjectKind: string; subjectId: string | null; before?: unknown; after?: unknown }
 
-/** Adds an audit row in the same transaction as the change it tells of. Passwords and keys never stand in it. */
+/**
+ * Adds an audit row in the same transaction as the change it tells of, and notes there that the request has had its effect. Passwords
+ * and keys never stand in it.
+ */
 export async function recordAudit(tx: Tx | Db, acting: Acting, entry: AuditEntry): Promise<void> {
   const { caller } = acting
   await tx.insert(auditEvents).values({
@@ -24,6 +28,7 @@ export async function recordAudit(tx: Tx | Db, acting: Acting, entry: AuditEntry
     ip: acting.ip,
     requestId: acting.requestId,
   })
+  if (acting.claim != null) await commitClaim(tx, acting.claim)
 }
 
 export interface AuditFilter { action?: string; subject_kind?: string; subject_id?: string; actor?: string; key?: string; session?: string; from?: string; until?: string }

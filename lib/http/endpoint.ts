@@ -1,6 +1,7 @@
 import { createHash, randomUUID } from 'node:crypto'
 import type { z } from 'zod'
 import { ANONYMOUS, atLeast, type Caller } from '@/lib/access/caller'
+import type { HeldClaim } from '@/lib/access/idempotency'
 import { writeAnswer, type Setting, type Written } from '@/lib/http/answer'
 import { queryFingerprint, readCursor } from '@/lib/http/cursor'
 import { entityTag } from '@/lib/entity-tag'
@@ -23,6 +24,8 @@ export interface Routes { GET: Route; HEAD: Route; OPTIONS: Route; POST: Route; 
 interface Planned<S> extends Endpoint<S> { plan: RequestPlan }
 /** What is known of a request when its answer is sent, whether it went well or not. */
 interface Progress { requestId: string; headers: Record<string, string>; caller: Caller; operation: Operation | null; started: number }
+
+interface Acted { written: Written; repeat: unknown }
 
 const CODINGS = /\b(br|gzip|deflate|zstd)\b/g
 
@@ -110,19 +113,19 @@ async function perform<S>(house: House<S>, planned: Map<string, Planned<S>>, one
   const warnings: Warning[] = []
   const setting: Setting = { operation, read, edition, fingerprint, format, warnings, path: where.path, noneMatch }
   const call = {
-    params: read.params, query: read.query, body: read.body, edition, after, format, caller: progress.caller, requestId: progress.requestId, ifMatch: read.ifMatch, clientAddress: address, requestFields: headers,
+    params: read.params, query: read.query, body: read.body, edition, after, format, caller: progress.caller, requestId: progress.requestId, ifMatch: read.ifMatch, clientAddress: address, requestFields: headers, claim: null,
     snapshot: operation.edition === 'none' || operation.numberOnly === true ? null : await house.snapshotFor(edition),
     warn: (code: string, detail: string) => void (warnings.some((warning) => warning.code === code && warning.detail === detail) || warnings.push({ code, detail })),
   } as unknown as Call<never, never, never, never>
-  const act = async (): Promise<{ written: Written; repeat: unknown }> => {
-    const answer = await one.handle(call)
+  const act = async (claim: HeldClaim | null): Promise<Acted> => {
+    const answer = await one.handle(claim === null ? call : { ...call, claim })
     const written = await writeAnswer(house, setting, answer, derived)
     if (derived !== null) house.kept?.keep(derived, written)
     const repeat = answer.repeatData === undefined ? written.json : { ...(written.json as Record<string, unknown>), data: answer.repeatData }
     return { written, repeat }
   }
   const key = operation.idempotent ? headers.get('idempotency-key') : null
-  return key === null || progress.caller.userId === null ? (await act()).written : actOnce(house, operation, { key, userId: progress.caller.userId, path: where.path, search: where.search, body: read.bodyIdentity }, act)
+  return key === null || progress.caller.userId === null ? (await act(null)).written : actOnce(house, operation, { key, userId: progress.caller.userId, path: where.path, search: where.search, body: read.bodyIdentity }, act)
 }
 
 /** Authenticates, counts and authorises. A request whose key does not hold counts against its address. */
@@ -200,26 +203,35 @@ function derivedTag<S>(house: House<S>, operation: Operation, read: ReadRequest,
   return entityTag(FORM_VERSION, operation.id, edition, house.physics, house.constants, JSON.stringify(read.path), JSON.stringify(Object.entries(read.asked).sort()), format, codings)
 }
 
+const answerLost = (): Problem => new Problem('idempotency_answer_lost', 'The request with this Idempotency-Key took effect, and its answer was lost; read what it was about. It is not performed again.')
+
 /** Performs a write once per Idempotency-Key: a repeat gets the stored answer, another request under the same key is refused. */
 async function actOnce<S>(
-  house: House<S>, operation: Operation, asked: { key: string; userId: string; path: string; search: string; body: string }, act: () => Promise<{ written: Written; repeat: unknown }>,
+  house: House<S>, operation: Operation, asked: { key: string; userId: string; path: string; search: string; body: string }, act: (claim: HeldClaim) => Promise<Acted>,
 ): Promise<Written> {
   if (!/^[\x21-\x7e]{1,200}$/.test(asked.key)) throw new Problem('idempotency_key_malformed', 'Idempotency-Key must be 1 to 200 visible ASCII characters.')
   const requestSha256 = createHash('sha256').update(JSON.stringify([operation.method, asked.path, asked.search, asked.body])).digest('hex')
-  const claim = { userId: asked.userId, operation: operation.id, key: asked.key, requestSha256 }
-  const begun = await house.idempotency.begin(claim)
+  const begun = await house.idempotency.begin({ userId: asked.userId, operation: operation.id, key: asked.key, requestSha256 })
   if (begun.state === 'mismatch') throw new Problem('idempotency_mismatch', 'This Idempotency-Key was used before with another request; use a new one.')
   if (begun.state === 'running') throw new Problem('idempotency_running', 'A request with this Idempotency-Key is still running.', { headers: { 'retry-after': '1' } })
+  if (begun.state === 'lost') throw answerLost()
   if (begun.state === 'stored') {
     const { status, headers, body } = begun.answer
     return { status, headers: { ...headers, 'idempotency-replayed': 'true' }, body: body === null ? null : JSON.stringify(body), json: body }
   }
-  let done: { written: Written; repeat: unknown }
+  const { claim } = begun
+  let done: Acted
   try {
-    done = await act()
+    done = await act(claim)
   } catch (error) {
-    await house.idempotency.abandon(claim)
-    throw error
+    // where even this cannot be asked, the error stands, and a repeat finds out
+    const without = await house.idempotency.abandon(claim).catch((failure: unknown) => {
+      house.log.error({ err: failure }, 'the claim of an Idempotency-Key was not given back')
+      return true
+    })
+    if (without) throw error
+    house.log.error({ err: error }, 'a request took effect, and its answer was lost')
+    throw answerLost()
   }
   // what was written is written, whatever becomes of the note of it
   await house.idempotency.finish(claim, { status: done.written.status, headers: done.written.headers, body: done.repeat }).catch((error: unknown) => house.log.error({ err: error }, 'the answer under an Idempotency-Key was not kept'))

@@ -1,5 +1,6 @@
 import type { z } from 'zod'
 import type { Caller } from '@/lib/access/caller'
+import type { HeldClaim } from '@/lib/access/idempotency'
 import type { Table, WrittenTable } from '@/lib/http/writers/table'
 import type { EditionUse, Format, Operation, SharedQuery } from '@/openapi/core/define'
 
@@ -27,6 +28,8 @@ export interface Call<P, Q, B, S> {
   /** Adds to `meta.warnings`. */
   warn: (code: string, detail: string) => void
   clientAddress: string
+  /** What this request holds of its Idempotency-Key: goes into the transaction of its effect (`actingOf`, `recordAudit`). */
+  claim: HeldClaim | null
   /** Fields of the request, for the few operations that need one (cookies at sign-in). */
   requestFields: Headers
 }

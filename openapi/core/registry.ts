@@ -35,7 +35,7 @@ function wrapperCodes(operation: Operation): string[] {
   else codes.push('body_missing', ...(operation.multipart === null ? ['body_not_json'] : ['multipart_malformed', 'part_repeated']), 'missing_field', 'unknown_field', 'wrong_type', 'body_too_large', 'unsupported_media_type')
   codes.push('not_acceptable')
   if (operation.ifMatch) codes.push('if_match_missing', 'if_match_malformed')
-  if (operation.idempotent) codes.push('idempotency_key_malformed', 'idempotency_running', 'idempotency_mismatch')
+  if (operation.idempotent) codes.push('idempotency_key_malformed', 'idempotency_running', 'idempotency_answer_lost', 'idempotency_mismatch')
   if (!(operation.bare && operation.role === 'public')) codes.push('rate_limited')
   return codes
 }

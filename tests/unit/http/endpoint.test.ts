@@ -23,7 +23,7 @@ function house(change: Partial<House<string>> = {}): House<string> {
   return {
     baseUrl: 'http://here.example', openReading: true, ratePerMinute: { anonymous: 100, known: 100 }, trustedProxies: [], constants: 'C', physics: 3, secret: () => new Uint8Array(32),
     editions: { latest: () => Promise.resolve(2), exists: (n) => Promise.resolve(n === 1 || n === 2) }, snapshotFor: (n) => Promise.resolve(`edition ${n}`), callerFor: () => ANONYMOUS,
-    idempotency: { begin: () => Promise.resolve({ state: 'new' }), finish: () => Promise.resolve(), abandon: () => Promise.resolve() },
+    idempotency: { begin: (claim) => Promise.resolve({ state: 'new', claim: { ...claim, claimedAt: new Date(0) } }), finish: () => Promise.resolve(), abandon: () => Promise.resolve(true) },
     limiter: new RateLimiter(), writeTable: () => ({ contentType: 'text/csv', body: '' }), log: pino({ level: 'silent' }), ...change,
   }
 }
@@ -112,5 +112,32 @@ describe('the wrapper', () => {
   it('is not ready while nothing is published', async () => {
     const response = await ask(thing({ editions: { latest: () => Promise.resolve(0), exists: () => Promise.resolve(false) } }), '/things/a')
     expect([response.status, response.headers.get('retry-after')]).toEqual([503, '30'])
+  })
+})
+
+describe('an Idempotency-Key', () => {
+  const make = defineOperation({ id: 'makeThing', method: 'post', path: '/things', summary: 's', tag: 't', role: 'reader', answer: z.strictObject({ made: z.string() }), edition: 'none', idempotent: true })
+  const send = (idempotency: Partial<House<string>['idempotency']>, handle: (claim: unknown) => Answer<{ made: string }>) => {
+    const settings = house({ callerFor: () => READER })
+    const { endpoint, resource } = createEndpoint(() => ({ ...settings, idempotency: { ...settings.idempotency, ...idempotency } }))
+    return resource(endpoint(make, (call) => handle(call.claim))).POST(new Request('http://here.example/api/v1/things', { method: 'POST', headers: { 'idempotency-key': 'k' } }))
+  }
+  const codeOf = async (response: Response) => [response.status, ((await response.json()) as { code: string }).code]
+
+  it('gives its claim to what it performs', async () => {
+    expect((await send({}, (claim) => ({ data: { made: (claim as { key: string }).key } }))).status).toBe(200)
+  })
+
+  it('is answered with 409 and performed no more where its effect stands and its answer is lost', async () => {
+    let performed = 0
+    expect(await codeOf(await send({ begin: () => Promise.resolve({ state: 'lost' }) }, () => ({ data: { made: String(performed += 1) } })))).toEqual([409, 'idempotency_answer_lost'])
+    expect(performed).toBe(0)
+  })
+
+  it('tells the first request the same, and its own error where nothing was done', async () => {
+    const fail = (): never => { throw new Problem('unavailable', 'gone') }
+    expect(await codeOf(await send({ abandon: () => Promise.resolve(false) }, fail))).toEqual([409, 'idempotency_answer_lost'])
+    expect(await codeOf(await send({}, fail))).toEqual([503, 'unavailable'])
+    expect(await codeOf(await send({ abandon: () => Promise.reject(new Error('no database')) }, fail))).toEqual([503, 'unavailable'])
   })
 })

@@ -40,7 +40,7 @@ describe('the wrapper with kept answers', () => {
   const { endpoint, resource } = createEndpoint<null>(() => ({
     baseUrl: 'http://here.example', openReading: open, ratePerMinute: { anonymous: 100, known: 100 }, trustedProxies: [], constants: 'C', physics: 1, secret: () => new Uint8Array(32),
     editions: { latest: () => Promise.resolve(latest), exists: () => Promise.resolve(true) }, snapshotFor: () => Promise.resolve(null), callerFor: () => ANONYMOUS,
-    idempotency: { begin: () => Promise.resolve({ state: 'new' }), finish: () => Promise.resolve(), abandon: () => Promise.resolve() },
+    idempotency: { begin: (claim) => Promise.resolve({ state: 'new', claim: { ...claim, claimedAt: new Date(0) } }), finish: () => Promise.resolve(), abandon: () => Promise.resolve(true) },
     limiter: new RateLimiter(), kept, writeTable: () => ({ contentType: 'text/csv', body: '' }), log: pino({ level: 'silent' }),
   }))
   const kept = new KeptAnswers()
