@@ -1,38 +1,21 @@
+import { setImmediate as pause } from 'node:timers/promises'
 import { conventionalWavelength } from '@/lib/atomic/air'
 import { LS_BITS, RIGOROUS_BITS } from '@/lib/atomic/rules'
 import { effectiveGOfPair, pairMask } from '@/lib/catalogue/line-scan'
 import type { Snapshot } from '@/lib/catalogue/snapshot'
+import type { FollowedNews, LevelNews, LineNews, LinePosition } from '@/lib/mail/edition-mail'
+import { fieldNews } from '@/lib/notices/news-words'
+import type { Difference } from '@/lib/prediction/comparison'
 import { vacuumNmOfWavenumber } from '@/lib/units/spectral'
-import type { FieldNews, FollowedNews, LevelNews, LineNews, LinePosition } from '@/lib/mail/edition-mail'
-import type { Level } from '@/openapi/schemas/level'
+import type { Change } from '@/openapi/schemas/edition'
 
-/** What one mail tells at most of one thing followed; the page of the edition tells the rest. */
-const MOST_LEVELS = 30
+/** What one mail tells at most of one thing followed; the comparison of the editions tells the rest. */
+const MOST_LEVELS = 50
 const MOST_LINES = 8
+/** Isotopes and the like of one species; more than any element has. */
+const MOST_OTHERS = 100
 /** Two positions that agree to this, in cm^-1, are the same: rounding of differences of energies. */
 const SAME_INVCM = 1e-9
-
-const numberText = (value: number | null, unit = ''): string => (value === null ? 'not known' : `${value}${unit}`)
-/** Levels are told by the names that people use for values, each as text that shows every stored digit. */
-const TOLD: readonly [string, (level: Level) => string][] = [
-  ['energy', (level) => numberText(level.energy_invcm, ' cm^-1')],
-  ['uncertainty of the energy', (level) => numberText(level.energy_unc_invcm, ' cm^-1')],
-  ['digits of the source', (level) => level.energy_literal ?? 'none'],
-  ['configuration', (level) => level.configuration],
-  ['coupling', (level) => level.coupling],
-  ['term', (level) => `${level.term.label ?? ''}${level.term.symbol}`],
-  ['g_J adopted', (level) => (level.g_j.status === 'not_applicable' ? 'none (J = 0)' : `${numberText(level.g_j.adopted)} (${level.g_j.basis})`)],
-  ['g_J measured', (level) => (level.g_j.all_measured.length === 0 ? 'none' : level.g_j.all_measured.map((one) => `${one.value}${one.unc === null ? '' : ` +- ${one.unc}`} [${one.source}]`).join(', '))],
-  ['source of the energy', (level) => `${level.energy_source} (${level.energy_evidence})`],
-  ['note', (level) => level.note ?? 'none'],
-]
-
-function fieldsBetween(before: Level, after: Level): FieldNews[] {
-  return TOLD.flatMap(([name, text]) => {
-    const [old, now] = [text(before), text(after)]
-    return old === now ? [] : [{ name, before: old, after: now }]
-  })
-}
 
 const isLine = (snapshot: Snapshot, a: number, b: number): boolean =>
   snapshot.columns.speciesOf[a] === snapshot.columns.speciesOf[b] && (pairMask(snapshot, 'E1', a, b) & (RIGOROUS_BITS | LS_BITS)) === 0
@@ -77,74 +60,99 @@ function linesOf(earlier: Snapshot, later: Snapshot, id: string): LineNews[] {
   return lines.sort((x, y) => moveOf(y) - moveOf(x) || (x.after?.wavenumber ?? 0) - (y.after?.wavenumber ?? 0))
 }
 
-/** What became of one level; null where nothing that is told of it changed. */
-function levelNews(earlier: Snapshot, later: Snapshot, id: string, withLines: boolean): LevelNews | null {
-  const [old, now] = [earlier.indexOf(id), later.indexOf(id)]
-  if (now === undefined) {
-    const gone = old === undefined ? undefined : later.retired(id)
-    return gone === undefined ? null : { id, state: 'retired', fields: [], reason: gone.reason, successor: gone.successor, lines: [], moreLines: 0 }
-  }
-  if (old === undefined) return { id, state: 'new', fields: TOLD.slice(0, 1).concat(TOLD.slice(5, 7)).map(([name, text]) => ({ name, before: null, after: text(later.level(now)) })), reason: null, successor: null, lines: [], moreLines: 0 }
-  const fields = fieldsBetween(earlier.level(old), later.level(now))
-  if (fields.length === 0) return null
-  const lines = withLines ? linesOf(earlier, later, id) : []
-  return { id, state: 'changed', fields, reason: null, successor: null, lines: lines.slice(0, MOST_LINES), moreLines: Math.max(0, lines.length - MOST_LINES) }
+/** All that two editions show otherwise, and how to learn the fields of some of it. */
+export interface Comparison { differences: readonly Difference[]; describe: (some: readonly Difference[]) => Promise<readonly Change[]> }
+
+type State = LevelNews['state']
+const stateOf = (of: readonly Pick<Difference, 'kind' | 'action'>[]): State => {
+  const action = of.find(({ kind }) => kind === 'level')?.action
+  return action === 'created' ? 'new' : action === 'retired' || action === 'absent' ? 'retired' : 'changed'
 }
 
-/** Active levels of a species in either edition, in the order of their ordinals. */
-function levelsOf(earlier: Snapshot, later: Snapshot, species: string): string[] {
-  const ids = new Set<string>()
-  for (const snapshot of [earlier, later]) {
-    const index = snapshot.speciesIndex.get(species)
-    if (index === undefined) continue
-    const [from, to] = snapshot.speciesRange(index)
-    for (let i = from; i < to; i += 1) ids.add(snapshot.levelId(i))
+/** What differs of levels, each with its hyperfine constants, and of species beside their levels. */
+class Differences {
+  readonly ofLevel = new Map<string, Difference[]>()
+  readonly levelsOf = new Map<string, string[]>()
+  readonly ofSpecies = new Map<string, Difference[]>()
+
+  constructor(differences: readonly Difference[]) {
+    for (const one of differences) {
+      if (one.species === null) continue
+      if (one.kind !== 'level' && one.kind !== 'hyperfine') {
+        const known = this.ofSpecies.get(one.species)
+        if (known === undefined) this.ofSpecies.set(one.species, [one])
+        else known.push(one)
+        continue
+      }
+      const level = one.kind === 'level' ? one.subject : one.subject.slice(0, one.subject.indexOf('/'))
+      const known = this.ofLevel.get(level)
+      if (known !== undefined) known.push(one)
+      else {
+        this.ofLevel.set(level, [one])
+        const levels = this.levelsOf.get(one.species)
+        if (levels === undefined) this.levelsOf.set(one.species, [level])
+        else levels.push(level)
+      }
+    }
   }
-  const ordinal = (id: string): number => Number(id.slice(id.lastIndexOf('.') + 1))
-  return [...ids].sort((a, b) => ordinal(a) - ordinal(b))
-}
-
-const SPECIES_TOLD: readonly [string, (species: Snapshot['species'][number]) => string][] = [
-  ['ionisation energy', (one) => numberText(one.ionisation_energy_invcm, ' cm^-1')],
-  ['isotopes', (one) => one.isotopes.map((isotope) => JSON.stringify(isotope)).join(' ')],
-]
-
-function speciesFields(earlier: Snapshot, later: Snapshot, id: string): FieldNews[] {
-  const [old, now] = [earlier, later].map((snapshot) => snapshot.species[snapshot.speciesIndex.get(id) ?? -1])
-  if (old === undefined || now === undefined) return []
-  return SPECIES_TOLD.flatMap(([name, text]): FieldNews[] => {
-    if (text(old) === text(now)) return []
-    return name === 'isotopes' ? [{ name, before: null, after: 'changed; see the page of the species' }] : [{ name, before: text(old), after: text(now) }]
-  })
 }
 
 /** News of things followed between two editions; each thing is looked at once, whoever follows it. */
 export class News {
-  private readonly known = new Map<string, FollowedNews | null>()
+  private readonly known = new Map<string, Promise<FollowedNews | null>>()
+  private readonly differences: Differences
 
-  constructor(private readonly earlier: Snapshot, private readonly later: Snapshot) {}
+  constructor(private readonly earlier: Snapshot, private readonly later: Snapshot, private readonly comparison: Comparison) {
+    this.differences = new Differences(comparison.differences)
+  }
 
-  of(kind: FollowedNews['kind'], subject: string): FollowedNews | null {
+  of(kind: FollowedNews['kind'], subject: string): Promise<FollowedNews | null> {
     const name = `${kind} ${subject}`
     let news = this.known.get(name)
     if (news === undefined) this.known.set(name, (news = this.look(kind, subject)))
     return news
   }
 
-  private look(kind: FollowedNews['kind'], subject: string): FollowedNews | null {
-    const { earlier, later } = this
-    if (kind === 'level') {
-      const level = levelNews(earlier, later, subject, true)
-      return level === null ? null : { kind, subject, fields: [], levels: [level], moreLevels: 0, line: null }
+  private async look(kind: FollowedNews['kind'], subject: string): Promise<FollowedNews | null> {
+    if (kind === 'species') return this.speciesNews(subject)
+    const ends = kind === 'line' ? subject.split('~') : [subject]
+    const levels = await this.levelNews(ends, kind === 'level')
+    if (levels.length === 0) return null
+    return { kind, subject, fields: [], levels, moreLevels: {}, line: kind === 'line' ? lineNews(this.earlier, this.later, ends[0] ?? '', ends[1] ?? '') : null }
+  }
+
+  private async speciesNews(subject: string): Promise<FollowedNews | null> {
+    const own = (this.differences.ofSpecies.get(subject) ?? []).slice(0, MOST_OTHERS)
+    const ordinal = (id: string): number => Number(id.slice(id.lastIndexOf('.') + 1))
+    const changed = [...(this.differences.levelsOf.get(subject) ?? [])].sort((a, b) => ordinal(a) - ordinal(b))
+    const fields = own.length === 0 ? [] : (await this.comparison.describe(own)).flatMap(fieldNews)
+    const levels = await this.levelNews(changed.slice(0, MOST_LEVELS), true)
+    if (fields.length === 0 && levels.length === 0) return null
+    const moreLevels: FollowedNews['moreLevels'] = {}
+    for (const id of changed.slice(MOST_LEVELS)) {
+      const state = stateOf(this.differences.ofLevel.get(id) ?? [])
+      moreLevels[state] = (moreLevels[state] ?? 0) + 1
     }
-    if (kind === 'line') {
-      const [a = '', b = ''] = subject.split('~')
-      const levels = [a, b].flatMap((id) => levelNews(earlier, later, id, false) ?? [])
-      return levels.length === 0 ? null : { kind, subject, fields: [], levels, moreLevels: 0, line: lineNews(earlier, later, a, b) }
+    return { kind: 'species', subject, fields, levels, moreLevels, line: null }
+  }
+
+  /** What became of some levels and of their hyperfine constants; those of which nothing changed are left out. */
+  private async levelNews(ids: readonly string[], withLines: boolean): Promise<LevelNews[]> {
+    const differences = ids.flatMap((id) => this.differences.ofLevel.get(id) ?? [])
+    if (differences.length === 0) return []
+    const described = await this.comparison.describe(differences)
+    const news: LevelNews[] = []
+    for (const id of new Set(ids)) {
+      const changes = described.filter(({ level }) => level === id)
+      if (changes.length === 0) continue
+      const state = stateOf(changes)
+      const gone = state === 'retired' ? this.later.retired(id) : undefined
+      const fields = changes.flatMap((change) => (state === 'retired' && change.kind === 'level' ? [] : fieldNews(change)))
+      // the lines of a level of a large species take a while, and this process answers requests too
+      await pause()
+      const lines = withLines && state === 'changed' && changes.some(({ kind }) => kind === 'level') ? linesOf(this.earlier, this.later, id) : []
+      news.push({ id, state, fields, reason: gone?.reason ?? null, successor: gone?.successor ?? null, lines: lines.slice(0, MOST_LINES), moreLines: Math.max(0, lines.length - MOST_LINES) })
     }
-    const fields = speciesFields(earlier, later, subject)
-    const changed = levelsOf(earlier, later, subject).filter((id) => levelNews(earlier, later, id, false) !== null)
-    const levels = changed.slice(0, MOST_LEVELS).flatMap((id) => levelNews(earlier, later, id, true) ?? [])
-    return fields.length === 0 && levels.length === 0 ? null : { kind, subject, fields, levels, moreLevels: changed.length - levels.length, line: null }
+    return news
   }
 }

@@ -1,13 +1,10 @@
-import { setImmediate as pause } from 'node:timers/promises'
-import { and, asc, eq, inArray, isNull, notInArray, or, sql } from 'drizzle-orm'
+import { and, eq, inArray, isNull, notInArray, or, sql } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
 import type { EventKind, EventPayloads, ReviewPayload } from '@/db/events'
-import { amendmentAuthors, amendments, follows, mails, noticeEvents, users, webhookDeliveries, webhooks } from '@/db/schema'
+import { amendmentAuthors, amendments, mails, noticeEvents, users, webhookDeliveries, webhooks } from '@/db/schema'
 import { getConfig } from '@/lib/config'
-import { getSnapshot } from '@/lib/catalogue/snapshot'
-import { editionMail, type FollowedNews } from '@/lib/mail/edition-mail'
 import { invitationMail, type Message, resetMail, reviewAskedMail, reviewGivenMail } from '@/lib/mail/messages'
-import { News } from '@/lib/notices/news'
+import { editionLetters } from '@/lib/notices/edition-letters'
 import { WebhookEvent } from '@/openapi/schemas/notices'
 
 interface Letter extends Message { to: string }
@@ -34,27 +31,6 @@ async function givenLetters(tx: Tx, outcome: 'returned' | 'accepted', review: Re
     reachable, or(inArray(users.id, authorsOf(tx, review.amendment)), inArray(users.id, authorOf(tx, review.amendment))), sql`${users.id} <> ${review.by.id}::uuid`,
   ))
   return people.map(({ email, name }) => ({ to: email, ...reviewGivenMail(name, outcome, review) }))
-}
-
-/** One letter to each follower of anything that the edition changed. */
-async function editionLetters(tx: Tx, edition: EventPayloads['edition.published']): Promise<Letter[]> {
-  if (edition.since < 1) return []
-  const followed = await tx.select({ email: users.email, name: users.name, kind: follows.kind, subject: follows.subject }).from(follows)
-    .innerJoin(users, eq(users.id, follows.userId)).where(reachable).orderBy(asc(follows.createdAt), asc(follows.id))
-  if (followed.length === 0) return []
-  const [earlier, later] = await Promise.all([getSnapshot(edition.since), getSnapshot(edition.edition)])
-  const news = new News(earlier, later)
-  const byPerson = new Map<string, { name: string; news: FollowedNews[] }>()
-  for (const { email, name, kind, subject } of followed) {
-    const one = news.of(kind, subject)
-    // a species of many levels takes a while to compare, and this process answers requests too
-    await pause()
-    if (one === null) continue
-    const person = byPerson.get(email) ?? { name, news: [] }
-    person.news.push(one)
-    byPerson.set(email, person)
-  }
-  return [...byPerson].map(([to, person]) => ({ to, ...editionMail(edition, person.name, person.news) }))
 }
 
 async function lettersOf(tx: Tx, event: Told): Promise<Letter[]> {

@@ -184,7 +184,10 @@ describe('notices', () => {
     for (const head of ['Level Na-I.3', 'Line Na-I.1~Na-I.3', 'Species Na-I']) expect(text).toContain(`\n${head}\n`)
     expect(text).not.toContain('Species Mg-I')
     await expect.poll(async () => (await instance.query<{ waiting: number }>('select count(*)::int as waiting from notice_events where spread_at is null'))[0]?.waiting).toBe(0)
-    expect(mailTo('curator', 'Edition 2')).toEqual([])
+    // the author follows nothing that changed, and hears of the amendment; so does who reviewed it, and each of them once
+    await arrives('curator', 'Your amendment "Sodium energies" is published in edition 2')
+    await arrives('second.curator', 'The amendment "Sodium energies" is published in edition 2')
+    expect(['curator', 'second.curator', 'reader'].map((who) => mailTo(who, 'dition 2').length)).toEqual([1, 1, 1])
     await expect.poll(() => got.filter(({ path, headers }) => path === '/all' && headers['lodeterm-event'] === 'edition.published').map(({ body }) => JSON.parse(body).data), { timeout: 10_000 })
       .toMatchObject([{ edition: 2, label: 'Second edition', since: 1, url: `${instance.base}/api/v1/editions/2` }])
   })

@@ -55,10 +55,10 @@ describe('the mail about an edition', () => {
   const before = { wavenumber: 16973.36619, nm: 588.99509, medium: 'air', gEff: 7 / 6 }
   const line = { id: 'Na-I.1~Na-I.3', before, after: { ...before, wavenumber: 16973.37, nm: 588.994958 } }
   const level: FollowedNews = {
-    kind: 'level', subject: 'Na-I.3', fields: [], moreLevels: 0, line: null,
+    kind: 'level', subject: 'Na-I.3', fields: [], moreLevels: {}, line: null,
     levels: [{ id: 'Na-I.3', state: 'changed', fields: [{ name: 'energy', before: '16973.36619 cm^-1', after: '16973.37 cm^-1' }], reason: null, successor: null, lines: [line], moreLines: 2 }],
   }
-  const retired: FollowedNews = { kind: 'line', subject: 'Na-I.1~Na-I.9', fields: [], moreLevels: 0, line: { id: 'Na-I.1~Na-I.9', before, after: null }, levels: [{ id: 'Na-I.9', state: 'retired', fields: [], reason: 'never seen again', successor: 'Na-I.12', lines: [], moreLines: 0 }] }
+  const retired: FollowedNews = { kind: 'line', subject: 'Na-I.1~Na-I.9', fields: [], moreLevels: {}, line: { id: 'Na-I.1~Na-I.9', before, after: null }, levels: [{ id: 'Na-I.9', state: 'retired', fields: [], reason: 'never seen again', successor: 'Na-I.12', lines: [], moreLines: 0 }] }
   const edition = { edition: 2, label: 'Spring', since: 1 }
 
   it('tells values and lines before and after', () => {
@@ -78,6 +78,30 @@ describe('the mail about an edition', () => {
     expect(lineText({ ...line, after: { ...before, nm: 588.9950900001, wavenumber: 16973.36618999 } })).toContain('moved by +1.00e-7 pm (-1.00e-8 cm^-1)')
     expect(lineText({ ...line, after: { ...before, gEff: 1.2 } })).toContain('not moved, g_eff 1.166667 -> 1.200000')
     expect(lineText({ ...line, before: null })).toContain('new')
+  })
+
+  it('counts what it does not tell one by one, and says where that stands', () => {
+    const { text } = editionMail(edition, 'Jun', [{ ...level, kind: 'species', subject: 'Na-I', moreLevels: { changed: 1900, new: 40, retired: 10 } }])
+    expect(text).toContain(`and 1950 more levels (1900 changed, 40 new, 10 retired): ${BASE}/editions/compare?from=1&to=2`)
+  })
+
+  it('tells authors and reviewers of their amendments, with or without things followed', () => {
+    const [mine, theirs] = [{ id: 'one', title: 'Sodium\u2028energies', part: 'author' as const }, { id: 'two', title: 'Iron', part: 'reviewer' as const }]
+    const alone = editionMail(edition, 'Jun', [], [mine])
+    expect(alone.subject).toBe('Your amendment "Sodium energies" is published in edition 2')
+    expect(alone.text).toContain(`Your amendment "Sodium energies" is published in edition 2: ${BASE}/curate/one`)
+    expect(alone.text).not.toContain('follow')
+    const both = editionMail(edition, 'Jun', [level], [mine, theirs])
+    expect(both.subject).toBe('Edition 2 changes Na-I.3, and holds your amendment "Sodium energies" and 1 more')
+    expect(both.text).toContain('The amendment "Iron", which you reviewed, is published in edition 2')
+    expect(both.text).toContain('energy: 16973.36619 cm^-1 -> 16973.37 cm^-1')
+  })
+
+  it('is bounded even where one thing followed says more than a mail holds', () => {
+    const wordy = Array.from({ length: 50 }, () => ({ ...level.levels[0], fields: Array.from({ length: 30 }, () => ({ name: 'note', before: 'x'.repeat(400), after: 'y'.repeat(400) })) }))
+    const { text } = editionMail(edition, 'Jun', [{ ...level, kind: 'species', subject: 'Na-I', levels: wordy as FollowedNews['levels'] }])
+    expect(text.length).toBeLessThan(110_000)
+    expect(text).toContain(`and more: ${BASE}/editions/compare?from=1&to=2`)
   })
 
   it('stays short, however much is followed', () => {
