@@ -6,6 +6,7 @@ import { Problem } from '@/lib/problem'
 import type { AmendmentChange, ChangeKind, Finding, Values } from '@/openapi/schemas/change'
 import { amendmentRow } from './amendments'
 import type { AmendmentRow } from './editing'
+import { type InForce, readInForce, staleDetail } from './in-force'
 import type { AnyRow, ChangeInput } from './rows'
 import { loadSubjects, newestEdition } from './table'
 import { differences, writeValues } from './values'
@@ -33,23 +34,27 @@ export function beforeAndAfter({ action, kind, row, before }: Omit<Told, 'given'
   }
 }
 
-/** Found on reading, not stored: it comes of an edition, not of an edit. */
-const STALE: Finding = { severity: 'error', code: 'base_stale', field: null, detail: 'An edition published since this was written has changed the same thing: look at its values of today, and save the change again.' }
+/** Found on reading, not stored: it comes of an edition, not of an edit, and stays through edits that do not state the revision in force. */
+const staleFinding = (change: ChangeRow, now: InForce | null): Finding => ({
+  severity: 'error', code: 'base_stale', field: null, detail: `${staleDetail(change.subject, change.baseRevision, now)} Look at its values of today, and save the change with base_revision ${now?.revision ?? 'null'}.`,
+})
 
 /** Changes as the API gives them, beside the values of the edition compared with. */
 export async function describeChanges(db: Db | Tx, rows: readonly ChangeRow[], edition: number): Promise<AmendmentChange[]> {
   if (rows.length === 0) return []
   const published = await loadSubjects(db, edition, rows)
   const authors = await db.select({ id: users.id, name: users.name }).from(users).where(sql`${users.id} in (select (jsonb_array_elements_text(${JSON.stringify([...new Set(rows.map((row) => row.author))])}::jsonb))::uuid)`)
+  const isStale = (change: ChangeRow): boolean => (published(change.kind, change.subject)?.revision ?? null) !== change.baseRevision
+  const inForce = await readInForce(db, edition, rows.filter(isStale))
   return rows.map((change) => {
     const { kind, action, subject } = change
     const now = published(kind, subject)
     return {
       id: change.id, amendment: change.amendmentId, kind, action, subject,
       species: change.speciesId, level: kind === 'level' ? subject : kind === 'hyperfine' ? subject.slice(0, subject.indexOf('/')) : null,
-      values: action === 'retire' ? null : (change.given as Values), reason: change.reason, successor: change.successor, comment: change.comment, base_revision: change.baseRevision,
+      values: action === 'retire' ? null : (change.given as Values), reason: change.reason, successor: change.successor, comment: change.comment, base_revision: change.baseRevision, current_revision: now?.revision ?? null,
       ...beforeAndAfter({ kind, action, row: change.row as AnyRow | null, before: now?.row ?? null }),
-      findings: now?.revision === (change.baseRevision ?? undefined) ? (change.findings as Finding[]) : [STALE, ...(change.findings as Finding[])],
+      findings: isStale(change) ? [staleFinding(change, inForce(kind, subject)), ...(change.findings as Finding[])] : (change.findings as Finding[]),
       author: authors.find((person) => person.id === change.author) ?? { id: change.author, name: '' },
       import_row: change.importRow, version: change.version, etag: changeTag(change), created_at: change.createdAt.toISOString(), updated_at: change.updatedAt.toISOString(),
     }

@@ -1,16 +1,17 @@
-import { and, eq, inArray, or, sql } from 'drizzle-orm'
+import { and, eq, inArray, notInArray, or, sql } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
 import { amendmentChanges } from '@/db/schema'
 import { knownCaller } from '@/lib/access/accounts'
 import { type Acting, recordAudit } from '@/lib/access/audit'
 import { type Fault, Problem } from '@/lib/problem'
 import { staleProblem } from '@/lib/entity-tag'
-import type { AmendmentChange, BatchItem, ChangeBatch, ChangeRequest, CheckedChange } from '@/openapi/schemas/change'
+import type { AmendmentChange, BatchItem, ChangeBatch, ChangeRequest, CheckedChange, Finding } from '@/openapi/schemas/change'
 import { type AmendmentRow, insertChanges, lockForEdit, noteEdit, type PreparedChange, recordAuthors, reserveOrdinals } from './editing'
 import { amendmentRow } from './amendments'
 import { beforeAndAfter, type ChangeRow, changeMissing, changeRow, changeTag, comparedEdition, describeChanges, inputOf } from './change-view'
-import { checkChanges } from './checks'
+import { checkChangesInSteps, recheckSources } from './checks'
 import { namedBy, requireSameSubject, wordsOf } from './request'
+import { readInForce, staleBase, staleDetail } from './in-force'
 import type { AnyRow, ChangeInput, Checked } from './rows'
 import { storeFindings } from './stored-findings'
 import { publishedIn } from './subjects'
@@ -23,20 +24,38 @@ const inputOfItem = (item: Item): ChangeInput => ({
   id: item.row?.id ?? item.subject, kind: item.kind, action: item.request.action, subject: item.subject, speciesId: item.speciesId, given: item.request.values ?? {}, ...wordsOf(item.request),
 })
 
-/** The changes beside which others are checked: those of the species touched and all of sources; all, where a source is touched. */
-async function besides(tx: Db | Tx, amendment: string, species: ReadonlySet<string>, everything: boolean): Promise<ChangeRow[]> {
+/** The changes beside which others are checked: those of the species touched and all of sources. */
+async function besides(tx: Db | Tx, amendment: string, species: ReadonlySet<string>): Promise<ChangeRow[]> {
   const c = amendmentChanges
-  const part = everything ? undefined : or(eq(c.kind, 'source'), species.size === 0 ? sql`false` : inArray(c.speciesId, [...species]))
-  return tx.select().from(c).where(and(eq(c.amendmentId, amendment), part)).orderBy(c.position)
+  return tx.select().from(c).where(and(eq(c.amendmentId, amendment), or(eq(c.kind, 'source'), species.size === 0 ? sql`false` : inArray(c.speciesId, [...species])))).orderBy(c.position)
+}
+
+/** Changes of other species that name a source which comes or goes: that they can name it is all that becomes different for them. */
+async function besidesNaming(tx: Db | Tx, amendment: string, keys: readonly string[], species: ReadonlySet<string>): Promise<ChangeRow[]> {
+  if (keys.length === 0) return []
+  const c = amendmentChanges
+  const named = or(...keys.map((key) => sql`strpos(${c.given}::text, ${key}) > 0`))
+  return tx.select().from(c).where(and(eq(c.amendmentId, amendment), sql`${c.kind} <> 'source'`, species.size === 0 ? undefined : notInArray(c.speciesId, [...species]), named))
+}
+
+/** 409 where a base that is stated is not the revision in force, naming every such item and what made the revision there is. */
+async function requireBases(tx: Db | Tx, edition: number, items: readonly Item[], current: (item: Item) => number | null, place: (at: number) => string): Promise<void> {
+  const stale = items.flatMap((item, at) => (item.request.base_revision === undefined || item.request.base_revision === current(item) ? [] : [{ item, at, base: item.request.base_revision }]))
+  if (stale.length === 0) return
+  const inForce = await readInForce(tx, edition, stale.map(({ item }) => item))
+  const told = stale.map(({ item, at, base }) => ({ at, now: staleBase(item.row?.id ?? null, item.subject, base, inForce(item.kind, item.subject)), detail: staleDetail(item.subject, base, inForce(item.kind, item.subject)) }))
+  throw new Problem('base_stale', `${told[0]?.detail ?? ''}${told.length > 1 ? ` So it is with ${told.length - 1} more, see changes.` : ''} Nothing was written.`, {
+    errors: told.map(({ at, detail }): Fault => ({ pointer: `${place(at)}/base_revision`, code: 'base_stale', detail })), extra: { changes: told.map(({ now }) => now) },
+  })
 }
 
 interface Judged { checked: Checked[]; others: { row: ChangeRow; checked: Checked }[]; baseOf: (item: Item) => number | null; beforeOf: (item: Item) => AnyRow | null; edition: number }
 
 /** Checks items beside the rest of the amendment, as it would be without `removed`. */
-async function judge(tx: Db | Tx, amendment: AmendmentRow, items: readonly Item[], removed: readonly ChangeRow[], exists: (kind: ChangeRow['kind'], subject: string, at: number, id: string) => void): Promise<Judged> {
+async function judge(tx: Db | Tx, amendment: AmendmentRow, items: readonly Item[], removed: readonly ChangeRow[], exists: (kind: ChangeRow['kind'], subject: string, at: number, id: string) => void, place = (at: number): string => `/changes/${at}`): Promise<Judged> {
   const touched = [...items, ...removed]
   const species = new Set(touched.flatMap((one) => (one.speciesId === null ? [] : [one.speciesId])))
-  const all = await besides(tx, amendment.id, species, touched.some((one) => one.kind === 'source'))
+  const all = await besides(tx, amendment.id, species)
   const gone = new Set([...removed, ...items.flatMap((item) => (item.row === null ? [] : [item.row]))].map((row) => row.id))
   const rest = all.filter((row) => !gone.has(row.id))
   const taken = new Map(rest.map((row) => [`${row.kind} ${row.subject}`, row.id]))
@@ -44,15 +63,22 @@ async function judge(tx: Db | Tx, amendment: AmendmentRow, items: readonly Item[
     const id = taken.get(`${item.kind} ${item.subject}`)
     if (id !== undefined) exists(item.kind, item.subject, at, id)
   })
-  for (const row of rest) if (row.speciesId !== null) species.add(row.speciesId)
   const edition = await newestEdition(tx)
   const table = await loadPublishedTable(tx, edition, [...species])
-  const checked = checkChanges(table, [...rest.map(inputOf), ...items.map(inputOfItem)])
+  const checked = await checkChangesInSteps(table, [...rest.map(inputOf), ...items.map(inputOfItem)])
+  // an edit of a source leaves it there; one made or taken out is there for others from now on, or no longer
+  const coming = [...items.filter((item) => item.row === null), ...removed].flatMap((one) => (one.kind === 'source' && !table.sources.has(one.subject) ? [one.subject] : []))
+  const naming = await besidesNaming(tx, amendment.id, coming, species)
+  const sources = new Set([...table.sources.keys(), ...[...rest, ...items].flatMap((one) => (one.kind === 'source' ? [one.subject] : []))])
   const published = (item: Item) => publishedIn(table, item.kind, item.subject)
+  await requireBases(tx, edition, items, (item) => published(item)?.revision ?? null, place)
   return {
     edition, checked: checked.slice(rest.length),
-    others: rest.flatMap((row, at) => { const one = checked[at]; return one === undefined ? [] : [{ row, checked: one }] }),
-    baseOf: (item) => published(item)?.revision ?? null,
+    others: [
+      ...rest.flatMap((row, at) => { const one = checked[at]; return one === undefined ? [] : [{ row, checked: one }] }),
+      ...naming.map((row) => ({ row, checked: recheckSources(inputOf(row), { row: row.row as AnyRow | null, findings: row.findings as Finding[] }, sources) })),
+    ],
+    baseOf: (item) => item.request.base_revision ?? (item.row === null ? (published(item)?.revision ?? null) : item.request.base_revision === null ? null : item.row.baseRevision),
     beforeOf: (item) => published(item)?.row ?? null,
   }
 }
@@ -101,7 +127,7 @@ export async function addChange(db: Db, acting: Acting, amendmentId: string, req
   return db.transaction(async (tx) => {
     const amendment = await lockForEdit(tx, amendmentId)
     const items = await withSubjects(tx, [{ request, row: null }])
-    const judged = await judge(tx, amendment, items, [], (_, subject, __, id) => { throw existsProblem(subject, id) })
+    const judged = await judge(tx, amendment, items, [], (_, subject, __, id) => { throw existsProblem(subject, id) }, () => '')
     const [id = ''] = await store(tx, amendment, caller.userId, items, [], judged)
     await noteEdit(tx, amendment, caller.userId)
     const { subject, after } = told(request, items[0]?.subject ?? '', null)
@@ -125,7 +151,7 @@ export async function editChange(db: Db, acting: Acting, amendmentId: string, id
     await requireChange(tx, row, amendment, ifMatch)
     requireSameSubject(request, row)
     const items = await withSubjects(tx, [{ request, row }])
-    await store(tx, amendment, caller.userId, items, [], await judge(tx, amendment, items, [], () => undefined))
+    await store(tx, amendment, caller.userId, items, [], await judge(tx, amendment, items, [], () => undefined, () => ''))
     await noteEdit(tx, amendment, caller.userId)
     const { subject, before, after } = told(request, row.subject, row)
     await recordAudit(tx, acting, { action: 'change.edit', subjectKind: 'change', subjectId: id, before: { amendment: amendmentId, subject, ...before }, after: { amendment: amendmentId, subject, ...after } })

@@ -11,6 +11,7 @@ import { describeAmendments, describeDetail, requireAmendment } from './amendmen
 import { type ChangeRow, inputOf } from './change-view'
 import { checkChangesInSteps } from './checks'
 import { type AmendmentRow, amendmentMissing, EDITABLE, lockAmendment, stateConflict } from './editing'
+import { readInForce, staleBase, staleDetail } from './in-force'
 import { isAuthor } from './possible'
 import type { Checked } from './rows'
 import { storeFindings } from './stored-findings'
@@ -59,7 +60,12 @@ async function checkAll(tx: Tx, amendment: AmendmentRow, comment: string): Promi
   const judged = rows.flatMap((row, at) => { const one = checked[at]; return one === undefined ? [] : [{ row, checked: one }] })
   const stale = judged.filter(({ row }) => (publishedIn(table, row.kind, row.subject)?.revision ?? null) !== row.baseRevision)
   if (stale.length > 0) {
-    throw new Problem('base_stale', `${stale.length === 1 ? `${stale[0]?.row.subject ?? ''} was` : `${stale.length} subjects were`} changed by an edition since: look at today's values and write the change again.`, { extra: { changes: stale.slice(0, MOST_NAMED).map(({ row }) => ({ change: row.id, subject: row.subject })) } })
+    const named = stale.slice(0, MOST_NAMED).map(({ row }) => row)
+    const inForce = await readInForce(tx, table.edition, named)
+    const told = named.map((row) => staleBase(row.id, row.subject, row.baseRevision, inForce(row.kind, row.subject)))
+    const [first] = named
+    const detail = first === undefined ? '' : staleDetail(first.subject, first.baseRevision, inForce(first.kind, first.subject))
+    throw new Problem('base_stale', `${detail}${stale.length > 1 ? ` So it is with ${stale.length - 1} more.` : ''} Look at today's values and write the change again, with the revision in force as base_revision.`, { extra: { changes: told } })
   }
   const wrong = judged.filter((one) => one.checked.findings.some((finding) => finding.severity === 'error'))
   if (wrong.length > 0) {

@@ -20,7 +20,7 @@ const at = { params: { id: UUID } }
 const atChange = { params: { id: UUID, change: UUID } }
 const CHANGE = { action: 'replace', level: 'Na-I.3', values: { configuration: '3p', coupling: 'LS', term: '2P*3/2', energy_literal: '16973.36619', energy_source: 'sansonetti-2008-na', energy_evidence: 'quoted' }, comment: 'Digits checked against the printed table.' }
 const editing = ['amendment_unknown', 'state_conflict'] as const
-const values = ['value_not_listed', 'length_out_of_range', 'format_mismatch', 'number_out_of_range', 'subject_malformed', 'field_not_applicable', 'action_impossible'] as const
+const values = ['base_stale', 'value_not_listed', 'length_out_of_range', 'format_mismatch', 'number_out_of_range', 'subject_malformed', 'field_not_applicable', 'action_impossible'] as const
 
 export const listAmendments = defineOperation({
   ...common, id: 'listAmendments', method: 'get', path: '/amendments',
@@ -80,6 +80,7 @@ export const getChange = defineOperation({
 export const replaceChange = defineOperation({
   ...common, id: 'replaceAmendmentChange', method: 'put', path: '/amendments/{id}/changes/{change}',
   summary: 'Edit a change; its subject stays',
+  description: 'The revision that it was made from stays too, unless base_revision states the one in force.',
   params: byChange, body: ChangeRequest, answer: AmendmentChangeDetail, ifMatch: true,
   problems: [...editing, 'change_unknown', 'etag_stale', 'subject_mismatch', ...values], example: { ...atChange, body: CHANGE },
 })

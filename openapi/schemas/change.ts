@@ -85,6 +85,7 @@ const REQUEST = {
   reason: text.meta({ description: 'Why; a level is retired with a reason.' }),
   successor: LevelId.nullish().meta({ description: 'The level that takes the place of a retired one.' }),
   comment: text.meta({ description: 'Why a warning is no ground to hold the change back.' }),
+  base_revision: z.int().min(1).nullable().optional().meta({ description: 'Revision of the subject that the values were made from; null: made when it was not in the table. Where it is not the one in force nothing is written. Left out: the one in force for a new change, and the one stored for an edit; to state the one in force brings an edited change up to date.' }),
 }
 
 /** Which members name the subject: level {species} to create and {level} else; source {source}; species {species}; isotope {species, mass_number}; hyperfine {level, mass_number}. */
@@ -150,6 +151,7 @@ const CHANGE = {
   successor: LevelId.nullable(),
   comment: z.string().nullable(),
   base_revision: z.int().nullable().meta({ description: 'Revision that it was made from; null where the subject was not in the table.' }),
+  current_revision: z.int().nullable().meta({ description: 'Revision that the newest edition holds; where it is another than base_revision there is a finding base_stale.' }),
   before: AnyValues.nullable().meta({ description: 'The values of the newest edition.' }),
   after: AnyValues.nullable().meta({ description: 'The values as read; null where they cannot be, or the level is retired.' }),
   fields: z.array(FieldDifference).meta({ description: 'What differs between before and after.' }),

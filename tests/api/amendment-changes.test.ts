@@ -1,5 +1,8 @@
 import { randomUUID } from 'node:crypto'
+import { eq } from 'drizzle-orm'
 import { describe, expect, it } from 'vitest'
+import { getDb } from '@/db/client'
+import { amendmentChanges } from '@/db/schema'
 import { ask, faultsOf, get, type Json } from './helpers/client'
 import { begin, codesOf, replace, valuesOf } from './helpers/curation'
 import { makeKey } from './helpers/people'
@@ -219,5 +222,59 @@ describe('the values of a level', () => {
     const read = await get('/levels/Na-I.3/values?edition=1')
     expect(read.json.data).toMatchObject({ level: 'Na-I.3', revision: 1, edition: 1, values: { configuration: '3p', term: '2P*3/2', coupling: 'LS' } })
     expect((await get('/levels/Na-I.9999/values')).status).toBe(404)
+  })
+})
+
+describe('what a change was made from', () => {
+  const stale = { subject: 'Na-I.3', base_revision: 7, current_revision: 1, edition: 1, amendment: null }
+
+  it('is refused where it is not the revision in force, naming what made that one', async () => {
+    const one = await begin()
+    const given = await replace('Na-I.3', { note: 'a' })
+    const refused = await one.add({ ...given, base_revision: 7 })
+    expect([refused.status, refused.json.code, refused.json.changes]).toEqual([409, 'base_stale', [{ change: null, ...stale }]])
+    expect(refused.json.errors).toMatchObject([{ pointer: '/base_revision', code: 'base_stale' }])
+    const batch = { changes: [{ action: 'create', species: 'Na-I', values: NEW_LEVEL }, { ...given, base_revision: 7 }, { ...(await replace('Na-I.4', { note: 'b' })), base_revision: null }] }
+    for (const path of ['batch', 'check']) {
+      const both = await ask('post', `${one.at}/changes/${path}`, { key: one.by.key, body: batch })
+      expect([both.status, both.json.errors.map((error: Json) => error.pointer)]).toEqual([409, ['/changes/1/base_revision', '/changes/2/base_revision']])
+    }
+    expect((await get(`${one.at}/changes`, { key: one.by.key })).json.data).toEqual([])
+    expect((await one.add({ ...given, base_revision: 1 })).json.data).toMatchObject({ base_revision: 1, current_revision: 1 })
+  })
+
+  it('stays through edits, with its finding, until the revision in force is stated', async () => {
+    const one = await begin()
+    const given = await replace('Na-I.3', { note: 'a' })
+    const { id } = (await one.add(given)).json.data
+    // as if an edition had come between
+    await getDb().update(amendmentChanges).set({ baseRevision: 7 }).where(eq(amendmentChanges.id, id))
+    const at = `${one.at}/changes/${id}`
+    const tag = async () => (await get(at, { key: one.by.key })).json.data.etag as string
+    const put = async (body: object) => ask('put', at, { key: one.by.key, headers: { 'if-match': await tag() }, body })
+    const edited = await put({ ...given, comment: 'an edit' })
+    expect([edited.json.data.base_revision, edited.json.data.current_revision, codesOf(edited.json.data)]).toEqual([7, 1, ['error base_stale']])
+    expect(edited.json.data.findings[0].detail).toContain('edition 1')
+    const batch = async (more: object) => ask('post', `${one.at}/changes/batch`, { key: one.by.key, body: { changes: [{ ...given, change: id, etag: await tag(), ...more }] } })
+    expect((await batch({})).json.data.changes[0].base_revision).toBe(7)
+    expect((await put({ ...given, base_revision: 7 })).json.changes).toEqual([{ change: id, ...stale }])
+    expect((await batch({ base_revision: 1 })).json.data.changes[0]).toMatchObject({ base_revision: 1, findings: [] })
+    expect((await put(given)).json.data.base_revision).toBe(1)
+  })
+})
+
+describe('a source that comes or goes', () => {
+  it('is known to changes of any species from then on, and to no other change anything happens', async () => {
+    const one = await begin()
+    const key = `test-${randomUUID()}`
+    const [naming, other] = [await one.add(await replace('Na-I.3', { energy_source: key })), await one.add(await replace('Na-I.4', { energy_source: `${key}-other` }))]
+    const codes = async (reply: Json) => codesOf((await get(`${one.at}/changes/${reply.json.data.id}`, { key: one.by.key })).json.data)
+    expect(await codes(naming)).toEqual(['error source_unknown'])
+    const source = await one.add({ kind: 'source', action: 'create', source: key, values: { citation: 'A test', kind: 'other' } })
+    expect(codesOf(source.json.data)).toEqual([])
+    expect([await codes(naming), await codes(other)]).toEqual([[], ['error source_unknown']])
+    const removed = await ask('delete', `${one.at}/changes/${source.json.data.id}`, { key: one.by.key, headers: { 'if-match': source.json.data.etag } })
+    expect(removed.status).toBe(204)
+    expect([await codes(naming), await codes(other)]).toEqual([['error source_unknown'], ['error source_unknown']])
   })
 })

@@ -232,7 +232,9 @@ describe('talk and tasks', () => {
     await getDb().update(amendmentChanges).set({ baseRevision: 7 }).where(eq(amendmentChanges.id, change.json.data.id))
     expect(codesOf((await get(`${one.at}/changes/${change.json.data.id}`, { key: one.by.key })).json.data)).toEqual(['error base_stale'])
     const refused = await one.step('submit', one.by.key)
-    expect([refused.status, refused.json.code, refused.json.changes]).toEqual([409, 'base_stale', [{ change: change.json.data.id, subject: 'Na-I.3' }]])
+    const now = { subject: 'Na-I.3', base_revision: 7, current_revision: 1, edition: 1, amendment: null }
+    expect([refused.status, refused.json.code, refused.json.changes]).toEqual([409, 'base_stale', [{ change: change.json.data.id, ...now }]])
+    expect(refused.json.detail).toContain('Na-I.3 was made from revision 7, and now edition 1 made revision 1')
   })
 
   it('writes the audit of every step', async () => {

@@ -79,6 +79,9 @@ export function RowPanel({ amendment, room, row, canEdit, onRetire, onConflict }
       {findings.length > 0 ? (
         <Section title="Findings">
           <FindingsList findings={findings} name={(finding) => (finding.field === null ? null : fieldWords(finding.field))} />
+          {canEdit && row.save === 'saved' && findings.some((finding) => finding.code === 'base_stale') ? (
+            <p className="mt-2"><button type="button" className="btn btn-small" onClick={() => void saver.rebase(row.key)}>It holds beside the values of today</button></p>
+          ) : null}
         </Section>
       ) : null}
       {wanted !== null && (findings.some((finding) => finding.severity === 'warning') || wanted.comment !== null) ? (

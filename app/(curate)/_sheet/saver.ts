@@ -12,7 +12,8 @@ export interface Transport {
   /** Null where there is no such change any more. */
   read: (change: string) => Promise<AmendmentChange | null>
   list: () => Promise<AmendmentChange[]>
-  values: (level: string) => Promise<Values>
+  /** The published values of a level, and the revision that holds them. */
+  values: (level: string) => Promise<{ values: Values; revision: number }>
   /** Sends what is left while the page goes away; nothing is awaited. */
   farewell: (items: BatchItem[], remove: { change: string; etag: string }[]) => void
   newKey: () => string
@@ -58,6 +59,21 @@ export class Saver {
     for (const row of this.sheet.rows()) if (row.save === 'failed') this.sheet.patch(row.key, { save: 'waiting', problem: null })
     await this.now()
   }
+  /** Says that a change, made from values that an edition has changed since, holds beside the values of today. */
+  async rebase(key: string): Promise<void> {
+    await this.now()
+    const row = this.sheet.row(key)
+    if (row?.server == null || row.wanted === null || row.save !== 'saved') return
+    const { server, wanted } = row
+    this.sheet.saving([key])
+    try {
+      const action = wanted.action === 'create' && server.current_revision !== null ? 'replace' : wanted.action
+      this.sheet.stored(key, wanted, await this.transport.replace(server.id, server.etag, { ...requestOf(row.subject, { ...wanted, action }), base_revision: server.current_revision }))
+      this.onSaved()
+    } catch (error) {
+      await this.#refused({ key, sent: wanted, row }, problemOf(error))
+    }
+  }
   end(): void {
     if (this.#timer !== null) clearTimeout(this.#timer)
   }
@@ -90,7 +106,8 @@ export class Saver {
   async complete(key: string, row: SheetRow): Promise<void> {
     if (row.complete || row.subject.level === null) return
     try {
-      this.sheet.completed(key, await this.transport.values(row.subject.level))
+      const { values, revision } = await this.transport.values(row.subject.level)
+      this.sheet.completed(key, values, revision)
     } catch (error) {
       if (row.save === 'waiting') this.#fail([{ key, sent: row.wanted, row }], problemOf(error))
     }
@@ -108,7 +125,7 @@ export class Saver {
   async #one(task: Task): Promise<boolean> {
     const { key, sent, row } = task
     try {
-      const item = sent === null ? null : requestOf(row.subject, sent)
+      const item = sent === null ? null : requestFor(row, sent)
       if (row.server !== null && item === null) {
         await this.transport.remove(row.server.id, row.server.etag)
         this.sheet.stored(key, null, null)
@@ -123,7 +140,7 @@ export class Saver {
   }
 
   async #together(puts: Task[], removals: Task[]): Promise<boolean> {
-    const items = puts.map(({ row, sent }): BatchItem => ({ ...requestOf(row.subject, sent as ChangeState), ...(row.server === null ? {} : { change: row.server.id, etag: row.server.etag }) }))
+    const items = puts.map(({ row, sent }): BatchItem => ({ ...requestFor(row, sent as ChangeState), ...(row.server === null ? {} : { change: row.server.id, etag: row.server.etag }) }))
     const remove = removals.flatMap(({ row }) => (row.server === null ? [] : [{ change: row.server.id, etag: row.server.etag }]))
     const name = puts.map((task) => task.key).join(' ')
     try {
@@ -147,6 +164,8 @@ export class Saver {
     const { key, sent, row } = task
     if (mayWork(problem)) return this.#fail([task], problem)
     const gone = problem.status === 404 && row.server !== null
+    // an edition came between: trying again reads its values first, and carries over what was typed
+    if (problem.code === 'base_stale' && row.server === null) this.sheet.patch(key, { complete: row.subject.level === null, revision: null })
     if (gone && sent === null) return this.sheet.stored(key, null, null)
     if (problem.status !== 412 && problem.code !== 'change_exists' && !gone) return this.sheet.failed(key, problem)
     const id = row.server?.id ?? (typeof problem.change === 'string' ? problem.change : undefined)
@@ -184,10 +203,13 @@ export class Saver {
   farewell(): void {
     const tasks = this.sheet.rows().filter((row) => (row.save === 'waiting' || row.save === 'failed') && isDirty(row) && (row.complete || row.wanted?.action !== 'replace'))
     if (tasks.length === 0) return
-    const items = tasks.flatMap((row): BatchItem[] => (row.wanted === null ? [] : [{ ...requestOf(row.subject, row.wanted), ...(row.server === null ? {} : { change: row.server.id, etag: row.server.etag }) }]))
+    const items = tasks.flatMap((row): BatchItem[] => (row.wanted === null ? [] : [{ ...requestFor(row, row.wanted), ...(row.server === null ? {} : { change: row.server.id, etag: row.server.etag }) }]))
     const remove = tasks.flatMap((row) => (row.wanted === null && row.server !== null ? [{ change: row.server.id, etag: row.server.etag }] : []))
     this.transport.farewell(items, remove)
   }
 }
+
+/** What writes a row: a new change says which revision its values were read from. */
+const requestFor = (row: SheetRow, state: ChangeState): BatchItem => ({ ...requestOf(row.subject, state), ...(row.server === null && row.revision !== null ? { base_revision: row.revision } : {}) })
 
 const isChange = (value: unknown): value is AmendmentChange => typeof value === 'object' && value !== null && 'etag' in value && 'findings' in value

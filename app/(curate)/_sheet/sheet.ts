@@ -13,6 +13,8 @@ export interface SheetRow {
   base: Values | null
   /** Whether `base` holds all of them: the list of levels leaves some out. */
   complete: boolean
+  /** The published revision that `base` was read from; null where that is not known. */
+  revision: number | null
   /** The change as the server holds it. */
   server: AmendmentChange | null
   /** What the curator wants; null: no change. */
@@ -97,7 +99,7 @@ export class Sheet {
   add(rows: readonly NewRow[]): void {
     for (const given of rows) {
       const known = this.#rows.get(given.key)
-      if (known === undefined) this.#put({ ...given, server: null, wanted: null, save: 'saved', problem: null, theirs: null, gone: false })
+      if (known === undefined) this.#put({ ...given, revision: null, server: null, wanted: null, save: 'saved', problem: null, theirs: null, gone: false })
       else if (!known.complete && known.base === null) this.#rows.set(given.key, { ...known, base: given.base, complete: given.complete })
     }
     this.#tell()
@@ -111,18 +113,18 @@ export class Sheet {
   /** An empty row for a new subject. Levels get their ordinal when they are first written. */
   addNew(subject: Subject): string {
     const key = keyOf(subject) ?? `new:${(this.#made += 1)}`
-    if (!this.#rows.has(key)) this.#put({ key, subject, base: null, complete: true, server: null, wanted: null, save: 'saved', problem: null, theirs: null, gone: false })
+    if (!this.#rows.has(key)) this.#put({ key, subject, base: null, complete: true, revision: null, server: null, wanted: null, save: 'saved', problem: null, theirs: null, gone: false })
     this.#tell()
     return key
   }
 
   /** All published values of a row have been read: what was typed meanwhile is carried over. */
-  completed(key: string, base: Values): void {
+  completed(key: string, base: Values, revision: number): void {
     const row = this.#rows.get(key)
     if (row === undefined || row.complete) return
     const values = row.wanted?.values ?? null
     const wanted = row.wanted === null || values === null ? row.wanted : { ...row.wanted, values: rebase(values, row.base ?? {}, base) }
-    this.patch(key, { base, complete: true, wanted })
+    this.patch(key, { base, complete: true, revision, wanted })
   }
 
   /** The changes as the server has them now. Rows with work of their own keep it; their next saving finds out about a conflict. */
@@ -141,8 +143,8 @@ export class Sheet {
       seen.add(key)
       const row = this.#rows.get(key)
       const base = (change.before as Values | null) ?? null
-      if (row === undefined) this.#put({ key, subject, base, complete: true, server: change, wanted: stateOf(change), save: 'saved', problem: null, theirs: null, gone: false })
-      else if (row.save === 'saved' && !isDirty(row)) this.#rows.set(key, { ...row, subject, base: base ?? row.base, complete: true, server: change, wanted: stateOf(change) })
+      if (row === undefined) this.#put({ key, subject, base, complete: true, revision: change.current_revision, server: change, wanted: stateOf(change), save: 'saved', problem: null, theirs: null, gone: false })
+      else if (row.save === 'saved' && !isDirty(row)) this.#rows.set(key, { ...row, subject, base: base ?? row.base, complete: true, revision: change.current_revision, server: change, wanted: stateOf(change) })
     }
     if (all) {
       for (const row of this.rows()) {
@@ -218,7 +220,7 @@ export class Sheet {
     if (row === undefined) return
     const wanted = sameState(row.wanted, sent) ? (change === null ? null : stateOf(change)) : row.wanted
     const next: SheetRow = { ...row, server: change, wanted, subject: change === null ? row.subject : subjectOf(change), problem: null, theirs: null }
-    if (change !== null) Object.assign(next, { base: (change.before as Values | null) ?? row.base, complete: true })
+    if (change !== null) Object.assign(next, { base: (change.before as Values | null) ?? row.base, complete: true, revision: change.current_revision })
     // a new level taken out again has lost its ordinal
     else if (row.base === null && row.subject.kind === 'level') next.subject = { ...row.subject, level: null }
     this.patch(key, { ...next, save: isDirty(next) ? 'waiting' : 'saved' })

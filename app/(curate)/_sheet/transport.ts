@@ -42,7 +42,10 @@ export function apiTransport(amendment: string): Transport {
       }
     },
     list: () => listChanges(amendment),
-    values: async (level) => (await apiGet<{ values: LevelValues }>(`/levels/${level}/values`)).data.values as Values,
+    values: async (level) => {
+      const { values, revision } = (await apiGet<{ values: LevelValues; revision: number }>(`/levels/${level}/values`)).data
+      return { values: values as Values, revision }
+    },
     farewell: (items, remove) => {
       const send = (method: string, path: string, body?: unknown, headers: Record<string, string> = {}) =>
         void fetch(`${API_BASE}${path}`, {

@@ -1,6 +1,8 @@
 import type { ChangeInput, Checked, PublishedTable } from '../rows'
 import { checkSteps } from './steps'
 
+export { recheckSources } from './sources'
+
 /**
  * Checks changes together against an edition: on the table as it would be with all of them, so a source, species or level that one of
  * them makes counts for the others. `table` must hold the species that the changes touch, whole (`loadPublishedTable`). Answers in the

@@ -10,7 +10,7 @@ import type { Ground, OwnChange } from './plan'
 import type { ReadFile } from './read-file'
 
 /** A change of the amendment with what a new writing of it must keep or compare. */
-export interface StoredChange extends OwnChange { comment: string | null; findings: Finding[] }
+export interface StoredChange extends OwnChange { comment: string | null; findings: Finding[]; baseRevision: number | null }
 
 /** What is imported into, and what must still be so when it is written. */
 export interface LoadedGround extends Ground { own: readonly StoredChange[]; version: number }
@@ -21,8 +21,8 @@ async function ownChanges(db: Db, amendment: string): Promise<StoredChange[]> {
   const all: StoredChange[] = []
   for (let after = -1; ;) {
     const rows = await db.select().from(amendmentChanges).where(sql`${amendmentChanges.amendmentId} = ${amendment} and ${amendmentChanges.position} > ${after}`).orderBy(amendmentChanges.position).limit(PAGE)
-    for (const { id, kind, action, subject, speciesId, given, row, reason, successor, comment, findings } of rows) {
-      all.push({ id, kind, action, subject, speciesId, given, row, reason, successor, comment, findings: findings as Finding[] })
+    for (const { id, kind, action, subject, speciesId, given, row, reason, successor, comment, findings, baseRevision } of rows) {
+      all.push({ id, kind, action, subject, speciesId, given, row, reason, successor, comment, findings: findings as Finding[], baseRevision })
     }
     const last = rows.at(-1)
     if (last === undefined || rows.length < PAGE) return all

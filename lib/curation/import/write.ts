@@ -75,7 +75,7 @@ export async function writePlan(tx: Tx, target: Target, rows: readonly PlannedRo
   const making = rows.filter((one): one is Making => one.change !== null)
   const takes = await takeOut(tx, rows)
   if (making.length === 0 && !takes) return null
-  const comments = new Map(ground.own.map(({ id, comment }) => [id, comment]))
+  const own = new Map(ground.own.map((change) => [change.id, change]))
   const names = nameNewLevels(making, target.reserved)
   const nameOf = (row: number): string => names.get(row) ?? `row ${row}`
   const total = making.length
@@ -87,12 +87,14 @@ export async function writePlan(tx: Tx, target: Target, rows: readonly PlannedRo
       const { row, change } = planned
       const { known } = change
       const subject = known?.id ?? nameOf(row)
+      const stored = known === null || known.changeId === null ? undefined : own.get(known.changeId)
       const findings = renamed(change.findings, nameOf)
       Object.assign(planned, { level: subject, findings })
       return {
         kind: 'level', action: known === null || known.published === null ? 'create' : 'replace', subject, speciesId: change.speciesId, given: change.given, row: change.row, findings,
-        reason: null, successor: null, comment: known === null || known.changeId === null ? null : (comments.get(known.changeId) ?? null),
-        baseRevision: ground.table.levels.get(subject)?.revision ?? null, importId, importRow: row,
+        reason: null, successor: null, comment: stored?.comment ?? null,
+        // a change that was there before keeps what it was made from, as with any other edit
+        baseRevision: stored === undefined ? (ground.table.levels.get(subject)?.revision ?? null) : stored.baseRevision, importId, importRow: row,
       }
     })
     await insertChanges(tx, amendment.id, author, prepared)

@@ -7,7 +7,7 @@ const AT = '2030-01-01T00:00:00.000Z'
 
 export const madeChange = (given: Partial<AmendmentChange> & { subject: string }): AmendmentChange => ({
   id: `id-${given.subject}`, amendment: 'amendment', kind: 'level', action: 'replace', species: 'Na-I', level: given.subject, values: {}, reason: null, successor: null,
-  comment: null, base_revision: 1, before: null, after: null, fields: [], findings: [], author: { id: 'one', name: 'One' }, import_row: null, version: 1, etag: '"1"',
+  comment: null, base_revision: 1, current_revision: 1, before: null, after: null, fields: [], findings: [], author: { id: 'one', name: 'One' }, import_row: null, version: 1, etag: '"1"',
   created_at: AT, updated_at: AT, ...given,
 })
 
@@ -17,6 +17,8 @@ export const refusal = (status: number, extra: Record<string, unknown> = {}): Ap
 export class FakeServer implements Transport {
   readonly changes = new Map<string, AmendmentChange>()
   readonly published = new Map<string, Values>()
+  readonly revisions = new Map<string, number>()
+  readonly items: BatchItem[] = []
   readonly calls: string[] = []
   readonly keys: string[] = []
   farewells: { items: BatchItem[]; remove: { change: string; etag: string }[] }[] = []
@@ -30,12 +32,13 @@ export class FakeServer implements Transport {
     if (fail !== null) throw fail
   }
   #stored(item: BatchItem, id: string | null): AmendmentChange {
+    this.items.push(item)
     const before = id === null ? undefined : this.changes.get(id)
     const subject = before?.subject ?? item.level ?? item.source ?? `${item.species}.${(this.#next += 1)}`
     const version = (before?.version ?? 0) + 1
     const change = madeChange({
       id: id ?? `id-${subject}`, subject, level: item.kind === 'level' ? subject : null, kind: item.kind ?? 'level', action: item.action, values: (item.values ?? null) as AmendmentChange['values'],
-      before: (this.published.get(subject) ?? null) as AmendmentChange['before'], reason: item.reason ?? null, successor: item.successor ?? null, comment: item.comment ?? null, version, etag: `"${version}"`,
+      before: (this.published.get(subject) ?? null) as AmendmentChange['before'], reason: item.reason ?? null, successor: item.successor ?? null, comment: item.comment ?? null, base_revision: item.base_revision ?? before?.base_revision ?? 1, current_revision: this.revisions.get(subject) ?? 1, version, etag: `"${version}"`,
     })
     this.changes.set(change.id, change)
     return change
@@ -76,7 +79,7 @@ export class FakeServer implements Transport {
   list = async () => [...this.changes.values()]
   values = async (level: string) => {
     this.calls.push(`values ${level}`)
-    return this.published.get(level) ?? {}
+    return { values: this.published.get(level) ?? {}, revision: this.revisions.get(level) ?? 1 }
   }
   farewell = (items: BatchItem[], remove: { change: string; etag: string }[]) => void this.farewells.push({ items, remove })
   newKey = () => `key-${(this.#made += 1)}`
