@@ -1,7 +1,7 @@
 import { randomInt } from 'node:crypto'
 import fs from 'node:fs'
 import path from 'node:path'
-import { count, eq, isNotNull, sql } from 'drizzle-orm'
+import { and, count, eq, isNotNull, sql } from 'drizzle-orm'
 import type { Db } from '@/db/client'
 import { auditEvents, users } from '@/db/schema'
 import { hashPassword } from '@/lib/access/passwords'
@@ -53,7 +53,8 @@ const withPasswords = () => Promise.all(PEOPLE.map(async (person) => {
 
 /**
  * Keeps the demo accounts as the instance is set: made once, where there is no account to sign in with and demo accounts are allowed;
- * open while they are allowed and closed while they are not. Answers the accounts just made, or null.
+ * open while they are allowed and closed while they are not, except that what a person has closed stays closed. Answers the accounts just
+ * made, or null.
  */
 export async function setDemoAccounts(db: Db, allowed: boolean): Promise<DemoAccount[] | null> {
   const made = allowed && (await isEmpty(db)) ? await withPasswords() : null
@@ -65,7 +66,9 @@ export async function setDemoAccounts(db: Db, allowed: boolean): Promise<DemoAcc
       writeAccounts(made.map(({ account }) => account))
       return made.map(({ account }) => account)
     }
-    const changed = await tx.update(users).set({ active: allowed, updatedAt: new Date() }).where(sql`${users.demo} and ${users.active} <> ${allowed}`).returning({ email: users.email })
+    const turned = allowed ? and(eq(users.active, false), eq(users.closedBySetting, true)) : eq(users.active, true)
+    const changed = await tx.update(users).set({ active: allowed, closedBySetting: !allowed, version: sql`${users.version} + 1`, updatedAt: new Date() })
+      .where(and(eq(users.demo, true), turned)).returning({ email: users.email })
     if (changed.length > 0) await tx.insert(auditEvents).values({ action: allowed ? 'user.open' : 'user.close', subjectKind: 'demo accounts', after: changed })
     return null
   })

@@ -79,7 +79,9 @@ export async function changePerson(db: Db, acting: Acting, id: string, given: Pe
     if (changed.length === 0) return readPerson(tx, id)
     const isAdmin = (one: typeof before): boolean => one.role === 'admin' && one.active
     if (isAdmin(before) && !isAdmin(after) && user.passwordHash !== null) await keepOneAdmin(tx, id)
-    await tx.update(users).set({ ...after, version: user.version + 1, updatedAt: new Date() }).where(eq(users.id, id))
+    // what a person opens or closes is no business of the setting any more
+    const mark = changed.includes('active') ? { closedBySetting: false } : {}
+    await tx.update(users).set({ ...after, ...mark, version: user.version + 1, updatedAt: new Date() }).where(eq(users.id, id))
     const closed = before.active && !after.active
     const lowered = before.role === 'admin' && !atLeast(after.role, 'admin')
     const ended = closed || lowered ? await endSpeakingFor(tx, id, closed) : {}

@@ -32,7 +32,7 @@ async function environment() {
   return env
 }
 
-const makeKey = async (env, role = 'reader') => (await node(['--import', 'tsx', 'lib/access/cli/key.ts', '--role', role, '--name', 'bench'], { env, capture: true })).match(/ldt_\S+/)[0]
+const makeKey = async (env, role = 'reader') => (await node(['--import', 'tsx', 'lib/access/cli/key.ts', '--role', role, '--name', 'bench', ...(role === 'reader' ? [] : ['--owner', `${role}@lodeterm.example`])], { env, capture: true })).match(/ldt_\S+/)[0]
 
 /** The three route handlers that are compared live in a small application of their own: a bare one has no place in the product. */
 async function serveRoutes(env) {

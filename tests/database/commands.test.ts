@@ -55,17 +55,20 @@ describe('with nothing but the address of a database', () => {
 
 describe('npm run key', () => {
   it('makes a key, prints it once, and keeps only its SHA-256', async () => {
-    const { code, out } = typescript('lib/access/cli/key.ts', ['--role', 'curator', '--name', 'nightly fit', '--expires', '2100-01-01T00:00:00Z'])
+    const { code, out } = typescript('lib/access/cli/key.ts', ['--role', 'reader', '--name', 'nightly fit', '--expires', '2100-01-01T00:00:00Z'])
     expect(code).toBe(0)
     expect(out).toMatch(/^ldt_[0-9A-Za-z]+$/)
     const { rows } = await db.query("select name, role, sha256, expires_at from api_keys where name = 'nightly fit'")
-    expect(rows).toEqual([{ name: 'nightly fit', role: 'curator', sha256: createHash('sha256').update(out).digest(), expires_at: new Date('2100-01-01T00:00:00Z') }])
+    expect(rows).toEqual([{ name: 'nightly fit', role: 'reader', sha256: createHash('sha256').update(out).digest(), expires_at: new Date('2100-01-01T00:00:00Z') }])
   })
 
   it('says what is wrong, all of it, and makes none', async () => {
     const { code, out, said } = typescript('lib/access/cli/key.ts', ['--role', 'owner', '--expires', 'soon'])
     expect([code, out]).toEqual([2, ''])
     for (const flag of ['--role', '--name', '--expires']) expect(said).toContain(flag)
+    const nobody = typescript('lib/access/cli/key.ts', ['--role', 'curator', '--name', 'desk'])
+    expect([nobody.code, nobody.out]).toEqual([2, ''])
+    expect(nobody.said).toContain('--owner')
     expect((await db.query('select count(*)::int as n from api_keys')).rows).toEqual([{ n: 1 }])
   })
 })
@@ -108,11 +111,36 @@ describe('demo accounts', () => {
     expect(await verifyPassword(admin.password_hash, /admin@\S+\s+(\S+)/.exec(out)?.[1] ?? '')).toBe(true)
   })
 
+  it('own the keys that speak for them, none above its owner', async () => {
+    const key = (role: string, owner: string) => typescript('lib/access/cli/key.ts', ['--role', role, '--name', `of ${owner}`, '--owner', owner])
+    expect(key('curator', 'Curator@lodeterm.example')).toMatchObject({ code: 0 })
+    const { rows } = await db.query("select u.email, k.role from api_keys k join users u on u.id = k.user_id where k.name = 'of Curator@lodeterm.example'")
+    expect(rows).toEqual([{ email: 'curator@lodeterm.example', role: 'curator' }])
+    for (const [role, owner] of [['admin', 'curator@lodeterm.example'], ['curator', 'nobody@lodeterm.example'], ['reader', 'command-line@localhost.invalid']] as const) {
+      const refused = key(role, owner)
+      expect([refused.code, refused.out]).toEqual([2, ''])
+      expect(refused.said).toContain(`--owner: `)
+    }
+  })
+
   it('are closed as soon as the instance leaves loopback, and open again with DEMO=1', async () => {
     const open = async () => (await people()).map(({ active }) => active)
     typescript('seeds/run.ts', [], { HOST: '0.0.0.0' })
     expect(await open()).toEqual([false, false, false, false])
     typescript('seeds/run.ts', [], { HOST: '0.0.0.0', DEMO: '1' })
     expect(await open()).toEqual([true, true, true, true])
+  })
+
+  it('stay closed where a person closed them, and rise in version where the setting turns them', async () => {
+    const read = async () => (await db.query("select email, active, closed_by_setting as marked, version from users where demo and role <> 'reader' order by email")).rows
+    await db.query("update users set active = false, version = version + 1 where email = 'admin@lodeterm.example'")
+    const before = await read()
+    typescript('seeds/run.ts', [], { HOST: '0.0.0.0' })
+    expect((await read()).map(({ active, marked }) => [active, marked])).toEqual([[false, false], [false, true], [false, true]])
+    typescript('seeds/run.ts')
+    const after = await read()
+    expect(after.map(({ active, marked }) => [active, marked])).toEqual([[false, false], [true, false], [true, false]])
+    expect(after.map(({ version }, at) => version - before[at].version)).toEqual([0, 2, 2])
+    expect(typescript('lib/access/cli/key.ts', ['--role', 'admin', '--name', 'x', '--owner', 'admin@lodeterm.example'])).toMatchObject({ code: 2, out: '' })
   })
 })
