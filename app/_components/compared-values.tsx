@@ -47,7 +47,7 @@ export function ComparedValues({ fields, onlyAfter = false }: { fields: readonly
   const shown = fields.filter(({ field, after }) => tells(field) && !(onlyAfter && (after === null || after === false)))
   if (shown.length === 0) return <span className="text-muted">{fields.length === 0 ? 'nothing differs' : 'only values that follow from others'}</span>
   return (
-    <dl className="grid min-w-60 max-w-[46rem] gap-y-0.5 [&_a]:inline-flex [&_a]:min-h-6 [&_a]:items-center">
+    <dl className="grid min-w-52 max-w-[46rem] gap-y-0.5 [&_a]:inline-flex [&_a]:min-h-6 [&_a]:items-center">
       {shown.map(({ field, before, after }) => (
         <div key={field} className="grid gap-x-4 sm:grid-cols-[11rem_minmax(0,1fr)]">
           <dt className="text-muted">{fieldWords(field)}</dt>

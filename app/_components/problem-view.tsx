@@ -5,6 +5,8 @@ const SAFE = 'Nothing in the table was changed.'
 /** What a reader can do about each kind of refusal. */
 function advice(problem: ProblemDocument): string {
   if (problem.code === 'edition_unknown') return 'Let the edition in the address go, or choose one of those published.'
+  if (problem.code === 'invitation_unusable') return 'Ask the admin who invited you for a new invitation.'
+  if (problem.code === 'reset_unusable') return 'Ask for a new link on the page of forgotten passwords.'
   switch (problem.status) {
     case 0: return 'Check the connection and whether the server is running, then try again.'
     case 400: return 'Correct what is named below and ask again.'

@@ -17,7 +17,7 @@ export const importLevels = defineOperation({
   description: [
     'Takes a file as an export gives it, or any other table with a mapping of its headers. Every row is matched with the level that it is about, checked together with all others, and written as a change of the amendment; a file with any row in error, or that could be about several levels, changes nothing.',
     'Rows are matched by the column `id`, else by species, configuration, label, term, J and repeat index, else by species, term, J and parity with nearly the same energy or the same configuration.',
-    'A column that the file does not have leaves its values as they are; an empty cell empties its value. Of several measured g_J of a level a file shows one: it is replaced where the row says another, and the others stay.',
+    'A column that the file does not have leaves its values as they are, except that printed digits go where the energy beside them changes; an empty cell empties its value. A column `revision`, as an export has it, keeps a row that is older than the table from putting back what was corrected since. Of several measured g_J of a level a file shows one: it is replaced where the row says another, and the others stay.',
     'Rows that say what the table or the amendment has already change nothing, so a file may be imported again and again.',
   ].join('\n\n'),
   tag: 'Import',

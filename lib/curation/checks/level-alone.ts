@@ -88,7 +88,10 @@ function checkDigits(findings: Findings, parts: LevelParts): void {
   if (energyInvcm !== null && energyUncInvcm !== null && beyond(digits(energyLiteral, energyInvcm), energyUncInvcm)) {
     findings.warning('digits_beyond_uncertainty', energyLiteral === null ? 'energy_invcm' : 'energy_literal', `The energy is written with digits far below its uncertainty of ${energyUncInvcm} cm^-1: they tell nothing, or the uncertainty is wrong.`)
   }
+  // the ground level's energy is exact, and nothing else is
+  if (energyUncInvcm === 0 && energyInvcm !== 0) findings.warning('uncertainty_zero', 'energy_unc_invcm', 'An uncertainty of zero says that the energy is exact: leave it out where it is not known.')
   measured?.forEach(({ value, unc, literal }, at) => {
+    if (unc === 0) findings.warning('uncertainty_zero', gField(parts, at), 'An uncertainty of zero says that the measured g_J is exact: leave it out where it is not known.')
     if (unc !== null && beyond(digits(literal, value), unc)) {
       findings.warning('digits_beyond_uncertainty', gField(parts, at), `The measured g_J is written with digits far below its uncertainty of ${unc}: they tell nothing, or the uncertainty is wrong.`)
     }

@@ -1,7 +1,7 @@
 import type { LevelValues } from '@/openapi/schemas/change'
 import type { AnyRow, ChangeInput, Checked, HyperfineRow, IsotopeRow, LevelRow, PublishedTable, SpeciesRow } from '../rows'
 import { publishedIn } from '../subjects'
-import { atomOf, Findings, readHyperfine, readIsotope, readLevelValues, readSource, readSpecies } from '../values'
+import { atomOf, differences, Findings, readHyperfine, readIsotope, readLevelValues, readSource, readSpecies } from '../values'
 import { checkDropped } from './dropped'
 import { checkLevelAlone } from './level-alone'
 import { checkAbundances, checkHyperfine, checkIsotope, checkJOfHyperfine } from './nuclei'
@@ -23,6 +23,12 @@ function checkPresence(work: Work): void {
   }
 }
 
+/** A change that changes nothing would make a revision without a difference. */
+function checkDifference({ change, findings, published }: Work, row: AnyRow | null): void {
+  if (change.action !== 'replace' || published === undefined || row === null || differences(change.kind, published.row, row).length > 0) return
+  findings.error('no_difference', null, 'The values are those that the table has already: change one, or take the change out.')
+}
+
 function readOther(work: Work): AnyRow | null {
   const { change } = work
   const findings = new Findings()
@@ -33,6 +39,7 @@ function readOther(work: Work): AnyRow | null {
   }
   const row = read()
   work.findings.list.push(...findings.list)
+  checkDifference(work, row)
   return row
 }
 
@@ -52,6 +59,7 @@ function readLevel(union: Union, work: Work): void {
   work.row = read.row
   checkLevelAlone(findings, read.parts, atom, before)
   if (before !== null && read.row !== null) checkDropped(findings, before, read.row)
+  if (before?.status === 'active') checkDifference(work, read.row)
 }
 
 function begin(table: PublishedTable, changes: readonly ChangeInput[]): Union {

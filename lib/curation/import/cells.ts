@@ -25,7 +25,7 @@ export interface Reader {
 export function readerOf(layout: Layout, decimal: Decimal): Reader {
   const places = new Map(layout.columns.flatMap((column, i): [string, number][] => (column === null ? [] : [[column.name, i]])))
   return {
-    layout, decimal, places, has: (name) => places.has(name) || layout.defaults.has(name), controlled: layout.columns.some((column) => column?.use === 'control'), remembered: new Map(),
+    layout, decimal, places, has: (name) => places.has(name) || layout.defaults.has(name), controlled: layout.columns.some((column) => column?.use === 'control' && column.name !== 'revision'), remembered: new Map(),
   }
 }
 

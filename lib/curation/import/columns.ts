@@ -65,7 +65,7 @@ export const COLUMNS: readonly OwnColumn[] = [
   text('alternative_name', 'A second name in use, such as 1s5 of Paschen.', { words: ['paschen', 'paschen name', 'designation', 'name'] }),
   text('note', 'Note.', { words: ['notes', 'remark', 'remarks', 'comment', 'comments'] }),
   text('status', 'active or retired: must agree with the table; a level is retired by a change of its own, with a reason.', control),
-  number('revision', 'Number of the revision.', computed),
+  number('revision', 'Revision of the level that the row was made from: one that is older than the table is refused where the row says otherwise.', control),
 ]
 
 const byName = new Map(COLUMNS.map((one) => [one.name, one]))

@@ -34,9 +34,24 @@ export function suggestionFor(header: string): string | null {
   return begins?.name ?? (words.length < 4 ? null : nearest(words.replaceAll(' ', '_'), names))
 }
 
+const LEVEL = /^[A-Z][a-z]?-[IVXLC]+\.[1-9][0-9]{0,6}$/
+/** A column whose cells are all identifiers of levels is one, whatever it is called. */
+const holdsLevels = (cells: readonly string[]): boolean => cells.length > 0 && cells.every((cell) => LEVEL.test(cell.trim()))
+
+/** No two headers are guessed to be the same column, nor one that is there already: the first keeps it. */
+function distinct(shown: readonly ImportReading['columns'][number][]): ImportReading['columns'] {
+  const taken = new Set(shown.flatMap(({ field }) => (field === null ? [] : [field])))
+  return shown.map((one) => {
+    if (one.suggestion === null) return one
+    if (taken.has(one.suggestion)) return { ...one, suggestion: null }
+    taken.add(one.suggestion)
+    return one
+  })
+}
+
 const shorten = (text: string): string => (text.length > SAMPLE_LENGTH ? `${text.slice(0, SAMPLE_LENGTH - 3)}...` : text).toWellFormed()
 
-function columnOf(header: string, mapping: Mapping, problems: ImportProblem[]): Omit<ImportReading['columns'][number], 'header' | 'sample'> {
+function columnOf(header: string, cells: readonly string[], mapping: Mapping, problems: ImportProblem[]): Omit<ImportReading['columns'][number], 'header' | 'sample'> {
   const told = Object.hasOwn(mapping, header) ? mapping[header] : undefined
   if (told === null) return { field: null, suggestion: null, note: 'Left out, as the mapping says.' }
   const name = told ?? header.trim().toLowerCase()
@@ -48,7 +63,7 @@ function columnOf(header: string, mapping: Mapping, problems: ImportProblem[]): 
     return { field: null, suggestion: suggestionFor(header), note: null }
   }
   if (header.trim() === '') return { field: null, suggestion: null, note: 'It has no name: its cells must be empty.' }
-  const suggestion = suggestionFor(header)
+  const suggestion = holdsLevels(cells) ? 'id' : suggestionFor(header)
   problems.push({ code: 'column_unknown', detail: `${quoted(header)} is no column of ours${suggestion === null ? '' : `; it may be ${suggestion}`}. Say by the mapping which one it is, or null to leave it out.`, column: header })
   return { field: null, suggestion, note: null }
 }
@@ -91,8 +106,9 @@ export function layoutOf(header: readonly string[], samples: readonly (readonly 
   for (const name of Object.keys(mapping)) {
     if (!header.includes(name)) problems.push({ code: 'mapping_unknown', detail: `The mapping speaks of ${quoted(name)}, and the file has no such header.`, column: name.slice(0, 200) })
   }
-  const shown = header.map((name, i): ImportReading['columns'][number] => ({
-    header: shorten(name), ...columnOf(name, mapping, problems), sample: samples.slice(0, SAMPLES).map((cells) => shorten(cells[i] ?? '')),
+  const shown = distinct(header.map((name, i): ImportReading['columns'][number] => {
+    const cells = samples.slice(0, SAMPLES).map((row) => row[i] ?? '')
+    return { header: shorten(name), ...columnOf(name, cells, mapping, problems), sample: cells.map(shorten) }
   }))
   problems.push(...twice(header, shown))
   const present = new Set(shown.flatMap(({ field }) => (field === null ? [] : [field])))

@@ -17,7 +17,7 @@ const ENERGY = ['energy_invcm', 'energy_literal'].map(named)
 const MEASURED = ['g_j_measured', 'g_j_measured_unc', 'g_source', 'g_evidence'].map(named)
 const OUTER = [named('l_outer')]
 /** Say again what the rest of the row says. */
-const CONTROLS = COLUMNS.filter((one) => one.use === 'control')
+const CONTROLS = COLUMNS.filter((one) => one.use === 'control' && one.name !== 'revision')
 
 function named(name: string): OwnColumn {
   const column = ownColumn(name)
@@ -112,6 +112,13 @@ export function valuesOf(cells: RowCells, base: LevelRow | null): RowValues {
   if (changed(ENERGY)) Object.assign(values, energyOf(cells, base === null ? null : values))
   if (changed(MEASURED)) values.measured_g = measuredOf(cells, base)
   return { values, faults }
+}
+
+/** A row that was exported before the level was last published would put back what has been corrected since. */
+export function olderRevision(cells: RowCells, level: string, inForce: number | null): Finding[] {
+  const from = readNumber(cells.text('revision') ?? '')
+  if (from === null || inForce === null || from >= inForce) return []
+  return [fault('base_stale', 'revision', `The row comes from revision ${from} of ${level}, and the table has revision ${inForce}: export it again and make the change there, or leave the column revision out.`)]
 }
 
 /** Columns that say again what others say, and do not agree with what was read. */

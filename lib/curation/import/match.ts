@@ -14,6 +14,8 @@ export interface KnownLevel {
   row: LevelRow | null
   /** As the newest edition has it; null for one that the amendment creates. */
   published: LevelRow | null
+  /** Revision that the newest edition has of it. */
+  revision: number | null
   /** The amendment's own change of it. */
   changeId: string | null
   /** The amendment retires it. */

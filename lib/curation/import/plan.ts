@@ -5,7 +5,7 @@ import { checkChangesInSteps } from '../checks'
 import type { ChangeInput, LevelRow, PublishedTable, SpeciesRow } from '../rows'
 import { type Atom, atomOf, differences, readLevelValues } from '../values'
 import { fault, type Reader, RowCells } from './cells'
-import { contradictions, saysTheSame, valuesOf } from './level-values'
+import { contradictions, olderRevision, saysTheSame, valuesOf } from './level-values'
 import { ambiguity, type KnownLevel, Matcher, type Named, namedBy, namingRow } from './match'
 import type { ReadFile } from './read-file'
 
@@ -58,12 +58,13 @@ function speciesOf({ table, own }: Ground): Map<string, SpeciesRow> {
 function knownLevels({ table, own }: Ground): Map<string, KnownLevel> {
   const known = new Map<string, KnownLevel>()
   const speciesOfLevel = (id: string): string => id.slice(0, id.indexOf('.'))
-  for (const [id, { row }] of table.levels) known.set(id, { id, species: speciesOfLevel(id), row, published: row, changeId: null, retiring: false })
+  for (const [id, { row, revision }] of table.levels) known.set(id, { id, species: speciesOfLevel(id), row, published: row, revision, changeId: null, retiring: false })
   for (const change of own) {
     if (change.kind !== 'level') continue
-    const published = table.levels.get(change.subject)?.row ?? null
+    const inForce = table.levels.get(change.subject)
+    const published = inForce?.row ?? null
     known.set(change.subject, {
-      id: change.subject, species: speciesOfLevel(change.subject), published, changeId: change.id,
+      id: change.subject, species: speciesOfLevel(change.subject), published, revision: inForce?.revision ?? null, changeId: change.id,
       row: change.action === 'retire' ? published : (change.row as LevelRow | null), retiring: change.action === 'retire',
     })
   }
@@ -100,6 +101,8 @@ function aboutLevel(setting: Setting, row: number, cells: RowCells, level: Known
   if (readRow !== null && level.published !== null && differences('level', level.published, readRow).length === 0) {
     return { ...planned, verdict: 'changed', fields: level.row === null ? NONE : differences('level', level.row, readRow), takeOut: level.changeId }
   }
+  const older = olderRevision(cells, level.id, level.revision)
+  if (older.length > 0) return plannedError(row, older, level.id)
   return { ...planned, verdict: 'changed', change: { subject: level.id, speciesId: level.species, known: level, given: values, row: null, findings: [] } }
 }
 

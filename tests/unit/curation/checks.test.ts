@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { checkChanges, checkChangesInSteps } from '@/lib/curation/checks'
 import type { ChangeInput } from '@/lib/curation/rows'
-import { writeLevelValues } from '@/lib/curation/values'
+import { writeLevelValues, writeValues } from '@/lib/curation/values'
 import type { LevelValues } from '@/openapi/schemas/change'
 import { change, smallTable, values } from './table'
 
@@ -19,7 +19,7 @@ const MADE = values('6s', '2S1/2', 36372.62)
 
 describe('what is right', () => {
   it('has no findings', () => {
-    for (const id of table.levels.keys()) if (table.levels.get(id)?.row.status === 'active') expect(found(replaced(id, {})), id).toEqual([])
+    for (const id of table.levels.keys()) if (table.levels.get(id)?.row.status === 'active') expect(found(replaced(id, { note: 'looked at again' })), id).toEqual([])
     expect(found(change.create('Na-I.6', MADE))).toEqual([])
     expect(found(change.create('Fe-I.9', values('3d6(5D)4s4p(3P)', 'z7D*5', 19350.89)))).toEqual([])
     expect(found(change.create('Ne-I.9', values('2p5.(2P*1/2).3s', '(1/2,1/2)*1', 135888.7, { coupling: 'jj', core: '2P*1/2', l_outer: 0 })))).toEqual([])
@@ -28,7 +28,14 @@ describe('what is right', () => {
     expect(found(change.source('other', { citation: 'B. (1999)', kind: 'book', year: '1999', doi: 'https://doi.org/10.1000/xyz' }))).toEqual([])
     expect(found(change.isotope('Na-I/23', { mass_u: 22.98976928, nuclear_spin: 1.5, abundance_percent: 100, source: 'paper', evidence: 'read' }))).toEqual([])
     expect(found(change.hyperfine('Na-I.2/23', { a_mhz: 94.44, source: 'paper', evidence: 'read' }, 'create'))).toEqual([])
-    expect(found(change.species('Na-I', { name: 'sodium', core_configuration: '1s22s22p6', ionisation_energy_invcm: '41449.451', ionisation_source: 'paper', ionisation_evidence: 'read' }))).toEqual([])
+    expect(found(change.species('Na-I', { name: 'sodium', core_configuration: '1s22s22p6', ionisation_energy_invcm: '41449.451', ionisation_source: 'paper', ionisation_evidence: 'read', note: 'looked at again' }))).toEqual([])
+  })
+})
+
+describe('a change that changes nothing', () => {
+  it('is an error: an edition would hold a revision without a difference', () => {
+    for (const id of table.levels.keys()) if (table.levels.get(id)?.row.status === 'active') expect(found(replaced(id, {})), id).toEqual(['error no_difference -'])
+    expect(found(change.source('paper', { ...writeValues('source', table.sources.get('paper')!.row) }, 'replace'))).toEqual(['error no_difference -'])
   })
 })
 
@@ -167,7 +174,7 @@ describe('warnings', () => {
 
   it('of an energy above the ionisation energy', () => {
     expect(found(change.create('Na-I.6', { ...MADE, energy_invcm: 50000 }))).toEqual(['warning energy_above_ionisation energy_invcm'])
-    expect(found(change.species('Na-I', { name: 'sodium', core_configuration: '1s2.2s2.2p6', ionisation_energy_invcm: 20000, ionisation_source: 'paper', ionisation_evidence: 'read' }))).toEqual(['warning energy_above_ionisation ionisation_energy_invcm'])
+    expect(found(change.species('Na-I', { name: 'sodium', core_configuration: '1s2.2s2.2p6', ionisation_energy_invcm: 20000, ionisation_source: 'paper', ionisation_evidence: 'read', note: 'looked at again' }))).toEqual(['warning energy_above_ionisation ionisation_energy_invcm'])
   })
 
   it('of an energy that moves by more than three standard deviations, or 0.001 cm^-1 where none is known', () => {
@@ -189,6 +196,11 @@ describe('warnings', () => {
     expect(found(replaced('Na-I.3', { energy_literal: '16973.37000', energy_unc_invcm: 0.01 }))).toEqual(['warning digits_beyond_uncertainty energy_literal'])
     expect(found(replaced('Na-I.3', { energy_literal: '16973.370', energy_unc_invcm: 0.012 }))).toEqual([])
     expect(found(change.create('Na-I.6', { ...MADE, energy_invcm: 36372.61839, energy_unc_invcm: 0.1 }))).toEqual(['warning digits_beyond_uncertainty energy_invcm'])
+  })
+
+  it('of an uncertainty of zero, which nothing measured has', () => {
+    expect(found(replaced('Na-I.3', { energy_unc_invcm: 0 }))).toEqual(['warning uncertainty_zero energy_unc_invcm'])
+    expect(found(replaced('Na-I.1', { energy_unc_invcm: 0 }))).toEqual([])
   })
 
   it('of a species without a level at zero', () => {

@@ -98,8 +98,14 @@ describe('headers', () => {
     const header = ['id', 'g_j', 'g_j_coupled_exact', 'multiplicity', 'revision', 'note', '']
     const { shown, problems } = layoutOf(header, [], {}, {})
     expect(problems).toEqual([])
-    expect(shown.map((one) => one.field)).toEqual(['id', null, null, 'multiplicity', null, 'note', null])
+    expect(shown.map((one) => one.field)).toEqual(['id', null, null, 'multiplicity', 'revision', 'note', null])
     expect(shown[1]?.note).toContain('computes')
+  })
+
+  it('are guessed from their cells too, and no two as the same column', () => {
+    const { shown, problems } = layoutOf(['Level', 'E (1/cm)', 'Energy', 'Remark'], [['Na-I.4', '1', '2', 'x'], ['Na-I.6', '3', '4', 'y']], {}, {})
+    expect(shown.map((one) => one.suggestion)).toEqual(['id', 'energy_invcm', null, 'note'])
+    expect(problems.map((one) => one.code)).toEqual(['column_unknown', 'column_unknown', 'column_unknown', 'column_unknown'])
   })
 
   it('without a decimal mark that is clear are asked about it', async () => {

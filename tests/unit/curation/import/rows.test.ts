@@ -106,6 +106,16 @@ describe('a row', () => {
     expect(emptied.change?.row?.measured).toEqual([other])
   })
 
+  it('from an older revision puts nothing back that was corrected since', async () => {
+    const table = { ...TABLE, levels: new Map([['Na-I.3', { revision: 2, row: TABLE.levels.get('Na-I.3')?.row as LevelRow }]]) }
+    const ground = { table, own: [] }
+    expect(codes(await one('id,note,revision\nNa-I.3,old,1\n', ground))).toEqual(['base_stale revision'])
+    expect((await one('id,note,revision\nNa-I.3,new,2\n', ground)).verdict).toBe('changed')
+    expect((await one('id,note\nNa-I.3,new\n', ground)).verdict).toBe('changed')
+    // where it says what the table says, nothing would be put back
+    expect((await one(`id,g_j_measured,revision\nNa-I.3,${TABLE.levels.get('Na-I.3')?.row.measured[0]?.value},1\n`, ground)).verdict).toBe('same')
+  })
+
   it('with an energy alone drops printed digits that no longer agree', async () => {
     const table = { ...TABLE, levels: new Map([['Na-I.3', { revision: 1, row: { ...(TABLE.levels.get('Na-I.3')?.row as LevelRow), energyLiteral: '16973.36619' } }]]) }
     expect((await one('id,energy_invcm\nNa-I.3,16973.37\n', { table, own: [] })).change?.row).toMatchObject({ energyInvcm: 16973.37, energyLiteral: null })
