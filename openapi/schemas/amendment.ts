@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { oneLine } from '@/openapi/core/one-line'
 import { Person } from './change'
 import { Instant } from './session'
 
@@ -38,7 +39,7 @@ export const AmendmentDetail = Amendment.extend({
 }).meta({ id: 'AmendmentDetail' })
 export type AmendmentDetail = z.infer<typeof AmendmentDetail>
 
-const title = z.string().trim().min(1).max(200)
+const title = oneLine()
 const note = z.string().max(10_000)
 
 export const NewAmendment = z.strictObject({ title, note: note.optional() }).meta({ id: 'NewAmendment', example: { title: 'Energies of Zn I from the 2019 comb work', note: '' } })

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { oneLine } from '@/openapi/core/one-line'
 import { ChangeAction, ChangeKind, FieldDifference, Person } from './change'
 import { LevelId, SpeciesId } from './common'
 import { Instant } from './session'
@@ -125,7 +126,7 @@ export type NextEdition = z.infer<typeof NextEdition>
 
 export const NewEdition = z
   .strictObject({
-    label: z.string().trim().min(1).max(200),
+    label: oneLine(),
     notes: z.string().trim().max(20_000).optional().meta({ description: 'Those that GET /editions/next suggests where they are left out.' }),
     amendments: z.array(z.strictObject({ id: z.uuid(), version: z.int().min(1) })).min(1).max(1000).optional().meta({ description: 'What was seen: where other amendments, or other versions of them, are accepted by now, nothing is published.' }),
   })

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { oneLine } from '@/openapi/core/one-line'
 import { Instant, RoleName } from './session'
 
 const KEY = {
@@ -25,7 +26,7 @@ export type NewKey = z.infer<typeof NewKey>
 
 export const NewKeyRequest = z
   .strictObject({
-    name: z.string().trim().min(1).max(200),
+    name: oneLine(),
     role: RoleName.optional().meta({ description: 'Your own role or a lower one; default your own.' }),
     expires_at: Instant.nullish().meta({ description: 'When the key ends; null for never.' }),
   })

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { oneLine } from '@/openapi/core/one-line'
 import { Person } from './change'
 import { LEVEL_ID, SPECIES_ID, TRANSITION_ID } from './common'
 import { Instant } from './session'
@@ -40,7 +41,7 @@ export const NewWebhookAnswer = z
   .meta({ id: 'NewWebhookAnswer' })
 export type NewWebhookAnswer = z.infer<typeof NewWebhookAnswer>
 
-const name = z.string().trim().min(1).max(200)
+const name = oneLine()
 const url = z.string().trim().min(1).max(2000).meta({ description: 'http or https, without name and password; it must resolve to public addresses only, unless the server is set to allow others.' })
 const events = z.array(WebhookEvent).min(1).max(WebhookEvent.options.length)
 

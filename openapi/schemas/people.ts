@@ -1,10 +1,11 @@
 import { z } from 'zod'
+import { oneLine } from '@/openapi/core/one-line'
 import { Person } from './change'
 import { Instant, RoleName } from './session'
 
 const etag = z.string().meta({ description: 'For If-Match.' })
 const Email = z.email().max(320)
-const name = z.string().trim().min(1).max(200)
+const name = oneLine()
 const password = z.string().min(1).max(1000).meta({ description: '8 to 128 characters, no rules of composition, not a common one.' })
 const token = z.string().min(1).max(200).meta({ description: 'Out of the link in the mail.' })
 /** Invented, for examples. */
