@@ -3,6 +3,7 @@ import type { Db, Tx } from '@/db/client'
 import { knownCaller } from '@/lib/access/accounts'
 import { type Acting, recordAudit } from '@/lib/access/audit'
 import { shared } from '@/lib/access/shared'
+import { lostStanding } from '@/lib/access/standing'
 import { Problem } from '@/lib/problem'
 import type { ImportUpload } from '@/openapi/schemas/import'
 import { lockForEdit } from '../editing'
@@ -29,7 +30,10 @@ class Stopped extends Error {}
 /** Amendment or edition are not as they were when the rows were checked. */
 class GroundMoved extends Error {}
 
-interface Job { db: Db; acting: Acting; id: string; amendment: string; bytes: Buffer; upload: ImportUpload; dryRun: boolean; reserved: Reserved }
+/** Is told of an import that failed as none should, for the log. */
+export type Unforeseen = (id: string, error: unknown) => void
+
+interface Job { db: Db; acting: Acting; id: string; amendment: string; bytes: Buffer; upload: ImportUpload; dryRun: boolean; reserved: Reserved; unforeseen: Unforeseen }
 
 /** How far a job is, told to the database at every beat and not oftener. */
 class Progress {
@@ -88,12 +92,19 @@ async function conclude(tx: Tx, job: Job, end: End, rows: readonly PlannedRow[],
   if (!(await endImport(tx, job.id, end))) throw new Stopped()
 }
 
+/** An import takes minutes: who began it may have been closed, lowered or lost the key meanwhile. */
+async function requireStanding(tx: Tx, job: Job, hold: boolean): Promise<void> {
+  const lost = await lostStanding(tx, job.acting.caller, 'curator', hold)
+  if (lost !== null) throw refused('standing_lost', lost)
+}
+
 /** Writes the changes, if the amendment and the edition are as they were when these were checked. */
 async function commit(job: Job, ground: LoadedGround, rows: readonly PlannedRow[], others: Awaited<ReturnType<typeof checkPlan>>, end: End, steps: Steps): Promise<void> {
   await reserveFor(job.db, rows, job.reserved)
   await job.db.transaction(async (tx) => {
     const amendment = await lockForEdit(tx, job.amendment)
     if (amendment.version !== ground.version || (await newestEdition(tx)) !== ground.table.edition) throw new GroundMoved()
+    await requireStanding(tx, job, false)
     const written = await writePlan(tx, { amendment, author: knownCaller(job.acting.caller).userId, importId: job.id, ground, reserved: job.reserved, others }, rows, steps)
     if (written !== null) {
       await recordAudit(tx, job.acting, {
@@ -103,6 +114,8 @@ async function commit(job: Job, ground: LoadedGround, rows: readonly PlannedRow[
     }
     collectAfter(rows.length)
     await conclude(tx, job, end, rows, steps)
+    // held only now: whoever closes the account should not wait for all the rows
+    await requireStanding(tx, job, true)
   })
 }
 
@@ -152,7 +165,8 @@ async function run(job: Job): Promise<void> {
     const end: End = { state: refusal === null ? 'failed' : 'refused', reading: unreadable?.reading ?? null, rowsTotal: unreadable?.rowsTotal ?? 0, counts: noCounts(), problems: refusal ?? [] }
     if (refusal !== null) await endImport(job.db, job.id, end)
     else {
-      await endImport(job.db, job.id, end).catch(() => false)
+      job.unforeseen(job.id, error)
+      await endImport(job.db, job.id, end).catch((failure: unknown) => job.unforeseen(job.id, failure))
       throw error
     }
   } finally {
@@ -179,13 +193,13 @@ async function inTurn(act: () => Promise<void>): Promise<void> {
 const sha256 = (bytes: Buffer): string => createHash('sha256').update(bytes).digest('hex')
 
 /** Begins an import. `finished` is settled when it has ended; it ends all the same when nobody waits for it. */
-export async function startImport(db: Db, acting: Acting, amendment: string, upload: ImportUpload, dryRun: boolean): Promise<{ id: string; finished: Promise<void> }> {
+export async function startImport(db: Db, acting: Acting, amendment: string, upload: ImportUpload, dryRun: boolean, unforeseen: Unforeseen): Promise<{ id: string; finished: Promise<void> }> {
   const { file } = upload
   if (queue().waiting > MOST_WAITING) throw new Problem('imports_waiting', 'Several imports are waiting for their turn already; send it again in a while.', { headers: { 'retry-after': '15' } })
   const id = await db.transaction(async (tx) => {
     await lockForEdit(tx, amendment)
     return beginImport(tx, { amendment, author: knownCaller(acting.caller).userId, fileName: file.name === '' ? 'table' : file.name, sha256: sha256(file.bytes), bytes: file.bytes.byteLength, dryRun })
   })
-  return { id, finished: run({ db, acting, id, amendment, bytes: file.bytes, upload, dryRun, reserved: new Map() }) }
+  return { id, finished: run({ db, acting, id, amendment, bytes: file.bytes, upload, dryRun, reserved: new Map(), unforeseen }) }
 }
 
