@@ -1,6 +1,7 @@
 import type { Db } from '@/db/client'
 import type { NextEdition } from '@/openapi/schemas/edition'
 import { editionNotes } from './edition-notes'
+import { findParties } from './conflict-parties'
 import { type Accepted, type AcceptedChange, checkUnion, conflictsOf, readAccepted } from './publish-accepted'
 import type { Checked } from './rows'
 import { publishedIn } from './subjects'
@@ -36,6 +37,6 @@ export async function previewNextEdition(db: Db): Promise<NextEdition> {
     notes: accepted.changes.length === 0 ? '' : suggestedNotes(accepted, checked),
     amendments: accepted.amendments,
     counts: countChanges(accepted.changes),
-    conflicts: conflictsOf(accepted, checked).slice(0, MOST_CONFLICTS),
+    conflicts: conflictsOf(accepted, checked, await findParties(accepted, checked)).slice(0, MOST_CONFLICTS),
   }
 }

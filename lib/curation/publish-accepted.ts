@@ -3,6 +3,8 @@ import type { Tx } from '@/db/client'
 import type { ChangeAction, ChangeKind } from '@/openapi/schemas/change'
 import type { PublicationConflict } from '@/openapi/schemas/edition'
 import { checkChangesInSteps } from './checks'
+import type { Parties } from './conflict-parties'
+import { baseWords, type InForce, inForceWords, readInForce } from './in-force'
 import type { ChangeInput, Checked, PublishedTable } from './rows'
 import { publishedIn } from './subjects'
 import { loadPublishedTable, newestEdition } from './table'
@@ -13,7 +15,7 @@ export interface AcceptedAmendment { id: string; title: string; version: number;
 export interface AcceptedChange extends ChangeInput { amendment: string; baseRevision: number | null }
 
 /** All that is accepted, with what the newest edition holds of it. */
-export interface Accepted { amendments: AcceptedAmendment[]; changes: AcceptedChange[]; table: PublishedTable }
+export interface Accepted { amendments: AcceptedAmendment[]; changes: AcceptedChange[]; table: PublishedTable; inForce: (kind: ChangeKind, subject: string) => InForce | null }
 
 interface AmendmentRow extends Record<string, unknown> { id: string; title: string; version: number; author_id: string; author_name: string; reviewer: string | null; changes: number }
 interface ChangeRow extends Record<string, unknown> { id: string; amendment: string; kind: ChangeKind; action: ChangeAction; subject: string; species: string | null; given: unknown; reason: string | null; successor: string | null; base: number | null }
@@ -34,12 +36,16 @@ export async function readAccepted(tx: Tx, lock: boolean): Promise<Accepted> {
     from amendment_changes c where c.amendment_id = any(${sql.param(amendments.map(({ id }) => id))}::uuid[]) order by c.position`)
   const changes = rows.map(({ species, base, ...row }): AcceptedChange => ({ ...row, speciesId: species, baseRevision: base }))
   const species = new Set(changes.flatMap(({ speciesId }) => (speciesId === null ? [] : [speciesId])))
+  const table = await loadPublishedTable(tx, await newestEdition(tx), [...species])
   return {
     amendments: amendments.map(({ author_id, author_name, ...row }) => ({ ...row, author: { id: author_id, name: author_name } })),
     changes,
-    table: await loadPublishedTable(tx, await newestEdition(tx), [...species]),
+    table,
+    inForce: await readInForce(tx, table.edition, changes.filter((change) => isStale(table, change))),
   }
 }
+
+const isStale = (table: PublishedTable, { kind, subject, baseRevision }: AcceptedChange): boolean => (publishedIn(table, kind, subject)?.revision ?? null) !== baseRevision
 
 const keyOf = ({ kind, subject }: { kind: ChangeKind; subject: string }): string => `${kind} ${subject}`
 
@@ -61,9 +67,9 @@ function changedTwice({ amendments, changes }: Pick<Accepted, 'amendments' | 'ch
 /**
  * All that keeps the accepted amendments from being published together: things changed by two of them, changes made from a
  * revision that is no longer in force, and every error that the checks find in the union, with the changes that take part.
- * `checked` is what the checks say of the union (of the first change of each thing).
+ * `checked` is what the checks say of the union (of the first change of each thing), `parties` who else takes part in what they find.
  */
-export function conflictsOf({ amendments, changes, table }: Accepted, checked: ReadonlyMap<string, Checked>): PublicationConflict[] {
+export function conflictsOf({ amendments, changes, table, inForce }: Accepted, checked: ReadonlyMap<string, Checked>, parties: Parties = () => []): PublicationConflict[] {
   const titles = new Map(amendments.map(({ id, title }) => [id, title]))
   const part = (change: AcceptedChange) => ({ amendment: { id: change.amendment, title: titles.get(change.amendment) ?? '' }, change: change.id, subject: change.subject })
   const quoted = (list: readonly AcceptedChange[]): string => [...new Set(list.map(({ amendment }) => amendment))].map((id) => `\u201c${titles.get(id) ?? id}\u201d`).join(' and ')
@@ -75,11 +81,12 @@ export function conflictsOf({ amendments, changes, table }: Accepted, checked: R
     conflicts.push({ code: 'same_subject', kind: first.kind, subject: first.subject, detail, changes: list.map(part), base_revision: null, current_revision: null })
   }
   for (const change of changes) {
+    if (!isStale(table, change)) continue
     const current = publishedIn(table, change.kind, change.subject)?.revision ?? null
-    if (change.baseRevision === current) continue
-    const [was, is] = [change.baseRevision === null ? 'that it was not in the table' : `revision ${change.baseRevision}`, current === null ? 'it is not in the table' : `revision ${current} is in force`]
-    const detail = `The change of ${change.subject} in ${quoted([change])} was made from ${was}, and now ${is}: look at it again.`
-    conflicts.push({ code: 'base_stale', kind: change.kind, subject: change.subject, detail, changes: [part(change)], base_revision: change.baseRevision, current_revision: current })
+    const now = inForce(change.kind, change.subject)
+    const detail = `The change of ${change.subject} in ${quoted([change])} was made ${baseWords(change.baseRevision)}, and now ${inForceWords(now)}: look at it again.`
+    const made = now === null || now.amendment === null || now.change === null ? [] : [{ amendment: now.amendment, change: now.change, subject: change.subject }]
+    conflicts.push({ code: 'base_stale', kind: change.kind, subject: change.subject, detail, changes: [part(change), ...made], base_revision: change.baseRevision, current_revision: current })
   }
   const seen = new Set(conflicts.map(({ changes: parts }) => parts.map(({ change }) => change).sort().join()))
   const wrong = changes.filter(({ id }) => checked.get(id)?.findings.some(({ severity }) => severity === 'error'))
@@ -87,7 +94,9 @@ export function conflictsOf({ amendments, changes, table }: Accepted, checked: R
   for (const change of wrong) {
     for (const finding of checked.get(change.id)?.findings ?? []) {
       if (finding.severity !== 'error') continue
-      const others = [...new Set(finding.detail.match(NAMED) ?? [])].flatMap((name) => bySubject.get(name) ?? []).filter((other) => other.id !== change.id)
+      const named = [...new Set(finding.detail.match(NAMED) ?? [])].flatMap((name) => bySubject.get(name) ?? []).filter((other) => other.id !== change.id)
+      // a finding that names a change of another amendment says itself what it is about
+      const others = named.some(({ amendment }) => amendment !== change.amendment) ? named : [...new Set([...named, ...parties(change, finding)])]
       const parts = [change, ...others]
       const key = parts.map(({ id }) => id).sort().join()
       // two levels of one name are found from either side, and told once

@@ -8,6 +8,7 @@ import { type Acting, recordAudit } from '@/lib/access/audit'
 import { CONSTANTS_EDITION } from '@/lib/atomic/constants'
 import { Problem } from '@/lib/problem'
 import type { NewEdition, PublicationConflict } from '@/openapi/schemas/edition'
+import { findParties } from './conflict-parties'
 import { countChanges, suggestedNotes } from './next-edition'
 import { type Accepted, type AcceptedAmendment, checkUnion, conflictsOf, readAccepted } from './publish-accepted'
 import { measuredDifference, readMeasuredInForce, writeMeasured } from './publish-measured'
@@ -70,7 +71,7 @@ export async function publishEdition(db: Db, acting: Acting, given: NewEdition):
       await writing
       throw error
     })
-    const conflicts = conflictsOf(accepted, checked)
+    const conflicts = conflictsOf(accepted, checked, await findParties(accepted, checked))
     const refused = await writing
     if (conflicts.length > 0) throw conflictProblem(conflicts)
     if (refused !== null) throw refused.error

@@ -64,7 +64,7 @@ describe('conflicts between accepted amendments', () => {
   const clean: Checked = { row: LEVEL, findings: [] }
 
   it('are none where all goes together', () => {
-    expect(conflictsOf({ amendments: [amendment('a')], changes: [change('1', 'a')], table }, new Map([['1', clean]]))).toEqual([])
+    expect(conflictsOf({ amendments: [amendment('a')], changes: [change('1', 'a')], table, inForce: () => null }, new Map([['1', clean]]))).toEqual([])
   })
 
   it('name both amendments and changes, the stale base, and what the union makes wrong, all at once', () => {
@@ -74,12 +74,14 @@ describe('conflicts between accepted amendments', () => {
       change('3', 'a', { subject: 'Na-I.90', action: 'create', baseRevision: null }), change('4', 'b', { subject: 'Na-I.91', action: 'create', baseRevision: null }),
       change('5', 'b', { kind: 'source', subject: 'a-b', baseRevision: 1 }),
     ]
-    const found = conflictsOf({ amendments: [amendment('a'), amendment('b')], changes, table }, new Map([['1', clean], ['3', twins('3', 'Na-I.91')], ['4', twins('4', 'Na-I.90')], ['5', clean]]))
+    const inForce = () => ({ revision: 2, edition: 3, amendment: { id: 'z', title: 'Amendment z' }, change: 'z9' })
+    const found = conflictsOf({ amendments: [amendment('a'), amendment('b')], changes, table, inForce }, new Map([['1', clean], ['3', twins('3', 'Na-I.91')], ['4', twins('4', 'Na-I.90')], ['5', clean]]))
     expect(found.map(({ code, subject, changes: parts, base_revision, current_revision }) => [code, subject, parts.map((part) => `${part.amendment.id}${part.change}`), base_revision, current_revision])).toEqual([
       ['same_subject', 'Na-I.3', ['a1', 'b2'], null, null],
-      ['base_stale', 'a-b', ['b5'], 1, null],
+      ['base_stale', 'a-b', ['b5', 'zz9'], 1, null],
       ['level_twin', 'Na-I.90', ['a3', 'b4'], null, null],
     ])
+    expect(found[1]?.detail).toContain('from revision 1, and now edition 3 made revision 2, which is in force, by the amendment \u201cAmendment z\u201d')
     expect(found[0]?.detail).toContain('\u201cAmendment a\u201d and \u201cAmendment b\u201d')
   })
 })
