@@ -44,14 +44,14 @@ export function ConflictView({ row, onResolve, onClose }: { row: SheetRow; onRes
         </p>
         {whole ? null : (
           <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="Both versions">
-            <table className="ruled">
+            <table className="ruled w-full max-sm:table-fixed max-sm:[overflow-wrap:anywhere]">
               <caption className="sr-only">Both versions, value by value</caption>
-              <thead><tr><th scope="col">Value</th><th scope="col">Before</th><th scope="col">Mine</th><th scope="col">Theirs</th></tr></thead>
+              <thead><tr><th scope="col">Value</th><th scope="col" className="max-sm:hidden">Before</th><th scope="col">Mine</th><th scope="col">Theirs</th></tr></thead>
               <tbody>
                 {list.map((clash) => (
                   <tr key={clash.field}>
-                    <th scope="row" className="text-muted">{wordOf(clash.field)}{clash.differ ? null : <span className="block text-2xs">the same in both</span>}</th>
-                    <td className="whitespace-normal! text-muted"><ValueText field={clash.field} value={clash.base} /></td>
+                    <th scope="row" className="whitespace-normal! text-muted">{wordOf(clash.field)}{clash.differ ? null : <span className="block text-2xs">the same in both</span>}</th>
+                    <td className="whitespace-normal! text-muted max-sm:hidden"><ValueText field={clash.field} value={clash.base} /></td>
                     {(['mine', 'theirs'] as const).map((side) => (
                       <Choice key={side} clash={clash} side={side} chosen={choices[clash.field] === side} onChoose={() => setChoices({ ...choices, [clash.field]: side })} />
                     ))}

@@ -34,17 +34,17 @@ function Lines({ row, checked }: { row: PastedRow; checked: CheckedChange | null
   const height = row.cells.length + (rest.length > 0 ? 1 : 0)
   const head = <th scope="rowgroup" rowSpan={height} className="align-top"><code className="text-xs">{row.target.name}</code></th>
   return (
-    <tbody className="border-b border-rule [&_td]:align-top [&_td:first-child]:pl-0">
+    <tbody className="border-b border-rule [&_td]:align-top">
       {row.cells.map((cell, index) => (
         <tr key={cell.column.id} className="border-b-0!">
           {index === 0 ? head : null}
           <td className="text-muted">{cell.column.label}</td>
           <td className="whitespace-normal! text-muted [overflow-wrap:anywhere]">{cell.before === '' ? 'empty' : <del className="no-underline">{cell.before}</del>}</td>
           <td className="whitespace-normal! [overflow-wrap:anywhere]">{cell.after === '' ? <span className="text-muted">empty</span> : <ins className="no-underline">{cell.after}</ins>}</td>
-          <td className="wrap">{findings.has(cell.column.id) ? <FindingsList findings={findings.get(cell.column.id) ?? []} /> : null}</td>
+          <td className="min-w-56 whitespace-normal!">{findings.has(cell.column.id) ? <FindingsList findings={findings.get(cell.column.id) ?? []} /> : null}</td>
         </tr>
       ))}
-      {rest.length > 0 ? <tr className="border-b-0!"><td className="text-muted">The row</td><td /><td /><td className="wrap"><FindingsList findings={rest} /></td></tr> : null}
+      {rest.length > 0 ? <tr className="border-b-0!"><td className="text-muted">The row</td><td /><td /><td className="min-w-56 whitespace-normal!"><FindingsList findings={rest} /></td></tr> : null}
     </tbody>
   )
 }
@@ -68,7 +68,7 @@ export function PasteReport({ amendment, proposal, onWrite, onClose }: { amendme
           <>
             <p role="status"><Tally errors={errors} warnings={warnings} clear="nothing was found wrong" /></p>
             <div className="max-h-[50dvh] overflow-auto border-y border-rule" tabIndex={0} role="region" aria-label="Cells that would change">
-              <table className="ruled">
+              <table className="ruled w-full">
                 <caption className="sr-only">Cells that would change</caption>
                 <thead><tr><th scope="col">Row</th><th scope="col">Column</th><th scope="col">Before</th><th scope="col">After</th><th scope="col">Findings</th></tr></thead>
                 {plan.rows.slice(0, SHOWN).map((row, index) => <Lines key={index} row={row} checked={data[index] ?? null} />)}
