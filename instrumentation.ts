@@ -5,6 +5,7 @@ export async function register(): Promise<void> {
     watchPeers()
     if (process.env.NEXT_PHASE === 'phase-production-build') return
     const [{ startNotices }, { processLog }, { getConfig }] = await Promise.all([import('@/lib/notices/loop'), import('@/lib/http/log'), import('@/lib/config')])
+    if (getConfig().smtpUrl === undefined) processLog(getConfig().logLevel).warn('SMTP_URL is not set: mail is written down and waits until a mail server is named')
     startNotices((reason) => processLog(getConfig().logLevel).error({ reason }, 'notices could not be spread'))
   }
 }

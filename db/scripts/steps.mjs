@@ -186,8 +186,11 @@ export function sessionSecret(file) {
 const LOOPBACK = /^(localhost|::1|127(\.\d{1,3}){3})$/
 const yes = (text) => /^(1|true|yes|on)$/i.test(text ?? '')
 
-/** Whether mail is kept here for want of a mail server: for a table that only this machine reaches, or one that is a demo. */
-export const keepsMail = (host) => !process.env.SMTP_URL && (LOOPBACK.test(host) || yes(process.env.DEMO))
+/**
+ * Whether mail is kept here for want of a mail server: only where demo accounts are allowed. Elsewhere it waits for a mail server: behind
+ * a proxy a real instance is on loopback too, and links that set passwords must not lie about in a folder.
+ */
+export const keepsMail = (host) => !process.env.SMTP_URL && (process.env.DEMO ? yes(process.env.DEMO) : LOOPBACK.test(host))
 
 /**
  * Starts the stand-in for a mail server on a free port of loopback; resolves to its process and what the web server has to be told.
