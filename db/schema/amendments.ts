@@ -7,7 +7,7 @@ import { instant } from './instant'
 export const AMENDMENT_STATES = ['draft', 'in_review', 'accepted', 'published', 'withdrawn'] as const
 export const CHANGE_KINDS = ['level', 'source', 'species', 'isotope', 'hyperfine'] as const
 export const CHANGE_ACTIONS = ['create', 'replace', 'retire'] as const
-/** `edited`: a change was made after the review was asked for or given, so it no longer speaks for the amendment. */
+/** `edited`: a change was made after the review was asked for and before it was given. One that voids an acceptance stands in `voided_at`. */
 export const REVIEW_OUTCOMES = ['accepted', 'returned', 'withdrawn', 'edited'] as const
 
 /** A titled set of changes on its way to an edition. */
@@ -115,12 +115,17 @@ export const reviews = pgTable(
     closedBy: uuid('closed_by').references(() => users.id, { onDelete: 'restrict' }),
     closedAt: instant('closed_at'),
     closingComment: text('closing_comment'),
+    /** Who edited the amendment after it was accepted: the review no longer speaks for it, and stays as it was given. */
+    // RESTRICT: see amendments.
+    voidedBy: uuid('voided_by').references(() => users.id, { onDelete: 'restrict' }),
+    voidedAt: instant('voided_at'),
   },
   (t) => [
     // at most one open review of an amendment
     uniqueIndex('reviews_one_open').on(t.amendmentId).where(sql`${t.outcome} is null`),
     index('reviews_of_amendment').on(t.amendmentId, t.askedAt),
     check('reviews_outcome', sql`${t.outcome} in ('accepted', 'returned', 'withdrawn', 'edited')`),
+    check('reviews_voided', sql`num_nonnulls(${t.voidedBy}, ${t.voidedAt}) in (0, 2) and (${t.voidedAt} is null or ${t.outcome} = 'accepted')`),
     check('reviews_closed', sql`num_nonnulls(${t.outcome}, ${t.closedBy}, ${t.closedAt}) in (0, 3)`),
   ],
 )
@@ -139,6 +144,8 @@ export const comments = pgTable(
     // RESTRICT: see amendments.
     author: uuid('author').notNull().references(() => users.id, { onDelete: 'restrict' }),
     text: text('text').notNull(),
+    /** Raised when the thread is resolved or opened again. */
+    version: integer('version').notNull().default(1),
     createdAt: instant('created_at').notNull().defaultNow(),
     resolvedAt: instant('resolved_at'),
     // RESTRICT: see amendments.
