@@ -1,6 +1,6 @@
 import type { AmendmentChange, BatchItem } from '@/openapi/schemas/change'
-import { problemOf, type ProblemDocument } from '../../_components/data/api'
-import { type ChangeState, requestOf, type Values } from './change-state'
+import { KEEPALIVE_BYTES, problemOf, type ProblemDocument } from '../../_components/data/api'
+import { type ChangeState, requestOf, sameState, stateOf, type Values } from './change-state'
 import { isDirty, type Sheet, type SheetRow } from './sheet'
 
 /** The API as far as saving needs it. */
@@ -171,7 +171,9 @@ export class Saver {
     const id = row.server?.id ?? (typeof problem.change === 'string' ? problem.change : undefined)
     try {
       const theirs = gone ? null : isChange(problem.current) ? problem.current : isChange(problem.change) ? problem.change : id === undefined ? null : await this.transport.read(id)
-      this.sheet.conflict(key, theirs)
+      // an answer that was lost, or that an earlier page did not wait for: it is there, and nobody else wrote it otherwise
+      if (theirs !== null && sameState(stateOf(theirs), sent)) this.sheet.stored(key, sent, theirs)
+      else this.sheet.conflict(key, theirs)
     } catch (error) {
       this.#fail([task], problemOf(error))
     }
@@ -199,9 +201,25 @@ export class Saver {
     return key
   }
 
-  /** The page goes away: what waits is sent along. Rows whose published values are not all known are left, since a part would be lost. */
+  #unsaved(): SheetRow[] {
+    return this.sheet.rows().filter((row) => row.save !== 'saved' && (isDirty(row) || isAhead(row)))
+  }
+  /**
+   * Whether a page that closes now would leave something behind that nobody is told of: what the server does not take as it is, more
+   * than a browser sends for a page that is gone, and, unless it is `kept` in the browser, what cannot be sent yet.
+   */
+  mustAsk(kept: boolean): boolean {
+    const rows = this.#unsaved()
+    if (rows.some((row) => row.save === 'failed' || row.save === 'conflict')) return true
+    const bytes = rows.reduce((sum, row) => sum + (row.wanted === null ? 160 : new Blob([JSON.stringify(requestOf(row.subject, row.wanted))]).size + 160), 200)
+    return bytes > KEEPALIVE_BYTES || (!kept && rows.some((row) => isAhead(row) || !isReady(row)))
+  }
+  /**
+   * The page goes away: what waits is sent along. Rows whose published values are not all known are left, since a part would be lost, and
+   * so is what was typed beyond a save under way, whose entity tag nobody knows yet: both are kept in the browser.
+   */
   farewell(): void {
-    const tasks = this.sheet.rows().filter((row) => (row.save === 'waiting' || row.save === 'failed') && isDirty(row) && (row.complete || row.wanted?.action !== 'replace'))
+    const tasks = this.sheet.rows().filter((row) => (row.save === 'waiting' || row.save === 'failed') && isDirty(row) && isReady(row))
     if (tasks.length === 0) return
     const items = tasks.flatMap((row): BatchItem[] => (row.wanted === null ? [] : [{ ...requestFor(row, row.wanted), ...(row.server === null ? {} : { change: row.server.id, etag: row.server.etag }) }]))
     const remove = tasks.flatMap((row) => (row.wanted === null && row.server !== null ? [{ change: row.server.id, etag: row.server.etag }] : []))
@@ -211,5 +229,10 @@ export class Saver {
 
 /** What writes a row: a new change says which revision its values were read from. */
 const requestFor = (row: SheetRow, state: ChangeState): BatchItem => ({ ...requestOf(row.subject, state), ...(row.server === null && row.revision !== null ? { base_revision: row.revision } : {}) })
+
+/** All published values are known, so that the row can be replaced as a whole. */
+const isReady = (row: SheetRow): boolean => row.complete || row.wanted?.action !== 'replace'
+/** Typed beyond what is being saved. */
+const isAhead = (row: SheetRow): boolean => row.save === 'saving' && row.sent !== undefined && !sameState(row.wanted, row.sent)
 
 const isChange = (value: unknown): value is AmendmentChange => typeof value === 'object' && value !== null && 'etag' in value && 'findings' in value

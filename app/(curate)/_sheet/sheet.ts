@@ -19,6 +19,8 @@ export interface SheetRow {
   server: AmendmentChange | null
   /** What the curator wants; null: no change. */
   wanted: ChangeState | null
+  /** What was sent last and not answered, or not answered well; the server may hold it all the same. */
+  sent?: ChangeState | null
   save: SaveState
   problem: ProblemDocument | null
   /** What someone else made of it meanwhile; null inside: they took the change out. */
@@ -28,6 +30,8 @@ export interface SheetRow {
 }
 
 export interface NewRow { key: string; subject: Subject; base: Values | null; complete: boolean }
+/** A row as a page that is gone left it: not all of it had come to the server. */
+export type Kept = Pick<SheetRow, 'subject' | 'base' | 'complete' | 'server' | 'sent' | 'wanted'>
 export type Wanted = ReadonlyMap<string, ChangeState | null>
 
 export const NOTHING: ChangeState = { action: 'create', values: {}, reason: null, successor: null, comment: null }
@@ -209,17 +213,42 @@ export class Sheet {
     return this.#go(redo, 'after')
   }
 
+  /** The row that a kept one was: a new level has no name before its first answer, and is known by what was sent of it. */
+  #rowOf({ subject, server, sent, wanted }: Kept): SheetRow | undefined {
+    const name = keyOf(subject)
+    if (server !== null || name !== null) return this.rows().find((row) => (server !== null && row.server?.id === server.id) || (name !== null && keyOf(row.subject) === name))
+    return this.rows().find((row) => row.server?.action === 'create' && row.subject.kind === subject.kind && row.subject.species === subject.species && row.save === 'saved' &&
+      [wanted, sent].some((state) => state !== undefined && state !== null && sameState(storedState(row), state)))
+  }
+  /** Takes up what a page that is gone left. It waits upon the version that it was typed on, so that a newer one is found when it is saved. */
+  restore(kept: Kept): 'brought' | 'known' | 'busy' {
+    const { subject, server, sent, wanted } = kept
+    const known = this.#rowOf(kept)
+    if (known !== undefined && known.save !== 'saved') return 'busy'
+    const current = known?.server ?? null
+    if (sameState(known === undefined ? null : storedState(known), wanted)) return 'known'
+    // what the page had sent has arrived: the rest goes upon that
+    const mine = current !== null && ((sent !== undefined && sameState(stateOf(current), sent)) || current.etag === server?.etag)
+    const key = known?.key ?? this.addNew(subject)
+    const found = this.#rows.get(key)
+    if (found === undefined) return 'busy'
+    // published values are read anew, since an edition may have come between; what was typed is carried over to them
+    const anew = subject.kind === 'level' && subject.level !== null && wanted?.action === 'replace'
+    this.patch(key, { ...found, subject: known?.subject ?? subject, base: anew ? kept.base : (known?.base ?? kept.base), complete: anew ? false : kept.complete, revision: null, server: mine ? current : server, sent, wanted, gone: false, save: 'waiting', problem: null, theirs: null })
+    return 'brought'
+  }
+
   // ---- what the saver reports
 
   saving(keys: readonly string[]): void {
-    this.together(() => keys.forEach((key) => this.patch(key, { save: 'saving', problem: null })))
+    this.together(() => keys.forEach((key) => this.patch(key, { save: 'saving', problem: null, sent: this.#rows.get(key)?.wanted })))
   }
   /** The server holds `sent` now, as `change`. What was typed meanwhile waits. */
   stored(key: string, sent: ChangeState | null, change: AmendmentChange | null): void {
     const row = this.#rows.get(key)
     if (row === undefined) return
     const wanted = sameState(row.wanted, sent) ? (change === null ? null : stateOf(change)) : row.wanted
-    const next: SheetRow = { ...row, server: change, wanted, subject: change === null ? row.subject : subjectOf(change), problem: null, theirs: null }
+    const next: SheetRow = { ...row, server: change, wanted, subject: change === null ? row.subject : subjectOf(change), sent: undefined, problem: null, theirs: null }
     if (change !== null) Object.assign(next, { base: (change.before as Values | null) ?? row.base, complete: true, revision: change.current_revision })
     // a new level taken out again has lost its ordinal
     else if (row.base === null && row.subject.kind === 'level') next.subject = { ...row.subject, level: null }
@@ -235,7 +264,7 @@ export class Sheet {
   resolve(key: string, wanted: ChangeState | null): void {
     const row = this.#rows.get(key)
     if (row === undefined || row.theirs === null) return
-    const next: SheetRow = { ...row, server: row.theirs.change, wanted, theirs: null, problem: null }
+    const next: SheetRow = { ...row, server: row.theirs.change, wanted, sent: undefined, theirs: null, problem: null }
     this.patch(key, { ...next, save: isDirty(next) ? 'waiting' : 'saved' })
   }
 }

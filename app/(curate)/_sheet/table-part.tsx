@@ -1,11 +1,12 @@
 'use client'
 import { useQuery } from '@tanstack/react-query'
 import { parseAsArrayOf, parseAsString, useQueryState } from 'nuqs'
-import { useMemo, useState } from 'react'
+import { useEffect, useMemo, useState } from 'react'
 import type { Source } from '@/openapi/schemas/source'
 import { apiQuery } from '../../_components/data/api'
 import { EmptyState } from '../../_components/empty-state'
 import { speciesText } from '../../_components/names'
+import { Notice } from '../../_components/notice'
 import { count, plural } from '../../_components/number'
 import { ProblemView } from '../../_components/problem-view'
 import { TableSkeleton } from '../../_components/skeleton'
@@ -46,6 +47,12 @@ export function TablePart({ amendment, room, canEdit }: { amendment: string; roo
   const [proposal, setProposal] = useState<PasteProposal | null>(null)
   const [retiring, setRetiring] = useState<string | null>(null)
   const [choosing, setChoosing] = useState<string | null>(null)
+  const [restored, setRestored] = useState(0)
+  const { restore } = room
+  useEffect(() => {
+    // what is brought back is written: only where one may edit, since that makes a draft of an amendment in review
+    if (canEdit) void restore().then((rows) => setRestored((before) => before + rows), () => undefined)
+  }, [canEdit, restore])
 
   const columns = useMemo(() => gridColumns(spare), [spare])
   // Order and filter are looked at when rows come and go or the filter changes, so that no row moves away under one's hands.
@@ -110,6 +117,11 @@ export function TablePart({ amendment, room, canEdit }: { amendment: string; roo
       </div>
       <TableTools canEdit={canEdit} view={view} grid={grid} filter={filter} onFilter={setFilter} newSpecies={newSpecies} onAdd={addLevel} onPaste={() => setPasting(true)}
         spare={spare} onSpare={setSpare} showBefore={showBefore} onShowBefore={setShowBefore} />
+      {restored > 0 ? (
+        <Notice title={`${plural(restored, 'row')} brought back`}>
+          <p>An earlier page was closed before the server had what you typed there. It is saved now; where someone else wrote the same row meanwhile, both versions are shown to you. <button type="button" className="link" onClick={() => setRestored(0)}>Close</button></p>
+        </Notice>
+      ) : null}
       {levels.error ? <ProblemView error={levels.error} onRetry={levels.retry} heading="h3" /> : null}
       {keys.length === 0 ? (
         levels.loading ? <TableSkeleton rows={8} columns={7} label="Loading the levels" /> : isFiltering(filter) && all > 0 ? (

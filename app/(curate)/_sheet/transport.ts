@@ -54,10 +54,16 @@ export function apiTransport(amendment: string): Transport {
         }).catch(() => undefined)
       if (items.length === 0) for (const { change, etag } of remove) send('DELETE', `${changes}/${change}`, undefined, { 'if-match': etag })
       else {
-        // the first rows that fit: bytes are counted, since letters may take several
-        let room = KEEPALIVE_BYTES - 200 - 160 * remove.length
-        const fitting = items.filter((item) => (room -= new Blob([JSON.stringify(item)]).size + 1) > 0)
-        send('POST', `${changes}/batch`, { changes: fitting, remove })
+        // the rows that fit: bytes are counted, since letters may take several. The others are kept in the browser.
+        let room = KEEPALIVE_BYTES - 200
+        const leaving = remove.filter(() => (room -= 160) > 0)
+        const fitting = items.filter((item) => {
+          const size = new Blob([JSON.stringify(item)]).size + 1
+          if (size < room) room -= size
+          else return false
+          return true
+        })
+        send('POST', `${changes}/batch`, { changes: fitting, remove: leaving })
       }
     },
     newKey: random,

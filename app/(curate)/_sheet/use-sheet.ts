@@ -1,9 +1,12 @@
 'use client'
 import { useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query'
-import { useCallback, useEffect, useState, useSyncExternalStore } from 'react'
+import { useCallback, useEffect, useRef, useState, useSyncExternalStore } from 'react'
+import { useMe } from '../../_components/data/me'
 import { Saver } from './saver'
 import { Sheet, type SheetView } from './sheet'
+import { openPages, pageName, storageOfBrowser } from './this-page'
 import { apiTransport, listChanges } from './transport'
+import { Unsent } from './unsent'
 
 export const changesKey = (amendment: string) => ['changes', amendment] as const
 
@@ -17,6 +20,8 @@ export interface SheetRoom {
   loading: boolean
   error: unknown
   reload: () => Promise<unknown>
+  /** Brings back what an earlier page could not send, once it may be edited; resolves to the number of rows. */
+  restore: () => Promise<number>
 }
 
 /** The sheet of an amendment, filled from the server, saved to it, and sent off when the page closes. */
@@ -27,15 +32,36 @@ export function useSheet(amendment: string): SheetRoom {
     return { sheet, saver: new Saver(sheet, apiTransport(amendment), () => void refreshAmendment(client, amendment)) }
   })
   const { sheet, saver } = room
+  const { me } = useMe()
+  const person = me?.id
+  const keeping = useRef<Unsent | null>(null)
   const { data, error, isPending, refetch } = useQuery({ queryKey: changesKey(amendment), queryFn: ({ signal }) => listChanges(amendment, signal), staleTime: 0, gcTime: 0, refetchOnWindowFocus: true })
   useEffect(() => {
     if (data !== undefined) sheet.absorb(data)
   }, [data, sheet])
   useEffect(() => {
-    const leave = () => saver.farewell()
+    if (person === undefined) return
+    const page = pageName()
+    const keeper = new Unsent(sheet, storageOfBrowser(), `lodeterm/unsent/${person}/${amendment}`, page.name)
+    keeping.current = keeper
+    keeper.keep()
+    const stop = sheet.subscribe(() => keeper.keep())
+    return () => {
+      // another page of this site: what is being saved is waited for, and the rest stays for the next one
+      void saver.now().finally(() => {
+        stop()
+        page.end()
+      })
+    }
+  }, [amendment, person, saver, sheet])
+  useEffect(() => {
+    const leave = () => {
+      keeping.current?.keep(Date.now())
+      saver.farewell()
+    }
     const hide = () => { if (document.visibilityState === 'hidden') void saver.now() }
-    // what the server would not take cannot be sent along either: the browser asks before the page goes
-    const ask = (event: BeforeUnloadEvent) => { if (sheet.rows().some((row) => row.save === 'failed' || row.save === 'conflict')) event.preventDefault() }
+    // what cannot be sent along: the browser asks before the page goes
+    const ask = (event: BeforeUnloadEvent) => { if (saver.mustAsk(keeping.current?.safe ?? false)) event.preventDefault() }
     window.addEventListener('beforeunload', ask)
     window.addEventListener('pagehide', leave)
     document.addEventListener('visibilitychange', hide)
@@ -51,7 +77,15 @@ export function useSheet(amendment: string): SheetRoom {
     await saver.now()
     await refetch()
   }, [saver, refetch])
-  return { sheet, saver, loading: isPending, error, reload }
+  const restore = useCallback(async () => {
+    if (person === undefined || isPending || error !== null) return 0
+    const open = await openPages()
+    const count = await keeping.current?.restore(open, async () => sheet.absorb(await listChanges(amendment)))
+    if (count === undefined) return 0
+    if (count > 0) saver.later()
+    return count
+  }, [amendment, error, isPending, person, saver, sheet])
+  return { sheet, saver, loading: isPending, error, reload, restore }
 }
 
 const EMPTY: SheetView = { order: [], rows: new Map(), canUndo: null, canRedo: null }
