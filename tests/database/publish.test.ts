@@ -115,7 +115,14 @@ describe('publishing', () => {
       { kind: 'hyperfine', action: 'create', level: 'Na-I.1', mass_number: 22, values: { a_mhz: 348.75, source: 'invented-2026-test', evidence: 'read' }, comment: 'meant' },
       { kind: 'species', action: 'create', species: 'Al-III', values: { name: 'aluminium', core_configuration: '[Ne]' }, comment: 'meant' },
     ])
-    const preview = await previewNextEdition(db)
+    // made once for all who ask at once or later, and anew when what is accepted changes
+    const [preview, besides] = await Promise.all([previewNextEdition(db), previewNextEdition(db)])
+    expect(besides).toBe(preview)
+    expect(await previewNextEdition(db)).toBe(preview)
+    const more = await accepted('For a moment', [await correct('Na-I.9', { note: 'a moment' })])
+    expect((await previewNextEdition(db)).amendments.map(({ id }) => id)).toEqual([sodium.id, more.id])
+    await withdraw(more.id)
+    expect((await previewNextEdition(db)).amendments).toHaveLength(1)
     expect(preview.conflicts).toEqual([])
     expect(preview.amendments).toMatchObject([{ id: sodium.id, version: sodium.version, title: 'Sodium anew', changes: 8 }])
     expect(preview.counts).toMatchObject({ changes: 8, level: { create: 1, replace: 1, retire: 1 }, source: { create: 1, replace: 1 } })
