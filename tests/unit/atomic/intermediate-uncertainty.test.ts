@@ -14,6 +14,7 @@ interface Level extends UncertainLevel {
 const level = (twoS: number, l: number, twoJ: number, energyInvcm: number, energyUnc: number | null, gUnc: number | null): Level => ({ twoJ, energyInvcm, energyUnc, gUnc, g: landeG({ twoS, l, twoJ }) ?? 0 })
 const lower = [level(2, 0, 2, 159855.97433, 2e-4, 1e-5)]
 const upper = [level(2, 1, 0, 169087.830813, 5e-4, null), level(2, 1, 2, 169086.842898, 2e-4, 3e-4), level(2, 1, 4, 169086.766473, 3e-4, 5e-4)]
+const [lone] = lower as [Level]
 const multipletOf = (low: Level[], high: Level[]) => fieldMultiplet(fieldTerm({ twoS: 2, l: 0, levels: low }), fieldTerm({ twoS: 2, l: 1, levels: high }))
 
 /** Marsaglia's xorshift, so that every run draws the same numbers; normal deviates by Box and Muller. */
@@ -62,17 +63,18 @@ describe('uncertainty of positions in the intermediate model', () => {
       const now = intermediateUncertainty({ lower: { state: c.lower, levels: lower }, upper: ends, fieldTesla, fieldUnc: 1e-7 })
       const own = upper.find((one) => one.twoJ === c.upper.twoJ)
       if (!own) throw new Error('no such level')
-      const before = positionUncertainty({ lower: { ...lower[0]!, twoM: c.lower.twoM }, upper: { ...own, twoM: c.upper.twoM }, fieldTesla, fieldUnc: 1e-7 })
+      const before = positionUncertainty({ lower: { ...lone, twoM: c.lower.twoM }, upper: { ...own, twoM: c.upper.twoM }, fieldTesla, fieldUnc: 1e-7 })
       for (const part of before.budget) {
         const same = now.budget.find((one) => one.part === part.part)
-        expect(same?.status).toBe(part.status)
-        expect(Math.abs((same?.value ?? Number.NaN) - (part.value ?? Number.NaN))).toBeLessThan(1e-3 * (part.value ?? 0) + 1e-15)
+        // a component that does not move in the linear model moves with the square of the field here
+        if (part.value !== 0) expect(same?.status).toBe(part.status)
+        expect(Math.abs((same?.value ?? Number.NaN) - (part.value ?? Number.NaN))).toBeLessThan(1e-3 * (part.value ?? 0) + 1e-10)
       }
     }
   })
 
   it('the ground level is exact, and an unknown deviation of a level that is mixed in makes the total unknown', () => {
-    const ground = [{ ...lower[0]!, energyInvcm: 0, energyUnc: null }]
+    const ground = [{ ...lone, energyInvcm: 0, energyUnc: null }]
     const unknown = upper.map((one) => (one.twoJ === 4 ? { ...one, energyUnc: null } : one))
     const components = multipletComponents(multipletOf(ground, unknown), 0.3)
     for (const c of components) {
