@@ -134,6 +134,9 @@ function normalInverse({ matrix, plain }: Linearised, damping: number): number[]
 const times = (matrix: number[][], vector: readonly number[]): number[] => matrix.map((row) => row.reduce((sum, value, j) => sum + value * (vector[j] ?? 0), 0))
 
 const MOST_ITERATIONS = 100
+/** A step of this share of a parameter's deviation is none. */
+const SETTLED = 1e-8
+const MOST_STILL = 12
 
 function finish(problem: CentredProblem, theta: number[], at: Linearised, inverse: number[][], iterations: number, converged: boolean): CentredSolution {
   const { measured, weights, zeroOf, zeros } = problem
@@ -169,21 +172,23 @@ export function solveCentred(problem: CentredProblem, start: readonly number[]):
   centre(problem, target)
   let theta = [...start]
   let at = linearise(problem, target, theta)
-  let [damping, converged, iterations] = [0, false, 0]
+  let [damping, converged, iterations, still] = [0, false, 0, 0]
   for (; iterations < MOST_ITERATIONS && !converged; iterations += 1) {
     const inverse = normalInverse(at, damping)
     if (!Array.isArray(inverse)) return { ok: false, ...inverse }
     const step = times(inverse, at.gradient)
     const next = theta.map((value, p) => value + (step[p] ?? 0))
     const there = linearise(problem, target, next)
-    const settled = step.every((value, p) => Math.abs(value) <= 1e-13 * Math.abs(next[p] ?? 0) + Number.MIN_VALUE)
-    // near the minimum chi-squared changes by rounding only: such a step is taken, and is the last
-    const level = Math.abs(there.chiSquared - at.chiSquared) <= 1e-14 * (at.chiSquared + Number.MIN_VALUE)
+    const scatter = Math.min(1, Math.sqrt(at.chiSquared / target.length))
+    const settled = step.every((value, p) => Math.abs(value) <= SETTLED * scatter * Math.sqrt(inverse[p]?.[p] ?? 0) + 1e-13 * Math.abs(next[p] ?? 0) + Number.MIN_VALUE)
+    // near the minimum chi-squared changes by rounding only: such steps are taken, a few of them
+    const level = Math.abs(there.chiSquared - at.chiSquared) <= 1e-12 * (at.chiSquared + Number.MIN_VALUE)
+    still = level ? still + 1 : 0
     if (there.chiSquared <= at.chiSquared || level) {
       theta = next
       at = there
       damping = damping < 1e-7 ? 0 : damping / 10
-      converged = settled || level
+      converged = settled || still >= MOST_STILL
     } else if (settled) converged = true
     else damping = Math.max(damping * 10, 1e-3)
     if (damping > 1e12) break

@@ -141,7 +141,12 @@ function solveFrom(setup: FitSetup, assignments: Assignment[], starts: readonly 
 }
 
 function startsOf(input: FieldFitInput, setup: FitSetup, assignments: Assignment[], model: FieldModel): number[] {
-  if (model === 'linear') return [0]
+  if (model === 'linear') {
+    if (setup.scale.unc === 0) return [0]
+    // at zero field a scale does nothing, so a fitted one begins where the field is that of the exact scale
+    const { outcome } = solveFrom({ ...setup, scale: { ...setup.scale, unc: 0 } }, assignments, [0])
+    return [outcome.ok ? (outcome.solution.theta[0] ?? 0) : 0]
+  }
   const linear = setupOf(input, 'linear')
   // components of both models are named by their m's; the intermediate model lists those without strength too
   const renamed = assignments.map((components, i) => {
