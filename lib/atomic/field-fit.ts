@@ -32,6 +32,9 @@ export interface Reason {
   detail: string
 }
 
+/** Reasons and warnings stand beside an answer; they are not refusals. */
+export const because = (code: string, detail: string): Reason => ({ code, detail })
+
 export interface FitResidual {
   assignment: Assignment
   /** Fitted position, and measured minus fitted, cm^-1. */
@@ -111,14 +114,14 @@ const setupOf = (input: FieldFitInput, model: FieldModel): FitSetup => {
 
 /** Why the data leave the field (or the scale) open. */
 function whyOpen(setup: FitSetup, assignments: readonly Assignment[], outcome: Extract<CentredOutcome, { ok: false }>): Reason {
-  if (!outcome.alone) return { code: 'scale_and_field', detail: 'The scale and the field change the positions in the same way, so they cannot be told apart: give the scale, or its uncertainty, or lines that share a zero.' }
+  if (!outcome.alone) return because('scale_and_field', 'The scale and the field change the positions in the same way, so they cannot be told apart: give the scale, or its uncertainty, or lines that share a zero.')
   const moves = setup.measurements.some((one, i) => {
     const model = setup.models[one.line]
     model?.at(1)
     return (assignments[i] ?? []).some((c) => Math.abs(model?.slopes[c] ?? 0) > 1e-15)
   })
-  if (!moves) return { code: 'no_shift', detail: 'No component measured moves with the field, so the positions tell nothing of it.' }
-  return { code: 'one_shift_per_line', detail: 'Within each line all components measured move alike, and the zero of each line is free, so a shift of the line and the field cannot be told apart: measure another component of a line.' }
+  if (!moves) return because('no_shift', 'No component measured moves with the field, so the positions tell nothing of it.')
+  return because('one_shift_per_line', 'Within each line all components measured move alike, and the zero of each line is free, so a shift of the line and the field cannot be told apart: measure another component of a line.')
 }
 
 const parametersOf = (setup: FitSetup): number => setup.zeros.length + (setup.scale.unc === 0 ? 1 : 2)
@@ -272,12 +275,12 @@ function budgetOf(setup: FitSetup, { problem, solution, assignments }: Solved, f
 
 function warningsOf(model: FieldModel, validity: LinearLawValidity[], solution: CentredSolution, alternatives: number, stated: boolean, degreesOfFreedom: number): Reason[] {
   const warnings: Reason[] = []
-  if (!solution.converged) warnings.push({ code: 'not_converged', detail: 'The fit did not settle within its steps; its result is the best found.' })
-  if (model === 'linear' && validity.some((one) => one.positions.status === 'not_valid')) warnings.push({ code: 'linear_not_valid', detail: 'At this field the linear law misplaces components by more than the tolerance; use the intermediate model.' })
-  if (model === 'linear' && validity.some((one) => one.positions.status === 'unknown')) warnings.push({ code: 'validity_unknown', detail: 'For a line of this fit it is not known whether the linear law holds at this field.' })
-  if (alternatives > 0) warnings.push({ code: 'assignment_ambiguous', detail: 'The peaks can be read otherwise about as well, with another field; see the alternatives, or name components or polarisations.' })
-  if (!stated) warnings.push({ code: 'sigma_not_stated', detail: degreesOfFreedom > 0 ? 'No uncertainties of the positions were stated; they are judged by the scatter about the fit.' : 'No uncertainties of the positions were stated and nothing is left over to judge them by, so the field has none.' })
-  if (stated && degreesOfFreedom > 0 && solution.chiSquared > degreesOfFreedom + 3 * Math.sqrt(2 * degreesOfFreedom)) warnings.push({ code: 'poor_fit', detail: 'The positions scatter about the fit more than their uncertainties allow.' })
+  if (!solution.converged) warnings.push(because('not_converged', 'The fit did not settle within its steps; its result is the best found.'))
+  if (model === 'linear' && validity.some((one) => one.positions.status === 'not_valid')) warnings.push(because('linear_not_valid', 'At this field the linear law misplaces components by more than the tolerance; use the intermediate model.'))
+  if (model === 'linear' && validity.some((one) => one.positions.status === 'unknown')) warnings.push(because('validity_unknown', 'For a line of this fit it is not known whether the linear law holds at this field.'))
+  if (alternatives > 0) warnings.push(because('assignment_ambiguous', 'The peaks can be read otherwise about as well, with another field; see the alternatives, or name components or polarisations.'))
+  if (!stated) warnings.push(because('sigma_not_stated', degreesOfFreedom > 0 ? 'No uncertainties of the positions were stated; they are judged by the scatter about the fit.' : 'No uncertainties of the positions were stated and nothing is left over to judge them by, so the field has none.'))
+  if (stated && degreesOfFreedom > 0 && solution.chiSquared > degreesOfFreedom + 3 * Math.sqrt(2 * degreesOfFreedom)) warnings.push(because('poor_fit', 'The positions scatter about the fit more than their uncertainties allow.'))
   return warnings
 }
 
@@ -287,11 +290,11 @@ const undetermined = (model: FieldModel, ...reasons: Reason[]): UndeterminedFit 
 function fitWith(input: FieldFitInput, model: FieldModel): FieldFit {
   const setup = setupOf(input, model)
   const hints = input.measurements.map((one) => hintOf(one, setup.models[one.line]))
-  if (input.measurements.length === 0) return undetermined(model, { code: 'no_positions', detail: 'No position was given.' })
+  if (input.measurements.length === 0) return undetermined(model, because('no_positions', 'No position was given.'))
   const automatic = hints.some((hint) => hint.component === null)
   const short: Reason | null =
     input.measurements.length + priorsOf(setup) < parametersOf(setup)
-      ? { code: 'too_few_positions', detail: `${input.measurements.length} position${input.measurements.length === 1 ? '' : 's'} cannot fix ${parametersOf(setup)} unknowns: ${setup.zeros.length === 1 ? 'a zero' : `${setup.zeros.length} zeros`}, the field${setup.scale.unc === 0 ? '' : ' and the scale'}.` }
+      ? because('too_few_positions', `${input.measurements.length} position${input.measurements.length === 1 ? '' : 's'} cannot fix ${parametersOf(setup)} unknowns: ${setup.zeros.length === 1 ? 'a zero' : `${setup.zeros.length} zeros`}, the field${setup.scale.unc === 0 ? '' : ' and the scale'}.`)
       : null
   if (!automatic) {
     const assignments = hints.map((hint) => [hint.component ?? 0])
@@ -303,7 +306,7 @@ function fitWith(input: FieldFitInput, model: FieldModel): FieldFit {
   if (short) return undetermined(model, short)
   const solved = solveReadings(setup, { hints, visibleQ: input.visibleQ ?? [-1, 0, 1], mostTesla: MOST_TESLA })
   const [best, ...others] = solved
-  if (!best) return undetermined(model, { code: 'no_reading', detail: 'No field up to 10 000 T lays the outermost two peaks of a line on two of its components; give at least two peaks of one line, or name the components.' })
+  if (!best) return undetermined(model, because('no_reading', 'No field up to 10 000 T lays the outermost two peaks of a line on two of its components; give at least two peaks of one line, or name the components.'))
   return report(input, model, setup, best, others, true)
 }
 

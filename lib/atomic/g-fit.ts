@@ -2,7 +2,7 @@ import { centre, type CentredProblem, type CentredSolution, solveCentred } from 
 import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 import { PhysicsError } from '@/lib/atomic/errors'
 import type { TwoJ } from '@/lib/atomic/half'
-import type { Reason } from '@/lib/atomic/field-fit'
+import { because, type Reason } from '@/lib/atomic/field-fit'
 
 export interface GFitEnd {
   twoJ: TwoJ
@@ -76,7 +76,7 @@ export function fitG(input: GFitInput): GFit {
   const held = (['lower', 'upper'] as const).filter((end) => !free.includes(end))
   const heldShift = (one: (typeof measurements)[number]) => held.reduce((sum, end) => sum + (input[end].g ?? 0) * perG(end, one, x), 0)
   const degreesOfFreedom = measurements.length - 1 - free.length
-  if (degreesOfFreedom < 0) return { status: 'undetermined', reasons: [{ code: 'too_few_positions', detail: `${measurements.length} position${measurements.length === 1 ? '' : 's'} cannot fix a zero and ${free.length} g.` }] }
+  if (degreesOfFreedom < 0) return { status: 'undetermined', reasons: [because('too_few_positions', `${measurements.length} position${measurements.length === 1 ? '' : 's'} cannot fix a zero and ${free.length} g.`)] }
   const stated = measurements.every((one) => one.sigmaInvcm !== null)
   const problem: CentredProblem = {
     measured: Float64Array.from(measurements, (one) => one.positionInvcm),
@@ -100,7 +100,7 @@ export function fitG(input: GFitInput): GFit {
     const detail = outcome.alone
       ? `All components measured move alike with the g_J of the ${free[outcome.parameter] ?? 'free'} level, and the zero is free: measure another component.`
       : 'The components measured move alike with both g_J, so they cannot be told apart: hold one of them, or measure components of another q.'
-    return { status: 'undetermined', reasons: [{ code: outcome.alone ? 'one_shift' : 'both_g', detail }] }
+    return { status: 'undetermined', reasons: [because(outcome.alone ? 'one_shift' : 'both_g', detail)] }
   }
   const { solution } = outcome
   const factor = stated ? 1 : degreesOfFreedom > 0 ? solution.chiSquared / degreesOfFreedom : null

@@ -1,4 +1,5 @@
 import { ACCESS_PROBLEMS } from '@/lib/problem/catalogue-access'
+import { FIELD_PROBLEMS } from '@/lib/problem/catalogue-field'
 import { PHYSICS_PROBLEMS } from '@/lib/problem/catalogue-physics'
 import { REQUEST_PROBLEMS } from '@/lib/problem/catalogue-request'
 
@@ -9,7 +10,7 @@ export interface ProblemKind { status: number; title: string; explanation: strin
  * Every code that can stand in a problem document or in its `errors`, each with a page at /problems/{code}.
  * A test refuses a code that is used anywhere and missing here.
  */
-export const PROBLEMS = { ...REQUEST_PROBLEMS, ...ACCESS_PROBLEMS, ...PHYSICS_PROBLEMS } satisfies Record<string, ProblemKind>
+export const PROBLEMS = { ...REQUEST_PROBLEMS, ...ACCESS_PROBLEMS, ...PHYSICS_PROBLEMS, ...FIELD_PROBLEMS } satisfies Record<string, ProblemKind>
 
 export type ProblemCode = keyof typeof PROBLEMS
 
