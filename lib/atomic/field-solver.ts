@@ -104,7 +104,8 @@ function readBlock(block: FieldBlock, x: number, into: TermSolution): void {
 /** <vector k|g_L L_z + g_s S_z|vector p> of a block. */
 function fieldElement(block: FieldBlock, vectors: Float64Array, k: number, p: number): number {
   const { n, slopes, couplings, firstVector } = block
-  const [a, b] = [firstVector + k * n, firstVector + p * n]
+  const a = firstVector + k * n
+  const b = firstVector + p * n
   let sum = 0
   for (let j = 0; j < n; j += 1) {
     sum += (slopes[j] as number) * (vectors[a + j] as number) * (vectors[b + j] as number)

@@ -19,13 +19,16 @@ export function multipletSolution(multiplet: FieldMultiplet): MultipletSolution 
 /** <state u|D_q|state l> for all states of a link; D joins J only to J and J +- 1, so only those are summed. */
 function amplitudesOf(link: BlockLink, room: MultipletSolution): void {
   const { lower, upper, dipole } = link
-  const [nl, nu] = [lower.n, upper.n]
+  const nl = lower.n
+  const nu = upper.n
   const { amplitudes, halfway } = room
-  const [low, high] = [room.lower.vectors, room.upper.vectors]
+  const low = room.lower.vectors
+  const high = room.upper.vectors
   const offset = ((upper.twoJs[0] as number) - (lower.twoJs[0] as number)) / 2
   for (let i = 0; i < nu; i += 1) {
     // index of the lower J equal to this upper J; neighbours lie beside it
-    const [from, to] = [Math.max(0, i + offset - 1), Math.min(nl - 1, i + offset + 1)]
+    const from = Math.max(0, i + offset - 1)
+    const to = Math.min(nl - 1, i + offset + 1)
     for (let k = 0; k < nl; k += 1) {
       const row = lower.firstVector + k * nl
       let sum = 0
@@ -46,7 +49,8 @@ function amplitudesOf(link: BlockLink, room: MultipletSolution): void {
 /** d(amplitude)/dx of one pair: both vectors turn towards the other states of their blocks. */
 function turned(link: BlockLink, room: MultipletSolution, ku: number, kl: number): number {
   const { lower, upper } = link
-  const [low, high] = [room.lower.turning, room.upper.turning]
+  const low = room.lower.turning
+  const high = room.upper.turning
   let sum = 0
   for (let p = 0; p < upper.n; p += 1) sum += (high[upper.firstVector + ku * upper.n + p] as number) * (room.amplitudes[p * lower.n + kl] as number)
   for (let p = 0; p < lower.n; p += 1) sum += (low[lower.firstVector + kl * lower.n + p] as number) * (room.amplitudes[ku * lower.n + p] as number)
@@ -125,7 +129,8 @@ export function multipletGrid(multiplet: FieldMultiplet, fieldsTesla: ArrayLike<
 function readPositions(multiplet: FieldMultiplet, { lower, upper }: MultipletSolution, grid: MultipletGrid, at: number, absolute: boolean): void {
   const { count, lowerState, upperState, centresInvcm } = multiplet
   for (let i = 0; i < count; i += 1) {
-    const [l, u] = [lowerState[i] as number, upperState[i] as number]
+    const l = lowerState[i] as number
+    const u = upperState[i] as number
     const shift = (upper.shifts[u] as number) - (lower.shifts[l] as number)
     grid.values[at + i] = absolute ? (centresInvcm[i] as number) + shift : shift
     if (grid.derivatives) grid.derivatives[at + i] = MU_B_OVER_HC_INVCM_PER_T * ((upper.slopes[u] as number) - (lower.slopes[l] as number))

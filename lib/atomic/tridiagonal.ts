@@ -5,15 +5,20 @@ const MOST_STEPS = 60
 
 /** Two states: one rotation, exact. Vectors as rows, lower energy first. */
 function solvePair(d: Float64Array, e: Float64Array, z: Float64Array, at: number): void {
-  const [a, b, c] = [d[0] as number, d[1] as number, e[0] as number]
+  // plain constants in these loops: taking arrays apart costs more than the arithmetic
+  const a = d[0] as number
+  const b = d[1] as number
+  const c = e[0] as number
   const t = rotationTangent(a, b, c)
   const cosine = 1 / Math.sqrt(1 + t * t)
   const sine = t * cosine
-  const [first, second] = [a - t * c, b + t * c]
+  const first = a - t * c
+  const second = b + t * c
   const upright = first <= second
   d[0] = upright ? first : second
   d[1] = upright ? second : first
-  const [row, other] = upright ? [at, at + 2] : [at + 2, at]
+  const row = upright ? at : at + 2
+  const other = upright ? at + 2 : at
   z[row] = cosine
   z[row + 1] = -sine
   z[other] = sine
@@ -28,7 +33,8 @@ function sortUpwards(n: number, d: Float64Array, z: Float64Array, at: number): v
       d[k] = d[k - 1] as number
       d[k - 1] = energy
       for (let j = 0; j < n; j += 1) {
-        const [upper, lower] = [at + k * n + j, at + (k - 1) * n + j]
+        const upper = at + k * n + j
+        const lower = upper - n
         const amplitude = z[upper] as number
         z[upper] = z[lower] as number
         z[lower] = amplitude
@@ -42,7 +48,9 @@ function sweep(l: number, m: number, n: number, d: Float64Array, e: Float64Array
   let shift = ((d[l + 1] as number) - (d[l] as number)) / (2 * (e[l] as number))
   const root = Math.sqrt(shift * shift + 1)
   let g = (d[m] as number) - (d[l] as number) + (e[l] as number) / (shift + (shift < 0 ? -root : root))
-  let [sine, cosine, p] = [1, 1, 0]
+  let sine = 1
+  let cosine = 1
+  let p = 0
   for (let i = m - 1; i >= l; i -= 1) {
     const f = sine * (e[i] as number)
     const b = cosine * (e[i] as number)
@@ -60,9 +68,11 @@ function sweep(l: number, m: number, n: number, d: Float64Array, e: Float64Array
     p = sine * shift
     d[i + 1] = g + p
     g = cosine * shift - b
-    const [low, high] = [at + i * n, at + (i + 1) * n]
+    const low = at + i * n
+    const high = low + n
     for (let j = 0; j < n; j += 1) {
-      const [x, y] = [z[low + j] as number, z[high + j] as number]
+      const x = z[low + j] as number
+      const y = z[high + j] as number
       z[high + j] = sine * x + cosine * y
       z[low + j] = cosine * x - sine * y
     }

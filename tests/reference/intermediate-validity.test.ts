@@ -4,6 +4,7 @@ import { autoModel, linearLawLevelValidity, linearLawValidity } from '@/lib/atom
 import { landeG } from '@/lib/atomic/lande'
 import type { TermLevels } from '@/lib/atomic/mixing'
 import { levelValidity, lineValidity } from '@/lib/atomic/validity'
+import { blendSentence } from '@/lib/atomic/validity-sentence'
 import { findLevel } from './levels'
 
 const termOf = (twoS: number, l: number, levels: [number, number][]): TermLevels => ({ twoS, l, levels: levels.map(([twoJ, energyInvcm]) => ({ twoJ, energyInvcm, g: landeG({ twoS, l, twoJ }) })) })
@@ -22,6 +23,10 @@ describe('He I 1083 nm', () => {
     expect(blend.relativeError ?? Number.NaN).toBeGreaterThan(0.205)
     expect(blend.relativeError ?? Number.NaN).toBeLessThan(0.215)
     expect([positions.status, strengths.status, blend.status, blend.fieldLimitTesla]).toEqual(['valid', 'valid', 'not_valid', 0])
+  })
+
+  it('and the sentence says so', () => {
+    expect(blendSentence(at(1e-4))).toMatch(/^Centre of the blend of J = 1 \u2013 2, 1 \u2013 1: the linear law does not hold; it errs by 1\.\d+ × 10⁻⁵ cm⁻¹, 21 % of its largest displacement; 1 % is passed at any field\.$/)
   })
 
   it('strengths fail before positions, and auto switches then', () => {
