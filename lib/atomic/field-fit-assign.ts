@@ -1,10 +1,10 @@
 import { type Assignment, type FitSetup, peakOf } from '@/lib/atomic/field-fit-problem'
 import type { LineModel } from '@/lib/atomic/field-fit-model'
 
-/** What is known of a peak beforehand: its component, or its polarisation alone. */
+/** What is known of a peak beforehand: its components, or its polarisation alone. */
 export interface PeakHint {
-  /** Index into the line's components; null where it is to be found. */
-  component: number | null
+  /** Indices into the line's components; null where they are to be found. */
+  components: number[] | null
   /** q of the peak, or `sigma` for either sense; null where it is not known. */
   q: number | 'sigma' | null
 }
@@ -34,7 +34,7 @@ const DOUBLED = 60
 const MOST_OF_ONE = 400
 
 const allowed = (cluster: Cluster, hint: PeakHint): boolean =>
-  hint.component !== null ? cluster.components.includes(hint.component) : hint.q === null || (hint.q === 'sigma' ? Math.abs(cluster.q) === 1 : cluster.q === hint.q)
+  hint.components !== null ? hint.components.some((c) => cluster.components.includes(c)) : hint.q === null || (hint.q === 'sigma' ? Math.abs(cluster.q) === 1 : cluster.q === hint.q)
 
 /** Clusters of a model solved at a field: visible components of one q nearer than `width`, by place. Components named by hand stand alone. */
 function clustersOf(model: LineModel, scale: number, width: number, visibleQ: readonly number[]): Cluster[] {
@@ -112,7 +112,7 @@ function assignGroup(scene: Scene, group: Group, zero: number): { assignments: M
   let cost = 0
   for (const i of group.members) {
     const measurement = setup.measurements[i]
-    const hint = options.hints[i] ?? { component: null, q: null }
+    const hint = options.hints[i] ?? { components: null, q: null }
     if (!measurement) continue
     const where = measurement.positionInvcm - zero - offsetOf(setup, measurement.line)
     let best: { cluster: Cluster; distance: number } | null = null
@@ -122,8 +122,8 @@ function assignGroup(scene: Scene, group: Group, zero: number): { assignments: M
       // at equal distance (pi and sigma in one place) the stronger is named
       if (!best || distance < best.distance - 1e-9 || (distance < best.distance + 1e-9 && cluster.strength > best.cluster.strength)) best = { cluster, distance }
     }
-    if (!best && hint.component === null) cost += MOST_OF_ONE
-    assignments.set(i, hint.component !== null ? [hint.component] : (best?.cluster.components ?? []))
+    if (!best && hint.components === null) cost += MOST_OF_ONE
+    assignments.set(i, hint.components ?? best?.cluster.components ?? [])
     if (!best) continue
     cost += Math.min(best.distance ** 2, MOST_OF_ONE)
     taken.set(best.cluster, (taken.get(best.cluster) ?? 0) + 1)
@@ -202,7 +202,7 @@ export function likelyReadings(setup: FitSetup, options: AssignOptions): Reading
   if (first === undefined || last === undefined || first === last) return []
   const [low, high] = [setup.measurements[first], setup.measurements[last]]
   if (!low || !high) return []
-  const signed = options.hints.some((hint) => hint.component !== null || hint.q === 1 || hint.q === -1)
+  const signed = options.hints.some((hint) => hint.components !== null || hint.q === 1 || hint.q === -1)
   const fields = new Set<number>()
   for (const a of candidates(setup, options, low.line, first)) {
     for (const b of candidates(setup, options, high.line, last)) {
@@ -219,8 +219,8 @@ export function likelyReadings(setup: FitSetup, options: AssignOptions): Reading
 }
 
 function candidates(setup: FitSetup, options: AssignOptions, line: number, measurement: number): number[] {
-  const hint = options.hints[measurement] ?? { component: null, q: null }
-  if (hint.component !== null) return [hint.component]
+  const hint = options.hints[measurement] ?? { components: null, q: null }
+  if (hint.components !== null) return hint.components.slice(0, 1)
   const model = setup.models[line]
   if (!model) return []
   model.at(0)

@@ -11,6 +11,8 @@ import { DEFAULT_TOLERANCE, type ValidityEnd } from '@/lib/atomic/validity'
 export interface FieldFitMeasurement extends FitMeasurement {
   /** Named by hand; absent where the assignment is to be found. */
   component?: { twoMLower: number; twoMUpper: number }
+  /** The peak is the whole unresolved group of this q, its centre of gravity (g_eff), named by hand. */
+  group?: number
   /** Polarisation where known: q, or `sigma` for either sense. */
   q?: number | 'sigma'
 }
@@ -100,11 +102,17 @@ function check({ lines, measurements, scale }: FieldFitInput): void {
 }
 
 function hintOf(one: FieldFitMeasurement, model: LineModel | undefined): PeakHint {
-  if (one.component === undefined) return { component: null, q: one.q ?? null }
+  const components = model?.components ?? []
+  if (one.group !== undefined) {
+    const group = components.flatMap((c, i) => (c.q === one.group && (model?.strengths[i] ?? 0) > 0 ? [i] : []))
+    if (group.length === 0) throw new PhysicsError('no_such_component', `The line has no components of q = ${one.group}.`, 'measurements')
+    return { components: group, q: null }
+  }
+  if (one.component === undefined) return { components: null, q: one.q ?? null }
   const { twoMLower, twoMUpper } = one.component
-  const component = model?.components.findIndex((c) => c.twoMLower === twoMLower && c.twoMUpper === twoMUpper) ?? -1
+  const component = components.findIndex((c) => c.twoMLower === twoMLower && c.twoMUpper === twoMUpper)
   if (component < 0) throw new PhysicsError('no_such_component', `The line has no component m = ${twoMLower / 2} to ${twoMUpper / 2}.`, 'measurements')
-  return { component, q: null }
+  return { components: [component], q: null }
 }
 
 const setupOf = (input: FieldFitInput, model: FieldModel): FitSetup => {
@@ -291,13 +299,13 @@ function fitWith(input: FieldFitInput, model: FieldModel): FieldFit {
   const setup = setupOf(input, model)
   const hints = input.measurements.map((one) => hintOf(one, setup.models[one.line]))
   if (input.measurements.length === 0) return undetermined(model, because('no_positions', 'No position was given.'))
-  const automatic = hints.some((hint) => hint.component === null)
+  const automatic = hints.some((hint) => hint.components === null)
   const short: Reason | null =
     input.measurements.length + priorsOf(setup) < parametersOf(setup)
       ? because('too_few_positions', `${input.measurements.length} position${input.measurements.length === 1 ? '' : 's'} cannot fix ${parametersOf(setup)} unknowns: ${setup.zeros.length === 1 ? 'a zero' : `${setup.zeros.length} zeros`}, the field${setup.scale.unc === 0 ? '' : ' and the scale'}.`)
       : null
   if (!automatic) {
-    const assignments = hints.map((hint) => [hint.component ?? 0])
+    const assignments = hints.map((hint) => hint.components ?? [])
     const { problem, outcome } = solveFrom(setup, assignments, startsOf(input, setup, assignments, model))
     if (!outcome.ok) return undetermined(model, whyOpen(setup, assignments, outcome), ...(short ? [short] : []))
     if (short) return undetermined(model, short)

@@ -152,6 +152,14 @@ describe('automatic assignment', () => {
     }
   })
 
+  it('a whole unresolved group of one q is named as such: its centre moves by g_eff', () => {
+    // g_eff of D2 with the free electron's g_s: Shenstone & Blair (1929)
+    const positions = [-1, 1].map((q) => ({ line: 0, positionInvcm: 16973 + q * 0.46686447719 * 0.5 * 1.1670532173934869, sigmaInvcm: 1e-3, group: q }))
+    const fit = determined(fitField({ lines: [line(sodium, 3)], measurements: positions, model: 'linear' }))
+    expect(fit.fieldTesla).toBeCloseTo(0.5, 9)
+    expect(fit.assignedAutomatically).toBe(false)
+  })
+
   it('two peaks that may be read in several ways say so', () => {
     const positions = [0, 1].map((n) => ({ line: 0, positionInvcm: 16973 + 0.5 * n, sigmaInvcm: 1e-3 }))
     const fit = determined(fitField({ lines: [line(sodium, 3)], measurements: positions, model: 'linear' }))
