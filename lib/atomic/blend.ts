@@ -1,7 +1,7 @@
 import { componentPlaces, shiftLorentz } from '@/lib/atomic/components'
 import { type FieldMultiplet, lineShare } from '@/lib/atomic/field-multiplet'
 import type { TwoJ } from '@/lib/atomic/half'
-import { type MultipletSolution, readStrengths } from '@/lib/atomic/intermediate-grid'
+import type { MultipletSolution } from '@/lib/atomic/intermediate-grid'
 
 export interface LinePair {
   twoJLower: TwoJ
@@ -38,7 +38,6 @@ export interface BlendKernel {
   centre: number
   /** Slope of each q's centroid in the linear model, Lorentz units, at q + rank. */
   linearSlopes: number[]
-  strengths: Float64Array
 }
 
 export function blendKernel(multiplet: FieldMultiplet, lines: LinePair[]): BlendKernel {
@@ -61,17 +60,16 @@ export function blendKernel(multiplet: FieldMultiplet, lines: LinePair[]): Blend
   for (let i = 0; i < multiplet.count; i += 1) {
     if (lines.some((line) => line.twoJLower === multiplet.nominalTwoJLower[i] && line.twoJUpper === multiplet.nominalTwoJUpper[i])) member[i] = 1
   }
-  return { multiplet, lines, member, centre, linearSlopes, strengths: new Float64Array(multiplet.count) }
+  return { multiplet, lines, member, centre, linearSlopes }
 }
 
 /**
  * How far the linear law misplaces the centre of gravity of an unresolved blend, the worst q: cm^-1, and over the larger of the largest
  * linear displacement and 0.01 mu_B B. Strengths mix first, so this may fail at fields where positions and the sums of strengths are right:
- * He I 1083 nm, Socas-Navarro, Trujillo Bueno & Landi Degl'Innocenti (2004), astro-ph/0409005. The terms are solved at x already.
+ * He I 1083 nm, Socas-Navarro, Trujillo Bueno & Landi Degl'Innocenti (2004), astro-ph/0409005. The terms are solved at x, and `strengths` are the multiplet's there.
  */
-export function blendError(kernel: BlendKernel, room: MultipletSolution, x: number): { errorInvcm: number; relativeError: number } {
-  const { multiplet, member, strengths, linearSlopes, centre } = kernel
-  readStrengths(multiplet, room, strengths, 0, null)
+export function blendError(kernel: BlendKernel, room: MultipletSolution, strengths: Float64Array, x: number): { errorInvcm: number; relativeError: number } {
+  const { multiplet, member, linearSlopes, centre } = kernel
   const size = linearSlopes.length
   const [sums, weights] = [new Float64Array(size), new Float64Array(size)]
   for (let i = 0; i < multiplet.count; i += 1) {

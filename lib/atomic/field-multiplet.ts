@@ -1,5 +1,7 @@
-import type { FieldBlock, FieldTerm } from '@/lib/atomic/field-term'
+import { type FieldBlock, type FieldOptions, type FieldTerm, fieldTerm, termFingerprint } from '@/lib/atomic/field-term'
 import { isTriangle, type TwoJ } from '@/lib/atomic/half'
+import type { TermLevels } from '@/lib/atomic/mixing'
+import { remembering } from '@/lib/atomic/remembering'
 import { type Kind, rankOf } from '@/lib/atomic/rules'
 import { hasLsDipole, lsDipoleAmplitude } from '@/lib/atomic/term-coupling'
 import { sixJ } from '@/lib/atomic/wigner'
@@ -36,6 +38,8 @@ export interface FieldMultiplet {
   /** E_Ju - E_Jl at zero field, cm^-1. */
   centresInvcm: Float64Array
   links: BlockLink[]
+  /** Which link each component belongs to. */
+  linkOf: Int32Array
   /** Sum of all squared amplitudes at any field: 2S + 1, a third of it in each q. */
   norm: number
   /** Why strengths cannot be had; null where they can. */
@@ -96,7 +100,7 @@ export function fieldMultiplet(lower: FieldTerm, upper: FieldTerm, kind: Kind = 
   const empty = { q: new Int8Array(0), twoMLower: new Int16Array(0), twoMUpper: new Int16Array(0), nominalTwoJLower: new Int16Array(0), nominalTwoJUpper: new Int16Array(0) }
   const multiplet: FieldMultiplet = {
     kind, rank: rankOf(kind), lower, upper, count: 0, ...empty, twoJLower: [], twoJUpper: [], lowerState: new Int32Array(0), upperState: new Int32Array(0),
-    centresInvcm: new Float64Array(0), links: [], norm: lower.twoS + 1, noAmplitude: whyNoAmplitude(kind, lower, upper),
+    centresInvcm: new Float64Array(0), links: [], linkOf: new Int32Array(0), norm: lower.twoS + 1, noAmplitude: whyNoAmplitude(kind, lower, upper),
   }
   const found = findAll(multiplet)
   const energyOf = (term: FieldTerm, twoJ: TwoJ) => term.levels.find((level) => level.twoJ === twoJ)?.energyInvcm ?? 0
@@ -110,12 +114,21 @@ export function fieldMultiplet(lower: FieldTerm, upper: FieldTerm, kind: Kind = 
   multiplet.twoJUpper = found.map((c) => (c.upper.coincides[c.kUpper] ? null : nominal(c.upper, c.kUpper)))
   multiplet.lowerState = Int32Array.from(found, (c) => c.lower.firstState + c.kLower)
   multiplet.upperState = Int32Array.from(found, (c) => c.upper.firstState + c.kUpper)
+  multiplet.linkOf = Int32Array.from(found, (c) => c.link)
   multiplet.centresInvcm = Float64Array.from(found, (c) => energyOf(upper, nominal(c.upper, c.kUpper)) - energyOf(lower, nominal(c.lower, c.kLower)))
   found.forEach((c, i) => {
     const link = multiplet.links[c.link]
     if (link) link.components[c.kUpper * c.lower.n + c.kLower] = i
   })
   return multiplet
+}
+
+const multiplets = remembering<FieldMultiplet>(1000)
+
+/** `fieldMultiplet` of two lists of levels, remembered, since a slider or a fit asks the same terms again and again. */
+export function multipletOfTerms(lower: TermLevels, upper: TermLevels, kind: Kind = 'E1', options: FieldOptions = {}): FieldMultiplet {
+  const key = `${kind}|${options.gS}|${options.gL}|${termFingerprint(lower)}|${termFingerprint(upper)}`
+  return multiplets(key, () => fieldMultiplet(fieldTerm(lower, options), fieldTerm(upper, options), kind))
 }
 
 /**

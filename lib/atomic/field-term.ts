@@ -116,6 +116,9 @@ export function fieldTerm(term: TermLevels, { gS = G_S, gL = 1 }: FieldOptions =
   return made
 }
 
+/** A text that is the same exactly when all that a term's states depend on is; numbers print in full. */
+export const termFingerprint = (term: TermLevels): string => `${term.twoS},${term.l}${term.levels.map((level) => `;${level.twoJ},${level.energyInvcm},${level.g}`).join('')}`
+
 /** The same term with the LS g_J of every level: `g_values=ls`. */
 export const withLsG = (term: TermLevels, options: FieldOptions = {}): TermLevels => ({
   ...term,

@@ -3,7 +3,6 @@ import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 import { type FieldMultiplet, lineNormalisation } from '@/lib/atomic/field-multiplet'
 import type { TwoJ } from '@/lib/atomic/half'
 import { intermediateSublevels, type TermState } from '@/lib/atomic/intermediate'
-import { lsDipoleAmplitude } from '@/lib/atomic/term-coupling'
 import { plusZero } from '@/lib/units/number'
 
 /** One component of a multiplet in a field. */
@@ -22,41 +21,41 @@ export interface MultipletComponent {
 }
 
 /** Squared sum over J_u, J_l of both states' amplitudes and the LS dipole amplitudes between them: interference included. */
-function strengthOf(multiplet: FieldMultiplet, lower: TermState, upper: TermState): number | null {
+function strengthOf(multiplet: FieldMultiplet, dipole: Float64Array, lower: TermState, upper: TermState): number | null {
   if (multiplet.noAmplitude !== null) return null
   let amplitude = 0
-  for (const u of upper.amplitudes) {
-    for (const l of lower.amplitudes) {
-      const ends = [{ l: multiplet.lower.l, twoJ: l.twoJ, twoM: lower.twoM }, { l: multiplet.upper.l, twoJ: u.twoJ, twoM: upper.twoM }] as const
-      amplitude += u.amplitude * l.amplitude * lsDipoleAmplitude(multiplet.lower.twoS, ...ends)
-    }
-  }
+  upper.amplitudes.forEach((u, i) => lower.amplitudes.forEach((l, j) => (amplitude += u.amplitude * l.amplitude * (dipole[i * lower.amplitudes.length + j] ?? 0))))
   return (amplitude * amplitude) / multiplet.norm
 }
+
+function componentAt(multiplet: FieldMultiplet, i: number, states: { lower: TermState[]; upper: TermState[] }): MultipletComponent {
+  const [lower, upper] = [states.lower[multiplet.lowerState[i] ?? 0], states.upper[multiplet.upperState[i] ?? 0]]
+  const link = multiplet.links[multiplet.linkOf[i] ?? 0]
+  if (!lower || !upper || !link) throw new RangeError('a component without its states')
+  const [q, centre] = [multiplet.q[i] ?? 0, multiplet.centresInvcm[i] ?? 0]
+  const shift = plusZero(upper.shiftInvcm - lower.shiftInvcm)
+  return {
+    q,
+    polarisation: polarisationOf(q),
+    lower,
+    upper,
+    centreInvcm: centre,
+    shiftInvcm: shift,
+    wavenumberInvcm: centre + shift,
+    derivativeInvcmPerTesla: plusZero(MU_B_OVER_HC_INVCM_PER_T * (upper.slope - lower.slope)),
+    strength: strengthOf(multiplet, link.dipole, lower, upper),
+  }
+}
+
+const statesAt = ({ lower, upper }: FieldMultiplet, fieldTesla: number) => ({ lower: intermediateSublevels(lower, fieldTesla), upper: intermediateSublevels(upper, fieldTesla) })
 
 /**
  * All components of a multiplet at a field (T), in the fixed order (q, m_lower, J_lower, J_upper). Strengths follow the eigenvectors:
  * Condon & Shortley, ch. XVI. This is the specification of `multipletGrid`, which is for bulk.
  */
 export function multipletComponents(multiplet: FieldMultiplet, fieldTesla: number): MultipletComponent[] {
-  const [lowerStates, upperStates] = [intermediateSublevels(multiplet.lower, fieldTesla), intermediateSublevels(multiplet.upper, fieldTesla)]
-  return Array.from({ length: multiplet.count }, (_, i) => {
-    const [lower, upper] = [lowerStates[multiplet.lowerState[i] ?? 0], upperStates[multiplet.upperState[i] ?? 0]]
-    if (!lower || !upper) throw new RangeError('a component without its states')
-    const [q, centre] = [multiplet.q[i] ?? 0, multiplet.centresInvcm[i] ?? 0]
-    const shift = plusZero(upper.shiftInvcm - lower.shiftInvcm)
-    return {
-      q,
-      polarisation: polarisationOf(q),
-      lower,
-      upper,
-      centreInvcm: centre,
-      shiftInvcm: shift,
-      wavenumberInvcm: centre + shift,
-      derivativeInvcmPerTesla: plusZero(MU_B_OVER_HC_INVCM_PER_T * (upper.slope - lower.slope)),
-      strength: strengthOf(multiplet, lower, upper),
-    }
-  })
+  const states = statesAt(multiplet, fieldTesla)
+  return Array.from({ length: multiplet.count }, (_, i) => componentAt(multiplet, i, states))
 }
 
 /** A component of one line in the intermediate model, with viewing angle. */
@@ -76,8 +75,10 @@ export interface IntermediateComponent extends MultipletComponent {
 export function intermediateLine(multiplet: FieldMultiplet, line: { twoJLower: TwoJ; twoJUpper: TwoJ }, fieldTesla: number, thetaDeg: number | null = null): IntermediateComponent[] {
   const factor = lineNormalisation(multiplet, line.twoJLower, line.twoJUpper)
   const lorentzInvcm = MU_B_OVER_HC_INVCM_PER_T * fieldTesla
-  return multipletComponents(multiplet, fieldTesla)
-    .filter((component) => component.lower.nominalTwoJ === line.twoJLower && component.upper.nominalTwoJ === line.twoJUpper)
+  const states = statesAt(multiplet, fieldTesla)
+  const own = Array.from({ length: multiplet.count }, (_, i) => i).filter((i) => multiplet.nominalTwoJLower[i] === line.twoJLower && multiplet.nominalTwoJUpper[i] === line.twoJUpper)
+  return own
+    .map((i) => componentAt(multiplet, i, states))
     .map((component) => {
       const strength = component.strength === null || factor === null ? null : component.strength * factor
       const factors = angularFactors(multiplet.kind, component.q, thetaDeg)

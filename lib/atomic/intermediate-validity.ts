@@ -6,7 +6,7 @@ import { type FieldMultiplet, fieldMultiplet, lineNormalisation } from '@/lib/at
 import { solveTerm, type TermSolution, termSolution } from '@/lib/atomic/field-solver'
 import { type FieldTerm, fieldTerm } from '@/lib/atomic/field-term'
 import { multipletSolution, type MultipletSolution, readStrengths } from '@/lib/atomic/intermediate-grid'
-import { missingJ } from '@/lib/atomic/mixing'
+import { missingJ, type TermLevels } from '@/lib/atomic/mixing'
 import { remembering } from '@/lib/atomic/remembering'
 import type { Kind } from '@/lib/atomic/rules'
 import { type AspectValidity, DEFAULT_TOLERANCE, fingerprint, levelValidity, type LevelValidity, type LineValidity, lineValidity, type ValidityEnd } from '@/lib/atomic/validity'
@@ -37,9 +37,11 @@ export interface LinearLawInput {
 
 type Factors = { gS: number; gL: number }
 
-/** The end's term with the g in force for its own level; null where the term is incomplete or unknown, so that it cannot be diagonalised. */
-function readyTerm(end: ValidityEnd, factors: Factors): FieldTerm | null {
-  if (end.term === null || missingJ(end.term).length > 0) return null
+/** Whether the end's term is known and complete, so that it can be diagonalised. */
+const complete = (end: ValidityEnd): end is ValidityEnd & { term: TermLevels } => end.term !== null && missingJ(end.term).length === 0
+
+/** The end's term with the g in force for its own level. */
+function readyTerm(end: ValidityEnd & { term: TermLevels }, factors: Factors): FieldTerm {
   return fieldTerm({ ...end.term, levels: end.term.levels.map((level) => (level.twoJ === end.twoJ ? { ...level, g: end.g } : level)) }, factors)
 }
 
@@ -61,8 +63,9 @@ function largestBeyond(level: Pick<ReadyLevel, 'room' | 'states'>): number {
   return largest
 }
 
-function readyLevel(end: ValidityEnd, term: FieldTerm, tolerance: number, factors: Factors): ReadyLevel {
+function readyLevel(end: ValidityEnd & { term: TermLevels }, tolerance: number, factors: Factors): ReadyLevel {
   return levelMemory(`${factors.gS}|${factors.gL}|${tolerance}|${fingerprint(end)}`, () => {
+    const term = readyTerm(end, factors)
     const states = term.blocks.flatMap((block) => [...block.own].flatMap((own, k) => (block.twoJs[own] === end.twoJ ? [block.firstState + k] : [])))
     const level: ReadyLevel = { term, room: termSolution(term), states, limit: null }
     const error = (x: number) => {
@@ -79,9 +82,8 @@ function readyLevel(end: ValidityEnd, term: FieldTerm, tolerance: number, factor
  * complete. As `levelValidity`, but without the approximations of second order.
  */
 export function linearLawLevelValidity(end: ValidityEnd, fieldTesla: number, { tolerance = DEFAULT_TOLERANCE, gS = G_S, gL = 1 }: { tolerance?: number; gS?: number; gL?: number } = {}): LevelValidity {
-  const term = readyTerm(end, { gS, gL })
-  if (term === null) return levelValidity(end, fieldTesla, { tolerance, gS })
-  const ready = readyLevel(end, term, tolerance, { gS, gL })
+  if (!complete(end)) return levelValidity(end, fieldTesla, { tolerance, gS })
+  const ready = readyLevel(end, tolerance, { gS, gL })
   const x = MU_B_OVER_HC_INVCM_PER_T * fieldTesla
   solveTerm(ready.term, x, ready.room)
   const error = largestBeyond(ready)
@@ -119,7 +121,7 @@ interface Errors {
   blend: number | null
 }
 
-const lineMemory = remembering<ReadyLine>()
+const lineMemory = remembering<ReadyLine>(1000)
 
 /** All three errors at x = mu_B B; the terms are solved once for them. */
 function errorsAt(line: ReadyLine, x: number): Errors {
@@ -137,7 +139,7 @@ function errorsAt(line: ReadyLine, x: number): Errors {
   for (const c of components) {
     if (c.largest > 0) strength = Math.max(strength, Math.abs((line.strengths[c.index] as number) * line.normalisation - c.strength) / c.largest)
   }
-  const blend = line.blend === null ? null : blendError(line.blend, room, x)
+  const blend = line.blend === null ? null : blendError(line.blend, room, line.strengths, x)
   return { positionInvcm: position, position: relative, strength, blendInvcm: blend?.errorInvcm ?? null, blend: blend?.relativeError ?? null }
 }
 
@@ -148,10 +150,11 @@ function componentsOf(multiplet: FieldMultiplet, pair: LinePair): ReadyLine['com
   return own.map(({ index, q, strength }) => ({ index, strength, largest: Math.max(0, ...own.filter((c) => c.q === q).map((c) => c.strength)) }))
 }
 
-function readyLine(input: LinearLawInput, lower: FieldTerm, upper: FieldTerm, tolerance: number, factors: Factors): ReadyLine {
+function readyLine(input: LinearLawInput, low: ValidityEnd & { term: TermLevels }, high: ValidityEnd & { term: TermLevels }, tolerance: number, factors: Factors): ReadyLine {
   const resolvingPower = input.blendResolvingPower ?? BLEND_RESOLVING_POWER
   const key = `${input.kind}|${factors.gS}|${factors.gL}|${tolerance}|${resolvingPower}|${fingerprint(input.lower)}|${fingerprint(input.upper)}`
   return lineMemory(key, () => {
+    const [lower, upper] = [readyLevel(low, tolerance, factors).term, readyLevel(high, tolerance, factors).term]
     const multiplet = fieldMultiplet(lower, upper, input.kind)
     const pair = { twoJLower: input.lower.twoJ, twoJUpper: input.upper.twoJ }
     const lines = blendOf(multiplet, pair, resolvingPower)
@@ -207,8 +210,8 @@ export function linearLawValidity(input: LinearLawInput): LinearLawValidity {
   const { tolerance = DEFAULT_TOLERANCE, gS = G_S, gL = 1 } = input
   const options = { tolerance, gS, gL }
   const levels = { lower: linearLawLevelValidity(input.lower, input.fieldTesla, options), upper: linearLawLevelValidity(input.upper, input.fieldTesla, options) }
-  const [lower, upper] = [readyTerm(input.lower, options), readyTerm(input.upper, options)]
-  if (lower === null || upper === null) {
+  const { lower, upper } = input
+  if (!complete(lower) || !complete(upper)) {
     const perturbed = lineValidity({ ...input, tolerance, gS })
     const reason = perturbed.positions.reason ?? perturbed.strengths.reason
     return { ...perturbed, levels, blend: { ...aspect(null, null, null, tolerance, reason), lines: [] } }
@@ -216,7 +219,7 @@ export function linearLawValidity(input: LinearLawInput): LinearLawValidity {
   const line = readyLine(input, lower, upper, tolerance, options)
   const errors = errorsAt(line, MU_B_OVER_HC_INVCM_PER_T * input.fieldTesla)
   // terms of one level each: nothing is mixed in, so strengths stay whatever gave them
-  const unmixed = lower.levels.length === 1 && upper.levels.length === 1
+  const unmixed = lower.term.levels.length === 1 && upper.term.levels.length === 1
   const noAmplitude = line.multiplet.noAmplitude ?? 'the line has no strength in LS coupling at zero field'
   const strength = unmixed ? 0 : errors.strength
   const blend = unmixed ? 0 : errors.blend

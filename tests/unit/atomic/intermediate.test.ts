@@ -12,6 +12,7 @@ import { intermediateLine, multipletComponents } from '@/lib/atomic/intermediate
 import { symmetricEigen } from '@/lib/atomic/jacobi'
 import { landeG } from '@/lib/atomic/lande'
 import type { TermLevels } from '@/lib/atomic/mixing'
+import { termGrid, termStateNames } from '@/lib/atomic/term-grid'
 import { solveTridiagonal } from '@/lib/atomic/tridiagonal'
 
 const term = (twoS: number, l: number, energies: number[], g: number | null = null): TermLevels => ({
@@ -147,6 +148,19 @@ describe('a term in a field', () => {
       })
       expect(states.filter((state) => state.twoM === 0).map((state) => state.twoJ)).toEqual([0, null, null])
     }
+  })
+
+  it('names and energies over a grid are those of the single states', () => {
+    const ready = fieldTerm(iron.lower)
+    const fields = [0, 0.7, 300]
+    const [names, grid] = [termStateNames(ready), termGrid(ready, fields)]
+    fields.forEach((tesla, row) => {
+      intermediateSublevels(ready, tesla).forEach((state, i) => {
+        expect([names.twoM[i], names.twoJ[i], names.mL[i], names.twoMS[i]]).toEqual([state.twoM, state.twoJ, state.mL, state.twoMS])
+        expect(Math.abs((grid.energiesInvcm[row * grid.states + i] ?? Number.NaN) - state.energyInvcm)).toBeLessThan(1e-11)
+        expect(Math.abs((grid.derivatives[row * grid.states + i] ?? Number.NaN) - state.derivativeInvcmPerTesla)).toBeLessThan(1e-12)
+      })
+    })
   })
 
   it('a reversed field turns m into -m', () => {
