@@ -62,7 +62,7 @@ describe('the Voigt profile', () => {
     expect(faddeeva(0, 1).real).toBeCloseTo(0.427584, 6)
     expect(faddeeva(1, 1).real).toBeCloseTo(0.304744, 6)
     expect(faddeeva(1, 1).imaginary).toBeCloseTo(0.208219, 6)
-    for (const [x, y] of [[0.125, 0.3], [0.375, 1e-6], [3, 2 * Math.PI], [Math.sqrt(2499.99), 0.1]] as const) {
+    for (const [x, y] of [[0.125, 0.3], [0.375, 1e-6], [3, 2 * Math.PI], [Math.sqrt(149.99), 0.1]] as const) {
       const [here, there] = [faddeeva(x - 1e-13, y - 1e-14), faddeeva(x + 1e-13, y + 1e-14)]
       expect(Math.abs(here.real / there.real - 1)).toBeLessThan(1e-11)
     }
