@@ -85,6 +85,31 @@ describe('lines between two terms in a field of any strength (vectors 06)', () =
   it('are there', () => expect(cases).toHaveLength(25))
 })
 
+interface AdoptedCase {
+  lines: string
+  B: number
+  lower: { twoS: number; L: number; levels: [twoJ: number, energy: number, g: number][] }
+  upper: AdoptedCase['lower']
+  components: [twoMLower: number, kLower: number, twoMUpper: number, kUpper: number, wavenumber: number, strength: number, derivative: number][]
+}
+
+describe('lines of terms with g_J of their own (adopted g on the diagonal)', () => {
+  const adopted = ({ twoS, L, levels }: AdoptedCase['lower']) => fieldTerm({ twoS, l: L, levels: levels.map(([twoJ, energyInvcm, g]) => ({ twoJ, energyInvcm, g: twoJ === 0 ? null : g })) })
+  it.each(readCases<AdoptedCase>('adopted-g-lines.json'))('$lines at $B T', ({ lower, upper, B, components }) => {
+    const multiplet = fieldMultiplet(adopted(lower), adopted(upper))
+    const found = multipletComponents(multiplet, B)
+    const grid = multipletGrid(multiplet, [B], { strengths: true, derivatives: true })
+    expect(found).toHaveLength(components.length)
+    found.forEach((c, i) => {
+      const wanted = components.find((row) => row[0] === c.lower.twoM && row[1] === c.lower.k && row[2] === c.upper.twoM && row[3] === c.upper.k)
+      // header: 1e-9 cm^-1, 1e-10, 1e-9 cm^-1/T
+      for (const wavenumber of [c.wavenumberInvcm, grid.values[i] ?? Number.NaN]) expect(Math.abs(wavenumber - (wanted?.[4] ?? Number.NaN))).toBeLessThanOrEqual(1e-9)
+      for (const strength of [c.strength ?? Number.NaN, grid.strengths?.[i] ?? Number.NaN]) expect(Math.abs(strength - (wanted?.[5] ?? Number.NaN))).toBeLessThanOrEqual(1e-10)
+      for (const derivative of [c.derivativeInvcmPerTesla, grid.derivatives?.[i] ?? Number.NaN]) expect(Math.abs(derivative - (wanted?.[6] ?? Number.NaN))).toBeLessThanOrEqual(1e-9)
+    })
+  })
+})
+
 describe('Li I 670.8 nm from the anomalous pattern to the triplet', () => {
   const ground = { twoJ: 1, energyInvcm: findLevel('Li I', '2s', '2S', '1/2').energy_invcm, g: null }
   const p = ['1/2', '3/2'].map((j, i) => ({ twoJ: 2 * i + 1, energyInvcm: findLevel('Li I', '2p', '2P', j).energy_invcm, g: null }))

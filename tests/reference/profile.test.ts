@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { GHZ_PER_INVCM } from '@/lib/atomic/constants'
+import { faddeeva } from '@/lib/atomic/faddeeva'
 import { dopplerRatio, lineWidths, voigt, voigtFwhm } from '@/lib/atomic/profile'
 import { stokesProfiles } from '@/lib/atomic/profile-stokes'
 import { readCases } from './read'
@@ -49,6 +50,15 @@ describe('Doppler widths (vectors 09)', () => {
     expect(relative(lineWidths(of).gaussianFwhm, row['fwhm_cm-1'])).toBeLessThanOrEqual(1e-13)
     expect(relative(lineWidths(of).gaussianFwhm * GHZ_PER_INVCM, row.fwhm_GHz)).toBeLessThanOrEqual(1e-13)
     expect(relative(dopplerRatio(of) * row.lambda_nm, row.fwhm_nm)).toBeLessThanOrEqual(1e-13)
+  })
+})
+
+describe('the Faddeeva function (50-digit values)', () => {
+  it.each(readCases<[number, number, number, number]>('faddeeva.json'))('w(%f + i %f)', (x, y, real, imaginary) => {
+    const w = faddeeva(x, y)
+    // header: 1e-13 of the real part, 1e-14 of |w|
+    expect(relative(w.real, real)).toBeLessThanOrEqual(1e-13)
+    expect(Math.abs(w.imaginary - imaginary)).toBeLessThanOrEqual(1e-14 * Math.hypot(real, imaginary))
   })
 })
 
