@@ -162,7 +162,7 @@ function limitAtZero(block: HyperfineBlock, width: number): Eigensystem {
 }
 
 /** As `VANISHING_X` of LS terms, in tesla: squares of smaller fields underflow. */
-const VANISHING_TESLA = 1e-100
+export const VANISHING_TESLA = 1e-100
 
 /** The states of one m_F at a field (T), upwards. */
 export function hyperfineBlockStates(ready: HyperfineReady, block: HyperfineBlock, fieldTesla: number): HyperfineState[] {
@@ -202,17 +202,4 @@ export function hyperfineBlockStates(ready: HyperfineReady, block: HyperfineBloc
  */
 export function hyperfineSublevels(ready: HyperfineReady, fieldTesla: number): HyperfineState[] {
   return ready.blocks.flatMap((block) => hyperfineBlockStates(ready, block, fieldTesla))
-}
-
-/** `hyperfineSublevels` over a grid of fields (T): flat [field][state] arrays of energies (MHz) and derivatives (MHz/T). */
-export function hyperfineGrid(ready: HyperfineReady, fieldsTesla: ArrayLike<number>): { states: number; energiesMhz: Float64Array; derivatives: Float64Array } {
-  const states = (ready.level.twoJ + 1) * (ready.level.twoI + 1)
-  const [energiesMhz, derivatives] = [new Float64Array(states * fieldsTesla.length), new Float64Array(states * fieldsTesla.length)]
-  for (let row = 0; row < fieldsTesla.length; row += 1) {
-    hyperfineSublevels(ready, fieldsTesla[row] ?? 0).forEach((state, i) => {
-      energiesMhz[row * states + i] = state.energyMhz
-      derivatives[row * states + i] = state.derivativeMhzPerTesla
-    })
-  }
-  return { states, energiesMhz, derivatives }
 }

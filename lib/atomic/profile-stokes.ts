@@ -55,12 +55,12 @@ function passes(analyser: Analyser): { i: number; q: number; v: number } {
   return { i: 0.5, q: 0, v: analyser.kind === 'counterclockwise' ? 0.5 : -0.5 }
 }
 
-/** Profiles farther than this many widths from their centre are not left out: the Lorentzian wing is far-reaching; Gaussians end here. */
+/** A pure Gaussian is nothing beyond this many full widths; a profile with a Lorentzian wing reaches everywhere. */
 const GAUSSIAN_REACH = 4
 
 /** Adds amount x Voigt profile around a centre to an array over a grid that rises. */
 export function addVoigt(grid: Float64Array, centre: number, amount: number, widths: Widths, into: Float64Array): void {
-  // 2^-(2 x 4)^2 = 5e-20 of the peak
+  // there it is 2^-64 = 5e-20 of its peak
   const reach = widths.lorentzianFwhm === 0 ? GAUSSIAN_REACH * widths.gaussianFwhm : Number.POSITIVE_INFINITY
   for (let i = 0; i < grid.length; i += 1) {
     const distance = (grid[i] as number) - centre

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { hyperfineFeatures } from '@/lib/atomic/crossings'
-import { hyperfineGrid, hyperfineLevel, hyperfineSublevels, MU_B_OVER_H_MHZ_PER_T } from '@/lib/atomic/hyperfine'
+import { hyperfineLevel, hyperfineSublevels, MU_B_OVER_H_MHZ_PER_T } from '@/lib/atomic/hyperfine'
+import { hyperfineGrid } from '@/lib/atomic/hyperfine-grid'
 import { readCases } from './read'
 
 interface Case {

@@ -4,6 +4,7 @@ import { differenceFeatures, hyperfineFeatures, termFeatures } from '@/lib/atomi
 import { PhysicsError } from '@/lib/atomic/errors'
 import { fieldTerm } from '@/lib/atomic/field-term'
 import { hyperfineEnergy, type HyperfineLevel, hyperfineLevel, hyperfineSublevels } from '@/lib/atomic/hyperfine'
+import { hyperfineGrid } from '@/lib/atomic/hyperfine-grid'
 import { hyperfineComponents, isotopeMixture } from '@/lib/atomic/hyperfine-lines'
 import { sixJ } from '@/lib/atomic/wigner'
 
@@ -33,6 +34,20 @@ describe('hyperfine structure', () => {
       const curvature = ((high?.derivativeMhzPerTesla ?? 0) - (low?.derivativeMhzPerTesla ?? 0)) / (2 * step)
       expect(Math.abs(state.curvatureMhzPerTesla2 - curvature)).toBeLessThan(1e-4 * Math.abs(curvature) + 1)
     })
+  })
+
+  it('over a grid it is that of the single fields, with a quadrupole and without', () => {
+    for (const level of [ground, upper, { ...upper, twoJ: 8, twoI: 7 }, { ...upper, bMhz: 0 }]) {
+      const ready = hyperfineLevel(level)
+      const fields = [0, 1e-5, 0.01, 2]
+      const { energiesMhz, derivatives, states } = hyperfineGrid(ready, fields)
+      fields.forEach((tesla, row) => {
+        hyperfineSublevels(ready, tesla).forEach((state, i) => {
+          expect(Math.abs((energiesMhz[row * states + i] ?? Number.NaN) - state.energyMhz)).toBeLessThan(1e-9)
+          expect(Math.abs((derivatives[row * states + i] ?? Number.NaN) - state.derivativeMhzPerTesla)).toBeLessThan(1e-7)
+        })
+      })
+    }
   })
 
   it('g_F at zero field is that of the vector model', () => {
