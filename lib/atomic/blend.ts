@@ -32,8 +32,8 @@ export function blendOf(multiplet: FieldMultiplet, line: LinePair, resolvingPowe
 export interface BlendKernel {
   multiplet: FieldMultiplet
   lines: LinePair[]
-  /** 1 for components of the blend. */
-  member: Uint8Array
+  /** Indices of the blend's components. */
+  members: Int32Array
   /** Centre of gravity at zero field, cm^-1. */
   centre: number
   /** Slope of each q's centroid in the linear model, Lorentz units, at q + rank. */
@@ -56,24 +56,20 @@ export function blendKernel(multiplet: FieldMultiplet, lines: LinePair[]): Blend
       linearSlopes[at] = (linearSlopes[at] ?? 0) + weight * place.strength * shiftLorentz(gl, place.twoMLower, gu, place.twoMUpper)
     }
   })
-  const member = new Uint8Array(multiplet.count)
-  for (let i = 0; i < multiplet.count; i += 1) {
-    if (lines.some((line) => line.twoJLower === multiplet.nominalTwoJLower[i] && line.twoJUpper === multiplet.nominalTwoJUpper[i])) member[i] = 1
-  }
-  return { multiplet, lines, member, centre, linearSlopes }
+  const members = Array.from({ length: multiplet.count }, (_, i) => i).filter((i) => lines.some((line) => line.twoJLower === multiplet.nominalTwoJLower[i] && line.twoJUpper === multiplet.nominalTwoJUpper[i]))
+  return { multiplet, lines, members: Int32Array.from(members), centre, linearSlopes }
 }
 
 /**
  * How far the linear law misplaces the centre of gravity of an unresolved blend, the worst q: cm^-1, and over the larger of the largest
  * linear displacement and 0.01 mu_B B. Strengths mix first, so this may fail at fields where positions and the sums of strengths are right:
- * He I 1083 nm, Socas-Navarro, Trujillo Bueno & Landi Degl'Innocenti (2004), astro-ph/0409005. The terms are solved at x, and `strengths` are the multiplet's there.
+ * He I 1083 nm, Socas-Navarro, Trujillo Bueno & Landi Degl'Innocenti (2004), astro-ph/0409005. The terms are solved at x, and `strengths` holds those of the members there.
  */
 export function blendError(kernel: BlendKernel, room: MultipletSolution, strengths: Float64Array, x: number): { errorInvcm: number; relativeError: number } {
-  const { multiplet, member, linearSlopes, centre } = kernel
+  const { multiplet, members, linearSlopes, centre } = kernel
   const size = linearSlopes.length
   const [sums, weights] = [new Float64Array(size), new Float64Array(size)]
-  for (let i = 0; i < multiplet.count; i += 1) {
-    if (member[i] === 0) continue
+  for (const i of members) {
     const at = (multiplet.q[i] as number) + multiplet.rank
     const shift = (room.upper.shifts[multiplet.upperState[i] as number] as number) - (room.lower.shifts[multiplet.lowerState[i] as number] as number)
     const strength = strengths[i] as number

@@ -123,6 +123,7 @@ export function fieldMultiplet(lower: FieldTerm, upper: FieldTerm, kind: Kind = 
   return multiplet
 }
 
+const shares = remembering<number>(20_000)
 const multiplets = remembering<FieldMultiplet>(1000)
 
 /** `fieldMultiplet` of two lists of levels, remembered, since a slider or a fit asks the same terms again and again. */
@@ -137,7 +138,8 @@ export function multipletOfTerms(lower: TermLevels, upper: TermLevels, kind: Kin
  */
 export function lineShare({ lower, upper, noAmplitude }: FieldMultiplet, twoJLower: TwoJ, twoJUpper: TwoJ): number {
   if (noAmplitude !== null || !isTriangle(twoJLower, 2, twoJUpper)) return 0
-  return ((twoJLower + 1) * (twoJUpper + 1) * sixJ(2 * lower.l, twoJLower, lower.twoS, twoJUpper, 2 * upper.l, 2) ** 2) / (lower.twoS + 1)
+  const key = `${lower.twoS} ${lower.l} ${twoJLower} ${upper.l} ${twoJUpper}`
+  return shares(key, () => ((twoJLower + 1) * (twoJUpper + 1) * sixJ(2 * lower.l, twoJLower, lower.twoS, twoJUpper, 2 * upper.l, 2) ** 2) / (lower.twoS + 1))
 }
 
 /**

@@ -74,6 +74,27 @@ export function readStrengths(multiplet: FieldMultiplet, room: MultipletSolution
   }
 }
 
+/** Strengths (all of the multiplet sum to 1) of some components of a solved multiplet, each at its own place; where few are needed. */
+export function readSomeStrengths(multiplet: FieldMultiplet, room: MultipletSolution, components: ArrayLike<number>, strengths: Float64Array): void {
+  const low = room.lower.vectors
+  const high = room.upper.vectors
+  for (let c = 0; c < components.length; c += 1) {
+    const index = components[c] as number
+    const { lower, upper, dipole } = multiplet.links[multiplet.linkOf[index] as number] as BlockLink
+    const rowLow = lower.firstVector + ((multiplet.lowerState[index] as number) - lower.firstState) * lower.n
+    const rowHigh = upper.firstVector + ((multiplet.upperState[index] as number) - upper.firstState) * upper.n
+    const offset = ((upper.twoJs[0] as number) - (lower.twoJs[0] as number)) / 2
+    let amplitude = 0
+    for (let i = 0; i < upper.n; i += 1) {
+      const to = Math.min(lower.n - 1, i + offset + 1)
+      let sum = 0
+      for (let j = Math.max(0, i + offset - 1); j <= to; j += 1) sum += (dipole[i * lower.n + j] as number) * (low[rowLow + j] as number)
+      amplitude += (high[rowHigh + i] as number) * sum
+    }
+    strengths[index] = (amplitude * amplitude) / multiplet.norm
+  }
+}
+
 export interface GridOptions {
   /** Wavenumbers, or shifts from each component's line at zero field; cm^-1. */
   quantity?: 'wavenumber' | 'shift'

@@ -2,10 +2,10 @@ import { BLEND_RESOLVING_POWER, type BlendKernel, blendError, blendKernel, blend
 import { componentStrength, shiftLorentz } from '@/lib/atomic/components'
 import { G_S, MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 import { firstPassed } from '@/lib/atomic/field-limit'
-import { type FieldMultiplet, fieldMultiplet, lineNormalisation } from '@/lib/atomic/field-multiplet'
+import { type FieldMultiplet, lineNormalisation, multipletOfTerms } from '@/lib/atomic/field-multiplet'
 import { solveTerm, type TermSolution, termSolution } from '@/lib/atomic/field-solver'
 import { type FieldTerm, fieldTerm } from '@/lib/atomic/field-term'
-import { multipletSolution, type MultipletSolution, readStrengths } from '@/lib/atomic/intermediate-grid'
+import { multipletSolution, type MultipletSolution, readSomeStrengths } from '@/lib/atomic/intermediate-grid'
 import { missingJ, type TermLevels } from '@/lib/atomic/mixing'
 import { remembering } from '@/lib/atomic/remembering'
 import type { Kind } from '@/lib/atomic/rules'
@@ -41,9 +41,7 @@ type Factors = { gS: number; gL: number }
 const complete = (end: ValidityEnd): end is ValidityEnd & { term: TermLevels } => end.term !== null && missingJ(end.term).length === 0
 
 /** The end's term with the g in force for its own level. */
-function readyTerm(end: ValidityEnd & { term: TermLevels }, factors: Factors): FieldTerm {
-  return fieldTerm({ ...end.term, levels: end.term.levels.map((level) => (level.twoJ === end.twoJ ? { ...level, g: end.g } : level)) }, factors)
-}
+const withOwnG = (end: ValidityEnd & { term: TermLevels }): TermLevels => ({ ...end.term, levels: end.term.levels.map((level) => (level.twoJ === end.twoJ ? { ...level, g: end.g } : level)) })
 
 const smallestGap = (term: FieldTerm): number => Math.min(Number.POSITIVE_INFINITY, ...term.levels.slice(1).map((level, i) => Math.abs(level.energyInvcm - (term.levels[i]?.energyInvcm ?? 0))))
 
@@ -65,7 +63,7 @@ function largestBeyond(level: Pick<ReadyLevel, 'room' | 'states'>): number {
 
 function readyLevel(end: ValidityEnd & { term: TermLevels }, tolerance: number, factors: Factors): ReadyLevel {
   return levelMemory(`${factors.gS}|${factors.gL}|${tolerance}|${fingerprint(end)}`, () => {
-    const term = readyTerm(end, factors)
+    const term = fieldTerm(withOwnG(end), factors)
     const states = term.blocks.flatMap((block) => [...block.own].flatMap((own, k) => (block.twoJs[own] === end.twoJ ? [block.firstState + k] : [])))
     const level: ReadyLevel = { term, room: termSolution(term), states, limit: null }
     const error = (x: number) => {
@@ -109,6 +107,8 @@ interface ReadyLine {
   components: { index: number; strength: number; largest: number }[]
   largestShift: number
   normalisation: number | null
+  /** Components whose strengths are needed: the line's and the blend's. */
+  needed: Int32Array
   strengths: Float64Array
   limits: { positions: number | null; strengths: number | null; blend: number | null }
 }
@@ -135,7 +135,7 @@ function errorsAt(line: ReadyLine, x: number): Errors {
   }
   const relative = position === 0 ? 0 : position / (x * Math.max(line.largestShift, 0.01))
   if (line.normalisation === null) return { positionInvcm: position, position: relative, strength: null, blendInvcm: null, blend: null }
-  readStrengths(multiplet, room, line.strengths, 0, null)
+  readSomeStrengths(multiplet, room, line.needed, line.strengths)
   for (const c of components) {
     if (c.largest > 0) strength = Math.max(strength, Math.abs((line.strengths[c.index] as number) * line.normalisation - c.strength) / c.largest)
   }
@@ -154,19 +154,22 @@ function readyLine(input: LinearLawInput, low: ValidityEnd & { term: TermLevels 
   const resolvingPower = input.blendResolvingPower ?? BLEND_RESOLVING_POWER
   const key = `${input.kind}|${factors.gS}|${factors.gL}|${tolerance}|${resolvingPower}|${fingerprint(input.lower)}|${fingerprint(input.upper)}`
   return lineMemory(key, () => {
-    const [lower, upper] = [readyLevel(low, tolerance, factors).term, readyLevel(high, tolerance, factors).term]
-    const multiplet = fieldMultiplet(lower, upper, input.kind)
+    // the lines of one multiplet share it
+    const multiplet = multipletOfTerms(withOwnG(low), withOwnG(high), input.kind, factors)
+    const { lower, upper } = multiplet
     const pair = { twoJLower: input.lower.twoJ, twoJUpper: input.upper.twoJ }
     const lines = blendOf(multiplet, pair, resolvingPower)
     const components = componentsOf(multiplet, pair)
     const shifts = components.filter((c) => c.strength > 0).map((c) => Math.abs(shiftLorentz(input.lower.g, multiplet.twoMLower[c.index] ?? 0, input.upper.g, multiplet.twoMUpper[c.index] ?? 0)))
+    const blend = lines.length > 0 ? blendKernel(multiplet, lines) : null
     const line: ReadyLine = {
       multiplet,
       room: multipletSolution(multiplet),
-      blend: lines.length > 0 ? blendKernel(multiplet, lines) : null,
+      blend,
       components,
       largestShift: Math.max(0, ...shifts),
       normalisation: lineNormalisation(multiplet, pair.twoJLower, pair.twoJUpper),
+      needed: Int32Array.from(new Set([...components.map((c) => c.index), ...(blend?.members ?? [])])),
       strengths: new Float64Array(multiplet.count),
       limits: { positions: null, strengths: null, blend: null },
     }

@@ -7,7 +7,7 @@ import { fieldTerm, impureJ, withLsG } from '@/lib/atomic/field-term'
 import { solveTerm, termSolution } from '@/lib/atomic/field-solver'
 import { coupledRange } from '@/lib/atomic/half'
 import { intermediateSublevels } from '@/lib/atomic/intermediate'
-import { multipletGrid } from '@/lib/atomic/intermediate-grid'
+import { multipletGrid, multipletSolution, readSomeStrengths, readStrengths } from '@/lib/atomic/intermediate-grid'
 import { intermediateLine, multipletComponents } from '@/lib/atomic/intermediate-lines'
 import { symmetricEigen } from '@/lib/atomic/jacobi'
 import { landeG } from '@/lib/atomic/lande'
@@ -260,6 +260,17 @@ describe('a multiplet in a field', () => {
     expect(line[2]?.shiftInvcm).toBeGreaterThan(3)
     expect([grid.strengths, grid.strengthDerivatives, multiplet.noAmplitude]).toEqual([null, null, expect.stringContaining('no LS amplitude')])
     expect(fieldMultiplet(multiplet.lower, multiplet.upper, 'M1').noAmplitude).toContain('M1')
+  })
+
+  it('strengths of some components are those of all', () => {
+    const multiplet = multipletOf(iron)
+    const room = multipletSolution(multiplet)
+    solveTerm(multiplet.lower, 20, room.lower)
+    solveTerm(multiplet.upper, 20, room.upper)
+    const [all, some] = [new Float64Array(multiplet.count), new Float64Array(multiplet.count)]
+    readStrengths(multiplet, room, all, 0, null)
+    readSomeStrengths(multiplet, room, [3, 77, 200], some)
+    for (const i of [3, 77, 200]) expect(some[i]).toBeCloseTo(all[i] ?? Number.NaN, 14)
   })
 
   it('a part of the grid is the same as the whole', () => {
