@@ -1,3 +1,4 @@
+import { termNotPure } from '@/lib/atomic/adopted'
 import { G_S } from '@/lib/atomic/constants'
 import { PhysicsError } from '@/lib/atomic/errors'
 import { coupledRange, formatHalf, type TwoJ } from '@/lib/atomic/half'
@@ -125,17 +126,6 @@ export const withLsG = (term: TermLevels, options: FieldOptions = {}): TermLevel
   levels: term.levels.map((level) => ({ ...level, g: landeG({ twoS: term.twoS, l: term.l, twoJ: level.twoJ }, options) })),
 })
 
-/** Share by which a measured g may depart from LS before the term is called mixed with others. */
-export const PURITY = 0.005
-/** Where LS makes g vanish or nearly so (4D1/2) a share of it says nothing; this much stands in its place. */
-const SMALL_G = 0.2
-
 /** The J's whose g departs from LS by more than 0.5 %, so that the term is not pure and its off-diagonal elements are less sure (`term_not_pure`). */
-export function impureJ(term: TermLevels, options: FieldOptions = {}): TwoJ[] {
-  return term.levels
-    .filter(({ twoJ, g }) => {
-      const ls = landeG({ twoS: term.twoS, l: term.l, twoJ }, options)
-      return g !== null && ls !== null && Math.abs(g - ls) > PURITY * Math.max(Math.abs(ls), SMALL_G)
-    })
-    .map((level) => level.twoJ)
-}
+export const impureJ = (term: TermLevels, options: FieldOptions = {}): TwoJ[] =>
+  term.levels.filter(({ twoJ, g }) => g !== null && termNotPure(g, landeG({ twoS: term.twoS, l: term.l, twoJ }, options))).map((level) => level.twoJ)
