@@ -146,12 +146,12 @@ function unseenCost({ setup, sigma, clusters }: Scene, group: Group, zero: numbe
   return cost
 }
 
-/** The best zero of a group among those that lay one of its peaks on a cluster. */
+/** The best zero of a group: one given, or among those that lay one of its outermost peaks on a cluster. */
 function bestOfGroup(scene: Scene, group: Group, zeros: readonly number[] | null): { assignments: Map<number, Assignment>; cost: number } {
   const { setup, clusters } = scene
   const tried =
     zeros ??
-    group.members.flatMap((i) => {
+    [...new Set([group.members[0] ?? 0, group.members.at(-1) ?? 0])].flatMap((i) => {
       const one = setup.measurements[i]
       return one ? (clusters[one.line] ?? []).map((cluster) => one.positionInvcm - cluster.place - offsetOf(setup, one.line)) : []
     })
@@ -203,16 +203,20 @@ export function likelyReadings(setup: FitSetup, options: AssignOptions): Reading
   const [low, high] = [setup.measurements[first], setup.measurements[last]]
   if (!low || !high) return []
   const signed = options.hints.some((hint) => hint.components !== null || hint.q === 1 || hint.q === -1)
-  const fields = new Set<number>()
+  const tried = new Map<string, { fieldTesla: number; zero: number }>()
   for (const a of candidates(setup, options, low.line, first)) {
     for (const b of candidates(setup, options, high.line, last)) {
       const field = fieldOfPair(setup, { line: low.line, component: a }, { line: high.line, component: b }, high.positionInvcm - low.positionInvcm, options)
-      if (field !== null && (signed || field > 0)) fields.add(Number(field.toPrecision(9)))
+      if (field === null || !(signed || field > 0)) continue
+      // the lower peak on its component gives the zero
+      setup.models[low.line]?.at(field)
+      const zero = low.positionInvcm - setup.scale.value * (setup.models[low.line]?.shifts[a] ?? 0) - offsetOf(setup, low.line)
+      tried.set(`${field.toPrecision(9)} ${zero.toPrecision(12)}`, { fieldTesla: field, zero })
     }
   }
-  const readings = [...fields].map((fieldTesla): Reading => {
+  const readings = [...tried.values()].map(({ fieldTesla, zero }): Reading => {
     const scene = sceneAt(setup, options, sigma, fieldTesla)
-    const found = groups.map((group) => bestOfGroup(scene, group, null))
+    const found = groups.map((group) => bestOfGroup(scene, group, group === lead ? [zero] : null))
     return { fieldTesla, assignments: setup.measurements.map((_, i) => found.map((one) => one.assignments.get(i)).find((one) => one !== undefined) ?? []), cost: found.reduce((sum, one) => sum + one.cost, 0) }
   })
   return readings.sort((a, b) => a.cost - b.cost || Math.abs(a.fieldTesla) - Math.abs(b.fieldTesla)).slice(0, KEPT)
