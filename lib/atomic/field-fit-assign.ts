@@ -1,4 +1,4 @@
-import { type Assignment, type FitSetup, peakOf } from '@/lib/atomic/field-fit-problem'
+import type { Assignment, FitSetup } from '@/lib/atomic/field-fit-problem'
 import type { LineModel } from '@/lib/atomic/field-fit-model'
 
 /** What is known of a peak beforehand: its components, or its polarisation alone. */
@@ -240,6 +240,3 @@ export function readAt(setup: FitSetup, options: AssignOptions, fieldTesla: numb
   const found = groupsOf(setup).map((group, z) => bestOfGroup(scene, group, [zeros[z] ?? 0]))
   return { fieldTesla, assignments: setup.measurements.map((_, i) => found.map((one) => one.assignments.get(i)).find((one) => one !== undefined) ?? []), cost: found.reduce((sum, one) => sum + one.cost, 0) }
 }
-
-/** Place of each assigned peak at the model's present field, for tests and tables. */
-export const placeOf = (model: LineModel, components: Assignment): number => peakOf(model, components).shift

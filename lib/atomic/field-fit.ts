@@ -2,7 +2,7 @@ import { type CentredOutcome, type CentredProblem, type CentredSolution, solveCe
 import { CONSTANTS, G_S, MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 import { PhysicsError } from '@/lib/atomic/errors'
 import { type AssignOptions, likelyReadings, type PeakHint, readAt } from '@/lib/atomic/field-fit-assign'
-import { type FitLine, intermediateLineModel, type LineModel, linearLineModel } from '@/lib/atomic/field-fit-model'
+import { type FitComponent, type FitLine, intermediateLineModel, type LineModel, linearLineModel } from '@/lib/atomic/field-fit-model'
 import { type Assignment, type FieldBudgetRow, fieldProblem, type FitMeasurement, type FitSetup, fitSetup, type Scale, systematicBudget } from '@/lib/atomic/field-fit-problem'
 import { autoModel, type FieldModel, type LinearLawValidity, linearLawValidity } from '@/lib/atomic/intermediate-validity'
 import { missingJ } from '@/lib/atomic/mixing'
@@ -38,7 +38,8 @@ export interface Reason {
 export const because = (code: string, detail: string): Reason => ({ code, detail })
 
 export interface FitResidual {
-  assignment: Assignment
+  /** The components that the peak was read as; several where they are not resolved. */
+  components: FitComponent[]
   /** Fitted position, and measured minus fitted, cm^-1. */
   fittedInvcm: number
   residualInvcm: number
@@ -251,7 +252,7 @@ function report(input: FieldFitInput, model: FieldModel, setup: FitSetup, solved
     residuals: measurements.map((one, i): FitResidual => {
       const [residual, leverage, sigma] = [solution.residuals[i] ?? 0, solution.leverage[i] ?? 0, sigmaOf(i)]
       return {
-        assignment: assignments[i] ?? [],
+        components: (assignments[i] ?? []).flatMap((c) => setup.models[one.line]?.components[c] ?? []),
         fittedInvcm: one.positionInvcm - residual,
         residualInvcm: residual,
         standardised: sigma === null || 1 - leverage < 1e-9 ? null : residual / (sigma * Math.sqrt(1 - leverage)),

@@ -129,6 +129,7 @@ describe('automatic assignment', () => {
       const bare = named.map(({ line: number, positionInvcm, sigmaInvcm }) => ({ line: number, positionInvcm, sigmaInvcm }))
       const [byHand, found] = [determined(fitField({ lines, measurements: named, model: 'linear' })), determined(fitField({ lines, measurements: bare, model: 'linear' }))]
       expect(Math.abs(found.fieldTesla - byHand.fieldTesla)).toBeLessThan(1e-9)
+      expect(found.residuals.map((residual) => residual.components)).toEqual(byHand.residuals.map((residual) => residual.components))
       expect(found.warnings.map((warning) => warning.code)).not.toContain('assignment_ambiguous')
     }
   })
@@ -148,7 +149,7 @@ describe('automatic assignment', () => {
     for (const model of ['linear', 'intermediate'] as const) {
       const fit = determined(fitField({ lines: [one], measurements: positions, model }))
       expect(fit.fieldTesla).toBeCloseTo(0.7, 9)
-      expect(fit.residuals.map((residual) => residual.assignment.length)).toEqual([3, 3, 3])
+      expect(fit.residuals.map((residual) => residual.components.length)).toEqual([3, 3, 3])
     }
   })
 
