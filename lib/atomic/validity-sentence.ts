@@ -1,4 +1,5 @@
 import { formatHalf, type TwoJ } from '@/lib/atomic/half'
+import type { LinearLawValidity } from '@/lib/atomic/intermediate-validity'
 import type { AspectValidity, LevelValidity, LineValidity } from '@/lib/atomic/validity'
 import { printSignificant } from '@/lib/units/print'
 
@@ -48,3 +49,13 @@ export function validitySentence(validity: LineValidity, names: { lower: string;
 
 /** A short name for a level that has no other: `J = 3/2`. */
 export const nameOfJ = (twoJ: TwoJ): string => `J = ${formatHalf(twoJ)}`
+
+/** The centre of gravity of lines that are not told apart: `Centre of the blend (J = 1 - 2, 1 - 1): ...`. */
+export function blendSentence({ blend }: Pick<LinearLawValidity, 'blend'>): string {
+  const lines = blend.lines.map((line) => `${formatHalf(line.twoJLower)} \u2013 ${formatHalf(line.twoJUpper)}`).join(', ')
+  const name = blend.lines.length > 1 ? `Centre of the blend of J = ${lines}` : 'Centre of the line'
+  if (blend.status === 'unknown' || blend.relativeError === null) return `${name}: validity not known, since ${blend.reason ?? 'the term is not complete'}.`
+  if (blend.relativeError === 0 && blend.fieldLimitTesla === null) return `${name}: the linear law is exact within the term.`
+  const size = `it errs by ${blend.errorInvcm === null ? 'an unknown amount' : invcm(blend.errorInvcm)}, ${percent(blend.relativeError)} of its largest displacement`
+  return `${name}: the linear law ${blend.status === 'valid' ? 'holds' : 'does not hold'}; ${size}${limitPart(blend.fieldLimitTesla, blend.tolerance)}.`
+}

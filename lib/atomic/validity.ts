@@ -3,6 +3,7 @@ import { firstPassed } from '@/lib/atomic/field-limit'
 import { formatHalf, type TwoJ } from '@/lib/atomic/half'
 import { type LineKernel, lineKernel, linePositionError, lineStrengthError } from '@/lib/atomic/line-mixing'
 import { beyondLinear, type MixedLevel, mixedLevel, missingJ, type TermLevels } from '@/lib/atomic/mixing'
+import { remembering } from '@/lib/atomic/remembering'
 import type { Kind } from '@/lib/atomic/rules'
 
 export type { TermLevels } from '@/lib/atomic/mixing'
@@ -90,27 +91,12 @@ const relativeLevelError = (level: MixedLevel, x: number): number => (x === 0 ? 
 const statusOf = (known: boolean, relativeError: number, tolerance: number): ValidityStatus => (known ? (relativeError <= tolerance ? 'valid' : 'not_valid') : 'unknown')
 
 /** A text that is the same exactly when all that mixing depends on is; numbers print in full. */
-function fingerprint({ twoJ, g, term }: ValidityEnd): string {
+export function fingerprint({ twoJ, g, term }: ValidityEnd): string {
   let text = `${twoJ}:${g}`
   if (term === null) return text
   text += `:${term.twoS},${term.l}`
   for (const level of term.levels) text += `;${level.twoJ},${level.energyInvcm},${level.g}`
   return text
-}
-
-const REMEMBERED = 4000
-
-/** Remembers what does not depend on the field, since a slider or a bulk request asks the same levels at many fields. */
-function remembering<T>(): (key: string, make: () => T) => T {
-  const known = new Map<string, T>()
-  return (key, make) => {
-    const before = known.get(key)
-    if (before !== undefined) return before
-    const made = make()
-    if (known.size >= REMEMBERED) known.clear()
-    known.set(key, made)
-    return made
-  }
 }
 
 interface ReadyLevel extends Prepared {
