@@ -25,10 +25,10 @@ interface ChangeRow extends Record<string, unknown> { id: string; amendment: str
  * locks the same row first, is wholly before (and the amendment no longer accepted) or wholly after.
  */
 export async function readAccepted(tx: Tx, lock: boolean): Promise<Accepted> {
-  const { rows: found } = await tx.execute<{ id: string }>(sql`select id from amendments where state = 'accepted' order by id ${sql.raw(lock ? 'for update' : '')}`)
+  const { rows: found } = await tx.execute<{ id: string }>(sql`select id from amendments where state = 'accepted' order by id ${sql.raw(lock ? 'for no key update' : '')}`)
   const { rows: amendments } = await tx.execute<AmendmentRow>(sql`
     select a.id, a.title, a.version, u.id as author_id, u.name as author_name,
-      (select p.name from reviews r join users p on p.id = r.closed_by where r.amendment_id = a.id and r.outcome = 'accepted' order by r.asked_at desc limit 1) as reviewer,
+      (select p.name from reviews r join users p on p.id = r.closed_by where r.amendment_id = a.id and r.outcome = 'accepted' and r.voided_at is null order by r.asked_at desc limit 1) as reviewer,
       (select count(*)::integer from amendment_changes c where c.amendment_id = a.id) as changes
     from amendments a join users u on u.id = a.author where a.id = any(${sql.param(found.map(({ id }) => id))}::uuid[]) order by a.created_at, a.id`)
   const { rows } = await tx.execute<ChangeRow>(sql`

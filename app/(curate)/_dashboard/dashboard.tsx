@@ -71,6 +71,7 @@ export function Dashboard() {
       <TaskLists />
       <Part title="New amendment"><NewAmendmentForm /></Part>
       <Part title="All amendments"><AmendmentList /></Part>
+      {tasks.complete ? null : <p className="note">More amendments are open than are shown here: those touched last. <code>GET /amendments</code> lists them all.</p>}
       <RequestPanel path="/me/tasks" unpinned />
     </div>
   )
