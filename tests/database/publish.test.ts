@@ -262,6 +262,15 @@ describe('conflicts', () => {
     await withdraw(early.id)
   })
 
+  it('of an amendment whose values are read otherwise now than when they were accepted', async () => {
+    const odd = await accepted('Odd', [await correct('Na-I.7', { note: 'odd' })])
+    await owner.query(`alter table amendment_changes disable trigger user; update amendment_changes set row = row || '{"note": "other"}' where amendment_id = '${odd.id}'; alter table amendment_changes enable trigger user`)
+    const before = await counted()
+    expect(conflictsIn(await refusalOf(publish('Odd')))).toEqual([['read_otherwise', 'Na-I.7', 1]])
+    expect(await counted()).toEqual(before)
+    await withdraw(odd.id)
+  })
+
   it('two publishers at once make one edition', async () => {
     await accepted('Once', [await correct('Na-I.4', { note: 'once' })])
     const results = await Promise.allSettled([publish('A'), publish('B')])
