@@ -63,7 +63,9 @@ async function readSpecies(db: Db | Tx, n: number): Promise<SpeciesRow[]> {
 /** A list as one parameter, whatever its length; without one, no condition. */
 const among = (column: AnyPgColumn, ids: readonly string[] | undefined): SQL | undefined => (ids === undefined ? undefined : sql`${column} = any(${sql.param(ids)}::text[])`)
 
-const readLevels = (db: Db | Tx, n: number, ids?: readonly string[]) =>
+const readLevels = (db: Db | Tx, n: number, ids?: readonly string[]) => levelsWhere(db, and(inEdition(levelRevisions, n), among(levelRevisions.levelId, ids)))
+
+const levelsWhere = (db: Db | Tx, where: SQL | undefined) =>
   db
     .select({
       speciesId: levelRevisions.speciesId,
@@ -100,7 +102,7 @@ const readLevels = (db: Db | Tx, n: number, ids?: readonly string[]) =>
     })
     .from(levelRevisions)
     .innerJoin(levels, eq(levels.id, levelRevisions.levelId))
-    .where(and(inEdition(levelRevisions, n), among(levelRevisions.levelId, ids)))
+    .where(where)
 
 const readMeasured = (db: Db | Tx, n: number, ids?: readonly string[]) =>
   db
@@ -176,4 +178,36 @@ export async function loadLevels(db: Db | Tx, edition: number, ids: readonly str
     hyperfine: [],
     sources: [],
   }
+}
+
+interface Past { from: number | null; until: number | null }
+const isIn = ({ from, until }: Past, n: number): boolean => from !== null && from <= n && (until === null || until > n)
+
+/** What a level was in some editions, each as `loadLevels` would give it, read at once however many they are. */
+export async function loadLevelPast(db: Db | Tx, id: string, editions: readonly number[]): Promise<Map<number, EditionContent>> {
+  const kinds = await db
+    .select({
+      from: speciesRevisions.publishedFrom, until: speciesRevisions.publishedUntil, id: speciesRevisions.speciesId, element: speciesRevisions.element, z: speciesRevisions.z,
+      charge: speciesRevisions.charge, name: speciesRevisions.name, core_configuration: speciesRevisions.coreConfiguration, ionisation_energy_invcm: speciesRevisions.ionisationEnergyInvcm,
+      ionisation_source: speciesRevisions.ionisationSource, ionisation_evidence: speciesRevisions.ionisationEvidence, note: speciesRevisions.note,
+    })
+    .from(speciesRevisions).innerJoin(levels, eq(levels.speciesId, speciesRevisions.speciesId)).where(eq(levels.id, id))
+  const revisions = await levelsWhere(db, and(eq(levelRevisions.levelId, id), sql`${levelRevisions.publishedFrom} is not null`))
+  const measured = await db
+    .select({
+      from: measuredGRevisions.publishedFrom, until: measuredGRevisions.publishedUntil, levelId: measuredG.levelId, value: measuredGRevisions.value, unc: measuredGRevisions.unc,
+      source: measuredGRevisions.source, evidence: measuredGRevisions.evidence, note: measuredGRevisions.note,
+    })
+    .from(measuredGRevisions).innerJoin(measuredG, eq(measuredG.id, measuredGRevisions.measuredGId)).where(eq(measuredG.levelId, id)).orderBy(measuredG.id)
+  return new Map(editions.map((edition): [number, EditionContent] => {
+    const newest = revisions.filter(({ publishedFrom }) => publishedFrom !== null && publishedFrom <= edition).sort((a, b) => (b.publishedFrom ?? 0) - (a.publishedFrom ?? 0)).slice(0, 1)
+    return [edition, {
+      edition,
+      species: kinds.filter((row) => isIn(row, edition)).map((row) => ({ ...row, stage: toRoman(row.charge + 1), isotopes: [] })),
+      levels: newest.map((row) => ({ ...row, publishedFrom: row.publishedFrom ?? edition })),
+      measuredG: measured.filter((row) => isIn(row, edition)),
+      hyperfine: [],
+      sources: [],
+    }]
+  }))
 }

@@ -1,6 +1,6 @@
 import type { Db, Tx } from '@/db/client'
 import { amendmentChanges } from '@/db/schema'
-import { and, eq, isNotNull } from 'drizzle-orm'
+import { and, eq, inArray, isNotNull, ne } from 'drizzle-orm'
 import { toRoman } from '@/lib/atomic/elements'
 import { buildSnapshot, type EditionContent, type Snapshot } from '@/lib/catalogue/snapshot'
 import { amendmentRow } from './amendments'
@@ -51,11 +51,21 @@ export const snapshotOf = (table: PublishedTable): Snapshot => buildSnapshot(con
 /** The edition and what changes would make of it, both in memory: for telling which lines move. */
 export const amendedSnapshot = (table: PublishedTable, changes: readonly Made[]): { before: Snapshot; after: Snapshot } => ({ before: snapshotOf(table), after: snapshotOf(amendedTable(table, changes)) })
 
+/** Of a species with more levels that are all new the whole amendment's consequences tell. */
+const MOST_BESIDE = 5000
+
 /** Before and after of one change alone; null where it is of no level, or cannot be read. */
 export async function snapshotsOfChange(db: Db | Tx, change: ChangeRow, edition: number): Promise<{ before: Snapshot; after: Snapshot } | null> {
   if (change.kind !== 'level' || change.row === null || change.speciesId === null) return null
   const table = await loadPublishedTable(db, edition, [change.speciesId])
-  return table.species.has(change.speciesId) ? amendedSnapshot(table, [{ kind: 'level', subject: change.subject, row: change.row as AnyRow }]) : null
+  const made = { kind: change.kind, subject: change.subject, row: change.row as AnyRow }
+  if (table.species.has(change.speciesId)) return amendedSnapshot(table, [made])
+  // a species that the same amendment makes: beside the rest of what it says of it
+  const c = amendmentChanges
+  const beside = await db.select({ kind: c.kind, subject: c.subject, row: c.row }).from(c)
+    .where(and(eq(c.amendmentId, change.amendmentId), eq(c.speciesId, change.speciesId), inArray(c.kind, ['species', 'level']), ne(c.id, change.id), isNotNull(c.row))).limit(MOST_BESIDE + 1)
+  if (beside.length > MOST_BESIDE || !beside.some(({ kind }) => kind === 'species')) return null
+  return amendedSnapshot(amendedTable(table, beside.map(({ kind, subject, row }) => ({ kind, subject, row: row as AnyRow }))), [made])
 }
 
 /** Before and after of a whole amendment, in the species that it touches. Changes that cannot be read are left out. */

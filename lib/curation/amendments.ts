@@ -38,17 +38,18 @@ async function authorsOf(db: Db | Tx, rows: readonly AmendmentRow[]): Promise<(r
 }
 
 async function reviewsOf(db: Db | Tx, ids: string[]): Promise<Map<string, Review[]>> {
-  const [asker, closer] = [alias(users, 'asker'), alias(users, 'closer')]
+  const [asker, closer, voider] = [alias(users, 'asker'), alias(users, 'closer'), alias(users, 'voider')]
   const rows = await db
-    .select({ review: reviews, askedBy: { id: asker.id, name: asker.name }, closerName: closer.name })
-    .from(reviews).innerJoin(asker, eq(asker.id, reviews.askedBy)).leftJoin(closer, eq(closer.id, reviews.closedBy))
+    .select({ review: reviews, askedBy: { id: asker.id, name: asker.name }, closerName: closer.name, voiderName: voider.name })
+    .from(reviews).innerJoin(asker, eq(asker.id, reviews.askedBy)).leftJoin(closer, eq(closer.id, reviews.closedBy)).leftJoin(voider, eq(voider.id, reviews.voidedBy))
     .where(inArray(reviews.amendmentId, ids)).orderBy(asc(reviews.askedAt), asc(reviews.version))
   const byAmendment = new Map<string, Review[]>()
-  for (const { review, askedBy, closerName } of rows) {
+  for (const { review, askedBy, closerName, voiderName } of rows) {
     const list = byAmendment.get(review.amendmentId) ?? []
     list.push({
       id: review.id, version: review.version, asked_by: askedBy, asked_at: review.askedAt.toISOString(), comment: review.comment, outcome: review.outcome,
       closed_by: review.closedBy === null ? null : { id: review.closedBy, name: closerName ?? '' }, closed_at: review.closedAt?.toISOString() ?? null, closing_comment: review.closingComment,
+      voided: review.voidedBy === null || review.voidedAt === null ? null : { by: { id: review.voidedBy, name: voiderName ?? '' }, at: review.voidedAt.toISOString() },
     })
     byAmendment.set(review.amendmentId, list)
   }

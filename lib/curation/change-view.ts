@@ -78,8 +78,9 @@ export async function listChanges(db: Db, amendmentId: string, filter: ChangeFil
   return { rows: await describeChanges(db, rows, await comparedEdition(db, amendment)), positions: rows.map((row) => row.position) }
 }
 
-export async function changeRow(db: Db | Tx, amendmentId: string, id: string): Promise<ChangeRow> {
-  const [row] = await db.select().from(amendmentChanges).where(and(eq(amendmentChanges.amendmentId, amendmentId), eq(amendmentChanges.id, id)))
+export async function changeRow(db: Db | Tx, amendmentId: string, id: string, hold?: 'key share'): Promise<ChangeRow> {
+  const query = db.select().from(amendmentChanges).where(and(eq(amendmentChanges.amendmentId, amendmentId), eq(amendmentChanges.id, id)))
+  const [row] = await (hold === undefined ? query : query.for(hold))
   if (row === undefined) throw changeMissing()
   return row
 }

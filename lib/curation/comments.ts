@@ -1,9 +1,10 @@
 import { and, asc, eq, gt, or } from 'drizzle-orm'
 import { alias } from 'drizzle-orm/pg-core'
 import type { Db, Tx } from '@/db/client'
-import { comments, users } from '@/db/schema'
+import { amendmentChanges, comments, users } from '@/db/schema'
 import { knownCaller } from '@/lib/access/accounts'
 import { type Acting, recordAudit } from '@/lib/access/audit'
+import { entityTag, staleProblem } from '@/lib/entity-tag'
 import { bodyProblem, Problem } from '@/lib/problem'
 import type { Comment, NewComment } from '@/openapi/schemas/amendment'
 import { amendmentRow } from './amendments'
@@ -15,11 +16,14 @@ const read = (db: Db | Tx) =>
   db.select({ comment: comments, author: { id: author.id, name: author.name }, resolverName: resolver.name })
     .from(comments).innerJoin(author, eq(author.id, comments.author)).leftJoin(resolver, eq(resolver.id, comments.resolvedBy))
 
+/** The tag that If-Match names: of whether the thread is resolved; nothing else of a comment changes. */
+export const commentTag = ({ id, version }: { id: string; version: number }): string => entityTag('comment', id, version)
+
 type Row = Awaited<ReturnType<typeof read>>[number]
 
 const shown = ({ comment, author: by, resolverName }: Row): Comment => ({
   id: comment.id, amendment: comment.amendmentId, change: comment.changeId, thread: comment.thread, author: by, text: comment.text, created_at: comment.createdAt.toISOString(),
-  resolved_at: comment.resolvedAt?.toISOString() ?? null, resolved_by: comment.resolvedBy === null ? null : { id: comment.resolvedBy, name: resolverName ?? '' },
+  version: comment.version, etag: commentTag(comment), resolved_at: comment.resolvedAt?.toISOString() ?? null, resolved_by: comment.resolvedBy === null ? null : { id: comment.resolvedBy, name: resolverName ?? '' },
 })
 
 /** The oldest first; one more than `limit` tells that there is a next page. */
@@ -36,17 +40,25 @@ async function commentRow(db: Db | Tx, amendmentId: string, id: string): Promise
   return row
 }
 
+/** The change that a thread is about, held; null where it was taken out meanwhile, which is what its thread then says too. */
+async function stillThere(tx: Tx, id: string | null): Promise<string | null> {
+  if (id === null) return null
+  const [row] = await tx.select({ id: amendmentChanges.id }).from(amendmentChanges).where(eq(amendmentChanges.id, id)).for('key share')
+  return row?.id ?? null
+}
+
 /** Begins a thread (about one change, or the whole) or answers in one. Possible whatever the state: talk is not an edit. */
 export async function createComment(db: Db, acting: Acting, amendmentId: string, given: NewComment): Promise<Comment> {
   const caller = knownCaller(acting.caller)
   return db.transaction(async (tx) => {
     await amendmentRow(tx, amendmentId)
-    if (given.change !== undefined) await changeRow(tx, amendmentId, given.change)
+    // held, so that nobody takes the change out before the comment is there
+    if (given.change !== undefined) await changeRow(tx, amendmentId, given.change, 'key share')
     let changeId = given.change ?? null
     if (given.thread !== undefined) {
       const [first] = await tx.select().from(comments).where(and(eq(comments.amendmentId, amendmentId), eq(comments.id, given.thread)))
       if (first === undefined || first.thread !== null) throw bodyProblem('/thread', 'thread_malformed', 'A thread is named by its first comment, and the amendment has no such one.')
-      changeId = first.changeId
+      changeId = await stillThere(tx, first.changeId)
     }
     const [row] = await tx.insert(comments).values({ amendmentId, changeId, thread: given.thread ?? null, author: caller.userId, text: given.text, createdAt: new Date() }).returning({ id: comments.id })
     if (row === undefined) throw new Error('The comment was not stored')
@@ -56,15 +68,16 @@ export async function createComment(db: Db, acting: Acting, amendmentId: string,
 }
 
 /** Resolves a thread at its first comment, or opens it again. To say again what is so changes nothing. */
-export async function resolveComment(db: Db, acting: Acting, amendmentId: string, id: string, resolved: boolean): Promise<Comment> {
+export async function resolveComment(db: Db, acting: Acting, amendmentId: string, id: string, resolved: boolean, ifMatch: string | null): Promise<Comment> {
   const caller = knownCaller(acting.caller)
   return db.transaction(async (tx) => {
     await amendmentRow(tx, amendmentId)
-    const [locked] = await tx.select().from(comments).where(and(eq(comments.amendmentId, amendmentId), eq(comments.id, id))).for('update')
+    const [locked] = await tx.select().from(comments).where(and(eq(comments.amendmentId, amendmentId), eq(comments.id, id))).for('no key update')
     if (locked === undefined) throw new Problem('comment_unknown', 'The amendment has no comment of this identifier.')
     if (locked.thread !== null) throw new Problem('thread_malformed', 'A thread is resolved at its first comment; this one is an answer.', { extra: { thread: locked.thread } })
+    if (ifMatch !== commentTag(locked)) throw staleProblem(shown(await commentRow(tx, amendmentId, id)))
     if ((locked.resolvedAt !== null) !== resolved) {
-      await tx.update(comments).set(resolved ? { resolvedAt: new Date(), resolvedBy: caller.userId } : { resolvedAt: null, resolvedBy: null }).where(eq(comments.id, id))
+      await tx.update(comments).set({ version: locked.version + 1, ...(resolved ? { resolvedAt: new Date(), resolvedBy: caller.userId } : { resolvedAt: null, resolvedBy: null }) }).where(eq(comments.id, id))
       await recordAudit(tx, acting, { action: resolved ? 'comment.resolve' : 'comment.reopen', subjectKind: 'comment', subjectId: id, before: { resolved: !resolved }, after: { amendment: amendmentId, resolved } })
     }
     return shown(await commentRow(tx, amendmentId, id))

@@ -16,9 +16,9 @@ export const amendmentMissing = (): Problem => new Problem('amendment_unknown', 
 export const stateConflict = (state: AmendmentState, possible: readonly AmendmentState[], what: string): Problem =>
   new Problem('state_conflict', `This amendment is ${state.replace('_', ' ')}; ${what} is possible only when it is ${possible.map((one) => one.replace('_', ' ')).join(' or ')}.`, { extra: { state, possible_states: possible } })
 
-/** Takes the amendment's row for the rest of the transaction: whoever else writes to the amendment waits. */
+/** Takes the amendment's row for the rest of the transaction: whoever else edits it or moves it on waits. A comment, which only refers to the row, does not. */
 export async function lockAmendment(tx: Tx, id: string): Promise<AmendmentRow> {
-  const [row] = await tx.select().from(amendments).where(eq(amendments.id, id)).for('update')
+  const [row] = await tx.select().from(amendments).where(eq(amendments.id, id)).for('no key update')
   if (row === undefined) throw amendmentMissing()
   return row
 }
@@ -36,7 +36,7 @@ export async function recordAuthors(tx: Tx, amendment: string, userId: string): 
 }
 
 /**
- * Ends an edit: the version rises, an amendment in review or accepted is a draft again, and its open review is closed as edited.
+ * Ends an edit: the version rises, an amendment in review or accepted is a draft again, its open review is closed as edited, and its acceptance is void.
  * Call it last in the transaction, with the row that `lockForEdit` gave. Returns the new version.
  */
 export async function noteEdit(tx: Tx, amendment: AmendmentRow, userId: string, more: { title?: string; note?: string } = {}): Promise<AmendmentRow> {
@@ -44,8 +44,8 @@ export async function noteEdit(tx: Tx, amendment: AmendmentRow, userId: string, 
   if (amendment.state === 'in_review') {
     await tx.update(reviews).set({ outcome: 'edited', closedBy: userId, closedAt: now }).where(and(eq(reviews.amendmentId, amendment.id), isNull(reviews.outcome)))
   } else if (amendment.state === 'accepted') {
-    // the acceptance spoke for the version before
-    await tx.execute(sql`update reviews set outcome = 'edited', closed_by = ${userId}, closed_at = ${now.toISOString()}::timestamptz
+    // the acceptance spoke for the version before, and stays on record as it was given
+    await tx.execute(sql`update reviews set voided_by = ${userId}, voided_at = ${now.toISOString()}::timestamptz
       where id = (select id from reviews where amendment_id = ${amendment.id} order by asked_at desc, id limit 1) and outcome = 'accepted'`)
   }
   const [row] = await tx.update(amendments).set({ ...more, state: 'draft', version: amendment.version + 1, updatedAt: now }).where(eq(amendments.id, amendment.id)).returning()

@@ -6,6 +6,7 @@ import { checkChangesInSteps } from './checks'
 import type { Parties } from './conflict-parties'
 import { baseWords, type InForce, inForceWords, readInForce } from './in-force'
 import type { ChangeInput, Checked, PublishedTable } from './rows'
+import { sameRow } from './stored-findings'
 import { publishedIn } from './subjects'
 import { loadPublishedTable, newestEdition } from './table'
 
@@ -25,10 +26,10 @@ interface ChangeRow extends Record<string, unknown> { id: string; amendment: str
  * locks the same row first, is wholly before (and the amendment no longer accepted) or wholly after.
  */
 export async function readAccepted(tx: Tx, lock: boolean): Promise<Accepted> {
-  const { rows: found } = await tx.execute<{ id: string }>(sql`select id from amendments where state = 'accepted' order by id ${sql.raw(lock ? 'for update' : '')}`)
+  const { rows: found } = await tx.execute<{ id: string }>(sql`select id from amendments where state = 'accepted' order by id ${sql.raw(lock ? 'for no key update' : '')}`)
   const { rows: amendments } = await tx.execute<AmendmentRow>(sql`
     select a.id, a.title, a.version, u.id as author_id, u.name as author_name,
-      (select p.name from reviews r join users p on p.id = r.closed_by where r.amendment_id = a.id and r.outcome = 'accepted' order by r.asked_at desc limit 1) as reviewer,
+      (select p.name from reviews r join users p on p.id = r.closed_by where r.amendment_id = a.id and r.outcome = 'accepted' and r.voided_at is null order by r.asked_at desc limit 1) as reviewer,
       (select count(*)::integer from amendment_changes c where c.amendment_id = a.id) as changes
     from amendments a join users u on u.id = a.author where a.id = any(${sql.param(found.map(({ id }) => id))}::uuid[]) order by a.created_at, a.id`)
   const { rows } = await tx.execute<ChangeRow>(sql`
@@ -106,6 +107,33 @@ export function conflictsOf({ amendments, changes, table, inForce }: Accepted, c
     }
   }
   return conflicts
+}
+
+const PAGE = 5000
+
+/**
+ * Changes whose values are read otherwise now than when they were stored, which a new release of the readers may bring about: what was
+ * accepted is then not what was checked. Page by page, so that 100 000 rows need no memory at once.
+ */
+export async function readOtherwise(tx: Tx, { amendments, changes }: Pick<Accepted, 'amendments' | 'changes'>, checked: ReadonlyMap<string, Checked>): Promise<PublicationConflict[]> {
+  const [byId, titles] = [new Map(changes.map((change) => [change.id, change])), new Map(amendments.map(({ id, title }) => [id, title]))]
+  const conflicts: PublicationConflict[] = []
+  for (let after = -1; ;) {
+    const { rows } = await tx.execute<{ id: string; row: unknown; position: string }>(sql`
+      select id, row, position from amendment_changes where amendment_id = any(${sql.param([...titles.keys()])}::uuid[]) and position > ${after} order by position limit ${PAGE}`)
+    for (const { id, row } of rows) {
+      const [change, now] = [byId.get(id), checked.get(id)]
+      if (change === undefined || now === undefined || sameRow(row, now.row)) continue
+      const title = titles.get(change.amendment) ?? ''
+      conflicts.push({
+        code: 'read_otherwise', kind: change.kind, subject: change.subject, detail: `The values of ${change.subject} in \u201c${title}\u201d are read otherwise now than when they were accepted: save the change again, and have it accepted.`,
+        changes: [{ amendment: { id: change.amendment, title }, change: id, subject: change.subject }], base_revision: null, current_revision: null,
+      })
+    }
+    const last = rows.at(-1)
+    if (last === undefined || rows.length < PAGE) return conflicts
+    after = Number(last.position)
+  }
 }
 
 /** Runs every check on the union of what is accepted; the process goes on answering meanwhile. */

@@ -10,7 +10,7 @@ import { Problem } from '@/lib/problem'
 import type { NewEdition, PublicationConflict } from '@/openapi/schemas/edition'
 import { findParties } from './conflict-parties'
 import { countChanges, suggestedNotes } from './next-edition'
-import { type Accepted, type AcceptedAmendment, checkUnion, conflictsOf, readAccepted } from './publish-accepted'
+import { type Accepted, type AcceptedAmendment, checkUnion, conflictsOf, readAccepted, readOtherwise } from './publish-accepted'
 import { measuredDifference, readMeasuredInForce, writeMeasured } from './publish-measured'
 import { writeFeed, writeRevisions } from './publish-rows'
 import type { Checked, LevelRow } from './rows'
@@ -75,6 +75,8 @@ export async function publishEdition(db: Db, acting: Acting, given: NewEdition):
     const refused = await writing
     if (conflicts.length > 0) throw conflictProblem(conflicts)
     if (refused !== null) throw refused.error
+    const otherwise = await readOtherwise(tx, accepted, checked)
+    if (otherwise.length > 0) throw conflictProblem(otherwise)
     const notes = given.notes ?? suggestedNotes(accepted, checked)
     const [person] = await tx.select({ name: users.name }).from(users).where(eq(users.id, caller.userId))
     const counts = countChanges(accepted.changes)

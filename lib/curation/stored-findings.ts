@@ -7,7 +7,7 @@ import type { Checked } from './rows'
 const same = (row: ChangeRow, checked: Checked): boolean => sameRow(row.findings, checked.findings) && sameRow(row.row, checked.row)
 
 /** jsonb gives the members back in an order of its own. */
-function sameRow(a: unknown, b: unknown): boolean {
+export function sameRow(a: unknown, b: unknown): boolean {
   if (typeof a !== 'object' || typeof b !== 'object' || a === null || b === null) return a === b
   const [x, y] = [a as Record<string, unknown>, b as Record<string, unknown>]
   const keys = Object.keys(x)

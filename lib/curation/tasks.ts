@@ -8,14 +8,14 @@ import { describeAmendments } from './amendments'
 import { EDITABLE } from './editing'
 import { isAuthor } from './possible'
 
-/** Amendments that are neither published nor withdrawn; more than these no dashboard shows. */
+/** Amendments that are neither published nor withdrawn; where there are more, the answer says that it is not complete. */
 const MOST = 500
 
 /** What waits for somebody, the last touched first. */
 export async function tasksOf(db: Db, given: Caller): Promise<Tasks> {
   const { userId } = knownCaller(given)
-  const rows = await db.select().from(amendments).where(inArray(amendments.state, [...EDITABLE])).orderBy(desc(amendments.updatedAt), amendments.id).limit(MOST)
-  const open = (await describeAmendments(db, rows)).map(({ amendment }) => amendment)
+  const rows = await db.select().from(amendments).where(inArray(amendments.state, [...EDITABLE])).orderBy(desc(amendments.updatedAt), amendments.id).limit(MOST + 1)
+  const open = (await describeAmendments(db, rows.slice(0, MOST))).map(({ amendment }) => amendment)
   const mine = (amendment: Amendment): boolean => isAuthor(amendment, userId)
   const returned = (amendment: Amendment): boolean => amendment.state === 'draft' && amendment.review?.outcome === 'returned'
   return {
@@ -24,6 +24,7 @@ export async function tasksOf(db: Db, given: Caller): Promise<Tasks> {
     in_review: open.filter((one) => one.state === 'in_review' && mine(one)),
     to_review: open.filter((one) => one.state === 'in_review' && !mine(one)),
     accepted: open.filter((one) => one.state === 'accepted'),
+    complete: rows.length <= MOST,
     open_threads: open.filter(mine).reduce((sum, one) => sum + one.counts.open_comments, 0),
   }
 }

@@ -1,4 +1,4 @@
-import { and, desc, eq, gt, isNull, lt, lte, or, sql } from 'drizzle-orm'
+import { and, desc, eq, gt, isNull, lt, or, sql } from 'drizzle-orm'
 import type { Db } from '@/db/client'
 import { webhookDeliveries, webhooks } from '@/db/schema'
 import { type Acting, recordAudit } from '@/lib/access/audit'
@@ -63,22 +63,63 @@ export async function testWebhook(db: Db, acting: Acting, id: string): Promise<W
   return shown(row ?? made.row)
 }
 
-const AT_ONCE = 5
+/** Attempts under way in this process, over all webhooks and for one. */
+const AT_ONCE = 20
+const AT_ONCE_TO_ONE = 2
+/** How long attempts that are under way keep from looking what else has become due, in milliseconds. */
+const LOOK_AGAIN_MS = 500
 
-/** Makes the attempts that are due. Each is claimed by moving its next attempt on, so that another process leaves it alone. Returns their number. */
-export async function sendDeliveries(db: Db): Promise<number> {
-  const due = db.select({ id: webhookDeliveries.id }).from(webhookDeliveries)
-    .where(and(isNull(webhookDeliveries.deliveredAt), isNull(webhookDeliveries.failedAt), lte(webhookDeliveries.nextAttemptAt, sql`now()`)))
-    .orderBy(webhookDeliveries.nextAttemptAt).limit(AT_ONCE).for('update', { skipLocked: true })
-  const claimed = await db.update(webhookDeliveries)
+/** Claims attempts that are due, by moving the next attempt on, so that another process leaves them alone: a few of each webhook that is not busy. */
+async function claim(db: Db, most: number, busy: readonly string[]): Promise<Row[]> {
+  const waiting = sql`d.delivered_at is null and d.failed_at is null and d.next_attempt_at <= now() and d.webhook_id <> all(${sql.param(busy)}::uuid[])`
+  const due = sql`
+    select d.id from webhook_deliveries d where ${waiting} and d.id in (
+      select place.id from (select d.id, row_number() over (partition by d.webhook_id order by d.next_attempt_at, d.created_at, d.id) as place from webhook_deliveries d where ${waiting}) place
+      where place.place <= ${AT_ONCE_TO_ONE})
+    order by d.next_attempt_at limit ${most} for update of d skip locked`
+  return db.update(webhookDeliveries)
     .set({ attempts: sql`${webhookDeliveries.attempts} + 1`, nextAttemptAt: sql`now() + interval '1 minute'` })
-    .where(sql`${webhookDeliveries.id} in (${due})`).returning()
-  await Promise.all(claimed.map(async (row) => {
-    const [hook] = await db.select({ url: webhooks.url, secret: webhooks.secret, active: webhooks.active, removedAt: webhooks.removedAt }).from(webhooks).where(eq(webhooks.id, row.webhookId))
-    if (hook === undefined) return
-    const pause = pauseAfter(row.attempts)
-    const after = await attempt(db, row, hook, pause === null)
-    if (pause !== null && after.deliveredAt === null && after.failedAt === null) await db.update(webhookDeliveries).set({ nextAttemptAt: new Date(Date.now() + pause) }).where(eq(webhookDeliveries.id, row.id))
-  }))
-  return claimed.length
+    // an array is made once, where a subquery may be run once a row and lock anew each time
+    .where(sql`${webhookDeliveries.id} = any(array(${due}))`).returning()
+}
+
+async function deliver(db: Db, row: Row): Promise<void> {
+  const [hook] = await db.select({ url: webhooks.url, secret: webhooks.secret, active: webhooks.active, removedAt: webhooks.removedAt }).from(webhooks).where(eq(webhooks.id, row.webhookId))
+  if (hook === undefined) return
+  const pause = pauseAfter(row.attempts)
+  const after = await attempt(db, row, hook, pause === null)
+  if (pause !== null && after.deliveredAt === null && after.failedAt === null) await db.update(webhookDeliveries).set({ nextAttemptAt: new Date(Date.now() + pause) }).where(eq(webhookDeliveries.id, row.id))
+}
+
+/**
+ * Makes the attempts that are due until there is none left; returns their number. A target that is slow to answer holds up its own
+ * deliveries only: while it is waited for, those of others are claimed and sent.
+ */
+export async function sendDeliveries(db: Db): Promise<number> {
+  const running = new Map<string, { hook: string; done: Promise<void> }>()
+  const failures: unknown[] = []
+  let made = 0
+  for (;;) {
+    const before = running.size
+    const free = AT_ONCE - running.size
+    const claimed = free === 0 || failures.length > 0 ? [] : await claim(db, free, [...new Set([...running.values()].map(({ hook }) => hook))])
+    for (const row of claimed) {
+      const done = deliver(db, row).catch((error: unknown) => void failures.push(error)).finally(() => void running.delete(row.id))
+      running.set(row.id, { hook: row.webhookId, done })
+    }
+    made += claimed.length
+    if (running.size > 0) await soonest([...running.values()].map(({ done }) => done))
+    // those of a webhook that was busy when it was looked are still to come
+    else if (before === 0 || failures.length > 0) break
+  }
+  if (failures.length > 0) throw failures[0]
+  return made
+}
+
+/** Until one has ended, or it is time to look for more. */
+async function soonest(tasks: readonly Promise<void>[]): Promise<void> {
+  let timer: NodeJS.Timeout | undefined
+  const tick = new Promise<void>((done) => { timer = setTimeout(done, LOOK_AGAIN_MS) })
+  await Promise.race([...tasks, tick])
+  clearTimeout(timer)
 }

@@ -75,6 +75,7 @@ export function reasonOf(error: unknown): string {
 }
 
 const MOST_ATTEMPTS = 12
+const PATIENCE = '10min'
 /** A failed event waits a minute, then three, seven and so on from its beginning; others go on meanwhile. */
 const due = sql`now() >= ${noticeEvents.createdAt} + (power(2, ${noticeEvents.attempts}) - 1) * interval '1 minute'`
 
@@ -89,6 +90,8 @@ export async function spreadNext(db: Db): Promise<boolean> {
       const [row] = await tx.select().from(noticeEvents).where(and(isNull(noticeEvents.spreadAt), due)).orderBy(noticeEvents.id).limit(1).for('update', { skipLocked: true })
       if (row === undefined) return false
       taken = row.id
+      // an edition is compared for every follower while this transaction waits: longer than a request may keep one open
+      await tx.execute(sql.raw(`set local idle_in_transaction_session_timeout = '${PATIENCE}'`))
       const event = row as unknown as Told
       const letters = await lettersOf(tx, event)
       for (let i = 0; i < letters.length; i += 500) {

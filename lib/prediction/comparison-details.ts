@@ -2,6 +2,7 @@ import { sql } from 'drizzle-orm'
 import type { Db } from '@/db/client'
 import { buildSnapshot } from '@/lib/catalogue/build'
 import { loadLevels } from '@/lib/catalogue/load'
+import type { EditionContent } from '@/lib/catalogue/shape'
 import type { ChangeKind } from '@/openapi/schemas/change'
 import type { Change } from '@/openapi/schemas/edition'
 import { fieldsBetween, levelValues } from './changes'
@@ -13,7 +14,11 @@ const NOTHING: Values = new Map()
 /** What a reader sees of some levels in one edition, each value under its dotted name; levels that it does not have are left out. */
 export async function levelsIn(db: Db, edition: number, ids: readonly string[]): Promise<Map<string, Values>> {
   if (edition === 0 || ids.length === 0) return new Map()
-  const content = await loadLevels(db, edition, ids)
+  return valuesIn(await loadLevels(db, edition, ids))
+}
+
+/** What a reader sees of the levels of some content, each value under its dotted name. */
+export function valuesIn(content: EditionContent): Map<string, Values> {
   const snapshot = buildSnapshot(content)
   const reasons = new Map(content.levels.map((row) => [`${row.speciesId}.${row.ordinal}`, row]))
   const levels = new Map<string, Values>()

@@ -1,9 +1,10 @@
 import { sql } from 'drizzle-orm'
 import type { Db } from '@/db/client'
+import { loadLevelPast } from '@/lib/catalogue/load'
 import { parameterProblem } from '@/lib/problem'
 import type { LevelRevision } from '@/openapi/schemas/edition'
 import { fieldsBetween } from './changes'
-import { levelsIn } from './comparison-details'
+import { valuesIn } from './comparison-details'
 
 interface Row extends Record<string, unknown> {
   revision: number; edition: number; label: string; published_at: Date | string; until: number | null; status: 'active' | 'retired'
@@ -23,10 +24,12 @@ export async function levelHistory(db: Db, level: string): Promise<LevelRevision
       left join amendments a on a.id = r.amendment_id left join amendment_changes c on c.amendment_id = a.id and c.kind = 'level' and c.subject = r.level_id
     where r.level_id = ${level} order by r.published_from`)
   if (rows.length === 0) throw parameterProblem('level', 'level_unknown', `No edition has ever held a level ${level}.`)
+  const past = await loadLevelPast(db, level, rows.map(({ edition }) => edition))
   const revisions: LevelRevision[] = []
   let before: { values: ReadonlyMap<string, unknown>; status: Row['status'] } | undefined
   for (const row of rows) {
-    const values: ReadonlyMap<string, unknown> = (await levelsIn(db, row.edition, [level])).get(level) ?? new Map<string, unknown>()
+    const content = past.get(row.edition)
+    const values: ReadonlyMap<string, unknown> = (content === undefined ? undefined : valuesIn(content).get(level)) ?? new Map<string, unknown>()
     revisions.push({
       revision: row.revision, edition: row.edition, edition_label: row.label, published_at: new Date(row.published_at).toISOString(), until_edition: row.until,
       action: actionOf(row.status, before?.status), fields: before === undefined ? [] : fieldsBetween(before.values, values),

@@ -98,7 +98,7 @@ export const checkBatch = defineOperation({
   summary: 'Check changes without writing anything',
   description: 'Findings are those that the changes would have beside the ones that the amendment has already.',
   params: byId, body: ChangeBatch, answer: z.strictObject({ changes: z.array(CheckedChange) }).meta({ id: 'CheckedBatch' }),
-  problems: [...editing, 'change_unknown', 'change_exists', 'subject_mismatch', 'etag_stale', ...values], example: { ...at, body: { changes: [CHANGE] } },
+  problems: ['amendment_unknown', 'change_unknown', 'change_exists', 'subject_mismatch', 'etag_stale', ...values], example: { ...at, body: { changes: [CHANGE] } },
 })
 
 export const writeBatch = defineOperation({
@@ -119,7 +119,7 @@ export const getConsequences = defineOperation({
 const step = (name: 'submit' | 'return' | 'accept' | 'withdraw', summary: string, description: string, problems: readonly string[]) =>
   defineOperation({
     ...common, id: `${name}Amendment`, method: 'post', path: `/amendments/{id}/${name}`, summary, description,
-    params: byId, body: Statement, answer: AmendmentDetail, ifMatch: true,
+    params: byId, body: Statement, answer: AmendmentDetail, ifMatch: true, idempotent: true,
     problems: ['amendment_unknown', 'state_conflict', 'etag_stale', 'length_out_of_range', ...problems], example: { ...at, body: { comment: 'See the note.' } },
   })
 
@@ -144,7 +144,7 @@ export const createComment = defineOperation({
 export const changeComment = defineOperation({
   ...common, id: 'changeAmendmentComment', method: 'patch', path: '/amendments/{id}/comments/{comment}',
   summary: 'Resolve a thread, or open it again',
-  params: byComment, body: CommentChange, answer: Comment, problems: ['amendment_unknown', 'comment_unknown', 'thread_malformed'],
+  params: byComment, body: CommentChange, answer: Comment, ifMatch: true, problems: ['amendment_unknown', 'comment_unknown', 'thread_malformed', 'etag_stale'],
   example: { params: { id: UUID, comment: UUID }, body: { resolved: true } },
 })
 

@@ -120,7 +120,7 @@ export const listChanges = defineOperation({
   method: 'get',
   path: '/changes',
   summary: 'Feed of everything that editions changed, in one sequence',
-  description: 'Sequence numbers rise and never change; there may be gaps. Ask again with after= the last one seen: nothing is missed, since an edition enters the feed whole. What the first edition of a new installation holds is not in it.',
+  description: 'Sequence numbers rise and never change; there may be gaps. Ask again with after= the last one seen: nothing is missed, since an edition enters the feed whole; `meta.last_sequence` is that one, and stays what was asked for where nothing is new. What the first edition of a new installation holds is not in it.',
   tag: 'Editions',
   role: 'reader',
   query: z.strictObject({ after: numberParameter('Last sequence number already seen.', { min: 0, max: 9_007_199_254_740_991, integer: true }).prefault('0') }),

@@ -76,6 +76,7 @@ export const stopImport = defineOperation({
   params: ofImport,
   answer: Import,
   edition: 'none',
+  idempotent: true,
   problems: ['amendment_unknown', 'import_unknown', 'state_conflict'],
   example: { params },
 })

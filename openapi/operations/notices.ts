@@ -61,7 +61,7 @@ export const deleteWebhook = defineOperation({
 
 export const testWebhook = defineOperation({
   id: 'testWebhook', method: 'post', path: '/webhooks/{id}/test', tag: TAG, role: 'admin',
-  summary: 'Send the event ping at once, and say what came of it', params: byId('webhook'), answer: WebhookDelivery, edition: 'none',
+  summary: 'Send the event ping at once, and say what came of it', params: byId('webhook'), answer: WebhookDelivery, edition: 'none', idempotent: true,
   problems: ['webhook_unknown'], example: { params: { id: UUID } },
 })
 

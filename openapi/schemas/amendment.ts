@@ -11,8 +11,9 @@ export const Review = z
     id: z.uuid(),
     version: z.int().meta({ description: 'Version of the amendment that it speaks for.' }),
     asked_by: Person, asked_at: Instant, comment: z.string(),
-    outcome: z.enum(['accepted', 'returned', 'withdrawn', 'edited']).nullable().meta({ description: 'Null while it is open. edited: a later change made it void.' }),
+    outcome: z.enum(['accepted', 'returned', 'withdrawn', 'edited']).nullable().meta({ description: 'Null while it is open. edited: the amendment was edited before it was given.' }),
     closed_by: Person.nullable(), closed_at: Instant.nullable(), closing_comment: z.string().nullable(),
+    voided: z.strictObject({ by: Person, at: Instant }).nullable().meta({ description: 'Who edited the amendment after it was accepted: the acceptance no longer holds, and stays on record.' }),
   })
   .meta({ id: 'Review' })
 export type Review = z.infer<typeof Review>
@@ -58,6 +59,7 @@ export const Comment = z
     thread: z.uuid().nullable().meta({ description: 'First comment of the thread; null for the first itself.' }),
     author: Person, text: z.string(), created_at: Instant,
     resolved_at: Instant.nullable(), resolved_by: Person.nullable(),
+    version: z.int(), etag: z.string().meta({ description: 'For If-Match.' }),
   })
   .meta({ id: 'Comment' })
 export type Comment = z.infer<typeof Comment>
@@ -77,6 +79,7 @@ export const Tasks = z
     in_review: z.array(Amendment).meta({ description: 'Yours, waiting for a colleague.' }),
     to_review: z.array(Amendment).meta({ description: 'Waiting for a review that you can give.' }),
     accepted: z.array(Amendment).meta({ description: 'Accepted and waiting for an edition.' }),
+    complete: z.boolean().meta({ description: 'Whether all of it is here: of more than 500 open amendments only those touched last are looked at, and GET /amendments lists them all.' }),
     open_threads: z.int().meta({ description: 'Open comment threads on amendments of yours.' }),
   })
   .meta({ id: 'Tasks' })

@@ -216,7 +216,7 @@ describe('the values of a level', () => {
     const one = await begin()
     for (const level of ['Na-I.1', 'Ne-I.2', 'Fe-I.9', 'Hg-I.3']) {
       const reply = await one.add(await replace(level, {}))
-      expect([reply.json.data.fields, reply.json.data.findings], level).toEqual([[], []])
+      expect([reply.json.data.fields, reply.json.data.findings], level).toEqual([[], [{ severity: 'error', code: 'no_difference', field: null, detail: expect.any(String) }]])
       expect(reply.json.data.after).toEqual(await valuesOf(level))
     }
     const read = await get('/levels/Na-I.3/values?edition=1')
@@ -276,5 +276,17 @@ describe('a source that comes or goes', () => {
     const removed = await ask('delete', `${one.at}/changes/${source.json.data.id}`, { key: one.by.key, headers: { 'if-match': source.json.data.etag } })
     expect(removed.status).toBe(204)
     expect([await codes(naming), await codes(other)]).toEqual([['error source_unknown'], ['error source_unknown']])
+  })
+})
+
+describe('a level of a species that the same amendment makes', () => {
+  it('tells the lines that it makes with the other levels there', async () => {
+    const one = await begin()
+    const source = { energy_source: 'sansonetti-2008-na', energy_evidence: 'read' }
+    await one.add({ kind: 'species', action: 'create', species: 'Fr-I', values: { name: 'francium', core_configuration: '[Rn]' } })
+    const first = await one.add({ action: 'create', species: 'Fr-I', values: { configuration: '7s', term: '2S1/2', energy_invcm: 0, ...source } })
+    expect(first.json.data.consequences).toMatchObject({ counts: { moved: 0, new: 0, gone: 0 } })
+    const second = await one.add({ action: 'create', species: 'Fr-I', values: { configuration: '7p', term: '2P*3/2', energy_invcm: 13924, ...source } })
+    expect(second.json.data.consequences).toMatchObject({ counts: { new: 1 }, lines: [{ effect: 'new', wavenumber_after_invcm: 13924 }] })
   })
 })

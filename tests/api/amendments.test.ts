@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto'
 import { eq, sql } from 'drizzle-orm'
 import { describe, expect, it } from 'vitest'
 import { getDb } from '@/db/client'
@@ -119,9 +120,24 @@ describe('the way of an amendment', () => {
     const late = await ask('post', `${one.at}/accept`, { key: colleague.key, headers: { 'if-match': reviewed }, body: {} })
     expect([late.status, late.json.current.state]).toEqual([412, 'draft'])
     await one.step('submit', one.by.key)
-    await one.step('accept', colleague.key)
+    await one.step('accept', colleague.key, 'seen')
     const titled = await ask('patch', one.at, { key: colleague.key, headers: { 'if-match': (await one.now()).etag }, body: { title: 'better' } })
-    expect(titled.json.data).toMatchObject({ state: 'draft', title: 'better', review: { outcome: 'edited' } })
+    expect(titled.json.data).toMatchObject({ state: 'draft', title: 'better' })
+    // who accepted what stays on record; that it no longer holds is told beside
+    expect(titled.json.data.review).toMatchObject({ outcome: 'accepted', closed_by: { id: colleague.owner.id }, closing_comment: 'seen', voided: { by: { id: colleague.owner.id } } })
+    expect(titled.json.data.reviews.map((review: Json) => [review.outcome, review.voided === null])).toEqual([['edited', true], ['accepted', false]])
+    expect(titled.json.data.possible.submit.allowed).toBe(true)
+  })
+
+  it('takes a step once under one Idempotency-Key', async () => {
+    const one = await begin()
+    await one.add(await replace('Na-I.3', { note: 'a' }))
+    const headers = { 'if-match': (await one.now()).etag, 'idempotency-key': randomUUID() }
+    const ways = [1, 2].map(() => ask('post', `${one.at}/submit`, { key: one.by.key, headers, body: { comment: 'once' } }))
+    const [first] = await Promise.all(ways)
+    const again = await ask('post', `${one.at}/submit`, { key: one.by.key, headers, body: { comment: 'once' } })
+    expect([again.status, again.headers['idempotency-replayed'], first === undefined]).toEqual([200, 'true', false])
+    expect((await one.now()).reviews).toHaveLength(1)
   })
 
   it('lets one of two reviewers win', async () => {
@@ -177,10 +193,15 @@ describe('talk and tasks', () => {
     const answer = await ask('post', `${one.at}/comments`, { key: one.by.key, body: { text: 'The table.', thread: first.json.data.id } })
     expect(answer.json.data).toMatchObject({ thread: first.json.data.id, change: change.json.data.id })
     expect((await one.now()).counts.open_comments).toBe(1)
-    expect((await get('/me/tasks', { key: one.by.key })).json.data.open_threads).toBe(1)
-    const resolved = await ask('patch', `${one.at}/comments/${first.json.data.id}`, { key: one.by.key, body: { resolved: true } })
+    expect((await get('/me/tasks', { key: one.by.key })).json.data).toMatchObject({ open_threads: 1, complete: true })
+    const resolved = await ask('patch', `${one.at}/comments/${first.json.data.id}`, { key: one.by.key, headers: { 'if-match': first.json.data.etag }, body: { resolved: true } })
+    expect(first.headers.etag).toBe(first.json.data.etag)
+    expect([resolved.json.data.version, resolved.headers.etag === first.headers.etag]).toEqual([2, false])
+    const late = await ask('patch', `${one.at}/comments/${first.json.data.id}`, { key: colleague.key, headers: { 'if-match': first.json.data.etag }, body: { resolved: false } })
+    expect([late.status, late.json.current.resolved_by.id]).toEqual([412, one.by.owner.id])
+    expect((await ask('patch', `${one.at}/comments/${first.json.data.id}`, { key: colleague.key, body: { resolved: false } })).status).toBe(428)
     expect(resolved.json.data.resolved_by.id).toBe(one.by.owner.id)
-    expect((await ask('patch', `${one.at}/comments/${answer.json.data.id}`, { key: one.by.key, body: { resolved: true } })).json.code).toBe('thread_malformed')
+    expect((await ask('patch', `${one.at}/comments/${answer.json.data.id}`, { key: one.by.key, headers: { 'if-match': answer.json.data.etag }, body: { resolved: true } })).json.code).toBe('thread_malformed')
     expect((await ask('post', `${one.at}/comments`, { key: one.by.key, body: { text: 'x', thread: answer.json.data.id } })).json.code).toBe('thread_malformed')
     expect((await ask('post', `${one.at}/comments`, { key: one.by.key, body: { text: 'x', change: NONE } })).json.code).toBe('change_unknown')
     expect((await one.now()).counts.open_comments).toBe(0)

@@ -264,8 +264,11 @@ describe('an import as a job', () => {
     expect(begun.state).toBe('running')
     // one at a time
     expect((await importFile(key, amendment, exported)).json.code).toBe('import_running')
-    const stopped = (await ask('post', `/amendments/${amendment}/imports/${begun.id}/stop`, { key })).json.data
+    const stop = () => ask('post', `/amendments/${amendment}/imports/${begun.id}/stop`, { key, headers: { 'idempotency-key': `stop-${begun.id}` } })
+    const stopped = (await stop()).json.data
     expect([stopped.state, stopped.summary]).toEqual(['stopped', 'Stopped; nothing was written.'])
+    const again = await stop()
+    expect([again.status, again.json.data, again.headers['idempotency-replayed']]).toEqual([200, stopped, 'true'])
     const next = (await importFile(key, amendment, exported, '?dry_run=true')).json.data
     expect(next.counts.same).toBe(rows.length)
     const after = (await get(`/amendments/${amendment}`, { key })).json.data

@@ -54,7 +54,8 @@ describe.each<Theme>(['light', 'dark'])('in the %s theme', (theme) => {
     }
     expect(complaints).toEqual([])
     await context.close()
-  })
+  // seven pages, each looked through by axe
+  }, 180_000)
 
   it('so are those that a link in a mail leads to', async () => {
     const { context, page, complaints } = await visit(browser, { theme })

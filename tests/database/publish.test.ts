@@ -8,7 +8,7 @@ import { canonicalEdition, verifyEdition } from '@/db/edition-content'
 import * as schema from '@/db/schema'
 import type { Acting } from '@/lib/access/audit'
 import { buildSnapshot } from '@/lib/catalogue/build'
-import { loadEdition } from '@/lib/catalogue/load'
+import { loadEdition, loadLevelPast } from '@/lib/catalogue/load'
 import { createAmendment, readAmendment } from '@/lib/curation/amendments'
 import { addChange } from '@/lib/curation/changes'
 import { previewNextEdition } from '@/lib/curation/next-edition'
@@ -20,6 +20,7 @@ import { compareEditions, countDifferences } from '@/lib/prediction/comparison'
 import { describeDifferences } from '@/lib/prediction/comparison-details'
 import { readFeed } from '@/lib/prediction/feed'
 import { levelHistory } from '@/lib/prediction/history'
+import { levelsIn, valuesIn } from '@/lib/prediction/comparison-details'
 import { levelMap } from '@/lib/prediction/level-map'
 import { Problem } from '@/lib/problem'
 import type { ChangeRequest, LevelValues, MeasuredGValues } from '@/openapi/schemas/change'
@@ -182,6 +183,9 @@ describe('publishing', () => {
     expect(now?.authors).toHaveLength(1)
     expect(now?.reviewer).not.toBe(now?.authors[0])
     expect(first).toMatchObject({ revision: 1, edition: 1, action: 'created', until_edition: 2, amendment: null, fields: [] })
+    // read at once, each edition as it is when it is read alone
+    const past = await loadLevelPast(db, 'Na-I.3', [1, 2])
+    for (const n of [1, 2]) expect([n, [...valuesIn(past.get(n) as never)]]).toEqual([n, [...(await levelsIn(db, n, ['Na-I.3']))]])
     expect((await levelHistory(db, 'Na-I.8')).map(({ action, reason }) => [action, reason])).toEqual([['retired', 'A test'], ['created', null]])
     expect((await refusalOf(levelHistory(db, 'Na-I.999'))).code).toBe('level_unknown')
   })
@@ -260,6 +264,15 @@ describe('conflicts', () => {
     if (seen === null) expect(conflictsIn(await refusalOf(publish('Sixth')))).toEqual([['base_stale', 'Na-I.6', 1]])
     else expect(seen).toBeInstanceOf(Problem)
     await withdraw(early.id)
+  })
+
+  it('of an amendment whose values are read otherwise now than when they were accepted', async () => {
+    const odd = await accepted('Odd', [await correct('Na-I.7', { note: 'odd' })])
+    await owner.query(`alter table amendment_changes disable trigger user; update amendment_changes set row = row || '{"note": "other"}' where amendment_id = '${odd.id}'; alter table amendment_changes enable trigger user`)
+    const before = await counted()
+    expect(conflictsIn(await refusalOf(publish('Odd')))).toEqual([['read_otherwise', 'Na-I.7', 1]])
+    expect(await counted()).toEqual(before)
+    await withdraw(odd.id)
   })
 
   it('two publishers at once make one edition', async () => {

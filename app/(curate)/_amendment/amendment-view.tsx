@@ -25,14 +25,15 @@ const PART_NAMES = { table: 'Table', review: 'Review', import: 'Import' } as con
 const PART_REQUESTS = { table: '/changes', review: '/consequences', import: '/imports' } as const
 
 /** Who did what last, in a sentence. */
-function reviewText({ review, state, published_in: edition }: AmendmentDetail): string | null {
+function reviewText({ review, published_in: edition }: AmendmentDetail): string | null {
   if (edition !== null) return `Published in edition ${edition}.`
   if (review === null) return null
   if (review.outcome === null) return `${review.asked_by.name} asked for review on ${moment(review.asked_at)}.`
+  if (review.voided !== null) return `${review.voided.by.name} edited it on ${moment(review.voided.at)}, after ${review.closed_by?.name ?? 'someone'} had accepted it, so it is a draft again.`
   const who = review.closed_by?.name ?? 'Someone'
   const when = review.closed_at ? ` on ${moment(review.closed_at)}` : ''
   const did = { accepted: 'accepted it', returned: 'returned it', withdrawn: 'withdrew it', edited: 'edited it after it was sent to review, so it is a draft again' }[review.outcome]
-  return state === 'draft' && review.outcome === 'accepted' ? null : `${who} ${did}${when}.`
+  return `${who} ${did}${when}.`
 }
 
 function Head({ amendment, room, onDone }: { amendment: AmendmentDetail; room: SheetRoom; onDone: (text: string) => void }) {

@@ -57,6 +57,7 @@ function TaskLists() {
         <TaskList rows={tasks.accepted} none="Nothing waits to be published." tells={(row) => (row.review?.closed_by ? `accepted by ${row.review.closed_by.name}` : '')} />
         {tasks.accepted.length > 0 ? <p className="mt-3"><Link className="btn" href="/editions/next">See the next edition</Link></p> : null}
       </section>
+      {tasks.complete ? null : <p className="note md:col-span-2">More amendments are open than are shown here: these were touched last. All of them stand below.</p>}
     </div>
   )
 }

@@ -52,8 +52,9 @@ function ThreadView({ amendment, thread }: { amendment: string; thread: Thread }
   const [answering, setAnswering] = useState(false)
   const { first, answers, open } = thread
   const resolve = useMutation({
-    mutationFn: (given: { resolved: boolean }) => apiSend<Comment>('PATCH', `/amendments/${amendment}/comments/${first.id}`, given),
-    onSuccess: () => refreshAmendment(client, amendment),
+    mutationFn: (given: { resolved: boolean }) => apiSend<Comment>('PATCH', `/amendments/${amendment}/comments/${first.id}`, given, { 'if-match': first.etag }),
+    // where somebody else was first, what they did is shown
+    onSettled: () => refreshAmendment(client, amendment),
   })
   const body = (
     <div className="space-y-2">

@@ -44,7 +44,7 @@ function Reviews({ amendment }: { amendment: AmendmentDetail }) {
           <li key={review.id} className="border-b border-rule pb-2">
             <p><span className="font-medium">{review.asked_by.name}</span> asked on {moment(review.asked_at)} for version {review.version}{review.comment ? <>: “{review.comment}”</> : '.'}</p>
             <p className="text-muted">
-              {review.outcome === null ? 'Open.' : <>{review.outcome === 'edited' ? 'It was ' : ''}{OUTCOME[review.outcome]} by {review.closed_by?.name ?? 'someone'}{review.closed_at ? `, ${moment(review.closed_at)}` : ''}{review.closing_comment ? <>: “<span className="text-ink">{review.closing_comment}</span>”</> : '.'}</>}
+              {review.outcome === null ? 'Open.' : <>{review.outcome === 'edited' ? 'It was ' : ''}{OUTCOME[review.outcome]} by {review.closed_by?.name ?? 'someone'}{review.closed_at ? `, ${moment(review.closed_at)}` : ''}{review.closing_comment ? <>: “<span className="text-ink">{review.closing_comment}</span>”</> : '.'}</>}{review.voided ? ` ${review.voided.by.name} edited it afterwards, ${moment(review.voided.at)}: the acceptance no longer holds.` : ''}
             </p>
           </li>
         ))}

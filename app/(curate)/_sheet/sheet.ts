@@ -31,7 +31,7 @@ export interface SheetRow {
 
 export interface NewRow { key: string; subject: Subject; base: Values | null; complete: boolean }
 /** A row as a page that is gone left it: not all of it had come to the server. */
-export type Kept = Pick<SheetRow, 'subject' | 'base' | 'complete' | 'server' | 'sent' | 'wanted'>
+export type Kept = Pick<SheetRow, 'subject' | 'base' | 'complete' | 'revision' | 'server' | 'sent' | 'wanted'>
 export type Wanted = ReadonlyMap<string, ChangeState | null>
 
 export const NOTHING: ChangeState = { action: 'create', values: {}, reason: null, successor: null, comment: null }
@@ -222,19 +222,23 @@ export class Sheet {
   }
   /** Takes up what a page that is gone left. It waits upon the version that it was typed on, so that a newer one is found when it is saved. */
   restore(kept: Kept): 'brought' | 'known' | 'busy' {
-    const { subject, server, sent, wanted } = kept
+    const { subject, server, sent } = kept
     const known = this.#rowOf(kept)
     if (known !== undefined && known.save !== 'saved') return 'busy'
     const current = known?.server ?? null
-    if (sameState(known === undefined ? null : storedState(known), wanted)) return 'known'
+    if (sameState(known === undefined ? null : storedState(known), kept.wanted)) return 'known'
     // what the page had sent has arrived: the rest goes upon that
     const mine = current !== null && ((sent !== undefined && sameState(stateOf(current), sent)) || current.etag === server?.etag)
     const key = known?.key ?? this.addNew(subject)
     const found = this.#rows.get(key)
     if (found === undefined) return 'busy'
-    // published values are read anew, since an edition may have come between; what was typed is carried over to them
-    const anew = subject.kind === 'level' && subject.level !== null && wanted?.action === 'replace'
-    this.patch(key, { ...found, subject: known?.subject ?? subject, base: anew ? kept.base : (known?.base ?? kept.base), complete: anew ? false : kept.complete, revision: null, server: mine ? current : server, sent, wanted, gone: false, save: 'waiting', problem: null, theirs: null })
+    // an edition may have come between: what was typed is carried over to its values, which are read anew where the API offers that
+    const replacing = kept.wanted?.action === 'replace'
+    const anew = replacing && subject.kind === 'level' && subject.level !== null
+    const base = anew ? kept.base : (found.base ?? kept.base)
+    const wanted = replacing && !anew && found.base !== null && kept.wanted !== null ? { ...kept.wanted, values: rebase(kept.wanted.values ?? {}, kept.base ?? {}, found.base) } : kept.wanted
+    const revision = anew ? null : found.base === null ? kept.revision : found.revision
+    this.patch(key, { ...found, subject: known?.subject ?? subject, base, complete: anew ? false : kept.complete, revision, server: mine ? current : server, sent, wanted, gone: false, save: 'waiting', problem: null, theirs: null })
     return 'brought'
   }
 

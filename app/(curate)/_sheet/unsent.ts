@@ -63,8 +63,8 @@ export class Unsent {
         this.#drop(known.id)
       } else if (parted !== null || known?.held !== true || known.wanted !== row.wanted || known.server !== row.server || known.sent !== row.sent) {
         const id = known?.id ?? `${this.place}/${this.page}/${(this.#made += 1)}`
-        const { subject, base, complete, server, sent, wanted } = row
-        const held = this.#write(id, { subject, base, complete, server, sent, wanted, at: this.now(), parted })
+        const { subject, base, complete, revision, server, sent, wanted } = row
+        const held = this.#write(id, { subject, base, complete, revision, server, sent, wanted, at: this.now(), parted })
         this.#known.set(row.key, { id, wanted, server, sent, held })
         this.#safe &&= held
       }

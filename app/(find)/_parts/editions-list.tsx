@@ -2,7 +2,6 @@
 import Link from 'next/link'
 import { useQuery } from '@tanstack/react-query'
 import { editionsQuery } from '../../_components/data/edition'
-import { useMe } from '../../_components/data/me'
 import { EmptyState } from '../../_components/empty-state'
 import { count } from '../../_components/number'
 import { PageHead } from '../../_components/page-head'
@@ -11,17 +10,16 @@ import { RequestPanel } from '../../_components/request-panel'
 import { Skeleton } from '../../_components/skeleton'
 import { day } from '../../_components/day'
 
-/** Every edition, the newest first. */
-export function EditionsList() {
+/** Every edition, the newest first. Those who may see the next one are led to it. */
+export function EditionsList({ curator }: { curator: boolean }) {
   const { data, error, isPending, refetch } = useQuery(editionsQuery())
-  const { me } = useMe()
   const editions = [...(data?.data ?? [])].sort((a, b) => b.number - a.number)
   return (
     <div className="page">
       <PageHead title="Editions" aside={
         <div className="flex flex-wrap gap-2">
           {editions.length > 1 ? <Link className="btn" href="/editions/compare">Compare two</Link> : null}
-          {me !== null && me.role_in_force !== 'reader' ? <Link className="btn" href="/editions/next">Next edition</Link> : null}
+          {curator ? <Link className="btn" href="/editions/next">Next edition</Link> : null}
         </div>
       }>
         <p>An edition is a frozen, numbered publication of the whole table. A request that names its edition gives the same stored values for ever; one that names none reads the latest.</p>

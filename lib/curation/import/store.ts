@@ -1,6 +1,7 @@
 import { and, desc, eq, gt, lt, or, type SQL, sql } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
 import { amendments, importRows, imports, users } from '@/db/schema'
+import { type Acting, recordAudit } from '@/lib/access/audit'
 import { Problem } from '@/lib/problem'
 import type { Import, ImportProblem, ImportReading, ImportRow, ImportVerdict } from '@/openapi/schemas/import'
 import { amendmentMissing, storable } from '../editing'
@@ -109,10 +110,14 @@ export async function endImport(tx: Tx | Db, id: string, end: End): Promise<bool
 }
 
 /** Stops a running import, in whichever process it runs: it finds that out within half a second, or when it would write. */
-export async function stopImport(db: Db, amendment: string, id: string): Promise<Import> {
+export async function stopImport(db: Db, acting: Acting, amendment: string, id: string): Promise<Import> {
   const current = await readImport(db, amendment, id)
   if (current.state !== 'running') throw new Problem('state_conflict', `This import is ${current.state}; only a running one can be stopped.`, { extra: { state: current.state, possible_states: ['running'] } })
-  const stopped = await db.update(imports).set({ state: 'stopped', endedAt: sql`now()` }).where(and(eq(imports.id, id), eq(imports.state, 'running'))).returning({ id: imports.id })
+  const stopped = await db.transaction(async (tx) => {
+    const ended = await tx.update(imports).set({ state: 'stopped', endedAt: sql`now()` }).where(and(eq(imports.id, id), eq(imports.state, 'running'))).returning({ id: imports.id })
+    if (ended.length > 0) await recordAudit(tx, acting, { action: 'import.stop', subjectKind: 'amendment', subjectId: amendment, after: { import: id } })
+    return ended
+  })
   const after = await readImport(db, amendment, id)
   if (stopped.length === 0) throw new Problem('state_conflict', `This import is ${after.state}; only a running one can be stopped.`, { extra: { state: after.state, possible_states: ['running'] } })
   return after

@@ -3,6 +3,7 @@ import type { Finding, LevelValues } from '@/openapi/schemas/change'
 import type { LevelRow, MeasuredGRow } from '../rows'
 import { type Atom, type ReadConfiguration, readConfiguration } from './atom'
 import { Findings } from './findings'
+import { checkLengths } from './lengths'
 import { readChosen, readMeasured } from './level-g'
 import { type Momenta, readMomenta } from './level-momenta'
 import { printCore, printLevelTerm } from './level-term'
@@ -61,6 +62,7 @@ function readConfigurationOfLevel(findings: Findings, given: LevelValues, atom: 
  */
 export function readLevelValues(given: LevelValues, { atom }: { atom: Atom | null }): LevelReading {
   const findings = new Findings()
+  checkLengths(findings, 'level', given)
   const configuration = readConfigurationOfLevel(findings, given, atom)
   const momenta = readMomenta(findings, given)
   const energy = readEnergy(findings, given)

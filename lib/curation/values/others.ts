@@ -7,6 +7,7 @@ import { Evidence } from '@/openapi/schemas/common'
 import type { HyperfineValues, IsotopeValues, SourceValues, SpeciesValues } from '@/openapi/schemas/change'
 import type { HyperfineRow, IsotopeRow, SourceRow, SpeciesRow } from '../rows'
 import type { Findings } from './findings'
+import { checkLengths } from './lengths'
 import { isGiven, readChoice, readGivenNumber, readText, readUncertainty } from './numbers'
 
 const EVIDENCE_WANTED = `Say how far the values were checked against the source: ${Evidence.options.join(', ')}.`
@@ -28,6 +29,7 @@ function readDoi(findings: Findings, given: string | null | undefined): string |
 }
 
 export function readSource(findings: Findings, given: SourceValues): SourceRow | null {
+  checkLengths(findings, 'source', given)
   const citation = needText(findings, 'citation', given.citation, 'A source needs its citation: authors, where it stands, year.')
   const kind = readChoice(findings, 'kind', given.kind, SOURCE_KINDS, 'missing_field', `Say what it is: ${SOURCE_KINDS.join(', ')}.`)
   const year = readGivenNumber(findings, 'year', given.year, { integer: true, min: 1800, max: new Date().getUTCFullYear() + 2 })
@@ -57,6 +59,7 @@ function readCoreConfiguration(findings: Findings, given: string | null | undefi
 }
 
 export function readSpecies(findings: Findings, id: string, given: SpeciesValues): SpeciesRow | null {
+  checkLengths(findings, 'species', given)
   const ion = ionOf(id)
   if (ion === null) findings.error('species_impossible', null, `There is no ion ${id}: write the element's symbol and its stage in Roman numerals, such as Fe-II; an atom has as many stages as electrons.`)
   const name = needText(findings, 'name', given.name, 'A species needs its name, such as sodium.')
@@ -82,6 +85,7 @@ function readSpin(findings: Findings, given: IsotopeValues['nuclear_spin']): num
 }
 
 export function readIsotope(findings: Findings, given: IsotopeValues): IsotopeRow | null {
+  checkLengths(findings, 'isotope', given)
   const massU = readGivenNumber(findings, 'mass_u', given.mass_u, { above: 0, unit: 'u' })
   const twoI = readSpin(findings, given.nuclear_spin)
   const abundancePercent = readGivenNumber(findings, 'abundance_percent', given.abundance_percent, { min: 0, max: 100 })
@@ -97,6 +101,7 @@ export const writeIsotope = (row: IsotopeRow): IsotopeValues => ({
 })
 
 export function readHyperfine(findings: Findings, given: HyperfineValues): HyperfineRow | null {
+  checkLengths(findings, 'hyperfine', given)
   const aMhz = readGivenNumber(findings, 'a_mhz', given.a_mhz, { unit: 'MHz' })
   const aUncMhz = readUncertainty(findings, 'a_unc_mhz', given.a_unc_mhz)
   const bMhz = readGivenNumber(findings, 'b_mhz', given.b_mhz, { unit: 'MHz' })

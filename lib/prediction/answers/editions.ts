@@ -77,13 +77,14 @@ export const editionCitation = async (n: number) => ({ data: citeEdition(await r
 
 export const sourceCitation = (snapshot: Snapshot, key: string) => ({ data: citeSource(sourceOf(snapshot, key)) })
 
-/** The feed of changes, from a place in it or from a cursor. */
+/** The feed of changes, from a place in it or from a cursor. `last_sequence` is what to ask on from, whether anything is new or not. */
 export async function feedList(query: z.output<(typeof listChanges)['query']>, after: Position) {
   const limit = limitOf(query)
-  const entries = await readFeed(getDb(), after === null ? query.after : Number(after[0]), limit)
+  const from = after === null ? query.after : Number(after[0])
+  const entries = await readFeed(getDb(), from, limit)
   const rows = entries.slice(0, limit)
   const last = rows.at(-1)
-  return { data: rows, page: { limit, next: entries.length > limit && last !== undefined ? [last.sequence] : null }, meta: { last_sequence: last?.sequence ?? null }, table: () => feedTable(rows) }
+  return { data: rows, page: { limit, next: entries.length > limit && last !== undefined ? [last.sequence] : null }, meta: { last_sequence: last?.sequence ?? from }, table: () => feedTable(rows) }
 }
 
 export const historyOf = async (level: string) => ({ data: await levelHistory(getDb(), level) })

@@ -41,7 +41,7 @@ describe('what the columns of a file are', () => {
 })
 
 describe('comment threads', () => {
-  const comment = (id: string, thread: string | null, change: string | null = null, at = id): Comment => ({ id, amendment: 'a', change, thread, author: { id: 'p', name: 'P' }, text: id, created_at: at, resolved_at: null, resolved_by: null })
+  const comment = (id: string, thread: string | null, change: string | null = null, at = id): Comment => ({ id, amendment: 'a', change, thread, author: { id: 'p', name: 'P' }, text: id, created_at: at, resolved_at: null, resolved_by: null, version: 1, etag: '"1"' })
   it('hang answers on what they answer, in order', () => {
     const threads = threadsOf([comment('3', '1'), comment('1', null, 'c'), comment('2', '1'), comment('4', null), comment('5', 'lost')])
     expect(threads.map((thread) => [thread.first.id, thread.answers.map((answer) => answer.id)])).toEqual([['1', ['2', '3']], ['4', []], ['5', []]])

@@ -134,6 +134,18 @@ describe('text that the server does not hold', () => {
     await two.saver.now()
     expect(stored()).toMatchObject({ note: 'half-typ', energy_literal: '16973.4' })
   })
+  it('of a source goes upon what an edition says of it by now', async () => {
+    const subject: Subject = { kind: 'source', species: null, level: null, source: 'made', massNumber: null }
+    const row = (base: Record<string, unknown>) => ({ key: 'source:made', subject, base, complete: true })
+    const one = page('one')
+    one.sheet.add([row({ citation: 'Made', year: 1990 })])
+    one.type('citation', 'Made anew', 'source:made')
+    one.stop()
+    const two = page('two')
+    two.sheet.add([row({ citation: 'Made', year: 1991 })])
+    expect(await restore(two)).toBe(1)
+    expect(two.row('source:made').wanted?.values).toEqual({ citation: 'Made anew', year: 1991 })
+  })
   it('is not brought back where a closing page sent it and it came', async () => {
     const one = page('one')
     const key = one.sheet.addNew(level(null))

@@ -9,6 +9,7 @@ export const { GET, HEAD, OPTIONS, POST, PUT, PATCH, DELETE } = resource(
   endpoint(operations.listEditions, ({ query, after }) => editionList(query, after)),
   endpoint(operations.publishEdition, async (call) => {
     const number = await publishEdition(getDb(), actingOf(call), call.body)
-    return { ...(await oneEdition(number)), headers: { location: addressOf(`/editions/${number}`) } }
+    // the answer is of the edition that it made, not of the one before
+    return { ...(await oneEdition(number)), meta: { edition: number }, headers: { location: addressOf(`/editions/${number}`) } }
   }),
 )

@@ -10,6 +10,6 @@ export const { GET, HEAD, OPTIONS, POST, PUT, PATCH, DELETE } = resource(
     pageOf(await listComments(getDb(), params.id, after, query.limit), query.limit, (comment) => [comment.created_at, comment.id])),
   endpoint(operations.createComment, async (call) => {
     const data = await createComment(getDb(), actingOf(call), call.params.id, call.body)
-    return { data, headers: { location: addressOf(`/amendments/${call.params.id}/comments/${data.id}`) } }
+    return { data, etag: data.etag, headers: { location: addressOf(`/amendments/${call.params.id}/comments/${data.id}`) } }
   }),
 )

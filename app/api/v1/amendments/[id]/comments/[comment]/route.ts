@@ -5,5 +5,8 @@ import { resolveComment } from '@/lib/curation/comments'
 import * as operations from '@/openapi/operations/amendments'
 
 export const { GET, HEAD, OPTIONS, POST, PUT, PATCH, DELETE } = resource(
-  endpoint(operations.changeComment, async (call) => ({ data: await resolveComment(getDb(), actingOf(call), call.params.id, call.params.comment, call.body.resolved) })),
+  endpoint(operations.changeComment, async (call) => {
+    const data = await resolveComment(getDb(), actingOf(call), call.params.id, call.params.comment, call.body.resolved, call.ifMatch)
+    return { data, etag: data.etag }
+  }),
 )
