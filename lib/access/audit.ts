@@ -1,4 +1,4 @@
-import { and, desc, eq, gte, lt, type SQL } from 'drizzle-orm'
+import { and, desc, eq, gte, lt, sql, type SQL } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
 import { apiKeys, auditEvents, users } from '@/db/schema'
 import type { Caller } from '@/lib/access/caller'
@@ -39,7 +39,8 @@ export async function listAudit(db: Db, filter: AuditFilter, beforeId: number | 
   if (beforeId !== null) conditions.push(lt(auditEvents.id, beforeId))
   if (filter.action !== undefined) conditions.push(eq(auditEvents.action, filter.action))
   if (filter.subject_kind !== undefined) conditions.push(eq(auditEvents.subjectKind, filter.subject_kind))
-  if (filter.subject_id !== undefined) conditions.push(eq(auditEvents.subjectId, filter.subject_id))
+  // a change of a level is filed under the change, and is about the level
+  if (filter.subject_id !== undefined) conditions.push(sql`(${auditEvents.subjectId} = ${filter.subject_id} or ${auditEvents.after} ->> 'subject' = ${filter.subject_id} or ${auditEvents.before} ->> 'subject' = ${filter.subject_id})`)
   if (filter.actor !== undefined) conditions.push(eq(auditEvents.actorUser, filter.actor))
   if (filter.key !== undefined) conditions.push(eq(auditEvents.actorKey, filter.key))
   if (filter.session !== undefined) conditions.push(eq(auditEvents.actorSession, filter.session))

@@ -267,6 +267,9 @@ describe('talk and tasks', () => {
     expect(events.map((event: Json) => event.action)).toEqual(['amendment.withdraw', 'amendment.submit', 'amendment.create'])
     expect(events[1]).toMatchObject({ before: { state: 'draft' }, after: { state: 'in_review', comment: 'go' }, key: one.by.id })
     expect((await get(`/audit?subject_id=${change.json.data.id}`, { key: admin.key })).json.data[0]).toMatchObject({ action: 'change.create', after: { amendment: one.id, subject: 'Na-I.3' } })
+    // and under the level that it is about
+    const ofLevel = (await get('/audit?subject_id=Na-I.3&limit=1000', { key: admin.key })).json.data as { subject: { id: string } }[]
+    expect(ofLevel.map(({ subject }) => subject.id)).toContain(change.json.data.id)
     expect((await valuesOf('Na-I.3')).note).not.toBe('a')
   })
 })
