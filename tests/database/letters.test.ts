@@ -1,4 +1,6 @@
 import { spawnSync } from 'node:child_process'
+import os from 'node:os'
+import path from 'node:path'
 import { eq } from 'drizzle-orm'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { closeDb, type Db, getDb } from '@/db/client'
@@ -23,7 +25,7 @@ const before = { url: process.env.DATABASE_URL, app: process.env.DATABASE_APP_UR
 beforeAll(async () => {
   const made = spawnSync(process.execPath, ['db/scripts/pg.mjs', 'fresh', DATABASE], { cwd: root, encoding: 'utf8', env: { ...process.env, DATABASE_URL: '', DATABASE_APP_URL: '' } })
   expect(made.status, made.stderr).toBe(0)
-  const env = { ...process.env, DATABASE_URL: made.stdout.trim(), DATABASE_APP_URL: '', DEMO: '1', DEMO_ACCOUNTS_FILE: `/tmp/lodeterm-letters-${process.pid}.json` }
+  const env = { ...process.env, DATABASE_URL: made.stdout.trim(), DATABASE_APP_URL: '', DEMO: '1', DEMO_ACCOUNTS_FILE: path.join(os.tmpdir(), `lodeterm-letters-${process.pid}.json`) }
   await migrate(env)
   await seed(env)
   // the letters read snapshots and comparisons by the application's own connection
