@@ -100,7 +100,7 @@ describe('notices', () => {
     const [gone, stays] = [levels[0]?.id as string, levels[1]?.id as string]
     for (const subject of ['Na-I.3', 'Na-I.1~Na-I.3', gone, 'Na-I', 'Mg-I']) expect((await instance.ask('post', '/follows', { ...reader, body: { subject } })).status).toBe(201)
     expect((await instance.ask('post', '/follows', { ...author, body: { subject: 'Mg-I' } })).status).toBe(201)
-    const made = await instance.ask('post', '/amendments', { ...author, body: { title: 'Sodium\u2028energies' } })
+    const made = await instance.ask('post', '/amendments', { ...author, body: { title: 'Sodium energies' } })
     expect(made.status, made.text).toBe(201)
     amendment.id = made.json.data.id
     const { values } = (await instance.get('/levels/Na-I.3/values')).json.data
