@@ -54,7 +54,11 @@ export function* inventedChanges(size: { species: number; levels: number }, acti
       const row = { name, element, z, charge: z - 11, coreConfiguration: '[Ne]', ionisationEnergyInvcm: null, ionisationSource: null, ionisationEvidence: null, note: null }
       yield { kind: 'species', action, subject: id, species: id, given: { name, core_configuration: '[Ne]' }, row, base: null }
     }
-    for (const [at, { row, given }] of inventedLevels(size.levels, shift).entries()) yield { kind: 'level', action, subject: `${id}.${at + 1}`, species: id, given, row, base: create ? null : 1 }
+    for (const [at, { row, given }] of inventedLevels(size.levels, shift).entries()) {
+      // the ground level stays at zero, and a change that changes nothing is none
+      if (!create && at === 0) continue
+      yield { kind: 'level', action, subject: `${id}.${at + 1}`, species: id, given, row, base: create ? null : 1 }
+    }
   }
 }
 
