@@ -8,7 +8,8 @@ import { type Accepted, type AcceptedChange, checkUnion, conflictsOf, readAccept
 import type { Checked } from './rows'
 import { publishedIn } from './subjects'
 
-const MOST_CONFLICTS = 200
+/** So many are told one by one, of a preview as of a refusal. */
+export const MOST_CONFLICTS = 200
 const ORDINALS = ['First', 'Second', 'Third', 'Fourth', 'Fifth', 'Sixth', 'Seventh', 'Eighth', 'Ninth', 'Tenth']
 
 const suggestedLabel = (number: number): string => (ORDINALS[number - 1] === undefined ? `Edition ${number}` : `${ORDINALS[number - 1]} edition`)

@@ -9,7 +9,7 @@ import { CONSTANTS_EDITION } from '@/lib/atomic/constants'
 import { Problem } from '@/lib/problem'
 import type { NewEdition, PublicationConflict } from '@/openapi/schemas/edition'
 import { findParties } from './conflict-parties'
-import { countChanges, suggestedNotes } from './next-edition'
+import { countChanges, MOST_CONFLICTS, suggestedNotes } from './next-edition'
 import { type Accepted, type AcceptedAmendment, checkUnion, conflictsOf, readAccepted, readOtherwise } from './publish-accepted'
 import { measuredDifference, readMeasuredInForce, writeMeasured } from './publish-measured'
 import { writeFeed, writeRevisions } from './publish-rows'
@@ -19,7 +19,6 @@ import type { Checked, LevelRow } from './rows'
 const LOCK = 7_272_741
 /** One statement may write 100 000 revisions, and the connection waits while their checks run. */
 const PATIENCE = '10min'
-const MOST_CONFLICTS = 200
 
 export const conflictProblem = (conflicts: readonly PublicationConflict[]): Problem => {
   const [first] = conflicts
