@@ -1,5 +1,5 @@
 import { and, eq, sql, type SQL } from 'drizzle-orm'
-import type { AnyPgColumn } from 'drizzle-orm/pg-core'
+import { among } from '@/db/among'
 import type { Db, Tx } from '@/db/client'
 import { inEdition } from '@/db/edition-content'
 import {
@@ -59,9 +59,6 @@ async function readSpecies(db: Db | Tx, n: number): Promise<SpeciesRow[]> {
     .orderBy(species.ordinal)
   return rows.map((row) => ({ ...row, stage: toRoman(row.charge + 1), isotopes: bySpecies.get(row.id) ?? [] }))
 }
-
-/** A list as one parameter, whatever its length; without one, no condition. */
-const among = (column: AnyPgColumn, ids: readonly string[] | undefined): SQL | undefined => (ids === undefined ? undefined : sql`${column} = any(${sql.param(ids)}::text[])`)
 
 const readLevels = (db: Db | Tx, n: number, ids?: readonly string[]) => levelsWhere(db, and(inEdition(levelRevisions, n), among(levelRevisions.levelId, ids)))
 

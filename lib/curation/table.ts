@@ -1,5 +1,5 @@
-import { and, desc, eq, inArray, type SQL, sql } from 'drizzle-orm'
-import type { AnyPgColumn } from 'drizzle-orm/pg-core'
+import { and, desc, eq, sql } from 'drizzle-orm'
+import { among } from '@/db/among'
 import type { Db, Tx } from '@/db/client'
 import { inEdition } from '@/db/edition-content'
 import {
@@ -16,10 +16,6 @@ export async function newestEdition(db: Db | Tx): Promise<number> {
 
 /** Which part of an edition is read: all of it, some species, or single things (each list counts by itself). */
 interface Part { species?: readonly string[]; levels?: readonly string[]; isotopes?: readonly string[]; sources?: readonly string[] }
-
-/** A list as one parameter, whatever its length. */
-const among = (column: AnyPgColumn, list: readonly string[] | undefined): SQL | undefined =>
-  list === undefined ? undefined : list.length < 50 ? (list.length === 0 ? sql`false` : inArray(column, [...list])) : sql`${column} in (select jsonb_array_elements_text(${JSON.stringify(list)}::jsonb))`
 
 async function readSpecies(db: Db | Tx, n: number, part: Part): Promise<Map<string, Published<SpeciesRow>>> {
   const s = speciesRevisions
