@@ -4,17 +4,15 @@ import { quoted } from '@/lib/units/number'
 import type { Coupling, Parity } from '@/openapi/schemas/common'
 import type { Finding } from '@/openapi/schemas/change'
 import type { LevelRow } from '../rows'
+import { namesUnassigned, splitLabel, splitUnassigned } from '../values/level-term'
 import { fault, type RowCells } from './cells'
 import { ownOf } from './own'
 
 /** A level's symbol put together from the columns that speak of it; `text` is null where none does. */
 export interface ComposedTerm { text: string | null; coupling: string | null; faults: readonly Finding[] }
 
-const LABELLED = /^\s*([A-Za-z]{1,4})\s*(?=[\d([⁰¹²³⁴-⁹])(.+)$/s
-const UNASSIGNED = /^\s*(?:([A-Za-z]{1,4})\s+)?J\s*=/
-
 /** Which coupling a symbol is of, by its brackets. */
-const couplingOf = (symbol: string): Coupling => (UNASSIGNED.test(symbol) ? 'unassigned' : symbol.includes('[') ? 'J1K' : /^\s*(?:[A-Za-z]{1,4}\s*)?\(/.test(symbol) ? 'jj' : 'LS')
+const couplingOf = (symbol: string): Coupling => (namesUnassigned(symbol) ? 'unassigned' : symbol.includes('[') ? 'J1K' : splitLabel(symbol).symbol.trimStart().startsWith('(') ? 'jj' : 'LS')
 
 const ODD = new Set(['odd', 'o', '*', '°'])
 const EVEN = new Set(['even', 'e'])
@@ -41,12 +39,12 @@ const against = (field: string, detail: string): Finding => fault('column_contra
 
 /** Fills what the symbol leaves open with what stands beside it, and tells where the two say different things. */
 function joined(symbol: string, said: Said, base: LevelRow | null, cells: RowCells, faults: Finding[]): string {
-  const labelled = LABELLED.exec(symbol)
-  const parsed = parseTerm(labelled?.[2] ?? symbol)
+  const split = splitLabel(symbol)
+  const parsed = parseTerm(split.symbol)
   // what cannot be read is told by the reader of levels, who sees it as it was written
   if (!parsed.ok) return symbol
   const term: Term = parsed.value
-  const inSymbol = labelled?.[1] ?? term.label
+  const inSymbol = split.label ?? term.label
   if (term.twoJ !== null && said.j !== null && term.twoJ !== said.j) faults.push(against('j', `The term says J = ${formatHalf(term.twoJ)} and the column j ${formatHalf(said.j)}.`))
   if (term.parity === 'odd' && said.parity === 'even') faults.push(against('parity', 'The term is marked odd and the column parity says even.'))
   // a symbol with J and no mark is that of an even level, unless the table writes its parity in a column of its own
@@ -78,14 +76,13 @@ function compose(cells: RowCells, base: LevelRow | null): ComposedTerm {
   if (symbol === null && stated !== 'unassigned') return { text: null, coupling: stated, faults }
   const coupling = stated ?? couplingOf(symbol ?? '')
   if (coupling !== 'unassigned') return { text: joined(symbol ?? '', said, base, cells, faults), coupling, faults }
-  const own = symbol === null ? null : /^\s*(?:[A-Za-z]{1,4}\s+)?J\s*=\s*([0-9./]+)\s*([*°o]?)\s*$/.exec(symbol)
+  const own = symbol === null ? null : splitUnassigned(symbol)
   if (symbol !== null && own === null) return { text: symbol, coupling, faults }
-  const ownJ = own === null ? null : parseHalf(own[1] ?? '')
+  const ownJ = own === null ? null : parseHalf(own.j)
   if (ownJ !== null && ownJ.ok && said.j !== null && ownJ.value !== said.j) faults.push(against('j', `The term says J = ${formatHalf(ownJ.value)} and the column j ${formatHalf(said.j)}.`))
-  if ((own?.[2] ?? '') !== '' && said.parity === 'even') faults.push(against('parity', 'The term is marked odd and the column parity says even.'))
+  if (own?.odd === true && said.parity === 'even') faults.push(against('parity', 'The term is marked odd and the column parity says even.'))
   const twoJ = ownJ !== null && ownJ.ok ? ownJ.value : said.j
   if (twoJ === null) return { text: symbol, coupling, faults }
-  const inSymbol = symbol === null ? undefined : (UNASSIGNED.exec(symbol) ?? [])[1]
-  const label = inSymbol ?? said.label
-  return { text: `${label === null ? '' : `${label} `}J=${formatHalf(twoJ)}${(own?.[2] ?? '') !== '' || said.parity === 'odd' ? '*' : ''}`, coupling, faults }
+  const label = own?.label ?? said.label
+  return { text: `${label === null ? '' : `${label} `}J=${formatHalf(twoJ)}${own?.odd === true || said.parity === 'odd' ? '*' : ''}`, coupling, faults }
 }

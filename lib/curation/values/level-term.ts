@@ -10,29 +10,43 @@ type Reading = { ok: true; value: LevelTerm } | { ok: false; code: string; detai
 
 const unreadable = (code: string, detail: string): Reading => ({ ok: false, code, detail })
 
-const UNASSIGNED = /^(?:([A-Za-z]{1,4})\s+)?J\s*=\s*([0-9./]+)\s*([*°o]?)$/
-/** The letters before a repeated term: `z5P*2`, `a 5D4`, `y(1/2,3/2)*1`. */
-const LABELLED = /^([A-Za-z]{1,4})\s*(?=[\d([⁰¹²³⁴-⁹])(.+)$/s
+const UNASSIGNED = /^\s*(?:([A-Za-z]{1,4})\s+)?J\s*=\s*([0-9./]+)\s*([*°o]?)\s*$/
+const LABELLED = /^\s*([A-Za-z]{1,4})\s*(?=[\d([⁰¹²³⁴-⁹])(.+)$/s
+
+/** What the name of a level of no coupling says, `J=3/2*` or `a J=3/2`; null where the text is none. */
+export function splitUnassigned(text: string): { label: string | null; j: string; odd: boolean } | null {
+  const found = UNASSIGNED.exec(text)
+  return found === null ? null : { label: found[1] ?? null, j: found[2] ?? '', odd: found[3] !== '' }
+}
+
+/** Whether a text means to name a level of no coupling, well written or not. */
+export const namesUnassigned = (text: string): boolean => /^\s*(?:[A-Za-z]{1,4}\s+)?J\s*=/.test(text)
+
+/** The letters before a repeated term, and the symbol after them: `z5P*2`, `a 5D4`, `y(1/2,3/2)*1`. */
+export function splitLabel(text: string): { label: string | null; symbol: string } {
+  const found = LABELLED.exec(text)
+  return { label: found?.[1] ?? null, symbol: found?.[2] ?? text }
+}
 
 const REMEMBERED = 20_000
 const readings = new Map<string, Reading>()
 
 function read(text: string, coupling: Coupling): Reading {
-  const unassigned = UNASSIGNED.exec(text)
+  const unassigned = splitUnassigned(text)
   if (coupling === 'unassigned') {
     if (unassigned === null) return unreadable('term_malformed', `${quoted(text)} is not how an unassigned level is named: write J=3/2, or J=3/2* where it is odd.`)
-    const j = parseHalf(unassigned[2] ?? '')
+    const j = parseHalf(unassigned.j)
     if (!j.ok) return j
-    return { ok: true, value: { label: unassigned[1] ?? null, term: null, twoJ: j.value, parity: unassigned[3] ? 'odd' : 'even' } }
+    return { ok: true, value: { label: unassigned.label, term: null, twoJ: j.value, parity: unassigned.odd ? 'odd' : 'even' } }
   }
   if (unassigned !== null) return unreadable('coupling_mismatch', `${quoted(text)} names a level of no coupling: set coupling to unassigned, or give its ${coupling} symbol.`)
-  const labelled = LABELLED.exec(text)
-  const term = parseTerm(labelled?.[2] ?? text)
+  const { label, symbol } = splitLabel(text)
+  const term = parseTerm(symbol)
   if (!term.ok) return term
   const { value } = term
   if (value.kind !== coupling) return unreadable('coupling_mismatch', `${quoted(text)} is a symbol of ${value.kind} coupling, and the level is given as ${coupling}: mend the coupling or the symbol.`)
   if (value.twoJ === null) return unreadable('j_missing', `${quoted(text)} has no J: a level's symbol ends with it, such as ${printTerm({ ...value, twoJ: value.kind === 'LS' ? Math.abs(value.twoS - 2 * value.l) : 0 }, 'ascii')}.`)
-  return { ok: true, value: { label: labelled?.[1] ?? value.label, term: value, twoJ: value.twoJ, parity: value.parity ?? 'even' } }
+  return { ok: true, value: { label: label ?? value.label, term: value, twoJ: value.twoJ, parity: value.parity ?? 'even' } }
 }
 
 /** Reads the symbol of a level with its J, remembering it by its text. */
