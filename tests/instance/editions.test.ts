@@ -3,9 +3,9 @@ import { createHash } from 'node:crypto'
 import { parse } from 'csv-parse/sync'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { type Instance, projectFolder, startInstance } from '../support/instance'
+import { type Signed, signInAll, withTag } from '../support/signed'
 
 /** Editions over the API, on a table of its own. All new values are invented. */
-type Signed = Awaited<ReturnType<Instance['signIn']>>
 let instance: Instance
 let author: Signed
 let reviewer: Signed
@@ -13,11 +13,10 @@ let admin: Signed
 let reader: Signed
 beforeAll(async () => {
   instance = await startInstance('editions')
-  ;[author, reviewer, admin, reader] = await Promise.all(['curator', 'second.curator', 'admin', 'reader'].map(instance.signIn)) as [Signed, Signed, Signed, Signed]
+  ;({ author, reviewer, admin, reader } = await signInAll(instance))
 })
 afterAll(() => instance.end())
 
-const withTag = (signed: Signed, etag: string): Signed => ({ ...signed, headers: { ...signed.headers, 'if-match': etag } })
 const tagOf = async (id: string): Promise<string> => (await instance.get(`/amendments/${id}`, author)).json.data.etag
 const corrected = async (level: string, changed: object) => ({ action: 'replace', level, values: { ...(await instance.get(`/levels/${level}/values`)).json.data.values, ...changed }, comment: 'meant' })
 

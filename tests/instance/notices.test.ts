@@ -6,6 +6,7 @@ import { SMTPServer } from 'smtp-server'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { Json } from '../api/helpers/client'
 import { type Instance, startInstance } from '../support/instance'
+import { type Signed, signInAll, withTag } from '../support/signed'
 
 // ---- the other side: a mail server that turns one address away at first, and a receiver of webhooks
 
@@ -42,7 +43,6 @@ const receiver = http.createServer((request, response) => {
 const listening = (server: { listen: (port: number, host: string, done: () => void) => unknown }): Promise<void> => new Promise((done) => { server.listen(0, '127.0.0.1', done) })
 
 let instance: Instance
-type Signed = Awaited<ReturnType<Instance['signIn']>>
 let author: Signed
 let reviewer: Signed
 let admin: Signed
@@ -52,7 +52,7 @@ beforeAll(async () => {
   await Promise.all([listening(mailServer), listening(receiver)])
   hooksAt = `http://127.0.0.1:${(receiver.address() as AddressInfo).port}`
   instance = await startInstance('notices', { WEBHOOK_PRIVATE_TARGETS: '1', SMTP_URL: `smtp://127.0.0.1:${(mailServer.server.address() as AddressInfo).port}`, MAIL_FROM: 'Levels <levels@test.example>', OUTBOX_FOLDER: '' })
-  ;[author, reviewer, admin, reader] = await Promise.all(['curator', 'second.curator', 'admin', 'reader'].map(instance.signIn)) as [Signed, Signed, Signed, Signed]
+  ;({ author, reviewer, admin, reader } = await signInAll(instance))
 })
 afterAll(async () => {
   await instance.end()
@@ -63,7 +63,6 @@ afterAll(async () => {
 const addressOf = (who: string): string => instance.accounts.find(({ email }) => email.startsWith(`${who}@`))?.email ?? ''
 const mailTo = (who: string, subject: string) => received.filter(({ to, mail }) => to.includes(addressOf(who)) && (mail.subject ?? '').includes(subject))
 const arrives = (who: string, subject: string) => expect.poll(() => mailTo(who, subject).length, { timeout: 20_000, interval: 100, message: `mail "${subject}" to ${who}` }).toBe(1)
-const tagged = (signed: Signed, etag: string): Signed => ({ ...signed, headers: { ...signed.headers, 'if-match': etag } })
 const deliveries = async (id: string): Promise<Json[]> => (await instance.get(`/webhooks/${id}/deliveries`, admin)).json.data
 /** Makes what waits for its next attempt due, and says so. */
 const hurry = async (table: 'mails' | 'webhook_deliveries') => {
@@ -74,7 +73,7 @@ const hurry = async (table: 'mails' | 'webhook_deliveries') => {
 const hooks = new Map<string, { id: string; secret: string }>()
 const amendment = { id: '', etag: '' }
 const step = async (as: Signed, what: string, comment: string): Promise<void> => {
-  const reply = await instance.ask('post', `/amendments/${amendment.id}/${what}`, { ...tagged(as, amendment.etag), body: { comment } })
+  const reply = await instance.ask('post', `/amendments/${amendment.id}/${what}`, { ...withTag(as, amendment.etag), body: { comment } })
   expect(reply.status, reply.text).toBe(200)
   amendment.etag = reply.json.data.etag
 }
@@ -87,7 +86,7 @@ describe('notices', () => {
       hooks.set(name, made.json.data)
     }
     const off = (await instance.get(`/webhooks/${hooks.get('off')?.id}`, admin)).json.data
-    expect((await instance.ask('patch', `/webhooks/${off.id}`, { ...tagged(admin, off.etag), body: { active: false } })).status).toBe(200)
+    expect((await instance.ask('patch', `/webhooks/${off.id}`, { ...withTag(admin, off.etag), body: { active: false } })).status).toBe(200)
     const ping = await instance.ask('post', `/webhooks/${hooks.get('all')?.id}/test`, admin)
     expect(ping.json.data).toMatchObject({ event: 'ping', state: 'delivered', response_status: 204, attempts: 1 })
     expect(JSON.parse(got[0]?.body ?? '{}')).toMatchObject({ id: ping.json.data.id, event: 'ping' })

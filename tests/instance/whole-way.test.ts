@@ -2,21 +2,20 @@ import { spawnSync } from 'node:child_process'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { Reply } from '../api/helpers/client'
 import { type Instance, projectFolder, startInstance } from '../support/instance'
+import { type Signed, signInAll, withTag } from '../support/signed'
 
 /** The whole way of a correction, from a curator's first word to a follower's mail. The new digits are invented. */
 let instance: Instance
-type Signed = Awaited<ReturnType<Instance['signIn']>>
 let author: Signed
 let reviewer: Signed
 let admin: Signed
 let reader: Signed
 beforeAll(async () => {
   instance = await startInstance('whole_way')
-  ;[author, reviewer, admin, reader] = await Promise.all(['curator', 'second.curator', 'admin', 'reader'].map(instance.signIn)) as [Signed, Signed, Signed, Signed]
+  ;({ author, reviewer, admin, reader } = await signInAll(instance))
 })
 afterAll(() => instance.end())
 
-const tagged = (signed: Signed, etag: string): Signed => ({ ...signed, headers: { ...signed.headers, 'if-match': etag } })
 const D2 = 'Na-I.1~Na-I.3'
 const PINNED = ['/levels/Na-I.3?edition=1', `/transitions/${D2}?edition=1`, `/transitions/${D2}/components?field=1.5T&edition=1`, '/editions/1', '/editions/1/levels?format=csv', '/species?edition=1', '/sources?edition=1', '/levels?species=Na-I&edition=1']
 
@@ -39,9 +38,9 @@ describe('a sodium level is corrected', () => {
     expect(bad.status, bad.text).toBe(201)
     expect((bad.json.data.findings as { severity: string }[]).some(({ severity }) => severity === 'error')).toBe(true)
     change = bad.json.data.id
-    const blocked = await instance.ask('post', `/amendments/${amendment}/submit`, { ...tagged(author, (await instance.get(`/amendments/${amendment}`, author)).json.data.etag), body: { comment: 'please' } })
+    const blocked = await instance.ask('post', `/amendments/${amendment}/submit`, { ...withTag(author, (await instance.get(`/amendments/${amendment}`, author)).json.data.etag), body: { comment: 'please' } })
     expect([409, 422]).toContain(blocked.status)
-    const good = await instance.ask('put', `/amendments/${amendment}/changes/${change}`, { ...tagged(author, bad.json.data.etag), body: { action: 'replace', level: 'Na-I.3', values: { ...values, energy_invcm: undefined, energy_literal: '16973.37619' } } })
+    const good = await instance.ask('put', `/amendments/${amendment}/changes/${change}`, { ...withTag(author, bad.json.data.etag), body: { action: 'replace', level: 'Na-I.3', values: { ...values, energy_invcm: undefined, energy_literal: '16973.37619' } } })
     expect(good.status, good.text).toBe(200)
     const { findings, consequences, fields } = good.json.data
     expect((findings as { severity: string; code: string }[]).filter(({ severity }) => severity === 'error')).toEqual([])
@@ -53,20 +52,20 @@ describe('a sodium level is corrected', () => {
   })
 
   it('needs a word on its warnings, and is submitted', async () => {
-    const silent = await instance.ask('post', `/amendments/${amendment}/submit`, { ...tagged(author, (await instance.get(`/amendments/${amendment}`, author)).json.data.etag), body: {} })
+    const silent = await instance.ask('post', `/amendments/${amendment}/submit`, { ...withTag(author, (await instance.get(`/amendments/${amendment}`, author)).json.data.etag), body: {} })
     expect([409, 422]).toContain(silent.status)
-    const submitted = await instance.ask('post', `/amendments/${amendment}/submit`, { ...tagged(author, (await instance.get(`/amendments/${amendment}`, author)).json.data.etag), body: { comment: 'The shift is meant.' } })
+    const submitted = await instance.ask('post', `/amendments/${amendment}/submit`, { ...withTag(author, (await instance.get(`/amendments/${amendment}`, author)).json.data.etag), body: { comment: 'The shift is meant.' } })
     expect(submitted.status, submitted.text).toBe(200)
     etag = submitted.json.data.etag
   })
 
   it('is not accepted by its author, and is by a colleague', async () => {
-    const own = await instance.ask('post', `/amendments/${amendment}/accept`, { ...tagged(author, etag), body: {} })
+    const own = await instance.ask('post', `/amendments/${amendment}/accept`, { ...withTag(author, etag), body: {} })
     expect(own.status).toBe(403)
     expect(own.json.code).toBe('own_amendment')
     const waiting = (await instance.get('/me/tasks', reviewer)).json.data.to_review as { id: string }[]
     expect(waiting.map(({ id }) => id)).toContain(amendment)
-    const accepted = await instance.ask('post', `/amendments/${amendment}/accept`, { ...tagged(reviewer, etag), body: { comment: 'Seen.' } })
+    const accepted = await instance.ask('post', `/amendments/${amendment}/accept`, { ...withTag(reviewer, etag), body: { comment: 'Seen.' } })
     expect(accepted.status, accepted.text).toBe(200)
   })
 
