@@ -15,7 +15,7 @@ import { type Allowance, rateFields } from '@/lib/http/rate-limit'
 import { planRequest, readRequest, type ReadRequest, type RequestPlan, splitAddress } from '@/lib/http/request'
 import type { Call, Endpoint, Handler, Warning } from '@/lib/http/types'
 import { checkSameSite } from '@/lib/access/same-site'
-import { parameterProblem, Problem } from '@/lib/problem'
+import { bodyProblem, parameterProblem, Problem } from '@/lib/problem'
 import { type EditionUse, type Operation, writes } from '@/openapi/core/define'
 
 type Route = (request: Request) => Promise<Response>
@@ -183,16 +183,33 @@ function authorise(operation: Operation | undefined, others: readonly Operation[
   if (!atLeast(caller.role, needed)) throw new Problem('role_insufficient', `This needs the role ${needed}; ${caller.kind === 'key' ? 'this key' : 'your account'} has the role ${caller.role}.`)
 }
 
+/** The edition that a body names as its member `edition` (`bodyEdition`); null for the latest or none. */
+const editionInBody = (body: unknown): number | null => {
+  const given = typeof body === 'object' && body !== null ? (body as { edition?: unknown }).edition : undefined
+  return typeof given === 'number' ? given : null
+}
+
+/** The edition that a request is pinned to, by its parameter or in its body; named in both it must be one. */
+function askedEdition({ query, body }: ReadRequest): number | null {
+  const [parameter, inBody] = [typeof query.edition === 'number' ? query.edition : null, editionInBody(body)]
+  if (parameter !== null && inBody !== null && parameter !== inBody) {
+    throw bodyProblem('/edition', 'repeated_parameter', `The body names edition ${inBody} and the address edition ${parameter}: name one of them, or leave one out.`)
+  }
+  return parameter ?? inBody
+}
+
 async function resolveEdition<S>(house: House<S>, operation: Operation, read: ReadRequest, fingerprint: string): Promise<{ edition: number; pinned: boolean; after: Call<never, never, never, never>['after'] }> {
   const cursor = typeof read.query.cursor === 'string' ? readCursor(house.secret(), fingerprint, read.query.cursor) : null
   if (operation.edition === 'none') return { edition: operation.bare ? 0 : await house.editions.latest(), pinned: false, after: cursor?.position ?? null }
-  const asked = operation.editionIn === 'path' ? Number(read.params.n) : typeof read.query.edition === 'number' ? read.query.edition : null
+  const asked = operation.editionIn === 'path' ? Number(read.params.n) : askedEdition(read)
   const latest = await house.editions.latest()
   if (latest === 0) throw new Problem('not_ready', 'No edition has been published yet.', { headers: { 'retry-after': '30' } })
   const edition = asked ?? cursor?.edition ?? latest
   if (cursor !== null && cursor.edition !== edition) throw parameterProblem('cursor', 'cursor_mismatch', `This cursor belongs to edition ${cursor.edition}; page on in that one, or begin without a cursor.`)
   if (edition !== latest && !(await house.editions.exists(edition))) {
-    throw parameterProblem(operation.editionIn === 'path' ? 'n' : 'edition', 'edition_unknown', `There is no edition ${edition}; there ${latest === 1 ? 'is edition 1' : `are editions 1 to ${latest}`}.`)
+    const detail = `There is no edition ${edition}; there ${latest === 1 ? 'is edition 1' : `are editions 1 to ${latest}`}.`
+    if (editionInBody(read.body) === edition) throw bodyProblem('/edition', 'edition_unknown', detail)
+    throw parameterProblem(operation.editionIn === 'path' ? 'n' : 'edition', 'edition_unknown', detail)
   }
   return { edition, pinned: asked !== null, after: cursor?.position ?? null }
 }

@@ -97,6 +97,9 @@ export const editionParameter = readBy<number | typeof LATEST>((text) => {
   return { ok: false, code: 'edition_malformed', detail: `${quoted(text)} is not an edition: give its number, such as 1, or "latest".` }
 }, { description: 'Edition to read: its number, or latest.', type: 'string', pattern: '^(latest|[1-9][0-9]{0,8})$', default: LATEST, example: '1' }).prefault(LATEST)
 
+/** `edition` as a member of a body, for operations whose whole question stands there; the parameter of the same name does as well. */
+export const bodyEdition = z.union([z.int().min(1).max(999_999_999), z.literal(LATEST)]).optional().meta({ description: 'Edition to read: its number, or latest, which is the default.', example: 1 })
+
 export const LIMIT_DEFAULT = 100
 export const LIMIT_MAX = 1000
 export const limitParameter = numberParameter('Rows on one page.', { min: 1, max: LIMIT_MAX, integer: true }).prefault(String(LIMIT_DEFAULT))
