@@ -139,17 +139,21 @@ const SEEN: Record<Analyser['kind'], string> = {
   clockwise: 'The analyser passes light whose electric vector turns clockwise as the observer sees it.',
 }
 
-/** What someone at the apparatus sees, in a few sentences. */
+const turnOf = (thetaDeg: number, q: 1 | -1): string => ((Math.cos((thetaDeg * Math.PI) / 180) > 0) === (q > 0) ? 'counter-clockwise' : 'clockwise')
+
+/** What someone at the apparatus sees, in a few sentences: which group, in which polarisation, on which side of the line. */
 export function benchSentence({ thetaDeg, light = 'emission', analyser = { kind: 'none' } }: ViewOptions): string {
   const seen = SEEN[analyser.kind]
   if (thetaDeg === null) return 'Averaged over all directions the light is not polarised and pi and both sigma groups share it equally.'
   const along = ((thetaDeg % 180) + 180) % 180
   const verb = light === 'emission' ? 'emitted' : 'absorbed'
-  const towards = Math.abs((((thetaDeg % 360) + 540) % 360) - 180) < 90
-  if (along === 0) {
-    const turn = towards ? ['counter-clockwise', 'clockwise'] : ['clockwise', 'counter-clockwise']
-    return `Looking along the field, which points ${towards ? 'towards' : 'away from'} the observer: pi is not seen; the sigma+ group (to the blue where g_eff is positive) is ${verb} turning ${turn[0]}, sigma- turning ${turn[1]}. ${seen}`
-  }
   if (along === 90) return `Looking across the field: pi is ${verb} polarised along the field, both sigma groups across it, none circularly. ${seen}`
-  return `Looking at ${thetaDeg} degrees to the field: pi is ${verb} polarised along the projected field; the sigma groups elliptically, in opposite senses. ${seen}`
+  const towards = turnOf(thetaDeg, 1) === 'counter-clockwise'
+  const [plus, minus] = [turnOf(thetaDeg, 1), turnOf(thetaDeg, -1)]
+  const left = light === 'emission' ? '' : ' What is left of unpolarised light turns the other way at each group.'
+  const side = '(to the blue where g_eff is positive)'
+  if (along === 0) {
+    return `Looking ${towards ? 'against' : 'along'} the field, which points ${towards ? 'towards' : 'away from'} the observer: pi is not seen; the sigma+ group ${side} is ${verb} turning ${plus} as the observer sees it, sigma- turning ${minus}.${left} ${seen}`
+  }
+  return `Looking at ${thetaDeg} degrees to the field, which points partly ${towards ? 'towards' : 'away from'} the observer: pi is ${verb} polarised along the projected field; the sigma+ group ${side} elliptically, turning ${plus} as the observer sees it, sigma- turning ${minus}.${left} ${seen}`
 }
