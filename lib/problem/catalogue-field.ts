@@ -24,4 +24,7 @@ export const FIELD_PROBLEMS = {
   tolerance_not_positive: { status: 400, title: 'Tolerance not positive', explanation: 'A tolerance is above zero.', cure: 'Give a larger tolerance.' },
   table_too_large: { status: 413, title: 'Field table too large', explanation: 'At most 5 million numbers are given in one table.', cure: 'Narrow the interval or allow a larger error.' },
   field_outside_table: { status: 422, title: 'Field outside the table', explanation: 'A field table knows nothing beyond its interval.', cure: 'Ask for a wider table.' },
+  prediction_empty: { status: 400, title: 'Nothing to predict', explanation: 'A bulk prediction is of lines or multiplets, and the request names neither.', cure: 'Name at least one line or multiplet.' },
+  heavy_requests_waiting: { status: 429, title: 'Too many large computations waiting', explanation: 'Large computations of one caller are done a few at a time, and a few more may wait; this one is beyond that.', cure: 'Wait as long as Retry-After says, or for your other requests to end, and ask again.' },
+  computing_interrupted: { status: 503, title: 'The computation was interrupted', explanation: 'The process that computes large answers ended or was too busy before this one began. It has been started again.', cure: 'Ask again after the time in Retry-After.' },
 } as const
