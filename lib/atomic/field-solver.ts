@@ -61,7 +61,8 @@ function solveAtZero(block: FieldBlock, into: TermSolution): void {
   }
 }
 
-function solveBlock(block: FieldBlock, x: number, into: TermSolution): void {
+/** One block at x = mu_B B (cm^-1): energies and vectors. */
+export function solveBlock(block: FieldBlock, x: number, into: TermSolution): void {
   const { n, diagonal, slopes, couplings, firstState, firstVector } = block
   if (Math.abs(x) < VANISHING_X) return solveAtZero(block, into)
   const { diagonal: d, offDiagonal: e } = into
@@ -74,7 +75,7 @@ function solveBlock(block: FieldBlock, x: number, into: TermSolution): void {
 }
 
 /** Shifts and slopes of a solved block; formulas as `intermediateSublevels` has them. */
-function readBlock(block: FieldBlock, x: number, into: TermSolution): void {
+export function readBlock(block: FieldBlock, x: number, into: TermSolution): void {
   const { n, own, diagonal, slopes, couplings, firstState, firstVector } = block
   const { vectors } = into
   for (let k = 0; k < n; k += 1) {

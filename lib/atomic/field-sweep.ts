@@ -1,0 +1,194 @@
+import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
+import type { BlockLink, FieldMultiplet } from '@/lib/atomic/field-multiplet'
+import { readBlock, solveBlock, type TermSolution } from '@/lib/atomic/field-solver'
+import { type FieldBlock, type FieldTerm, VANISHING_X } from '@/lib/atomic/field-term'
+import { rotationTangent } from '@/lib/atomic/rotation'
+
+/**
+ * A term over many fields, one column a field, state by state: what `solveTerm` gives at one field, laid out so that a bulk answer can be
+ * written component by component. A state that is alone in its block runs straight and has no column of its own.
+ */
+export interface TermSweep {
+  /** By state: energy from its own level at zero field, cm^-1; null where it runs straight. */
+  shifts: (Float64Array | null)[]
+  /** By state: dE/dx; null where it runs straight, empty where not asked for. */
+  slopes: (Float64Array | null)[]
+  /** By state: g_J m of its own level, which is its slope where it runs straight. */
+  straight: Float64Array
+  /** By element of the flat vectors (`firstVector` + k n + j); null in blocks of one state, empty where not asked for. */
+  vectors: (Float64Array | null)[]
+}
+
+const NOTHING = new Float64Array(0)
+
+/** Room for the blocks named over so many fields; other blocks stay empty. */
+export function termSweep(term: FieldTerm, fields: number, wanted: { slopes: boolean; vectors: boolean }, needed: ReadonlySet<FieldBlock> = new Set(term.blocks)): TermSweep {
+  const sweep: TermSweep = {
+    shifts: new Array<null>(term.states).fill(null),
+    slopes: new Array<null>(term.states).fill(null),
+    straight: new Float64Array(term.states),
+    vectors: new Array<null>(term.vectorLength).fill(null),
+  }
+  for (const block of term.blocks) {
+    for (let k = 0; k < block.n; k += 1) {
+      const state = block.firstState + k
+      sweep.straight[state] = block.slopes[block.own[k] as number] as number
+      if (block.n === 1) continue
+      const has = needed.has(block)
+      sweep.shifts[state] = has ? new Float64Array(fields) : NOTHING
+      sweep.slopes[state] = has && wanted.slopes ? new Float64Array(fields) : NOTHING
+      for (let j = 0; j < block.n; j += 1) sweep.vectors[block.firstVector + k * block.n + j] = has && wanted.vectors ? new Float64Array(fields) : NOTHING
+    }
+  }
+  return sweep
+}
+
+/** Any block, field by field. */
+function sweepBlock(block: FieldBlock, fieldsTesla: Float64Array, from: number, to: number, sweep: TermSweep, at: number, room: TermSolution): void {
+  const { n, firstState, firstVector } = block
+  const withSlopes = (sweep.slopes[firstState] as Float64Array).length > 0
+  const withVectors = (sweep.vectors[firstVector] as Float64Array).length > 0
+  for (let f = from; f < to; f += 1) {
+    const x = MU_B_OVER_HC_INVCM_PER_T * (fieldsTesla[f] as number)
+    solveBlock(block, x, room)
+    readBlock(block, x, room)
+    const column = at + f - from
+    for (let k = 0; k < n; k += 1) {
+      ;(sweep.shifts[firstState + k] as Float64Array)[column] = room.shifts[firstState + k] as number
+      if (withSlopes) (sweep.slopes[firstState + k] as Float64Array)[column] = room.slopes[firstState + k] as number
+    }
+    if (withVectors) for (let i = 0; i < n * n; i += 1) (sweep.vectors[firstVector + i] as Float64Array)[column] = room.vectors[firstVector + i] as number
+  }
+}
+
+/** Blocks of two states, which are most: the same arithmetic as `solveTridiagonal` and `readBlock`, without their calls. */
+function sweepPair(block: FieldBlock, fieldsTesla: Float64Array, from: number, to: number, sweep: TermSweep, at: number, room: TermSolution): void {
+  const { firstState, firstVector } = block
+  const [d0, d1] = [block.diagonal[0] as number, block.diagonal[1] as number]
+  const [s0, s1, coupling] = [block.slopes[0] as number, block.slopes[1] as number, block.couplings[0] as number]
+  const ownFirst = block.own[0] as number
+  const [shift0, shift1] = [sweep.shifts[firstState] as Float64Array, sweep.shifts[firstState + 1] as Float64Array]
+  const [slope0, slope1] = [sweep.slopes[firstState] as Float64Array, sweep.slopes[firstState + 1] as Float64Array]
+  const v00 = sweep.vectors[firstVector] as Float64Array
+  const v01 = sweep.vectors[firstVector + 1] as Float64Array
+  const v10 = sweep.vectors[firstVector + 2] as Float64Array
+  const v11 = sweep.vectors[firstVector + 3] as Float64Array
+  const [withSlopes, withVectors] = [slope0.length > 0, v00.length > 0]
+  for (let f = from; f < to; f += 1) {
+    const x = MU_B_OVER_HC_INVCM_PER_T * (fieldsTesla[f] as number)
+    if (Math.abs(x) < VANISHING_X) {
+      sweepBlock(block, fieldsTesla, f, f + 1, sweep, at + f - from, room)
+      continue
+    }
+    const column = at + f - from
+    const a = d0 + x * s0
+    const b = d1 + x * s1
+    const c = x * coupling
+    const t = rotationTangent(a, b, c)
+    const cosine = 1 / Math.sqrt(1 + t * t)
+    const sine = t * cosine
+    const first = a - t * c
+    const second = b + t * c
+    const upright = first <= second
+    const l0 = upright ? cosine : sine
+    const l1 = upright ? 0 - sine : cosine
+    const u0 = upright ? sine : cosine
+    const u1 = upright ? cosine : 0 - sine
+    const low = upright ? first : second
+    const high = upright ? second : first
+    // the lower state's own level is the one of lower energy at zero field
+    const lowOwn = ownFirst === 0 ? l0 : l1
+    const lowOther = ownFirst === 0 ? l1 : l0
+    const highOwn = ownFirst === 0 ? u1 : u0
+    const highOther = ownFirst === 0 ? u0 : u1
+    const dLow = ownFirst === 0 ? d0 : d1
+    const dHigh = ownFirst === 0 ? d1 : d0
+    const straightLow = x * (ownFirst === 0 ? s0 : s1)
+    const straightHigh = x * (ownFirst === 0 ? s1 : s0)
+    shift0[column] = straightLow + (lowOwn * lowOwn < 0.5 ? low - dLow - straightLow : (x * (coupling * lowOther)) / lowOwn)
+    shift1[column] = straightHigh + (highOwn * highOwn < 0.5 ? high - dHigh - straightHigh : (x * (coupling * highOther)) / highOwn)
+    if (withSlopes) {
+      slope0[column] = l0 * l0 * s0 + 2 * l0 * l1 * coupling + l1 * l1 * s1
+      slope1[column] = u0 * u0 * s0 + 2 * u0 * u1 * coupling + u1 * u1 * s1
+    }
+    if (withVectors) {
+      v00[column] = l0
+      v01[column] = l1
+      v10[column] = u0
+      v11[column] = u1
+    }
+  }
+}
+
+/** Solves a term at the fields `from` .. `to` (T) into the columns from `at` on. */
+export function sweepTerm(term: FieldTerm, fieldsTesla: Float64Array, from: number, to: number, sweep: TermSweep, at: number, room: TermSolution): void {
+  for (const block of term.blocks) {
+    if (block.n === 1 || (sweep.shifts[block.firstState] as Float64Array).length === 0) continue
+    if (block.n === 2) sweepPair(block, fieldsTesla, from, to, sweep, at, room)
+    else sweepBlock(block, fieldsTesla, from, to, sweep, at, room)
+  }
+}
+
+export interface MultipletSweep {
+  lower: TermSweep
+  upper: TermSweep
+}
+
+/** The part of a grid that a call writes: columns `column` on of the sweep, which hold the fields from `from` to `to`, into `out` from `at` on. */
+export interface SweepPart {
+  fieldsTesla: Float64Array
+  from: number
+  to: number
+  column: number
+}
+
+/** Shifts (cm^-1) of one component from its line at zero field. */
+export function sweepShifts(multiplet: FieldMultiplet, sweep: MultipletSweep, component: number, { fieldsTesla, from, to, column }: SweepPart, out: Float64Array, at: number): void {
+  const [l, u] = [multiplet.lowerState[component] as number, multiplet.upperState[component] as number]
+  const [low, high] = [sweep.lower.shifts[l] as Float64Array | null, sweep.upper.shifts[u] as Float64Array | null]
+  const [gLow, gHigh] = [sweep.lower.straight[l] as number, sweep.upper.straight[u] as number]
+  for (let i = 0; i < to - from; i += 1) {
+    const x = MU_B_OVER_HC_INVCM_PER_T * (fieldsTesla[from + i] as number)
+    out[at + i] = (high === null ? x * gHigh : (high[column + i] as number)) - (low === null ? x * gLow : (low[column + i] as number)) + 0
+  }
+}
+
+/** Derivatives of one component, cm^-1 per tesla. */
+export function sweepDerivatives(multiplet: FieldMultiplet, sweep: MultipletSweep, component: number, { from, to, column }: SweepPart, out: Float64Array, at: number): void {
+  const [l, u] = [multiplet.lowerState[component] as number, multiplet.upperState[component] as number]
+  const [low, high] = [sweep.lower.slopes[l] as Float64Array | null, sweep.upper.slopes[u] as Float64Array | null]
+  const [gLow, gHigh] = [sweep.lower.straight[l] as number, sweep.upper.straight[u] as number]
+  for (let i = 0; i < to - from; i += 1) {
+    const slope = (high === null ? gHigh : (high[column + i] as number)) - (low === null ? gLow : (low[column + i] as number))
+    out[at + i] = MU_B_OVER_HC_INVCM_PER_T * slope + 0
+  }
+}
+
+/** Adds factor x upper x lower over the columns; a null one is 1 (a block of one state). */
+function addProduct(out: Float64Array, at: number, count: number, factor: number, high: Float64Array | null, low: Float64Array | null, column: number): void {
+  if (high === null && low === null) for (let i = 0; i < count; i += 1) (out[at + i] as number) += factor
+  else if (high === null || low === null) {
+    const only = (high ?? low) as Float64Array
+    for (let i = 0; i < count; i += 1) (out[at + i] as number) += factor * (only[column + i] as number)
+  } else for (let i = 0; i < count; i += 1) (out[at + i] as number) += factor * (high[column + i] as number) * (low[column + i] as number)
+}
+
+/** Strengths of one component, as a share of the multiplet times `factor`; interference between J's included. */
+export function sweepStrengths(multiplet: FieldMultiplet, sweep: MultipletSweep, component: number, { from, to, column }: SweepPart, factor: number, out: Float64Array, at: number): void {
+  const { lower, upper, dipole } = multiplet.links[multiplet.linkOf[component] as number] as BlockLink
+  const rowLow = lower.firstVector + ((multiplet.lowerState[component] as number) - lower.firstState) * lower.n
+  const rowHigh = upper.firstVector + ((multiplet.upperState[component] as number) - upper.firstState) * upper.n
+  const count = to - from
+  out.fill(0, at, at + count)
+  for (let i = 0; i < upper.n; i += 1) {
+    for (let j = 0; j < lower.n; j += 1) {
+      const element = dipole[i * lower.n + j] as number
+      if (element !== 0) addProduct(out, at, count, element, sweep.upper.vectors[rowHigh + i] as Float64Array | null, sweep.lower.vectors[rowLow + j] as Float64Array | null, column)
+    }
+  }
+  const scale = factor / multiplet.norm
+  for (let i = 0; i < count; i += 1) {
+    const amplitude = out[at + i] as number
+    out[at + i] = amplitude * amplitude * scale
+  }
+}
