@@ -42,6 +42,10 @@ const FORMAT_WORDS: Record<string, string> = {
   email: 'an e-mail address such as name@place.example', uuid: 'a UUID', datetime: 'a time in ISO 8601 with zone, such as 2030-01-31T12:00:00Z', url: 'an http address',
 }
 
+/** What a pattern asks for: in the schema's own words where it has any. */
+const formWords = ({ format, pattern, message }: { format: string; pattern?: string; message: string }): string =>
+  format === 'regex' && !message.startsWith('Invalid ') ? message : `of the form ${pattern ?? format}`
+
 /**
  * Turns what zod found into faults with our own codes and sentences, every one of them.
  * `input` is what was parsed; `known` gives the keys that an object at a path may have, for the nearest name.
@@ -68,7 +72,7 @@ export function faultsOf(issues: readonly Issue[], input: unknown, place: Place,
       case 'too_big':
         return [{ ...at, ...boundFault(issue as Bound, false) }]
       case 'invalid_format':
-        return [{ ...at, code: 'format_mismatch', detail: `${typeof value === 'string' ? quoted(value) : 'The value'} is not ${FORMAT_WORDS[issue.format] ?? (issue.pattern === undefined ? `of the form ${issue.format}` : `of the form ${issue.pattern}`)}.` }]
+        return [{ ...at, code: 'format_mismatch', detail: `${typeof value === 'string' ? quoted(value) : 'The value'} is not ${FORMAT_WORDS[issue.format] ?? formWords(issue)}.` }]
       case 'invalid_union':
         return unionFaults(issue, value, at, (path) => place([...issue.path, ...path]), (path) => known([...issue.path, ...path]), place)
       case 'custom': {

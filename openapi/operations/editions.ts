@@ -153,7 +153,7 @@ export const getSourceCitation = defineOperation({
   summary: 'How to cite a source: text, BibTeX, CSL-JSON',
   tag: 'Table',
   role: 'reader',
-  params: z.strictObject({ key: z.string().min(1).max(120).regex(/^[a-z0-9][a-z0-9-]*$/).meta({ description: 'Key of the source.', example: 'sansonetti-2008-na' }) }),
+  params: z.strictObject({ key: z.string().min(1).max(120).regex(/^[a-z0-9][a-z0-9-]*$/, 'the key of a source, small letters, digits and hyphens such as sansonetti-2008-na').meta({ description: 'Key of the source.', example: 'sansonetti-2008-na' }) }),
   answer: Citation,
   edition: 'stored',
   problems: ['source_unknown'],

@@ -51,7 +51,7 @@ export const getSource = defineOperation({
   summary: 'One source and how many values rest on it',
   tag: 'Table',
   role: 'reader',
-  params: z.strictObject({ key: z.string().min(1).max(120).regex(/^[a-z0-9][a-z0-9-]*$/).meta({ description: 'Key of the source.', example: 'sansonetti-2008-na' }) }),
+  params: z.strictObject({ key: z.string().min(1).max(120).regex(/^[a-z0-9][a-z0-9-]*$/, 'the key of a source, small letters, digits and hyphens such as sansonetti-2008-na').meta({ description: 'Key of the source.', example: 'sansonetti-2008-na' }) }),
   answer: Source,
   edition: 'stored',
   problems: ['source_unknown'],

@@ -52,9 +52,9 @@ export const SPECIES_ID = /^[A-Z][a-z]?-[IVXLC]+$/
 export const LEVEL_ID = /^[A-Z][a-z]?-[IVXLC]+\.[1-9][0-9]{0,6}$/
 export const TRANSITION_ID = /^[A-Z][a-z]?-[IVXLC]+\.[1-9][0-9]{0,6}~[A-Z][a-z]?-[IVXLC]+\.[1-9][0-9]{0,6}$/
 
-export const SpeciesId = z.string().regex(SPECIES_ID).meta({ description: 'Element and Roman stage.', example: 'Na-I' })
-export const LevelId = z.string().regex(LEVEL_ID).meta({ description: 'Species, dot, ordinal given at creation and never reused.', example: 'Na-I.3' })
+export const SpeciesId = z.string().regex(SPECIES_ID, 'the name of a species, such as Na-I').meta({ description: 'Element and Roman stage.', example: 'Na-I' })
+export const LevelId = z.string().regex(LEVEL_ID, 'the name of a level, such as Na-I.3').meta({ description: 'Species, dot, ordinal given at creation and never reused.', example: 'Na-I.3' })
 export const TransitionId = z
   .string()
-  .regex(TRANSITION_ID)
+  .regex(TRANSITION_ID, 'the name of a line, such as Na-I.1~Na-I.3')
   .meta({ description: 'lower~upper; lower is the level of lower energy in the edition read.', example: 'Na-I.1~Na-I.3' })

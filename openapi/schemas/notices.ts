@@ -19,7 +19,7 @@ export const Follow = z
 export type Follow = z.infer<typeof Follow>
 
 export const NewFollow = z
-  .strictObject({ kind: FollowKind.optional().meta({ description: 'May be left out: the form of the subject tells it.' }), subject: z.string().max(60).regex(new RegExp(FOLLOWED)).meta({ description: 'A species, level or line: Na-I, Na-I.3, Na-I.1~Na-I.3.' }) })
+  .strictObject({ kind: FollowKind.optional().meta({ description: 'May be left out: the form of the subject tells it.' }), subject: z.string().max(60).regex(new RegExp(FOLLOWED), 'the name of a species, a level or a line, such as Na-I, Na-I.3 or Na-I.1~Na-I.3').meta({ description: 'A species, level or line: Na-I, Na-I.3, Na-I.1~Na-I.3.' }) })
   .meta({ id: 'NewFollow', example: { subject: 'Na-I.3' } })
 export type NewFollow = z.infer<typeof NewFollow>
 

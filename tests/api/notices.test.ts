@@ -33,6 +33,10 @@ describe('following', () => {
     for (const subject of ['Xx-I', 'Na-I.99999', 'Na-I.3~Na-I.3', 'Na-I.1~Mg-I.2', 'sodium', '', 'Na-I.3 ']) codes.push((await ask('post', '/follows', { key, body: { subject } })).json.code)
     expect(codes.slice(0, 4)).toEqual(['species_unknown', 'level_unknown', 'zero_interval', 'species_differ'])
     expect(codes.slice(4).every((code) => code !== undefined)).toBe(true)
+    // what is expected is told in words, not by the pattern that it is looked for with
+    const { detail } = (await ask('post', '/follows', { key, body: { subject: 'sodium' } })).json
+    expect(detail).toContain('"sodium" is not the name of a species, a level or a line, such as Na-I, Na-I.3 or Na-I.1~Na-I.3.')
+    expect(detail).not.toContain('[A-Z]')
     expect((await ask('post', '/follows', { key, body: { kind: 'line', subject: 'Na-I.3' } })).json.code).toBe('follow_kind_differs')
     expect((await get('/follows', { key })).json.data).toEqual([])
   })
