@@ -26,7 +26,7 @@ const computed = { use: 'computed' } as const
 /** In the order of the export. `words` are what other tables call the same thing, in small letters without marks. */
 export const COLUMNS: readonly OwnColumn[] = [
   text('id', 'Level of the table that the row is about, such as Na-I.3. Left empty, the level is found by its other values.', { words: ['level id', 'identifier'] }),
-  text('species', 'Species, such as Na-I.', { required: true, words: ['ion', 'spectrum', 'atom', 'element', 'spectrum name', 'sp'] }),
+  text('species', 'Species, such as Na-I; Na I with a space is read as the same.', { required: true, words: ['ion', 'spectrum', 'atom', 'element', 'spectrum name', 'sp'] }),
   text('configuration', 'Configuration with parents, such as 3d6.(5D).4s.4p.(3P*).', { required: true, words: ['config', 'conf', 'electron configuration'] }),
   text('coupling', 'LS, J1K, jj or unassigned. Found from the term where it is left out.', { words: ['coupling scheme', 'scheme'] }),
   text('term', 'Term symbol, with J or beside a column j: 2P*3/2, or 2P*.', { required: true, words: ['term symbol', 'level term'] }),

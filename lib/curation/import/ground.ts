@@ -8,6 +8,7 @@ import { ownColumn } from './columns'
 import { RowCells } from './cells'
 import type { Ground, OwnChange } from './plan'
 import type { ReadFile } from './read-file'
+import { speciesMeant } from './species-name'
 
 /** A change of the amendment with what a new writing of it must keep or compare. */
 export interface StoredChange extends OwnChange { comment: string | null; findings: Finding[]; baseRevision: number | null }
@@ -30,17 +31,16 @@ async function ownChanges(db: Db, amendment: string): Promise<StoredChange[]> {
   }
 }
 
-const SPECIES = /^[A-Z][a-z]?-[IVXLCDM]+$/
 const MOST_SPECIES = 500
 
-/** Species that the rows are about, by name or by the level named. */
+/** Species that the rows are about, by name or by the level named, and those that may have been meant. */
 function speciesNamed(file: ReadFile): Set<string> {
   const named = new Set<string>()
   if (ownColumn('id') === undefined) return named
   for (const { cells } of file.rows) {
     const row = new RowCells(file.reader, cells)
     const id = row.text('id')?.trim() ?? ''
-    for (const species of [row.text('species')?.trim() ?? '', id.slice(0, Math.max(0, id.indexOf('.')))]) if (SPECIES.test(species)) named.add(species)
+    for (const species of [...speciesMeant(row.text('species')), ...speciesMeant(id.slice(0, Math.max(0, id.indexOf('.'))))]) named.add(species)
   }
   return named
 }

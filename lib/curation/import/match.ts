@@ -4,6 +4,7 @@ import type { Finding } from '@/openapi/schemas/change'
 import type { LevelRow } from '../rows'
 import { type Atom, readConfiguration, readLevelTerm, readPrinted } from '../values'
 import { fault, type RowCells } from './cells'
+import { speciesName } from './species-name'
 import { composeTerm } from './term'
 
 /** A level as the amendment leaves it: from the newest edition, or from a change of the amendment. */
@@ -96,7 +97,7 @@ export class Matcher {
     if (id === null) return null
     const level = this.byId.get(id)
     if (level === undefined) return { kind: 'error', fault: fault('level_unknown', 'id', `There is no level ${quoted(id)} in the newest edition or in this amendment; leave the cell empty for a new level.`) }
-    const species = cells.text('species')?.trim() ?? null
+    const species = speciesName(cells.text('species'))
     if (species !== null && species !== level.species) return { kind: 'error', fault: fault('column_contradicts', 'species', `${id} is a level of ${level.species}, and the row says ${quoted(species)}.`) }
     if (level.retiring) return { kind: 'error', fault: fault('level_retiring', 'id', `This amendment retires ${id}; take out that change first.`) }
     return { kind: 'level', level }

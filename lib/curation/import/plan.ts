@@ -8,6 +8,7 @@ import { fault, type Reader, RowCells } from './cells'
 import { contradictions, olderRevision, saysTheSame, valuesOf } from './level-values'
 import { ambiguity, type KnownLevel, Matcher, type Named, namedBy, namingRow } from './match'
 import type { ReadFile } from './read-file'
+import { speciesLike, speciesName } from './species-name'
 
 /** A change of the amendment as it stands, before the import. */
 export interface OwnChange extends ChangeInput { row: unknown }
@@ -115,6 +116,11 @@ function newLevel(setting: Setting, row: number, { cells, species }: Pick<Waitin
   return { row, verdict: 'new', level: null, findings: NONE, fields: NONE, change: { subject: provisional(species, row), speciesId: species, known: null, given: values, row: null, findings: [] }, takeOut: null }
 }
 
+function unknownSpecies(setting: Setting, species: string): Finding {
+  const near = speciesLike(species).filter((id) => setting.species.has(id))
+  return fault('species_unknown', 'species', `There is no species ${quoted(species)} in the newest edition or in this amendment: ${near.length > 0 ? `did you mean ${near.join(' or ')}?` : 'add the species to the amendment first.'}`)
+}
+
 /** What a row is about: settled at once where it names its level or cannot be used, else it waits until all names are known. */
 function settle(setting: Setting, { row, cells: raw }: ReadFile['rows'][number]): PlannedRow | Waiting {
   const cells = new RowCells(setting.reader, raw)
@@ -123,9 +129,9 @@ function settle(setting: Setting, { row, cells: raw }: ReadFile['rows'][number])
   const byId = setting.matcher.ofId(cells)
   if (byId?.kind === 'error') return plannedError(row, [byId.fault])
   if (byId?.kind === 'level') return aboutLevel(setting, row, cells, byId.level)
-  const species = cells.text('species')?.trim() ?? null
+  const species = speciesName(cells.text('species'))
   if (species === null) return plannedError(row, [fault('missing_field', 'species', 'The row names neither a level nor a species.')])
-  if (!setting.species.has(species)) return plannedError(row, [fault('species_unknown', 'species', `There is no species ${quoted(species)} in the newest edition or in this amendment: add the species to the amendment first.`)])
+  if (!setting.species.has(species)) return plannedError(row, [unknownSpecies(setting, species)])
   const named = namedBy(cells, atomFor(setting, species))
   // a term that cannot be read: the reader of levels says why
   if (named === null) return newLevel(setting, row, { cells, species })

@@ -79,6 +79,16 @@ describe('a row', () => {
     expect(codes(await one('species,configuration,term,energy_invcm\nXx-I,3p,2P*3/2,1\n'))).toEqual(['species_unknown species'])
   })
 
+  it('names its species as papers print it, or is told what it may mean', async () => {
+    expect(await one('species,configuration,term,energy_invcm\nNa I,3p,2P*3/2,16973.36619\n')).toMatchObject({ verdict: 'same', level: 'Na-I.3' })
+    expect(await one('id,species,note\nNa-I.3,Na\u00a0I,x\n')).toMatchObject({ verdict: 'changed', level: 'Na-I.3' })
+    for (const species of ['NaI', 'na-i', 'Na_I', 'na  i']) {
+      const [found] = (await one(`species,configuration,term,energy_invcm\n${species},3p,2P*3/2,1\n`)).findings
+      expect(found, species).toMatchObject({ code: 'species_unknown', detail: expect.stringContaining('did you mean Na-I?') })
+    }
+    expect((await one('species,configuration,term,energy_invcm\nXx-I,3p,2P*3/2,1\n')).findings[0]?.detail).toContain('add the species')
+  })
+
   it('contradicting itself is an error that names the column', async () => {
     expect(codes(await one('id,term,j\nNa-I.3,2P*3/2,1/2\n'))).toEqual(['column_contradicts j'])
     expect(codes(await one('id,term,parity\nNa-I.3,2P*3/2,even\n'))).toEqual(['column_contradicts parity'])
