@@ -33,6 +33,12 @@ export async function recordAudit(tx: Tx | Db, acting: Acting, entry: AuditEntry
 
 export interface AuditFilter { action?: string; subject_kind?: string; subject_id?: string; actor?: string; key?: string; session?: string; from?: string; until?: string }
 
+/** A batch is filed under its amendment, and is about everything that it writes or takes out. */
+function inBatch(subject: string): SQL {
+  const naming = (list: string) => JSON.stringify({ [list]: [{ subject }] })
+  return sql`(${auditEvents.action} = 'change.batch' and (${auditEvents.after} @> ${naming('written')}::jsonb or ${auditEvents.before} @> ${naming('changed')}::jsonb or ${auditEvents.before} @> ${naming('removed')}::jsonb))`
+}
+
 /** Newest first; `beforeId` is the last one already given. One row more than `limit` tells that there is a next page. */
 export async function listAudit(db: Db, filter: AuditFilter, beforeId: number | null, limit: number): Promise<AuditEvent[]> {
   const conditions: SQL[] = []
@@ -40,7 +46,7 @@ export async function listAudit(db: Db, filter: AuditFilter, beforeId: number | 
   if (filter.action !== undefined) conditions.push(eq(auditEvents.action, filter.action))
   if (filter.subject_kind !== undefined) conditions.push(eq(auditEvents.subjectKind, filter.subject_kind))
   // a change of a level is filed under the change, and is about the level
-  if (filter.subject_id !== undefined) conditions.push(sql`(${auditEvents.subjectId} = ${filter.subject_id} or ${auditEvents.after} ->> 'subject' = ${filter.subject_id} or ${auditEvents.before} ->> 'subject' = ${filter.subject_id})`)
+  if (filter.subject_id !== undefined) conditions.push(sql`(${auditEvents.subjectId} = ${filter.subject_id} or ${auditEvents.after} ->> 'subject' = ${filter.subject_id} or ${auditEvents.before} ->> 'subject' = ${filter.subject_id} or ${inBatch(filter.subject_id)})`)
   if (filter.actor !== undefined) conditions.push(eq(auditEvents.actorUser, filter.actor))
   if (filter.key !== undefined) conditions.push(eq(auditEvents.actorKey, filter.key))
   if (filter.session !== undefined) conditions.push(eq(auditEvents.actorSession, filter.session))

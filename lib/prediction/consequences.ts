@@ -90,7 +90,8 @@ function told(before: Snapshot, after: Snapshot, found: Found): LineConsequence 
   const name = is !== null ? `${after.levelId(is.a)}~${after.levelId(is.b)}` : was === null ? '' : `${before.levelId(was.a)}~${before.levelId(was.b)}`
   return {
     transition: name, kind: 'E1', effect: found.effect, wavenumber_before_invcm: old, wavenumber_after_invcm: now, shift_invcm: old === null || now === null ? null : now - old,
-    wavelength_before_nm: oldNm?.nm ?? null, wavelength_after_nm: nowNm?.nm ?? null, shift_pm: shiftNm === null ? null : shiftNm * 1000, g_eff_before: gOf(before, was), g_eff_after: gOf(after, is),
+    wavelength_before_nm: oldNm?.nm ?? null, wavelength_after_nm: nowNm?.nm ?? null, medium_before: oldNm?.medium ?? null, medium_after: nowNm?.medium ?? null,
+    shift_pm: shiftNm === null ? null : shiftNm * 1000, g_eff_before: gOf(before, was), g_eff_after: gOf(after, is),
   }
 }
 

@@ -14,7 +14,7 @@ export const listAudit = defineOperation({
   query: z.strictObject({
     action: textParameter('Only this action.', { example: 'key.create' }).optional(),
     subject_kind: textParameter('Only about things of this kind.', { example: 'key' }).optional(),
-    subject_id: textParameter('Only about this thing, by its identifier; changes are also found by the level or source that they are about.').optional(),
+    subject_id: textParameter('Only about this thing, by its identifier; changes are also found by the level or source that they are about, and batches of changes by each that they name.').optional(),
     actor: z.uuid().optional().meta({ description: 'Only what this person did.' }),
     key: z.uuid().optional().meta({ description: 'Only what was done with this key.' }),
     session: z.uuid().optional().meta({ description: 'Only what was done in this browser session.' }),

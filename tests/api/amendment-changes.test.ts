@@ -187,6 +187,10 @@ describe('several changes together', () => {
     expect(second.status, second.text).toBe(200)
     expect(second.json.data.removed).toEqual([b.id])
     expect(second.json.data.changes[0]).toMatchObject({ id: a.id, version: 2, values: { note: 'aa' } })
+    // the audit finds a batch by each level that it wrote, edited or took out
+    const { key: admin } = await makeKey('admin')
+    const found = async (level: string) => ((await get(`/audit?action=change.batch&subject_id=${level}&limit=100`, { key: admin })).json.data as Json[]).filter((event: Json) => event.subject.id === one.id).length
+    expect([await found('Na-I.3'), await found('Na-I.4'), await found('Na-I.5'), await found(c.subject), await found('Na-I.33')]).toEqual([2, 2, 1, 1, 0])
     // one stale tag and nothing is written
     const before = await get(`${one.at}/changes`, { key: one.by.key })
     const stale = await ask('post', `${one.at}/changes/batch`, { key: one.by.key, body: { changes: [await replace('Na-I.6', {}), { ...(await replace('Na-I.3', { note: 'lost' })), change: a.id, etag: a.etag }], remove: [{ change: c.id, etag: '"old"' }] } })

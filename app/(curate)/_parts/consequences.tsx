@@ -24,6 +24,10 @@ const arrow = (before: string | null, after: string | null) => (
   <span className="num whitespace-nowrap">{before === null || after === null ? (before ?? after) : <>{before} <span className="text-muted">→</span> {after}</>}</span>
 )
 const wavelength = (value: number | null): string | null => (value === null ? null : fixed(value, value < 30_000 ? 5 : 2))
+const MEDIUM = { air: 'in air', vacuum: 'in vacuum' } as const
+/** The medium of both wavelengths; of each where a line passes from one into the other. */
+const medium = ({ medium_before: before, medium_after: after }: LineConsequence): string =>
+  before !== null && after !== null && before !== after ? `${MEDIUM[before]} → ${MEDIUM[after]}` : MEDIUM[after ?? before ?? 'vacuum']
 const g = (value: number | null): string | null => (value === null ? null : fixed(value, 5))
 
 const COLUMNS: Column<LineConsequence>[] = [
@@ -33,7 +37,9 @@ const COLUMNS: Column<LineConsequence>[] = [
   },
   { name: 'effect', header: 'Effect', value: (line) => EFFECT[line.effect], sort: true },
   { name: 'wavelength_before_nm', header: 'Before', only: 'copy', value: (line) => line.wavelength_before_nm },
-  { name: 'wavelength_after_nm', header: 'Wavelength, nm', value: (line) => line.wavelength_after_nm, sort: true, cell: (line) => arrow(wavelength(line.wavelength_before_nm), wavelength(line.wavelength_after_nm)) },
+  { name: 'wavelength_after_nm', header: 'Wavelength, nm', value: (line) => line.wavelength_after_nm, sort: true, cell: (line) => <>{arrow(wavelength(line.wavelength_before_nm), wavelength(line.wavelength_after_nm))} <span className="text-xs whitespace-nowrap text-muted">{medium(line)}</span></> },
+  { name: 'medium_before', header: 'Medium before', only: 'copy', value: (line) => line.medium_before },
+  { name: 'medium_after', header: 'Medium', only: 'copy', value: (line) => line.medium_after },
   { name: 'shift_pm', header: 'Shift, pm', align: 'right', value: (line) => line.shift_pm, sort: (line) => (line.shift_pm === null ? null : Math.abs(line.shift_pm)), cell: (line) => <span className="num">{shift(line.shift_pm) ?? ''}</span> },
   { name: 'shift_invcm', header: <>Shift, cm<sup>−1</sup></>, align: 'right', value: (line) => line.shift_invcm, cell: (line) => <span className="num">{shift(line.shift_invcm) ?? ''}</span> },
   { name: 'g_eff_before', header: 'g before', only: 'copy', value: (line) => line.g_eff_before },
@@ -53,7 +59,7 @@ function Narrow({ lines, caption }: { lines: readonly LineConsequence[]; caption
             {line.effect === 'new' ? <code className="text-xs">{line.transition}</code> : <Link className="link font-mono text-xs" href={linePage(line.transition)} prefetch={false}>{line.transition}</Link>}
             <span className="text-xs text-muted">{EFFECT[line.effect]}</span>
           </div>
-          <p>{arrow(wavelength(line.wavelength_before_nm), wavelength(line.wavelength_after_nm))} <span className="text-muted">nm</span></p>
+          <p>{arrow(wavelength(line.wavelength_before_nm), wavelength(line.wavelength_after_nm))} <span className="text-muted">nm {medium(line)}</span></p>
           <p className="note num">
             {[line.shift_pm === null ? '' : `${shift(line.shift_pm)} pm`, line.shift_invcm === null ? '' : `${shift(line.shift_invcm)} cm⁻¹`].filter((part) => part !== '').join(', ')}
             {g(line.g_eff_before) === g(line.g_eff_after) || line.effect === 'gone' ? null : <>{line.shift_pm === null ? '' : ', '}g<sub>eff</sub> {arrow(g(line.g_eff_before), g(line.g_eff_after))}</>}

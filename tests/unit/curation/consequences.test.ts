@@ -21,6 +21,10 @@ describe('consequences', () => {
     const [d1] = lines
     expect(d1?.shift_pm).toBeCloseTo(-(589.7558 ** 2) * 1e-4, 0)
     expect(d1?.wavelength_before_nm).toBeCloseTo(589.592, 2)
+    expect([d1?.medium_before, d1?.medium_after]).toEqual(['air', 'air'])
+    // 4s - 3p is 1140 nm in air; far enough down it lies past 2000 nm, in vacuum
+    const [far] = of(sodium('Na-I.4', { energyInvcm: 20000 })).lines.filter(({ transition }) => transition === 'Na-I.2~Na-I.4')
+    expect([far?.medium_before, far?.medium_after]).toEqual(['air', 'vacuum'])
   })
 
   it('do not tell lines whose ends move together', () => {
@@ -36,7 +40,7 @@ describe('consequences', () => {
     const made = of({ ...sodium('Na-I.2', { configuration: '4p', energyInvcm: 30266.99 }), subject: 'Na-I.9' })
     expect(made.counts).toEqual({ moved: 0, g_changed: 0, new: 2, gone: 0 })
     expect(made.lines.map((line) => line.transition)).toEqual(['Na-I.4~Na-I.9', 'Na-I.1~Na-I.9'])
-    expect(made.lines[1]).toMatchObject({ wavenumber_before_invcm: null, wavenumber_after_invcm: 30266.99, shift_invcm: null, shift_pm: null })
+    expect(made.lines[1]).toMatchObject({ wavenumber_before_invcm: null, wavenumber_after_invcm: 30266.99, shift_invcm: null, shift_pm: null, medium_before: null, medium_after: 'air' })
   })
 
   it('are quick for a species of a thousand levels that all move, and tell the farthest', async () => {
