@@ -15,6 +15,7 @@ export default defineConfig({
       { extends: true, test: { name: 'reference', include: ['tests/reference/**/*.test.ts'], ...plain } },
       { extends: true, test: { name: 'database', include: ['tests/database/**/*.test.ts'], globalSetup: ['tests/support/database.ts'], ...applied, sequence: { groupOrder: 1 } } },
       { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], ...served, sequence: { groupOrder: 2 } } },
+      { extends: true, test: { name: 'clients', include: ['tests/clients/**/*.test.ts'], ...served, sequence: { groupOrder: 6 } } },
       { extends: true, test: { name: 'instance', include: ['tests/instance/**/*.test.ts'], ...served, testTimeout: 120_000, sequence: { groupOrder: 3 } } },
       { extends: true, test: { name: 'faults', include: ['tests/faults/**/*.test.ts'], ...served, testTimeout: 300_000, sequence: { groupOrder: 4 } } },
       { extends: true, test: { name: 'browser', include: ['tests/browser/**/*.test.ts'], ...served, sequence: { groupOrder: 5 } } },
