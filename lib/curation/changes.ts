@@ -16,6 +16,7 @@ import type { AnyRow, ChangeInput, Checked } from './rows'
 import { storeFindings } from './stored-findings'
 import { publishedIn } from './subjects'
 import { loadPublishedTable, newestEdition } from './table'
+import { uponOwn } from './unanswered'
 
 /** One change to write, its subject known: of an existing change where `row` is there. */
 interface Item { request: ChangeRequest; kind: ChangeRow['kind']; subject: string; speciesId: string | null; row: ChangeRow | null }
@@ -255,7 +256,7 @@ export async function writeBatch(db: Db, acting: Acting, amendmentId: string, ba
   const caller = knownCaller(acting.caller)
   return db.transaction(async (tx) => {
     const amendment = await lockForEdit(tx, amendmentId)
-    const { items, removed, judged } = await judgeBatch(tx, tx, amendment, batch)
+    const { items, removed, judged } = await judgeBatch(tx, tx, amendment, await uponOwn(tx, amendmentId, batch, caller.userId))
     const ids = await store(tx, amendment, caller.userId, items, removed, judged)
     await noteEdit(tx, amendment, caller.userId)
     await recordAudit(tx, acting, { action: 'change.batch', subjectKind: 'amendment', subjectId: amendmentId, ...batchTold(items, removed, ids) })

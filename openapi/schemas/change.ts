@@ -173,9 +173,13 @@ export const AmendmentChangeDetail = z
   .meta({ id: 'AmendmentChangeDetail' })
 export type AmendmentChangeDetail = z.infer<typeof AmendmentChangeDetail>
 
+const Unanswered = z
+  .strictObject({ action: ChangeAction, values: REQUEST.values, reason: text, successor: REQUEST.successor, comment: text })
+  .meta({ id: 'UnansweredChange', description: 'What the same account sent before of the same subject and has no answer to. Where exactly that stands there by now, as the version right after `etag` (without change: as the first), the item is written upon it; anything else that came between is refused as ever. For a writer that cannot wait, such as a page that closes.' })
+
 /** One of several changes written or checked together: with `change` an existing one is replaced, whose `etag` must still hold. */
 export const BatchItem = z
-  .strictObject({ ...REQUEST, change: z.uuid().optional(), etag: z.string().max(100).optional() })
+  .strictObject({ ...REQUEST, change: z.uuid().optional(), etag: z.string().max(100).optional(), unanswered: Unanswered.optional() })
   .superRefine((request, context) => {
     checkRequest(request, VALUES, context)
     if ((request.change === undefined) !== (request.etag === undefined)) context.addIssue({ code: 'custom', path: [request.change === undefined ? 'change' : 'etag'], message: 'change and etag go together: the change that is edited, and its etag as last read.', params: { code: 'missing_field' } })

@@ -1,57 +1,22 @@
-import type { Browser, Locator, Page } from 'playwright-core'
+import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
-import { accessibilityFindings, go, openBrowser, overflow, type Theme, type Visit, visit } from '../browser/browser'
+import { accessibilityFindings, go, openBrowser, overflow, type Theme, visit } from '../browser/browser'
 import { type Instance, startInstance } from '../support/instance'
+import { begun, cell, type Curator, curators, focused, isSaved, openTable, panel, paste, stored, storedOf, typeInto } from './curators'
 
 /** The curate pages as two curators use them. All digits are invented. */
 let instance: Instance
 let browser: Browser
+let as: ReturnType<typeof curators>
 beforeAll(async () => {
   instance = await startInstance('curate')
   browser = await openBrowser()
+  as = curators(instance, browser)
 })
 afterAll(async () => {
   await browser?.close()
   await instance?.end()
 })
-
-interface Curator extends Visit { signed: Awaited<ReturnType<Instance['signIn']>> }
-async function as(who: string, options: { theme?: Theme; width?: number; height?: number } = {}): Promise<Curator> {
-  const signed = await instance.signIn(who)
-  const visitor = await visit(browser, { ...options, at: instance.base })
-  const [name = '', value = ''] = signed.cookie.split('=')
-  await visitor.context.addCookies([{ name, value, url: instance.base }])
-  return { ...visitor, signed }
-}
-const begun = async ({ signed }: Curator, title: string): Promise<string> => (await instance.ask('post', '/amendments', { ...signed, body: { title } })).json.data.id
-
-interface Stored { subject: string; action: string; values: Record<string, unknown>; findings: { severity: string; code: string }[]; author: { name: string }; comment: string | null }
-const stored = async ({ signed }: Curator, amendment: string): Promise<Stored[]> => (await instance.get(`/amendments/${amendment}/changes`, signed)).json.data
-const storedOf = async (curator: Curator, amendment: string, subject: string): Promise<Stored | undefined> => (await stored(curator, amendment)).find((change) => change.subject === subject)
-
-async function openTable(page: Page, amendment: string, species = 'Na-I'): Promise<void> {
-  await go(page, `/curate/${amendment}?show=${species}`)
-  await page.getByRole('grid').waitFor()
-}
-async function cell(page: Page, level: string, column: string): Promise<Locator> {
-  const index = await page.getByRole('columnheader', { name: new RegExp(`^${column}`) }).first().getAttribute('aria-colindex')
-  return page.locator('[role=row]').filter({ has: page.locator('[role=rowheader]', { hasText: new RegExp(`^${level.replace('.', '\\.')}(?!\\d)`) }) }).locator(`[aria-colindex="${index}"]`)
-}
-async function typeInto(page: Page, level: string, column: string, text: string): Promise<void> {
-  await (await cell(page, level, column)).click()
-  await page.keyboard.type(text)
-  await page.keyboard.press('Enter')
-}
-const isSaved = (page: Page) => expect.poll(() => page.locator('[data-saved]').getAttribute('data-saved'), { timeout: 15_000 }).toBe('true')
-/** What a spreadsheet puts on the clipboard, pasted where the focus is. */
-const paste = (page: Page, text: string) =>
-  page.evaluate((block) => {
-    const data = new DataTransfer()
-    data.setData('text/plain', block)
-    document.activeElement?.dispatchEvent(new ClipboardEvent('paste', { clipboardData: data, bubbles: true, cancelable: true }))
-  }, text)
-const focused = (page: Page) => page.evaluate(() => ({ row: document.activeElement?.closest('[role=row]')?.getAttribute('aria-rowindex'), column: document.activeElement?.getAttribute('aria-colindex'), role: document.activeElement?.getAttribute('role') }))
-const panel = (page: Page) => page.getByRole('complementary', { name: /^The row in focus/ }).innerText()
 
 describe('who finds the room', () => {
   it('strangers are asked to sign in and come back, readers are told whom it is for, curators find it in the head', async () => {

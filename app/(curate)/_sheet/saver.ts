@@ -1,6 +1,6 @@
 import type { AmendmentChange, BatchItem } from '@/openapi/schemas/change'
 import { KEEPALIVE_BYTES, problemOf, type ProblemDocument } from '../../_components/data/api'
-import { type ChangeState, requestOf, sameState, stateOf, type Values } from './change-state'
+import { type ChangeState, keyOf, requestOf, sameState, stateOf, type Values } from './change-state'
 import { isDirty, type Sheet, type SheetRow } from './sheet'
 
 /** The API as far as saving needs it. */
@@ -206,24 +206,30 @@ export class Saver {
   }
   /**
    * Whether a page that closes now would leave something behind that nobody is told of: what the server does not take as it is, more
-   * than a browser sends for a page that is gone, and, unless it is `kept` in the browser, what cannot be sent yet.
+   * than a browser sends for a page that is gone, and, unless it is `kept` in the browser, what cannot be sent along.
    */
   mustAsk(kept: boolean): boolean {
     const rows = this.#unsaved()
     if (rows.some((row) => row.save === 'failed' || row.save === 'conflict')) return true
-    const bytes = rows.reduce((sum, row) => sum + (row.wanted === null ? 160 : new Blob([JSON.stringify(requestOf(row.subject, row.wanted))]).size + 160), 200)
-    return bytes > KEEPALIVE_BYTES || (!kept && rows.some((row) => isAhead(row) || !isReady(row)))
+    // what is on its way and has no answer counts beside what goes after it
+    const underWay = rows.filter((row) => row.save === 'saving' && row.sent != null).map((row) => sizeOf(requestOf(row.subject, row.sent as ChangeState)) + 160)
+    const bytes = rows.reduce((sum, row) => sum + (row.wanted === null ? 160 : sizeOf(partingItem(row, row.wanted)) + 160), 200) + underWay.reduce((sum, size) => sum + size, 0)
+    return bytes > KEEPALIVE_BYTES || (!kept && rows.some((row) => (row.save !== 'saving' || isAhead(row)) && !goesAlong(row)))
   }
   /**
-   * The page goes away: what waits is sent along. Rows whose published values are not all known are left, since a part would be lost, and
-   * so is what was typed beyond a save under way, whose entity tag nobody knows yet: both are kept in the browser.
+   * The page goes away: what waits is sent along, and what was typed beyond a save under way goes after that save, saying what it was.
+   * Rows whose published values are not all known are left, since a part would be lost, and so are those that `goesAlong` names: all
+   * of that is kept in the browser.
    */
   farewell(): void {
-    const tasks = this.sheet.rows().filter((row) => (row.save === 'waiting' || row.save === 'failed') && isDirty(row) && isReady(row))
-    if (tasks.length === 0) return
-    const items = tasks.flatMap((row): BatchItem[] => (row.wanted === null ? [] : [{ ...requestFor(row, row.wanted), ...(row.server === null ? {} : { change: row.server.id, etag: row.server.etag }) }]))
-    const remove = tasks.flatMap((row) => (row.wanted === null && row.server !== null ? [{ change: row.server.id, etag: row.server.etag }] : []))
-    this.transport.farewell(items, remove)
+    const rows = this.#unsaved().filter((row) => row.save !== 'conflict' && goesAlong(row))
+    // apart, since a batch is written whole or not at all: a save under way may still be refused
+    for (const group of [rows.filter((row) => row.save !== 'saving'), rows.filter((row) => row.save === 'saving')]) {
+      if (group.length === 0) continue
+      const items = group.flatMap((row): BatchItem[] => (row.wanted === null ? [] : [partingItem(row, row.wanted)]))
+      const remove = group.flatMap((row) => (row.wanted === null && row.server !== null ? [{ change: row.server.id, etag: row.server.etag }] : []))
+      this.transport.farewell(items, remove)
+    }
   }
 }
 
@@ -234,5 +240,20 @@ const requestFor = (row: SheetRow, state: ChangeState): BatchItem => ({ ...reque
 const isReady = (row: SheetRow): boolean => row.complete || row.wanted?.action !== 'replace'
 /** Typed beyond what is being saved. */
 const isAhead = (row: SheetRow): boolean => row.save === 'saving' && row.sent !== undefined && !sameState(row.wanted, row.sent)
+/**
+ * Whether a page that closes can send a row along. What is being saved goes its way already; beyond it only values can go after values:
+ * to take out what is being written, or to write what is being taken out, wants the answer.
+ */
+const goesAlong = (row: SheetRow): boolean => isReady(row) && (row.save !== 'saving' || (isAhead(row) && row.wanted !== null && row.sent != null))
+
+/** A row as a page that closes sends it: with what it sent before and has no answer to, which the server may hold by now. */
+function partingItem(row: SheetRow, wanted: ChangeState): BatchItem {
+  const item: BatchItem = { ...requestFor(row, wanted), ...(row.server === null ? {} : { change: row.server.id, etag: row.server.etag }) }
+  // a new level is found again by nothing but what was sent of it: where that failed, it is not known to be there
+  if (row.sent == null || (row.save !== 'saving' && row.server === null && keyOf(row.subject) === null)) return item
+  const { action, values, reason, successor, comment } = requestOf(row.subject, row.sent)
+  return { ...item, unanswered: { action, values, reason, successor, comment } }
+}
+const sizeOf = (value: unknown): number => new Blob([JSON.stringify(value)]).size
 
 const isChange = (value: unknown): value is AmendmentChange => typeof value === 'object' && value !== null && 'etag' in value && 'findings' in value

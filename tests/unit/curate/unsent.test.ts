@@ -66,7 +66,7 @@ beforeEach(() => {
   return () => void vi.useRealTimers()
 })
 
-/** A page whose save of `note: a` is under way, on the server but not answered, while `note: ab` is typed. */
+/** A page whose save of `note: a` is under way, on the server but not answered, while `note: ab` is typed; what it sends as it closes never comes. */
 async function closedWhileSaving(): Promise<void> {
   const one = page('one')
   one.type('energy_literal', '1')
@@ -85,7 +85,7 @@ async function closedWhileSaving(): Promise<void> {
   one.type('note', 'ab')
   one.close()
   server.replace = replace
-  expect(server.farewells).toEqual([])
+  expect(server.farewells).toMatchObject([{ items: [{ change: 'id-Na-I.3', etag: '"1"', values: { note: 'ab' }, unanswered: { action: 'replace', values: { note: 'a', energy_literal: '1' } } }], remove: [] }])
 }
 
 describe('what is typed while a save is under way', () => {
@@ -113,6 +113,52 @@ describe('what is typed while a save is under way', () => {
     expect(two.row()).toMatchObject({ save: 'conflict', theirs: { change: { values: { note: 'theirs' } } }, wanted: { values: { note: 'ab' } } })
     expect(stored()).toMatchObject({ note: 'theirs' })
     expect(store.items.size).toBe(1)
+  })
+})
+
+describe('a page that closes while a save is under way', () => {
+  /** Its first save is sent and never answered. */
+  const begun = async (key: string | null): Promise<{ one: Page; key: string }> => {
+    const one = page('one')
+    const of = key ?? one.sheet.addNew(level(null))
+    server.create = () => new Promise(() => undefined)
+    one.type('note', 'a', of)
+    void one.saver.now()
+    await vi.advanceTimersByTimeAsync(1)
+    expect(one.row(of).save).toBe('saving')
+    return { one, key: of }
+  }
+  it('sends what was typed since, and says upon what: of a level of the table and of a new one', async () => {
+    for (const { one, key } of [await begun(KEY), await begun(null)]) {
+      server.farewells = []
+      one.type('note', 'ab', key)
+      one.close()
+      expect(server.farewells).toMatchObject([{ items: [{ values: { note: 'ab' }, unanswered: { values: { note: 'a' } } }] }])
+      expect(server.farewells[0]?.items[0]?.change).toBeUndefined()
+    }
+  })
+  it('sends nothing twice, and does not ask the person where all goes along', async () => {
+    const { one, key } = await begun(KEY)
+    expect(one.saver.mustAsk(false)).toBe(false)
+    one.close()
+    expect(server.farewells).toEqual([])
+    one.type('note', 'ab', key)
+    expect(one.saver.mustAsk(false)).toBe(false)
+  })
+  it('keeps in the browser what wants the answer: to take out what is being written', async () => {
+    const { one, key } = await begun(KEY)
+    one.sheet.discard(key)
+    expect([one.saver.mustAsk(true), one.saver.mustAsk(false)]).toEqual([false, true])
+    one.close()
+    expect(server.farewells).toEqual([])
+    expect(store.items.size).toBe(1)
+  })
+  it('apart from what waits, so that neither holds the other up', async () => {
+    const { one, key } = await begun(KEY)
+    one.type('note', 'ab', key)
+    one.type('term', '2S1/2', one.sheet.addNew(level(null)))
+    one.close()
+    expect(server.farewells.map(({ items }) => items.map((item) => item.unanswered !== undefined))).toEqual([[false], [true]])
   })
 })
 
