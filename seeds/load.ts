@@ -84,6 +84,7 @@ function rowsOf(seed: Seed) {
         massU: isotope.mass_u,
         twoI: twoI(isotope.spin),
         abundancePercent: isotope.abundance_percent,
+        gI: isotope.g_i ?? null,
         source: one.isotope_source,
         evidence: one.isotope_evidence,
       })),

@@ -50,7 +50,8 @@ export interface SpeciesSeed {
   confidence: 'high' | 'medium' | 'low'
   isotope_source: string
   isotope_evidence: Evidence
-  isotopes: { mass_number: number; mass_u: number; spin: string; abundance_percent: number }[]
+  /** g_i: g_I' in units of mu_B, negative for a positive moment. */
+  isotopes: { mass_number: number; mass_u: number; spin: string; abundance_percent: number; g_i?: number }[]
   /** In the order that numbers them: `Na-I.1` is the first. */
   levels: LevelSeed[]
 }

@@ -2,4 +2,4 @@
 export * from '@/lib/units/codata'
 
 /** Raised whenever a computed number can change, so that cached answers are not taken for new ones. */
-export const PHYSICS_VERSION = 1
+export const PHYSICS_VERSION = 2

@@ -27,6 +27,7 @@ async function readSpecies(db: Db | Tx, n: number): Promise<SpeciesRow[]> {
       mass_u: isotopeRevisions.massU,
       twoI: isotopeRevisions.twoI,
       abundance_percent: isotopeRevisions.abundancePercent,
+      g_i: isotopeRevisions.gI,
       source: isotopeRevisions.source,
       evidence: isotopeRevisions.evidence,
     })

@@ -1,23 +1,20 @@
-import { AIR_FROM_NM, airWavelength, CONVENTIONAL_AIR_TO_NM, DEFAULT_AIR_FORMULA, refractivity } from '@/lib/atomic/air'
-import { type Component as Splitting, weakFieldComponents } from '@/lib/atomic/components'
 import { PhysicsError } from '@/lib/atomic/errors'
-import { termNotPure } from '@/lib/atomic/adopted'
-import { GHZ_PER_INVCM, MU_B_OVER_H_GHZ_PER_T } from '@/lib/atomic/constants'
-import { AIR_EXTRAPOLATED, INTERMEDIATE_NOT_BUILT } from '@/lib/prediction/conventions'
+import { lineNormalisation } from '@/lib/atomic/field-multiplet'
+import { autoModel, type LinearLawValidity } from '@/lib/atomic/intermediate-validity'
+import type { ValidityEnd } from '@/lib/atomic/validity'
+import { centreOf, placer } from '@/lib/prediction/component-places'
+import { CROSSED, gSWarnings, gWarnings, hyperfineWarnings, mediumWarnings, memberWarnings, type Warning } from '@/lib/prediction/component-warnings'
+import { diamagneticCautions, isLarge, quadraticShift, type QuadraticShift } from '@/lib/prediction/diamagnetic'
 import { chooseG, type ChosenG, type GChoice } from '@/lib/prediction/g-values'
-import { type PhysicalLevel, twoJOf } from '@/lib/prediction/levels'
-import { componentUncertainty } from '@/lib/prediction/uncertainty'
-import { linearValidity } from '@/lib/prediction/validity'
-import { plusZero } from '@/lib/units/number'
-import { thzOfWavenumber, vacuumNmOfWavenumber } from '@/lib/units/spectral'
+import { twoJOf } from '@/lib/prediction/levels'
+import { intermediateSplits, linearSplits, multipletOf, type Split, type UsedLine } from '@/lib/prediction/split'
+import { validityEnd, wholeTerm, whyNotWhole } from '@/lib/prediction/term-levels'
+import { judgeLinear, toldValidity } from '@/lib/prediction/validity'
 import type { Medium, Model } from '@/openapi/schemas/common'
 import type { Component, Components } from '@/openapi/schemas/components'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
 
-export interface Warning {
-  code: string
-  detail: string
-}
+export type { Warning } from '@/lib/prediction/component-warnings'
 
 export interface ComponentsAsked extends GChoice {
   fieldTesla: number
@@ -27,75 +24,29 @@ export interface ComponentsAsked extends GChoice {
   thetaDeg: number | null
   medium: Medium
   tolerance: number
+  /** Whether the quadratic shift is added; left out: it is not. */
+  diamagnetic?: boolean
 }
 
-/** What the prediction needs of a transition: what `GET /transitions/{transition}` gives. */
-export type PredictedLine = Pick<TransitionDetail, 'id' | 'lower' | 'upper' | 'kind' | 'verdict' | 'wavenumber_invcm' | 'wavelength_vac_nm' | 'terms' | 'hyperfine'>
+/** What the prediction needs of a transition: what `GET /transitions/{transition}` gives. Levels of no table have no quadratic shift. */
+export type PredictedLine = Pick<TransitionDetail, 'id' | 'lower' | 'upper' | 'kind' | 'verdict' | 'wavenumber_invcm' | 'wavelength_vac_nm' | 'terms' | 'hyperfine'> & Partial<Pick<TransitionDetail, 'diamagnetic'>>
 
-/** The medium that shifts in wavelength are told in, judged on the centre; air that does not apply gives way to vacuum. */
-function mediumAt(vacuumNm: number, medium: Medium): 'air' | 'vacuum' {
-  if (medium === 'vacuum' || vacuumNm < AIR_FROM_NM) return 'vacuum'
-  return medium === 'air' || vacuumNm <= CONVENTIONAL_AIR_TO_NM ? 'air' : 'vacuum'
-}
-
-/**
- * Wavelength minus that of the centre, in pm, without the difference of two nearly equal numbers:
- * in vacuum -lambda_0 shift / sigma; in air (d n_0 - lambda_0 (n - n_0)) / (n n_0), with d the shift in vacuum.
- */
-function shiftPm(centreNm: number, shiftInvcm: number, wavenumber: number, medium: 'air' | 'vacuum', r0: number): number {
-  const vacuum = (-centreNm * shiftInvcm) / wavenumber
-  if (medium === 'vacuum') return plusZero(1000 * vacuum)
-  const r = refractivity(DEFAULT_AIR_FORMULA, centreNm + vacuum)
-  return plusZero((1000 * (vacuum * (1 + r0) - centreNm * (r - r0))) / ((1 + r) * (1 + r0)))
-}
-
-interface Place {
-  line: PredictedLine
-  asked: ComponentsAsked
-  medium: 'air' | 'vacuum'
-  /** n - 1 at the centre. */
-  r0: number
-  lower: ChosenG
-  upper: ChosenG
-}
-
-function componentOf(split: Splitting, { line, asked, medium, r0, lower, upper }: Place): Component {
-  const wavenumber = line.wavenumber_invcm + split.shiftInvcm
-  // where the field has brought the upper sublevel to or below the lower one there is no wavelength to tell
-  const vacuum = wavenumber > 0 ? vacuumNmOfWavenumber(wavenumber) : null
-  return {
-    m_lower: split.twoMLower / 2,
-    m_upper: split.twoMUpper / 2,
-    q: split.q,
-    polarisation: split.polarisation,
-    shift_lorentz: split.shiftLorentz,
-    shift_invcm: split.shiftInvcm,
-    shift_ghz: split.shiftInvcm * GHZ_PER_INVCM,
-    shift_pm: vacuum === null ? null : shiftPm(line.wavelength_vac_nm, split.shiftInvcm, wavenumber, medium, r0),
-    wavenumber_invcm: wavenumber,
-    wavelength_vac_nm: vacuum,
-    wavelength_air_nm: vacuum === null ? null : airWavelength(vacuum).nm,
-    frequency_thz: thzOfWavenumber(wavenumber),
-    strength: split.strength,
-    intensity: split.intensity,
-    intensity_status: split.intensity === null ? 'not_applicable' : 'ok',
-    stokes_q: split.stokesQ,
-    stokes_v: split.stokesV,
-    vanishes_by: split.forbidden ?? null,
-    ...componentUncertainty(
-      { level: line.lower, chosen: lower, twoM: split.twoMLower },
-      { level: line.upper, chosen: upper, twoM: split.twoMUpper },
-      asked.fieldTesla,
-      asked.fieldUncTesla,
-    ),
-  }
+/** Whether a pair that is forbidden without field gains strength in one: only J stands in the way, and both terms have LS amplitudes. */
+function isFieldInduced({ kind, verdict, terms }: PredictedLine): boolean {
+  const failed = verdict.rules.filter((rule) => rule.verdict === 'fail').map((rule) => rule.rule)
+  const mixes = terms.lower.levels.length > 1 || terms.upper.levels.length > 1
+  return kind === 'E1' && mixes && failed.every((rule) => rule === 'delta_j' || rule === 'zero_zero') && terms.lower.s !== null && terms.upper.s !== null
 }
 
 /** The rules that a forbidden pair breaks, for the refusal. */
-function refuseForbidden({ id, kind, verdict }: PredictedLine): void {
+export function refuseForbidden(line: PredictedLine): void {
+  const { id, kind, verdict } = line
   if (verdict.rigorous) return
   const failed = verdict.rules.filter((rule) => rule.basis === 'rigorous' && rule.verdict === 'fail').map((rule) => `${rule.rule}: ${rule.detail}`)
-  throw new PhysicsError('transition_forbidden', `${id} is forbidden as ${kind}, so it has no components. Broken: ${failed.join('; ')}.`, 'transition')
+  const induced = isFieldInduced(line)
+    ? ` A field mixes the levels of each term and so induces it: POST /predictions with {"multiplets": [{"transition": "${id}"}]} lists its components among those of the multiplet.`
+    : ''
+  throw new PhysicsError('transition_forbidden', `${id} is forbidden as ${kind}, so it has no components. Broken: ${failed.join('; ')}.${induced}`, 'transition')
 }
 
 const refuseUnknownG = (level: PredictedLine['lower'], { g, none }: ChosenG): void => {
@@ -104,83 +55,157 @@ const refuseUnknownG = (level: PredictedLine['lower'], { g, none }: ChosenG): vo
   }
 }
 
-function warningsOf(line: PredictedLine, asked: ComponentsAsked, ends: readonly (readonly [PhysicalLevel & { id: string }, ChosenG])[]): Warning[] {
-  const warnings: Warning[] = []
-  if (asked.model === 'auto') warnings.push({ code: 'intermediate_not_built', detail: 'model=auto is linear until the intermediate model is built; validity says where linear errs.' })
-  const kept = ends.filter(([level]) => asked.gS !== null && asked.gValues === 'adopted' && level.g_j.basis !== 'coupled' && level.g_j.adopted !== null)
-  if (kept.length > 0) {
-    warnings.push({ code: 'g_s_not_applied', detail: `g_s does not touch the adopted g_J of ${kept.map(([level]) => level.id).join(' and ')}, which is not computed from it; g_values=coupled or ls takes all from g_s.` })
-  }
-  for (const [level, chosen] of ends) {
-    if (asked.gValues === 'adopted' && level.g_j.basis === 'measured' && chosen.unc === null) {
-      warnings.push({ code: 'g_unc_unknown', detail: `The measured g_J of ${level.id} has no stated uncertainty.` })
-    }
-    if (level.g_j.measured !== null && termNotPure(level.g_j.measured, level.g_j.ls)) {
-      warnings.push({ code: 'term_not_pure', detail: `The measured g_J of ${level.id}, ${level.g_j.measured}, is more than 0.5 % from the LS value ${level.g_j.ls ?? 0}: its term is not pure.` })
-    }
-  }
-  const { extrapolated } = airWavelength(line.wavelength_vac_nm)
-  if (extrapolated) warnings.push({ code: 'air_extrapolated', detail: AIR_EXTRAPOLATED })
-  if (asked.medium === 'air' && line.wavelength_vac_nm < AIR_FROM_NM) {
-    warnings.push({ code: 'air_not_applicable', detail: 'Below 200 nm no air wavelength is given; shift_pm is in vacuum.' })
-  }
-  return warnings
+/** A line with the g in force at both ends. Refuses `transition_forbidden`, `no_ls_g`, `g_unknown`. */
+export function useLine(line: PredictedLine, choice: GChoice): UsedLine {
+  refuseForbidden(line)
+  const used = { line, lower: chooseG(line.lower, choice, 'lower'), upper: chooseG(line.upper, choice, 'upper') }
+  refuseUnknownG(line.lower, used.lower)
+  refuseUnknownG(line.upper, used.upper)
+  return used
 }
 
-/** Says what the stored constants A are beside the field's own splitting, for each end that has any. */
-function hyperfineWarnings({ lower, upper, hyperfine }: PredictedLine, fieldTesla: number, g: { lower: number | null; upper: number | null }): Warning[] {
-  return (['lower', 'upper'] as const).flatMap((end) => {
-    const level = end === 'lower' ? lower : upper
-    const told = hyperfine[end].flatMap(({ mass_number, a_mhz }) => (a_mhz === null ? [] : [`A = ${a_mhz} MHz for mass number ${mass_number}`]))
-    const splitting = g[end]
-    if (told.length === 0 || splitting === null) return []
-    const ghz = Math.abs(splitting) * MU_B_OVER_H_GHZ_PER_T * fieldTesla
-    return [{
-      code: 'hyperfine_ignored',
-      detail: `Hyperfine structure is left out: ${level.id} has ${told.join(', ')}; at this field g mu_B B / h is ${Number(ghz.toPrecision(3))} GHz. Where the two are comparable the pattern is not what the isotope shows.`,
-    }]
-  })
+type Ends = { lower: ValidityEnd; upper: ValidityEnd }
+
+/** Both ends of a line with their terms and the g in force. */
+export const endsOf = ({ line, lower, upper }: UsedLine, choice: GChoice): Ends => ({
+  lower: validityEnd(twoJOf(line.lower), lower.g, line.terms.lower, choice),
+  upper: validityEnd(twoJOf(line.upper), upper.g, line.terms.upper, choice),
+})
+
+/** The terms of both ends where both are whole; else why they cannot be diagonalised. */
+function termsOf({ line }: UsedLine, ends: Ends) {
+  const why = [whyNotWhole(line.lower.id, ends.lower), whyNotWhole(line.upper.id, ends.upper)].filter((reason) => reason !== null)
+  const [lower, upper] = [wholeTerm(ends.lower), wholeTerm(ends.upper)]
+  return lower !== null && upper !== null ? { terms: { lower, upper }, why: null } : { terms: null, why: why.join('; ') }
+}
+
+interface Decided {
+  splits: Split[]
+  model: 'linear' | 'intermediate'
+  warnings: Warning[]
+}
+
+/** Takes the model asked for; `auto` is intermediate where the linear law errs by more than the tolerance and the terms can be diagonalised. */
+function decide(used: UsedLine, ends: Ends, validity: LinearLawValidity, asked: ComponentsAsked): Decided {
+  const { terms, why } = termsOf(used, ends)
+  if (asked.model === 'intermediate' && terms === null) {
+    throw new PhysicsError('term_incomplete', `The intermediate model diagonalises within the terms of both levels, and ${why}. Use model=linear or model=auto.`, 'model')
+  }
+  const warnings: Warning[] = []
+  if (asked.model === 'auto' && terms === null) warnings.push({ code: 'term_incomplete', detail: `model=auto is linear here and its validity is not known: ${why}.` })
+  if (terms === null || asked.model === 'linear' || (asked.model === 'auto' && autoModel(validity) === 'linear')) return { splits: linearSplits(used, asked), model: 'linear', warnings }
+  const multiplet = multipletOf(used.line, terms, asked.gS)
+  if (multiplet.noAmplitude !== null || lineNormalisation(multiplet, ends.lower.twoJ, ends.upper.twoJ) === null) {
+    warnings.push({ code: 'no_ls_amplitude', detail: `Strengths are null in the intermediate model: ${multiplet.noAmplitude ?? 'the line has no strength in LS coupling at zero field'}. Positions hold.` })
+  }
+  if (asked.gValues === 'adopted') warnings.push(...memberWarnings(used.line.terms.lower, used.line.lower.id), ...memberWarnings(used.line.terms.upper, used.line.upper.id))
+  return { splits: intermediateSplits(used, multiplet, asked), model: 'intermediate', warnings }
+}
+
+const NO_RADIUS: TransitionDetail['diamagnetic']['lower'] = { status: 'unknown', reason: 'the level is in no table', effective_n: null, mean_square_radius_bohr2: null, cautions: [] }
+const NO_RADII: TransitionDetail['diamagnetic'] = { lower: NO_RADIUS, upper: NO_RADIUS }
+
+/** The quadratic shift of a component: upper minus lower, an end without one adding nothing. Null where neither end has any. */
+function quadraticOf({ lower, upper, diamagnetic = NO_RADII }: PredictedLine, split: Split, fieldTesla: number): QuadraticShift | null {
+  const low = quadraticShift(lower, diamagnetic.lower, split.lower.twoM, fieldTesla, split.lower.state)
+  const high = quadraticShift(upper, diamagnetic.upper, split.upper.twoM, fieldTesla, split.upper.state)
+  if (low === null && high === null) return null
+  return {
+    shiftInvcm: (high?.shiftInvcm ?? 0) - (low?.shiftInvcm ?? 0),
+    derivativeInvcmPerTesla: (high?.derivativeInvcmPerTesla ?? 0) - (low?.derivativeInvcmPerTesla ?? 0),
+  }
+}
+
+function added(split: Split, quadratic: QuadraticShift | null): Split {
+  if (quadratic === null) return split
+  const shiftInvcm = split.shiftInvcm + quadratic.shiftInvcm
+  const perLorentz = split.shiftLorentz === null || split.shiftInvcm === 0 ? null : split.shiftLorentz / split.shiftInvcm
+  return {
+    ...split,
+    shiftInvcm,
+    shiftLorentz: perLorentz === null ? split.shiftLorentz : shiftInvcm * perLorentz,
+    derivativeInvcmPerTesla: split.derivativeInvcmPerTesla + quadratic.derivativeInvcmPerTesla,
+  }
+}
+
+/** Adds the quadratic shift where it was asked for, and warns of it where it was not and is large. */
+function withQuadratic(line: PredictedLine, splits: Split[], asked: ComponentsAsked): { splits: Split[]; warnings: Warning[] } {
+  const { fieldTesla, tolerance } = asked
+  const { diamagnetic = NO_RADII } = line
+  const told = [...diamagneticCautions(line.lower.id, diamagnetic.lower), ...diamagneticCautions(line.upper.id, diamagnetic.upper)]
+  const quadratic = splits.map((split) => quadraticOf(line, split, fieldTesla))
+  const largest = Math.max(0, ...quadratic.map((one) => Math.abs(one?.shiftInvcm ?? 0)))
+  if (asked.diamagnetic !== true) {
+    if (!isLarge(largest, fieldTesla, tolerance)) return { splits, warnings: [] }
+    return { splits, warnings: [{ code: 'diamagnetic_ignored', detail: `The quadratic (diamagnetic) shift, left out here, is up to ${Number(largest.toPrecision(3))} cm^-1 at this field, more than ${tolerance} of mu_B B; diamagnetic=true adds it.` }, ...told] }
+  }
+  const warnings = [...told]
+  for (const [level, { status, reason }] of [[line.lower, diamagnetic.lower], [line.upper, diamagnetic.upper]] as const) {
+    if (status !== 'ok') warnings.push({ code: 'diamagnetic_missing', detail: `No quadratic shift of ${level.id} is added: ${reason ?? 'none can be had'}.` })
+  }
+  if (isLarge(largest, fieldTesla, tolerance)) warnings.push({ code: 'diamagnetic_large', detail: `The quadratic shift is up to ${Number(largest.toPrecision(3))} cm^-1 at this field, more than ${tolerance} of mu_B B.` })
+  const shifted = splits.map((split, i) => added(split, quadratic[i] ?? null))
+  return { splits: shifted.sort((a, b) => a.q - b.q || a.shiftInvcm - b.shiftInvcm || a.lower.twoM - b.lower.twoM), warnings }
+}
+
+const half = (two: number | null | undefined): number | null => (two === null || two === undefined ? null : two / 2)
+
+function componentOf(split: Split, line: PredictedLine, place: ReturnType<typeof placer>): Component {
+  const { lower, upper } = split
+  return {
+    j_lower: half(lower.twoJ),
+    m_lower: lower.twoM / 2,
+    j_upper: half(upper.twoJ),
+    m_upper: upper.twoM / 2,
+    q: split.q,
+    polarisation: split.polarisation,
+    m_l_lower: lower.state?.mL ?? null,
+    m_s_lower: half(lower.state?.twoMS),
+    m_l_upper: upper.state?.mL ?? null,
+    m_s_upper: half(upper.state?.twoMS),
+    shift_lorentz: split.shiftLorentz,
+    ...place(split.shiftInvcm),
+    derivative_invcm_per_tesla: split.derivativeInvcmPerTesla,
+    strength: split.strength,
+    intensity: split.intensity,
+    intensity_status: split.intensity !== null ? 'ok' : line.kind === 'E2' ? 'not_applicable' : 'unknown',
+    stokes_q: split.stokesQ,
+    stokes_v: split.stokesV,
+    vanishes_by: split.vanishesBy,
+    ...split.uncertainty,
+  }
 }
 
 /**
- * The components of a line at a field in the linear model, with validity and, per component, a budget of its uncertainty. Pure: the same function
- * serves the API and a page that holds the transition. Refuses (`PhysicsError`): `intermediate_not_built`, `transition_forbidden`,
- * `no_ls_g`, `g_unknown`.
+ * The components of a line at a field, in the linear model or diagonalised within both LS terms, with the validity of the linear law and, per
+ * component, a budget of its uncertainty. Pure: the same function serves the API and a page that holds the transition.
+ * Refuses (`PhysicsError`): `transition_forbidden`, `term_incomplete` (model=intermediate), `no_ls_g`, `g_unknown`.
  */
 export function predictComponents(line: PredictedLine, asked: ComponentsAsked): { components: Components; warnings: Warning[] } {
-  if (asked.model === 'intermediate') throw new PhysicsError('intermediate_not_built', INTERMEDIATE_NOT_BUILT, 'model')
-  refuseForbidden(line)
-  const [lower, upper] = [chooseG(line.lower, asked, 'lower'), chooseG(line.upper, asked, 'upper')]
-  refuseUnknownG(line.lower, lower)
-  refuseUnknownG(line.upper, upper)
-  const medium = mediumAt(line.wavelength_vac_nm, asked.medium)
-  const place: Place = { line, asked, medium, r0: medium === 'air' ? refractivity(DEFAULT_AIR_FORMULA, line.wavelength_vac_nm) : 0, lower, upper }
-  const splittings = weakFieldComponents({
-    kind: line.kind,
-    lower: { twoJ: twoJOf(line.lower), g: lower.g },
-    upper: { twoJ: twoJOf(line.upper), g: upper.g },
-    fieldTesla: asked.fieldTesla,
-    thetaDeg: asked.thetaDeg,
-  })
-  const air = airWavelength(line.wavelength_vac_nm)
+  const used = useLine(line, asked)
+  const ends = endsOf(used, asked)
+  const validity = judgeLinear(line, ends, asked)
+  const decided = decide(used, ends, validity, asked)
+  const { splits, warnings: quadratic } = withQuadratic(line, decided.splits, asked)
+  const place = placer(line, asked.medium)
   const components: Components = {
     transition: line.id,
     field_tesla: asked.fieldTesla,
-    model: 'linear',
+    model: decided.model,
     theta_deg: asked.thetaDeg,
-    centre: {
-      wavenumber_invcm: line.wavenumber_invcm,
-      wavelength_vac_nm: line.wavelength_vac_nm,
-      wavelength_air_nm: air.nm,
-      wavelength_air_status: air.nm === null ? 'not_applicable' : 'ok',
-      frequency_thz: thzOfWavenumber(line.wavenumber_invcm),
-    },
-    components: splittings.map((split) => componentOf(split, place)),
-    validity: linearValidity(line, asked, lower.g, upper.g),
+    centre: centreOf(line),
+    components: splits.map((split) => componentOf(split, line, place)),
+    validity: toldValidity(line, validity),
   }
-  const warnings = [...warningsOf(line, asked, [[line.lower, lower], [line.upper, upper]]), ...hyperfineWarnings(line, asked.fieldTesla, { lower: lower.g, upper: upper.g })]
-  if (components.components.some((component) => component.wavelength_vac_nm === null)) {
-    warnings.push({ code: 'level_crossing', detail: 'At this field an upper sublevel lies at or below a lower one; those components have no wavelength, and their wavenumber is not positive.' })
-  }
+  const warnings = [
+    ...decided.warnings,
+    ...gSWarnings([line.lower, line.upper], asked),
+    ...gWarnings({ level: line.lower, chosen: used.lower }, asked.gValues),
+    ...gWarnings({ level: line.upper, chosen: used.upper }, asked.gValues),
+    ...mediumWarnings(line, asked.medium),
+    ...quadratic,
+    ...hyperfineWarnings(line, asked.fieldTesla, { lower: used.lower.g, upper: used.upper.g }),
+  ]
+  if (components.components.some((component) => component.wavelength_vac_nm === null)) warnings.push(CROSSED)
   return { components, warnings }
 }

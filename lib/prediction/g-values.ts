@@ -43,3 +43,7 @@ export function memberG(numbers: { twoS: number; l: number; twoJ: number }, adop
   const atGs = gS === null ? coupled : landeG(numbers, { gS })
   return gValues === 'adopted' && adopted !== coupled ? adopted : atGs
 }
+
+/** One standard deviation of the same: known only of a measured value that was adopted. */
+export const memberGUnc = (numbers: { twoS: number; l: number; twoJ: number }, member: { g_j: number | null; g_j_unc: number | null }, { gValues }: GChoice): number | null =>
+  gValues === 'adopted' && member.g_j !== landeG(numbers) ? member.g_j_unc : null

@@ -1,15 +1,18 @@
-import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
-import { PhysicsError } from '@/lib/atomic/errors'
-import { linearSublevels } from '@/lib/atomic/sublevels'
+import { G_S, MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
+import { fieldTerm, impureJ } from '@/lib/atomic/field-term'
+import { formatHalf } from '@/lib/atomic/half'
+import { linearLawLevelValidity } from '@/lib/atomic/intermediate-validity'
+import { missingJ, type TermLevels } from '@/lib/atomic/mixing'
+import { termGrid, termStateNames } from '@/lib/atomic/term-grid'
+import { DEFAULT_TOLERANCE } from '@/lib/atomic/validity'
 import { bodyProblem, type Fault, faultsProblem, Problem } from '@/lib/problem'
-import { INTERMEDIATE_NOT_BUILT } from '@/lib/prediction/conventions'
-import { chooseG, type GChoice } from '@/lib/prediction/g-values'
+import type { Warning } from '@/lib/prediction/component-warnings'
+import { chooseG } from '@/lib/prediction/g-values'
 import { inlineFaults, inlineLevel, type InlineLevelGiven } from '@/lib/prediction/inline'
-import { twice, twoJOf } from '@/lib/prediction/levels'
+import { twice } from '@/lib/prediction/levels'
 import { FIELD_MAX_TESLA, FIELD_UNITS, fieldFrom, parseField, type FieldUnit } from '@/lib/units/field'
 import type { GValues, Model } from '@/openapi/schemas/common'
 import type { SublevelMatrix } from '@/openapi/schemas/computed'
-import type { Level, Sublevel } from '@/openapi/schemas/level'
 
 
 /** Numbers in one answer: energies and derivatives together. */
@@ -36,7 +39,7 @@ export function readFields(field: FieldsGiven): number[] {
 }
 
 /** All levels of one term share S, L and parity, and each J stands once. */
-function termFaults(levels: readonly InlineLevelGiven[]): Fault[] {
+export function termFaults(levels: readonly InlineLevelGiven[]): Fault[] {
   const [first] = levels
   const seen = new Set<number>()
   return levels.flatMap((level, i): Fault[] => {
@@ -53,54 +56,41 @@ function termFaults(levels: readonly InlineLevelGiven[]): Fault[] {
   })
 }
 
-export interface SublevelsAsked extends GChoice {
-  fieldTesla: number
-  model: Model
-}
-
-/** Sublevels of one level in the linear model, one row per m from -J up. Refuses `intermediate_not_built`, `no_ls_g`, `g_unknown`. */
-export function sublevelsOf(level: Level, asked: SublevelsAsked): Sublevel[] {
-  if (asked.model === 'intermediate') throw new PhysicsError('intermediate_not_built', INTERMEDIATE_NOT_BUILT, 'model')
-  const { g } = chooseG(level, asked, 'level')
-  return linearSublevels({ twoJ: twoJOf(level), g, energyInvcm: level.energy_invcm, fieldTesla: asked.fieldTesla }).map((row) => ({
-    m: row.twoM / 2,
-    shift_invcm: row.shiftInvcm,
-    shift_ghz: row.shiftGhz,
-    energy_invcm: row.energyInvcm,
-  }))
-}
-
 export interface TermSublevelsAsked {
   levels: InlineLevelGiven[]
   field: FieldsGiven
   model: Model
   g_values: GValues
   g_s?: number | null | undefined
+  tolerance?: number | null | undefined
 }
 
-/**
- * Sublevels of one LS term in the linear model, E_J + mu_B g_J m B, over fields. States by m, then upwards in energy at B -> 0+
- * (energy, then slope); m_l and m_s are null, since the linear model does not name them. Energies in cm^-1, derivatives in cm^-1 per tesla.
- */
-export function termSublevels(asked: TermSublevelsAsked): SublevelMatrix {
-  if (asked.model === 'intermediate') throw bodyProblem('/model', 'intermediate_not_built', INTERMEDIATE_NOT_BUILT)
-  const faults = termFaults(asked.levels)
-  if (faults.length > 0) throw faultsProblem(faults)
-  const fields = readFields(asked.field)
-  const choice = { gValues: asked.g_values, gS: asked.g_s ?? null }
-  const states = asked.levels.flatMap((given, i) => {
-    const { g } = chooseG(inlineLevel(given, choice.gS), choice, `levels[${i}]`)
-    const twoJ = twice(given.j)
-    return Array.from({ length: twoJ + 1 }, (_, k) => {
+interface Term {
+  levels: TermLevels
+  gS: number
+}
+
+/** The term with the g's in force. */
+function termOf({ levels, g_values: gValues, g_s }: TermSublevelsAsked): Term {
+  const choice = { gValues, gS: g_s ?? null }
+  const read = levels.map((given, i) => ({ twoJ: twice(given.j), energyInvcm: given.energy_invcm, g: chooseG(inlineLevel(given, choice.gS), choice, `levels[${i}]`).g }))
+  const [first] = levels
+  return { levels: { twoS: twice(first?.s ?? 0), l: first?.l ?? 0, levels: read }, gS: choice.gS ?? G_S }
+}
+
+const missingIn = (term: TermLevels): string => missingJ(term).map(formatHalf).join(', ')
+
+/** Whether `auto` diagonalises: the linear law of some level errs by more than the tolerance at the largest field asked. */
+const linearFails = ({ levels: term, gS }: Term, largest: number, tolerance: number): boolean =>
+  term.levels.some(({ twoJ, g }) => linearLawLevelValidity({ twoJ, g, term }, largest, { tolerance, gS }).status === 'not_valid')
+
+function linearMatrix({ levels: { levels } }: Term, fields: readonly number[]): SublevelMatrix {
+  const states = levels.flatMap(({ twoJ, energyInvcm: energy, g }) =>
+    Array.from({ length: twoJ + 1 }, (_, k) => {
       const m = k - twoJ / 2
-      return { m, j: given.j, energy: given.energy_invcm, slope: m === 0 || g === null ? 0 : MU_B_OVER_HC_INVCM_PER_T * g * m }
-    })
-  })
-  if (2 * states.length * fields.length > SUBLEVEL_VALUES_MAX) {
-    throw new Problem('answer_too_large', `${states.length} states at ${fields.length} fields are ${2 * states.length * fields.length} numbers; one answer holds up to ${SUBLEVEL_VALUES_MAX}. Ask for fewer fields at once.`, {
-      extra: { limit: SUBLEVEL_VALUES_MAX },
-    })
-  }
+      return { m, j: twoJ / 2, energy, slope: m === 0 || g === null ? 0 : MU_B_OVER_HC_INVCM_PER_T * g * m }
+    }),
+  )
   states.sort((a, b) => a.m - b.m || a.energy - b.energy || a.slope - b.slope || a.j - b.j)
   return {
     m: states.map((state) => state.m),
@@ -110,4 +100,54 @@ export function termSublevels(asked: TermSublevelsAsked): SublevelMatrix {
     energies_invcm: fields.map((tesla) => states.map((state) => state.energy + state.slope * tesla)),
     derivatives: fields.map(() => states.map((state) => state.slope)),
   }
+}
+
+/** Flat [field][state] as a list of lists. */
+export const rowsOf = (flat: Float64Array, fields: number, states: number): number[][] => Array.from({ length: fields }, (_, row) => [...flat.subarray(row * states, (row + 1) * states)])
+
+function diagonalisedMatrix({ levels, gS }: Term, fields: readonly number[]): SublevelMatrix {
+  const term = fieldTerm(levels, { gS, gL: 1 })
+  const names = termStateNames(term)
+  const grid = termGrid(term, fields)
+  return {
+    m: names.twoM.map((two) => two / 2),
+    j: names.twoJ.map((two) => (two === null ? null : two / 2)),
+    m_l: names.mL,
+    m_s: names.twoMS.map((two) => two / 2),
+    energies_invcm: rowsOf(grid.energiesInvcm, fields.length, grid.states),
+    derivatives: rowsOf(grid.derivatives, fields.length, grid.states),
+  }
+}
+
+/** Refuses an answer of too many numbers before it is computed. */
+export function checkSize(states: number, fields: number, perState: number): void {
+  const values = perState * states * fields
+  if (values <= SUBLEVEL_VALUES_MAX) return
+  throw new Problem('answer_too_large', `${states} states at ${fields} fields are ${values} numbers; one answer holds up to ${SUBLEVEL_VALUES_MAX}. Ask for fewer fields at once.`, { extra: { limit: SUBLEVEL_VALUES_MAX } })
+}
+
+/**
+ * Sublevels of one LS term over fields, in the linear model E_J + mu_B g_J m B or diagonalised within the term; `auto` is decided once, from the
+ * largest field. States by m, then upwards in energy at B -> 0+; m_l and m_s are null in the linear model, which does not name them. Energies in
+ * cm^-1, derivatives in cm^-1 per tesla. Refuses `term_mixed`, `term_incomplete` (model=intermediate), `answer_too_large`.
+ */
+export function termSublevels(asked: TermSublevelsAsked): { matrix: SublevelMatrix; model: 'linear' | 'intermediate'; warnings: Warning[] } {
+  const faults = termFaults(asked.levels)
+  if (faults.length > 0) throw faultsProblem(faults)
+  const fields = readFields(asked.field)
+  const term = termOf(asked)
+  const whole = missingJ(term.levels).length === 0
+  if (asked.model === 'intermediate' && !whole) {
+    throw bodyProblem('/levels', 'term_incomplete', `The intermediate model diagonalises within the term, which lacks J = ${missingIn(term.levels)}: give the whole term, or use model=linear or model=auto.`)
+  }
+  checkSize(asked.levels.reduce((sum, level) => sum + twice(level.j) + 1, 0), fields.length, 2)
+  const fails = whole && linearFails(term, Math.max(0, ...fields), asked.tolerance ?? DEFAULT_TOLERANCE)
+  const model = asked.model === 'intermediate' || (asked.model === 'auto' && fails) ? 'intermediate' : 'linear'
+  const warnings: Warning[] = []
+  if (asked.model === 'auto' && !whole) warnings.push({ code: 'term_incomplete', detail: `model=auto is linear here and its validity is not known: the term lacks J = ${missingIn(term.levels)}.` })
+  if (model === 'intermediate' && asked.g_values === 'adopted') {
+    const impure = impureJ(term.levels, { gS: term.gS, gL: 1 })
+    if (impure.length > 0) warnings.push({ code: 'term_not_pure', detail: `g_J of J = ${impure.map(formatHalf).join(', ')} is more than 0.5 % from the LS value: the term is not pure.` })
+  }
+  return { matrix: model === 'linear' ? linearMatrix(term, fields) : diagonalisedMatrix(term, fields), model, warnings }
 }

@@ -8,6 +8,7 @@ import { thzOfWavenumber, vacuumNmOfWavenumber } from '@/lib/units/spectral'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { chooseG, type GChoice } from '@/lib/prediction/g-values'
 import { judgedOf, type PhysicalLevel, twoJOf } from '@/lib/prediction/levels'
+import { levelDiamagnetic } from '@/lib/prediction/diamagnetic'
 import { linksOfTransition } from '@/lib/prediction/links'
 import { positionUnc } from '@/lib/prediction/uncertainty'
 import type { Kind } from '@/openapi/schemas/common'
@@ -113,10 +114,16 @@ export function membersOf(snapshot: Snapshot, index: number): TransitionDetail['
     l: term.l,
     levels: indices.map((member) => {
       const level = snapshot.level(member)
-      return { id: level.id, j: level.term.j, energy_invcm: level.energy_invcm, g_j: level.g_j.adopted }
+      return { id: level.id, j: level.term.j, energy_invcm: level.energy_invcm, energy_unc_invcm: level.energy_unc_invcm, g_j: level.g_j.adopted, g_j_unc: level.g_j.adopted_unc }
     }),
     missing_j: missingTwoJ.map((twoJ) => twoJ / 2),
   }
+}
+
+/** What the quadratic shift of a level of an edition is computed from. */
+export function diamagneticOf(snapshot: Snapshot, index: number): TransitionDetail['diamagnetic']['lower'] {
+  const species = snapshot.species[snapshot.columns.speciesOf[index] ?? 0]
+  return levelDiamagnetic(snapshot.level(index), species ?? { ionisation_energy_invcm: null, charge: 0, isotopes: [] })
 }
 
 /** The transition with the terms of both ends and links. */
@@ -126,6 +133,7 @@ export function transitionDetail(snapshot: Snapshot, i: number, j: number, kind?
   return {
     ...transition,
     terms: { lower: membersOf(snapshot, low), upper: membersOf(snapshot, high) },
+    diamagnetic: { lower: diamagneticOf(snapshot, low), upper: diamagneticOf(snapshot, high) },
     hyperfine: { lower: [...snapshot.hyperfine(low)], upper: [...snapshot.hyperfine(high)] },
     links: linksOfTransition(transition.lower.id, transition.upper.id),
   }

@@ -1,3 +1,6 @@
+import { CONSTANTS } from '@/lib/atomic/constants'
+import { shiftLorentz } from '@/lib/atomic/components'
+import type { IntermediateUncertainty } from '@/lib/atomic/intermediate-uncertainty'
 import { positionUncertainty, type UncertainEnd } from '@/lib/atomic/uncertainty'
 import type { ChosenG } from '@/lib/prediction/g-values'
 import type { PhysicalLevel } from '@/lib/prediction/levels'
@@ -24,21 +27,26 @@ export interface ComponentEnd {
 }
 
 /** The uncertainty members of a component: total (null where a part is unknown), known part, and the budget part by part. */
-export function componentUncertainty(
-  lower: ComponentEnd,
-  upper: ComponentEnd,
-  fieldTesla: number,
-  fieldUnc: number | null,
-): Pick<Component, 'wavenumber_unc_invcm' | 'wavenumber_known_unc_invcm' | 'budget'> {
+export type UncertaintyTold = Pick<Component, 'wavenumber_unc_invcm' | 'wavenumber_known_unc_invcm' | 'budget'>
+
+export const toldUncertainty = ({ total, known, budget }: Pick<IntermediateUncertainty, 'total' | 'known' | 'budget'>): UncertaintyTold => ({
+  wavenumber_unc_invcm: total,
+  wavenumber_known_unc_invcm: known,
+  budget: budget.map(({ part, value, status }) => ({ part, value_invcm: value, status })),
+})
+
+/** Of a component in the linear model: energies, g_J's, field, and mu_B/hc, whose deviation scales the shift. */
+export function componentUncertainty(lower: ComponentEnd, upper: ComponentEnd, fieldTesla: number, fieldUnc: number | null): UncertaintyTold {
   const { total, known, budget } = positionUncertainty({
     lower: endOf(lower.level, lower.chosen, lower.twoM),
     upper: endOf(upper.level, upper.chosen, upper.twoM),
     fieldTesla,
     fieldUnc,
   })
-  return {
-    wavenumber_unc_invcm: total,
-    wavenumber_known_unc_invcm: known,
-    budget: budget.map(({ part, value, status }) => ({ part, value_invcm: value, status })),
-  }
+  const constants = Math.abs(shiftLorentz(lower.chosen.g, lower.twoM, upper.chosen.g, upper.twoM)) * fieldTesla * CONSTANTS.bohrMagnetonInvcm.standardUncertainty
+  return toldUncertainty({
+    total: total === null ? null : Math.hypot(total, constants),
+    known: Math.hypot(known, constants),
+    budget: [...budget, { part: 'constants', value: constants, status: constants === 0 ? 'exact' : 'known' }],
+  })
 }

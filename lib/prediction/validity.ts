@@ -1,27 +1,16 @@
 import { G_S } from '@/lib/atomic/constants'
-import { levelValidity, type LevelValidity as AtomicLevel, lineValidity, type TermLevels, type ValidityEnd } from '@/lib/atomic/validity'
-import { validitySentence } from '@/lib/atomic/validity-sentence'
-import { type GChoice, memberG } from '@/lib/prediction/g-values'
+import { linearLawLevelValidity, type LinearLawValidity, linearLawValidity } from '@/lib/atomic/intermediate-validity'
+import type { LevelValidity as AtomicLevel, ValidityEnd } from '@/lib/atomic/validity'
+import { blendSentence, validitySentence } from '@/lib/atomic/validity-sentence'
+import type { GChoice } from '@/lib/prediction/g-values'
 import { twice, twoJOf } from '@/lib/prediction/levels'
+import { type MembersTold, validityEnd } from '@/lib/prediction/term-levels'
 import type { Level } from '@/openapi/schemas/level'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
 import type { LevelValidity, Validity } from '@/openapi/schemas/validity'
 
-/** The levels of one term as the API tells them. */
-export type MembersTold = TransitionDetail['terms']['lower']
-
-function termOf({ s, l, levels }: MembersTold, choice: GChoice): TermLevels | null {
-  if (s === null || l === null) return null
-  const twoS = twice(s)
-  return {
-    twoS,
-    l,
-    levels: levels.map((member) => {
-      const twoJ = twice(member.j)
-      return { twoJ, energyInvcm: member.energy_invcm, g: memberG({ twoS, l, twoJ }, member.g_j, choice) }
-    }),
-  }
-}
+/** What validity is asked for: the g's, the field and the tolerance. */
+export type ValidityAsked = GChoice & { fieldTesla: number; tolerance: number }
 
 const told = (id: string | null, level: AtomicLevel): LevelValidity => ({
   level: id,
@@ -36,28 +25,24 @@ const told = (id: string | null, level: AtomicLevel): LevelValidity => ({
 
 const nameOf = (level: Pick<Level, 'configuration' | 'term'>): string => `${level.configuration} ${level.term.label === null ? '' : `${level.term.label} `}${level.term.unicode}`
 
-/** Linear validity of one level from its term's members, at a field. */
-export function levelLinearValidity(level: Level, g: number | null, members: MembersTold, asked: GChoice & { fieldTesla: number; tolerance: number }): LevelValidity {
-  const end: ValidityEnd = { twoJ: twoJOf(level), g, term: termOf(members, asked) }
-  return told(level.id, levelValidity(end, asked.fieldTesla, { tolerance: asked.tolerance, gS: asked.gS ?? G_S }))
+/** Validity of the linear law for one level from its term's members, at a field. */
+export function levelLinearValidity(level: Level, g: number | null, members: MembersTold, asked: ValidityAsked): LevelValidity {
+  const end = validityEnd(twoJOf(level), g, members, asked)
+  return told(level.id, linearLawLevelValidity(end, asked.fieldTesla, { tolerance: asked.tolerance, gS: asked.gS ?? G_S }))
 }
 
-/** How far the linear law may be trusted for a line at a field: positions and strengths apart, and both levels. */
-export function linearValidity(
-  line: Pick<TransitionDetail, 'lower' | 'upper' | 'kind' | 'terms'>,
-  asked: GChoice & { fieldTesla: number; tolerance: number },
-  gLower: number | null,
-  gUpper: number | null,
-): Validity {
-  const validity = lineValidity({
-    kind: line.kind,
-    lower: { twoJ: twoJOf(line.lower), g: gLower, term: termOf(line.terms.lower, asked) },
-    upper: { twoJ: twoJOf(line.upper), g: gUpper, term: termOf(line.terms.upper, asked) },
-    fieldTesla: asked.fieldTesla,
-    tolerance: asked.tolerance,
-    gS: asked.gS ?? G_S,
-  })
-  const { positions, strengths, levels, method } = validity
+type JudgedLine = Pick<TransitionDetail, 'lower' | 'upper' | 'kind' | 'terms'>
+
+/** How far the linear law may be trusted for a line at a field, from the terms of both ends. */
+export const judgeLinear = (line: JudgedLine, ends: { lower: ValidityEnd; upper: ValidityEnd }, asked: ValidityAsked): LinearLawValidity =>
+  linearLawValidity({ kind: line.kind, ...ends, fieldTesla: asked.fieldTesla, tolerance: asked.tolerance, gS: asked.gS ?? G_S })
+
+const memberId = ({ levels }: MembersTold, twoJ: number): string | null => levels.find((member) => twice(member.j) === twoJ)?.id ?? null
+
+/** The same as the API tells it: positions, strengths and the centre of the blend apart, and both levels. */
+export function toldValidity(line: JudgedLine, validity: LinearLawValidity): Validity {
+  const { positions, strengths, blend, levels, method } = validity
+  const sentence = validitySentence(validity, { lower: nameOf(line.lower), upper: nameOf(line.upper) })
   return {
     positions: {
       status: positions.status,
@@ -72,8 +57,20 @@ export function linearValidity(
       tolerance: strengths.tolerance,
       field_limit_tesla: strengths.fieldLimitTesla,
     },
+    blend: {
+      status: blend.status,
+      error_invcm: blend.errorInvcm,
+      relative_error: blend.relativeError,
+      tolerance: blend.tolerance,
+      field_limit_tesla: blend.fieldLimitTesla,
+      lines: blend.lines.map(({ twoJLower, twoJUpper }) => {
+        const [low, high] = [memberId(line.terms.lower, twoJLower), memberId(line.terms.upper, twoJUpper)]
+        return { transition: low === null || high === null ? null : `${low}~${high}`, j_lower: twoJLower / 2, j_upper: twoJUpper / 2 }
+      }),
+    },
     levels: { lower: told(line.lower.id, levels.lower), upper: told(line.upper.id, levels.upper) },
     method,
-    sentence: validitySentence(validity, { lower: nameOf(line.lower), upper: nameOf(line.upper) }),
+    // of a line that is seen alone the centre follows from positions and strengths
+    sentence: blend.lines.length > 1 ? `${sentence} ${blendSentence(validity)}` : sentence,
   }
 }

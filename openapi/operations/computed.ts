@@ -2,8 +2,8 @@ import { z } from 'zod'
 import { FIELD_UNIT_NAMES } from '@/lib/units/field'
 import { defineOperation } from '@/openapi/core/define'
 import { choiceParameter, numberParameter } from '@/openapi/core/parameters'
-import { Conversion, DecodedTerm, SPECTRAL_SCALES, SublevelMatrix } from '@/openapi/schemas/computed'
-import { InlineLevel } from './inline'
+import { Conversion, DecodedTerm, HyperfineMatrix, SPECTRAL_SCALES, SublevelMatrix } from '@/openapi/schemas/computed'
+import { halfInteger, InlineLevel } from './inline'
 import { gSParameter, termPath } from './parameters'
 
 export const decodeTerm = defineOperation({
@@ -32,9 +32,9 @@ export const computeSublevels = defineOperation({
   id: 'computeSublevels',
   method: 'post',
   path: '/sublevels',
-  summary: 'Sublevels of one LS term given in the request, over fields',
+  summary: 'Sublevels of one LS term, or of one level with its nucleus, given in the request, over fields',
   description:
-    'Either `levels` of one LS term, or `level` with `nucleus`. The second form, hyperfine structure, is refused as hyperfine_not_built, and model=intermediate as intermediate_not_built, until they are built.',
+    'Either `levels` of one LS term, or `level` with `nucleus` (hyperfine structure, diagonalised in full). model=auto diagonalises within the term where the linear law of some level errs by more than the tolerance at the largest field.',
   tag: 'Physics',
   role: 'reader',
   body: z.union([
@@ -44,16 +44,22 @@ export const computeSublevels = defineOperation({
       model: z.enum(['auto', 'linear', 'intermediate']).default('auto'),
       g_values: z.enum(['adopted', 'coupled', 'ls']).default('adopted'),
       g_s: z.number().min(0).max(3).nullish(),
+      tolerance: z.number().min(1e-6).max(1).nullish().meta({ description: 'Relative error above which model=auto leaves the linear law; 0.01.' }),
     }),
     z.strictObject({
-      level: z.strictObject({ j: z.number().min(0).max(50), g_j: z.number() }),
-      nucleus: z.strictObject({ i: z.number().min(0).max(20), a_mhz: z.number(), b_mhz: z.number().nullish(), g_i: z.number().nullish() }),
+      level: z.strictObject({ j: halfInteger('j'), g_j: z.number().min(-20).max(20).nullish().meta({ description: 'Null only for J = 0.' }) }),
+      nucleus: z.strictObject({
+        i: halfInteger('i').max(20),
+        a_mhz: z.number().min(-1e7).max(1e7),
+        b_mhz: z.number().min(-1e7).max(1e7).nullish().meta({ description: 'Dropped where I or J is under 1.' }),
+        g_i: z.number().min(-1).max(1).nullish().meta({ description: "g_I' in units of mu_B, negative for a positive moment; without it 0." }),
+      }),
       field: FieldList,
     }),
   ]),
-  answer: SublevelMatrix,
+  answer: z.union([SublevelMatrix, HyperfineMatrix]),
   edition: 'computed',
-  problems: ['term_impossible', 'term_mixed', 'intermediate_not_built', 'hyperfine_not_built', 'field_out_of_range', 'g_impossible', 'answer_too_large'],
+  problems: ['term_impossible', 'term_mixed', 'term_incomplete', 'g_unknown', 'field_out_of_range', 'g_impossible', 'answer_too_large'],
   example: {
     body: {
       levels: [

@@ -1,7 +1,8 @@
 import { z } from 'zod'
 import { Parity } from '@/openapi/schemas/common'
 
-const halfInteger = (what: string) =>
+/** J, S, I as a number. */
+export const halfInteger = (what: string) =>
   z
     .number()
     .min(0)

@@ -4,7 +4,7 @@ import { choiceParameter, explainParameter, halfParameter, numberParameter, repe
 import { GFactor, Level, LevelDetail, Sublevel } from '@/openapi/schemas/level'
 import { Transition } from '@/openapi/schemas/transition'
 import {
-  field, gSParameter, gValuesParameter, kindParameter, levelPath, modelParameter, rulesParameter, speciesPath, termParameter, toleranceParameter,
+  diamagneticParameter, field, gSParameter, gValuesParameter, kindParameter, levelPath, modelParameter, rulesParameter, speciesPath, termParameter, toleranceParameter,
 } from './parameters'
 
 const onlyLevel = z.strictObject({ level: levelPath })
@@ -96,12 +96,13 @@ export const getSublevels = defineOperation({
     g_values: gValuesParameter,
     g_s: gSParameter.optional(),
     tolerance: toleranceParameter,
+    diamagnetic: diamagneticParameter,
   }),
   answer: Sublevel,
   list: true,
   edition: 'computed',
   formats: ['csv', 'ndjson', 'ecsv', 'arrow'],
-  problems: [...gone, 'intermediate_not_built', 'no_ls_g', 'g_unknown'],
+  problems: [...gone, 'term_incomplete', 'no_ls_g', 'g_unknown'],
   example: { params: { level: 'Na-I.2' }, query: { field: '1.5T' } },
 })
 

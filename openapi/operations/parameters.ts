@@ -1,7 +1,7 @@
 import { parseSpecies } from '@/lib/atomic/elements'
 import { parseTerm, type Term } from '@/lib/atomic/term'
 import type { Parsed } from '@/lib/units/parsed'
-import { choiceParameter, fieldParameter, numberParameter, readBy } from '@/openapi/core/parameters'
+import { choiceParameter, fieldParameter, flagParameter, numberParameter, readBy } from '@/openapi/core/parameters'
 import { LEVEL_ID, SPECIES_ID, TRANSITION_ID } from '@/openapi/schemas/common'
 
 /** Parameters that several reading operations share. Identifiers are checked for their form here; whether they exist is the table's to say. */
@@ -67,6 +67,8 @@ export const thetaParameter = numberParameter('Angle between the field and the d
 })
 export const toleranceParameter = numberParameter('Relative error above which the linear law counts as not valid.', { min: 1e-6, max: 1 }).prefault('0.01')
 export const fieldUncertaintyParameter = fieldParameter('One standard deviation of the field, as a field with its unit; without it the field is exact.')
+
+export const diamagneticParameter = flagParameter('Add the quadratic (diamagnetic) shift, where one electron outside closed shells allows it to be computed.')
 
 export const field = fieldParameter()
 

@@ -4,7 +4,7 @@ import { choiceParameter, explainParameter, numberParameter, repeatable } from '
 import { Components } from '@/openapi/schemas/components'
 import { JudgedTransition, Transition, TransitionDetail } from '@/openapi/schemas/transition'
 import {
-  field, fieldUncertaintyParameter, gSParameter, gValuesParameter, kindParameter, mediumParameter, modelParameter, rulesParameter, speciesPath, thetaParameter, toleranceParameter, transitionPath,
+  diamagneticParameter, field, fieldUncertaintyParameter, gSParameter, gValuesParameter, kindParameter, mediumParameter, modelParameter, rulesParameter, speciesPath, thetaParameter, toleranceParameter, transitionPath,
 } from './parameters'
 import { InlineLevel } from './inline'
 
@@ -102,11 +102,12 @@ export const getComponents = defineOperation({
     theta_deg: thetaParameter.optional(),
     medium: mediumParameter,
     tolerance: toleranceParameter,
+    diamagnetic: diamagneticParameter,
   }),
   answer: Components,
   edition: 'computed',
   formats: ['csv', 'ndjson', 'ecsv', 'arrow'],
-  problems: [...gone, 'transition_forbidden', 'intermediate_not_built', 'no_ls_g', 'g_unknown'],
+  problems: [...gone, 'transition_forbidden', 'term_incomplete', 'no_ls_g', 'g_unknown'],
   example: { params: { transition: 'Na-I.1~Na-I.2' }, query: { field: '1.5T' } },
 })
 

@@ -40,7 +40,7 @@ export const Conversion = z
   .meta({ id: 'Conversion' })
 export type Conversion = z.infer<typeof Conversion>
 
-/** Columnar answer of `POST /sublevels`; matrices are [field][state], states by m then upwards. */
+/** Columnar answer of `POST /sublevels` with levels; matrices are [field][state], states by m then upwards. */
 export const SublevelMatrix = z
   .strictObject({
     m: z.array(z.number()),
@@ -52,3 +52,17 @@ export const SublevelMatrix = z
   })
   .meta({ id: 'SublevelMatrix' })
 export type SublevelMatrix = z.infer<typeof SublevelMatrix>
+
+/** Columnar answer of `POST /sublevels` with a nucleus; matrices are [field][state], states by m_F then upwards. */
+export const HyperfineMatrix = z
+  .strictObject({
+    f: z.array(z.number().nullable()).meta({ description: 'By continuity from zero field; null where two zero-field energies coincide.' }),
+    m_f: z.array(z.number()),
+    m_j: z.array(z.number()).meta({ description: 'High-field name.' }),
+    m_i: z.array(z.number()),
+    shifts_mhz: z.array(z.array(z.number())).meta({ description: 'From the hyperfine level F at zero field.' }),
+    energies_mhz: z.array(z.array(z.number())).meta({ description: 'From the centre of gravity of the level J.' }),
+    derivatives: z.array(z.array(z.number())).meta({ description: 'MHz per tesla.' }),
+  })
+  .meta({ id: 'HyperfineMatrix' })
+export type HyperfineMatrix = z.infer<typeof HyperfineMatrix>

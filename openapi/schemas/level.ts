@@ -134,10 +134,65 @@ export type GFactor = z.infer<typeof GFactor>
 
 export const Sublevel = z
   .strictObject({
+    j: z.number().nullable().meta({ description: 'By continuity from zero field; null where two zero-field energies of the term coincide.' }),
     m: z.number(),
+    m_l: z.number().nullable().meta({ description: 'M_L that the sublevel tends to at high field; null in the linear model, which names none.' }),
+    m_s: z.number().nullable().meta({ description: 'M_S that it tends to at high field.' }),
     shift_invcm: z.number(),
     shift_ghz: z.number(),
+    shift_mhz: z.number(),
     energy_invcm: z.number(),
+    derivative_invcm_per_tesla: z.number().meta({ description: 'Of the energy with respect to the field; analytic.' }),
+    diamagnetic_shift_invcm: z.number().nullable().meta({ description: 'Quadratic shift; part of shift and energy with diamagnetic=true only.' }),
+    diamagnetic_status: ValueStatus,
   })
   .meta({ id: 'Sublevel' })
 export type Sublevel = z.infer<typeof Sublevel>
+
+export const HyperfineSublevel = z
+  .strictObject({
+    mass_number: z.int(),
+    f: z.number().nullable().meta({ description: 'By continuity from zero field; null where two zero-field energies coincide.' }),
+    m_f: z.number(),
+    m_j: z.number().meta({ description: 'm_J that the sublevel tends to at high field.' }),
+    m_i: z.number().meta({ description: 'm_I that it tends to at high field.' }),
+    shift_mhz: z.number().meta({ description: 'From the hyperfine level F at zero field.' }),
+    energy_mhz: z.number().meta({ description: 'From the centre of gravity of the level J.' }),
+    energy_invcm: z.number().meta({ description: 'From the ground level.' }),
+    derivative_mhz_per_tesla: z.number(),
+    amplitudes: z
+      .array(z.strictObject({ m_j: z.number(), m_i: z.number(), amplitude: z.number() }))
+      .optional()
+      .meta({ description: 'Of |m_J, m_I> in the state; with amplitudes=true.' }),
+  })
+  .meta({ id: 'HyperfineSublevel' })
+export type HyperfineSublevel = z.infer<typeof HyperfineSublevel>
+
+const SublevelNamed = z.strictObject({ name: z.string().meta({ example: 'F = 2, m_F = 1' }), f: z.number().nullable(), j: z.number().nullable(), m: z.number() })
+const AtField = { field_tesla: z.number(), field_gauss: z.number() }
+
+/** Where two sublevels cross, come nearest, or differ by an amount that the field does not change. */
+export const Crossings = z
+  .strictObject({
+    level: LevelId,
+    mass_number: z.int().nullable().meta({ description: 'Null without hyperfine structure.' }),
+    a: SublevelNamed,
+    b: SublevelNamed,
+    from_tesla: z.number(),
+    to_tesla: z.number(),
+    crossings: z.array(z.strictObject({ ...AtField, slope_mhz_per_tesla: z.number().meta({ description: 'Of E(a) - E(b).' }) })),
+    anticrossings: z.array(z.strictObject({ ...AtField, gap_mhz: z.number(), gap_invcm: z.number() })).meta({ description: 'Two sublevels of one m do not cross: where they are nearest.' }),
+    stationary: z
+      .array(
+        z.strictObject({
+          ...AtField,
+          difference_mhz: z.number(),
+          difference_invcm: z.number(),
+          curvature_mhz_per_tesla2: z.number(),
+          kind: z.enum(['minimum', 'maximum']).meta({ description: 'Of E(a) - E(b).' }),
+        }),
+      )
+      .meta({ description: 'Where the difference does not change with the field to first order.' }),
+  })
+  .meta({ id: 'Crossings' })
+export type Crossings = z.infer<typeof Crossings>

@@ -7,6 +7,7 @@ export const Isotope = z
     mass_u: z.number().nullable(),
     nuclear_spin: z.number().nullable().meta({ description: 'I, a half-integer.' }),
     abundance_percent: z.number().nullable(),
+    g_i: z.number().nullable().meta({ description: "g_I' in units of mu_B, negative for a positive moment." }),
     source: z.string().nullable(),
     evidence: Evidence.nullable(),
   })

@@ -63,17 +63,39 @@ export type Transition = z.infer<typeof Transition>
 const TermMembers = z.strictObject({
   s: z.number().nullable(),
   l: z.int().nullable(),
-  levels: z.array(z.strictObject({ id: LevelId, j: z.number(), energy_invcm: z.number(), g_j: z.number().nullable() })),
+  levels: z.array(
+    z.strictObject({
+      id: LevelId,
+      j: z.number(),
+      energy_invcm: z.number(),
+      energy_unc_invcm: z.number().nullable(),
+      g_j: z.number().nullable(),
+      g_j_unc: z.number().nullable().meta({ description: 'One standard deviation of the adopted g_J.' }),
+    }),
+  ),
   missing_j: z.array(z.number()),
 })
+
+/** What the quadratic shift of a level is computed from. */
+export const LevelDiamagnetic = z
+  .strictObject({
+    status: ValueStatus.meta({ description: 'not_applicable: no single electron outside closed shells, or the level is none of a series that the ionisation energy limits.' }),
+    reason: z.string().nullable().meta({ description: 'Why there is none; null where there is.' }),
+    effective_n: z.number().nullable(),
+    mean_square_radius_bohr2: z.number().nullable().meta({ description: '<r^2> in Bohr radii squared, hydrogenic with the effective quantum number.' }),
+    cautions: z.array(z.enum(['l_mixing', 'penetrating'])).meta({ description: 'l_mixing: levels of other l lie so near that first order is only a guide; penetrating: the electron is much inside the core.' }),
+  })
+  .meta({ id: 'LevelDiamagnetic' })
+export type LevelDiamagnetic = z.infer<typeof LevelDiamagnetic>
 
 export const TransitionDetail = Transition.extend({
   terms: z
     .strictObject({ lower: TermMembers, upper: TermMembers })
-    .meta({ description: 'The levels of both terms, which is what the validity of the linear law is judged from.' }),
+    .meta({ description: 'The levels of both terms: what the intermediate model diagonalises and the linear law is judged by.' }),
+  diamagnetic: z.strictObject({ lower: LevelDiamagnetic, upper: LevelDiamagnetic }).meta({ description: 'What the quadratic shifts of both ends are computed from.' }),
   hyperfine: z
     .strictObject({ lower: z.array(HyperfineConstants), upper: z.array(HyperfineConstants) })
-    .meta({ description: 'Hyperfine constants stored for both ends; the components leave hyperfine structure out.' }),
+    .meta({ description: 'Hyperfine constants stored for both ends; components with hyperfine=true are made with them.' }),
   links: z.strictObject({ self: z.string(), page: z.string(), components: z.string(), lower: z.string(), upper: z.string() }),
 }).meta({ id: 'TransitionDetail' })
 export type TransitionDetail = z.infer<typeof TransitionDetail>

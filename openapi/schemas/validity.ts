@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import { LevelId } from './common'
+import { LevelId, TransitionId } from './common'
 
 export const ValidityStatus = z.enum(['valid', 'not_valid', 'unknown']).meta({ id: 'ValidityStatus' })
 export type ValidityStatus = z.infer<typeof ValidityStatus>
@@ -19,6 +19,12 @@ export const LevelValidity = z
   .meta({ id: 'LevelValidity' })
 export type LevelValidity = z.infer<typeof LevelValidity>
 
+/** A line that blends with the one asked for: nearer than a thirty-thousandth of its wavenumber, or joined to it by such neighbours. */
+export const BlendedLine = z
+  .strictObject({ transition: TransitionId.nullable().meta({ description: 'Null for levels of no table.' }), j_lower: z.number(), j_upper: z.number() })
+  .meta({ id: 'BlendedLine' })
+export type BlendedLine = z.infer<typeof BlendedLine>
+
 export const Validity = z
   .strictObject({
     positions: z.strictObject({
@@ -34,9 +40,17 @@ export const Validity = z
       tolerance: z.number(),
       field_limit_tesla: z.number().nullable(),
     }),
+    blend: z.strictObject({
+      status: ValidityStatus,
+      error_invcm: z.number().nullable().meta({ description: 'How far the linear law misplaces the centre of gravity of the lines seen in one, the worst q.' }),
+      relative_error: z.number().nullable().meta({ description: 'error_invcm divided by the larger of the largest linear displacement of a centre and 0.01 mu_B B.' }),
+      tolerance: z.number(),
+      field_limit_tesla: z.number().nullable(),
+      lines: z.array(BlendedLine).meta({ description: 'The lines seen in one with this line, itself included.' }),
+    }),
     levels: z.strictObject({ lower: LevelValidity, upper: LevelValidity }),
     method: z.string(),
     sentence: z.string(),
   })
-  .meta({ id: 'Validity', description: 'How far the linear law may be trusted at this field, positions and strengths apart.' })
+  .meta({ id: 'Validity', description: 'How far the linear law may be trusted at this field: positions, strengths, and the centre of an unresolved blend apart.' })
 export type Validity = z.infer<typeof Validity>

@@ -79,7 +79,7 @@ describe('the data as they were given', () => {
       })
       for (const isotope of species.isotopes) {
         expect(isotopes.get(`${species.id}/${isotope.mass_number}`)).toMatchObject({
-          mass_u: isotope.mass_u, two_i: twice(isotope.spin), abundance_percent: isotope.abundance_percent, g_i: null, evidence: species.isotope_evidence,
+          mass_u: isotope.mass_u, two_i: twice(isotope.spin), abundance_percent: isotope.abundance_percent, g_i: isotope.g_i ?? null, evidence: species.isotope_evidence,
         })
       }
     }

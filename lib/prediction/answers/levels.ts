@@ -6,14 +6,12 @@ import { Problem } from '@/lib/problem'
 import { levelCriteria } from '@/lib/prediction/answers/criteria'
 import { SUBLEVEL_CONVENTIONS } from '@/lib/prediction/conventions'
 import { gFactor } from '@/lib/prediction/gfactor'
-import { chooseG } from '@/lib/prediction/g-values'
 import { linksOfLevel } from '@/lib/prediction/links'
 import { limitOf, pageOf, type Position } from '@/lib/prediction/paging'
 import { levelIndex } from '@/lib/prediction/resolve'
-import { sublevelsOf } from '@/lib/prediction/sublevels'
+import { sublevelsOfLevel } from '@/lib/prediction/level-sublevels'
 import { levelTable, sublevelTable } from '@/lib/prediction/tables/levels'
-import { membersOf } from '@/lib/prediction/transition'
-import { levelLinearValidity } from '@/lib/prediction/validity'
+import { diamagneticOf, membersOf } from '@/lib/prediction/transition'
 import type { getGFactor, getSublevels, listLevels as listLevelsOperation } from '@/openapi/operations/levels'
 
 type Warn = (code: string, detail: string) => void
@@ -50,17 +48,23 @@ export function gFactorAnswer(snapshot: Snapshot, id: string, query: z.output<(t
 export function sublevelList(snapshot: Snapshot, id: string, query: z.output<(typeof getSublevels)['query']>, after: Position, warn: Warn) {
   const limit = limitOf(query)
   const index = levelIndex(snapshot, id)
-  const level = snapshot.level(index)
   const choice = { gValues: query.g_values, gS: query.g_s ?? null }
-  const sublevels = sublevelsOf(level, { ...choice, fieldTesla: query.field, model: query.model })
-  if (query.model === 'auto') warn('intermediate_not_built', 'model=auto is linear until the intermediate model is built; meta.validity says where linear errs.')
-  const { g } = chooseG(level, choice, 'level')
-  const validity = levelLinearValidity(level, g, membersOf(snapshot, index), { ...choice, fieldTesla: query.field, tolerance: query.tolerance })
-  const { rows, next } = pageOf(sublevels, limit, after, (row) => row.m)
+  const found = { level: snapshot.level(index), members: membersOf(snapshot, index), diamagnetic: diamagneticOf(snapshot, index) }
+  const { rows: all, model, g, validity, warnings } = sublevelsOfLevel(found, { ...choice, fieldTesla: query.field, model: query.model, tolerance: query.tolerance, diamagnetic: query.diamagnetic })
+  for (const { code, detail } of warnings) warn(code, detail)
+  const { rows, next } = pageOf(all, limit, after, (row) => row.m)
   return {
     data: [...rows],
     page: { limit, next },
-    meta: { model: 'linear', g_values: query.g_values, g_j: g, field_tesla: query.field, validity, conventions: { ...SUBLEVEL_CONVENTIONS, g_s: choice.gS ?? G_S } },
+    meta: {
+      model,
+      g_values: query.g_values,
+      g_j: g,
+      field_tesla: query.field,
+      validity,
+      diamagnetic: found.diamagnetic,
+      conventions: { ...SUBLEVEL_CONVENTIONS[model], g_s: choice.gS ?? G_S },
+    },
     table: () => sublevelTable(rows),
   }
 }

@@ -137,6 +137,7 @@ export function componentsAnswer(snapshot: Snapshot, id: string, query: z.output
     thetaDeg: query.theta_deg ?? null,
     medium: query.medium,
     tolerance: query.tolerance,
+    diamagnetic: query.diamagnetic,
   })
   for (const { code, detail } of warnings) warn(code, detail)
   return {

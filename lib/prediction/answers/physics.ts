@@ -1,8 +1,8 @@
 import type { z } from 'zod'
 import { CONSTANTS } from '@/lib/units/codata'
-import { bodyProblem } from '@/lib/problem'
 import { airOf, convert } from '@/lib/prediction/convert'
-import { AIR_EXTRAPOLATED, SUBLEVEL_CONVENTIONS } from '@/lib/prediction/conventions'
+import { AIR_EXTRAPOLATED, NUCLEUS_CONVENTIONS, SUBLEVEL_CONVENTIONS } from '@/lib/prediction/conventions'
+import { nuclearSublevels } from '@/lib/prediction/nuclear-sublevels'
 import { termSublevels } from '@/lib/prediction/sublevels'
 import { decodeTerm } from '@/lib/prediction/terms'
 import type { Term } from '@/lib/atomic/term'
@@ -24,16 +24,17 @@ export function conversionAnswer(query: z.output<(typeof convertWavelength)['que
   return { data: conversion, meta: { conventions: { air: airOf(query.formula), chain: 'h, c and e are exact; 1 cm^-1 = 29.9792458 GHz.' } } }
 }
 
-/** Sublevels of one LS term given in the request. */
+/** Sublevels of one LS term, or of one level with its nucleus, given in the request. */
 export function sublevelMatrixAnswer(body: z.output<NonNullable<(typeof computeSublevels)['body']>>, warn: Warn) {
-  if ('nucleus' in body) throw bodyProblem('/nucleus', 'hyperfine_not_built', 'Hyperfine structure is not built yet; ask with levels instead of level and nucleus.')
-  const matrix = termSublevels(body)
-  if (body.model === 'auto') warn('intermediate_not_built', 'model=auto is linear until the intermediate model is built.')
+  if ('nucleus' in body) {
+    const { matrix, warnings } = nuclearSublevels(body)
+    for (const { code, detail } of warnings) warn(code, detail)
+    return { data: matrix, meta: { model: 'hyperfine', conventions: { ...NUCLEUS_CONVENTIONS, order: 'Matrices are [field][state]; states by m_F, then upwards in energy.' } } }
+  }
+  const { matrix, model, warnings } = termSublevels(body)
+  for (const { code, detail } of warnings) warn(code, detail)
   return {
     data: matrix,
-    meta: {
-      model: 'linear',
-      conventions: { ...SUBLEVEL_CONVENTIONS, g_s: gSOf(body.g_s), order: 'Matrices are [field][state]; states by m, then upwards in energy at B -> 0+.', high_field_names: 'm_l and m_s are null: the linear model does not name them.' },
-    },
+    meta: { model, g_values: body.g_values, conventions: { ...SUBLEVEL_CONVENTIONS[model], g_s: gSOf(body.g_s), order: 'Matrices are [field][state]; states by m, then upwards in energy at B -> 0+.' } },
   }
 }

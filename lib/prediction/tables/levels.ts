@@ -58,10 +58,16 @@ export const LEVEL_FIELDS: readonly Field<Level>[] = [
 export const levelTable = (levels: Iterable<Level>, name = 'levels'): Table => tableOf(name, LEVEL_FIELDS, levels)
 
 const SUBLEVEL_FIELDS: readonly Field<Sublevel>[] = [
+  number('j', null, 'J by continuity from zero field', (s) => s.j),
   number('m', null, 'Magnetic quantum number', (s) => s.m),
+  number('m_l', null, 'M_L at high field', (s) => s.m_l),
+  number('m_s', null, 'M_S at high field', (s) => s.m_s),
   number('shift_invcm', INVCM, 'Energy minus that of the level without field', (s) => s.shift_invcm),
   number('shift_ghz', 'GHz', 'The same in frequency', (s) => s.shift_ghz),
+  number('shift_mhz', 'MHz', 'The same in MHz', (s) => s.shift_mhz),
   number('energy_invcm', INVCM, 'Energy above the ground level', (s) => s.energy_invcm),
+  number('derivative_invcm_per_tesla', 'cm-1 / T', 'Change of the energy with the field', (s) => s.derivative_invcm_per_tesla),
+  number('diamagnetic_shift_invcm', INVCM, 'Quadratic shift; part of the energy with diamagnetic=true only', (s) => s.diamagnetic_shift_invcm),
 ]
 
 export const sublevelTable = (sublevels: Iterable<Sublevel>): Table => tableOf('sublevels', SUBLEVEL_FIELDS, sublevels)

@@ -35,6 +35,7 @@ export function seedContent(): EditionContent {
           mass_u: isotope.mass_u,
           nuclear_spin: half(isotope.spin),
           abundance_percent: isotope.abundance_percent,
+          g_i: isotope.g_i ?? null,
           source: one.isotope_source,
           evidence: one.isotope_evidence,
         })),

@@ -30,7 +30,11 @@ describe('the OpenAPI document', () => {
 
 describe('problems', () => {
   // codes that stand beside an answer as warnings are told there, and have no page
-  const WARNINGS = new Set(['g_unc_unknown', 'term_not_pure', 'g_s_not_applied', 'hyperfine_ignored', 'air_extrapolated', 'level_crossing', 'levels_exchanged'])
+  const WARNINGS = new Set([
+    'g_unc_unknown', 'term_not_pure', 'g_s_not_applied', 'hyperfine_ignored', 'air_extrapolated', 'level_crossing', 'levels_exchanged',
+    'diamagnetic_ignored', 'diamagnetic_missing', 'diamagnetic_large', 'diamagnetic_rough', 'no_ls_amplitude',
+    'g_i_unknown', 'hyperfine_constants_missing', 'isotope_shift_unknown', 'isotope_chosen', 'j_mixing_ignored', 'nuclear_spin_unknown', 'abundance_incomplete',
+  ])
   const FORMS = [/\bnew (?:Problem|PhysicsError)\(\s*'([a-z_0-9]+)'/g, /\b(?:refused|refuse|notFound)\(\s*'([a-z_0-9]+)'/g, /\b(?:parameterProblem|bodyProblem)\([^,()]*,\s*'([a-z_0-9]+)'/g, /\bcode: '([a-z_0-9]+)', detail/g]
 
   it('have a page for every code that is used', () => {
