@@ -75,7 +75,7 @@ export interface DeterminedFit {
   validity: LinearLawValidity[]
   assignedAutomatically: boolean
   /** Other readings of the peaks that fit about as well, with their fields. */
-  alternatives: { fieldTesla: number; cost: number }[]
+  alternatives: { fieldTesla: number; cost: number; /** By measurement. */ components: FitComponent[][] }[]
   warnings: Reason[]
   iterations: number
 }
@@ -235,6 +235,8 @@ function report(input: FieldFitInput, model: FieldModel, setup: FitSetup, solved
   const validity = validityOf(input, field)
   const alternatives = others.filter((other) => other.cost - solved.cost < ABOUT_AS_GOOD && Math.abs((other.solution.theta[0] ?? 0) - field) > Math.max(3 * (fieldUnc ?? 0), 1e-6 * Math.abs(field)))
   const sigmaOf = (i: number) => measurements[i]?.sigmaInvcm ?? (factor === null ? null : Math.sqrt(factor))
+  const componentsOf = (assigned: readonly Assignment[]) => measurements.map((one, i) => (assigned[i] ?? []).flatMap((c) => setup.models[one.line]?.components[c] ?? []))
+  const read = componentsOf(assignments)
   return {
     status: 'determined',
     model,
@@ -252,7 +254,7 @@ function report(input: FieldFitInput, model: FieldModel, setup: FitSetup, solved
     residuals: measurements.map((one, i): FitResidual => {
       const [residual, leverage, sigma] = [solution.residuals[i] ?? 0, solution.leverage[i] ?? 0, sigmaOf(i)]
       return {
-        components: (assignments[i] ?? []).flatMap((c) => setup.models[one.line]?.components[c] ?? []),
+        components: read[i] ?? [],
         fittedInvcm: one.positionInvcm - residual,
         residualInvcm: residual,
         standardised: sigma === null || 1 - leverage < 1e-9 ? null : residual / (sigma * Math.sqrt(1 - leverage)),
@@ -262,7 +264,7 @@ function report(input: FieldFitInput, model: FieldModel, setup: FitSetup, solved
     }),
     validity,
     assignedAutomatically: automatic,
-    alternatives: alternatives.map((other) => ({ fieldTesla: other.solution.theta[0] ?? 0, cost: other.cost - solved.cost })),
+    alternatives: alternatives.map((other) => ({ fieldTesla: other.solution.theta[0] ?? 0, cost: other.cost - solved.cost, components: componentsOf(other.assignments) })),
     warnings: warningsOf(model, validity, solution, alternatives.length, stated, degreesOfFreedom),
     iterations: solution.iterations,
   }

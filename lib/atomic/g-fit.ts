@@ -43,6 +43,10 @@ export type GFit =
       chiSquared: number | null
       degreesOfFreedom: number
       residualsInvcm: number[]
+      /** Share of each point in its own fitted value. */
+      leverage: number[]
+      /** Residuals over their own deviations; null where sigma is not known or the fit must pass through the point. */
+      standardised: (number | null)[]
     }
 
 /** d(shift)/dg of one end, cm^-1. */
@@ -129,5 +133,10 @@ export function fitG(input: GFitInput): GFit {
     chiSquared: stated ? solution.chiSquared : null,
     degreesOfFreedom,
     residualsInvcm: solution.residuals,
+    leverage: solution.leverage,
+    standardised: solution.residuals.map((residual, i) => {
+      const [sigma, leverage] = [measurements[i]?.sigmaInvcm ?? (factor === null ? null : Math.sqrt(factor)), solution.leverage[i] ?? 1]
+      return sigma === null || 1 - leverage < 1e-9 ? null : residual / (sigma * Math.sqrt(1 - leverage))
+    }),
   }
 }
