@@ -1,5 +1,5 @@
 import { G_S } from '@/lib/atomic/constants'
-import { type DeterminedFit, type FieldFitInput, type FieldFitMeasurement, fitField } from '@/lib/atomic/field-fit'
+import { because, type DeterminedFit, type FieldFitInput, type FieldFitMeasurement, fitField } from '@/lib/atomic/field-fit'
 import type { Scale } from '@/lib/atomic/field-fit-problem'
 import { type ReadLine, zeroTold } from '@/lib/prediction/field-fits/lines'
 import type { LineScale } from '@/lib/prediction/field-fits/measurements'
@@ -114,7 +114,7 @@ export function fieldAnswer(read: ReadFit, warn: Warn): FieldFitAnswer {
   }
   const fit = fitField(input)
   if (fit.status === 'undetermined' || !Number.isFinite(fit.fieldTesla)) {
-    const reasons = fit.status === 'undetermined' ? fit.reasons : [{ code: 'not_converged', detail: 'The fit ran away from all numbers; check the uncertainties and the unit.' }]
+    const reasons = fit.status === 'undetermined' ? fit.reasons : [because('not_converged', 'The fit ran away from all numbers; check the uncertainties and the unit.')]
     return { unknown: 'field', status: 'undetermined', mode: 'positions', model: fit.model, lines: lines.map((line, i) => toldLine(line, scales[i] ?? null, i)), reasons }
   }
   for (const { code, detail } of fit.warnings) warn(code, detail)

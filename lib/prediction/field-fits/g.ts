@@ -1,5 +1,6 @@
 import { G_S } from '@/lib/atomic/constants'
 import { PhysicsError } from '@/lib/atomic/errors'
+import { because } from '@/lib/atomic/field-fit'
 import { fitG, type FittedG as Fitted, type GFitEnd } from '@/lib/atomic/g-fit'
 import { linearLawValidity } from '@/lib/atomic/intermediate-validity'
 import type { ReadFit } from '@/lib/prediction/field-fits/field'
@@ -70,7 +71,7 @@ export function gAnswer(read: ReadFit, field: { fieldTesla: number; fieldUnc: nu
   const free = body.free_g ?? 'upper'
   const told = { mode: 'positions' as const, model: 'linear' as const, lines: [toldLine(line, scales[0] ?? null, 0)] }
   if (scale.unc === null) {
-    return { unknown: 'g', status: 'undetermined', ...told, reasons: [{ code: 'scale_and_g', detail: 'A free scale and g change the positions in the same way, so they cannot be told apart: give the scale, or its uncertainty.' }] }
+    return { unknown: 'g', status: 'undetermined', ...told, reasons: [because('scale_and_g', 'A free scale and g change the positions in the same way, so they cannot be told apart: give the scale, or its uncertainty.')] }
   }
   // measured distances are scale x B x g: what is not known of the scale acts as if it were of the field
   const fieldUnc = field.fieldTesla * Math.hypot(field.fieldUnc / field.fieldTesla, scale.unc / scale.value)
