@@ -20,7 +20,7 @@ const rooms = {
   'lib/http': ['openapi', 'lib/access', 'lib/problem', 'lib/entity-tag', 'lib/config', 'lib/units', 'lib/atomic'],
   // what others take away with them knows nothing of ours but its own generated types
   clients: [],
-  seeds: ['db', 'lib/atomic', 'lib/units', 'lib/problem', 'lib/config', 'lib/access', 'openapi'],
+  seeds: ['db', 'lib/atomic', 'lib/units', 'lib/problem', 'lib/config', 'lib/access', 'lib/curation', 'openapi'],
 }
 const all = [...Object.keys(rooms), 'app', 'tests']
 const zones = Object.entries(rooms).map(([room, may]) => {

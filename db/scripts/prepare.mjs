@@ -16,7 +16,7 @@ await main(async () => {
   await build()
   const env = await addresses
   await migrate(env)
-  const told = await seed(env)
+  const told = await seed({ ...env, DEMO_AMENDMENTS: '1' })
   // For serve.mjs, which prints it under the address.
   fs.writeFileSync(path.join(root, '.data/first-start'), told, { mode: 0o600 })
   say('ready')
