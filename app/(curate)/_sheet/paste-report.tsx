@@ -1,5 +1,6 @@
 'use client'
 import { useQuery } from '@tanstack/react-query'
+import type { Decimal } from '@/lib/curation/import/decimal'
 import type { CheckedChange } from '@/openapi/schemas/change'
 import { apiSend } from '../../_components/data/api'
 import { plural } from '../../_components/number'
@@ -10,7 +11,11 @@ import { FindingsList, Mark, Tally } from '../_parts/marks'
 import type { ChangeState } from './change-state'
 import { checkItem, countFindings, findingsByColumn, type PastedRow, type PastePlan } from './paste'
 
-export interface PasteProposal { id: number; plan: PastePlan; states: (ChangeState | null)[]; servers: ({ id: string; etag: string } | null)[] }
+export interface PasteProposal {
+  id: number; plan: PastePlan; states: (ChangeState | null)[]; servers: ({ id: string; etag: string } | null)[]
+  /** The same block read anew, its decimal mark told. */
+  again: (decimal: Decimal) => void
+}
 
 const AT_ONCE = 500
 const SHOWN = 300
@@ -40,7 +45,7 @@ function Lines({ row, checked }: { row: PastedRow; checked: CheckedChange | null
           {index === 0 ? head : null}
           <td className="text-muted">{cell.column.label}</td>
           <td className="whitespace-normal! text-muted [overflow-wrap:anywhere]">{cell.before === '' ? 'empty' : <del className="no-underline">{cell.before}</del>}</td>
-          <td className="whitespace-normal! [overflow-wrap:anywhere]">{cell.after === '' ? <span className="text-muted">empty</span> : <ins className="no-underline">{cell.after}</ins>}</td>
+          <td className="whitespace-normal! [overflow-wrap:anywhere]">{cell.after === '' ? <span className="text-muted">empty</span> : <ins className="no-underline">{cell.after}</ins>}{cell.pasted === null ? null : <span className="block text-xs text-muted">pasted as {cell.pasted}: its comma is read as the decimal point</span>}</td>
           <td className="min-w-56 whitespace-normal!">{findings.has(cell.column.id) ? <FindingsList findings={findings.get(cell.column.id) ?? []} /> : null}</td>
         </tr>
       ))}
@@ -49,19 +54,38 @@ function Lines({ row, checked }: { row: PastedRow; checked: CheckedChange | null
   )
 }
 
+/** Asks for what the block does not tell: nothing is read before. */
+function Unclear({ number, onTell, onClose }: { number: string; onTell: (decimal: Decimal) => void; onClose: () => void }) {
+  return (
+    <Dialog title="What the commas of this block mean" onClose={onClose}>
+      <div className="space-y-3">
+        <p>The only numbers with a comma are like {number}: it could be the decimal mark or divide thousands. Say which it is; nothing is written yet.</p>
+        <div className="flex flex-wrap gap-2">
+          <button type="button" className="btn" onClick={() => onTell(',')}>Decimal mark: {number.replace(',', '.')}</button>
+          <button type="button" className="btn" onClick={() => onTell('.')}>Thousands: {number.replace(',', '')}</button>
+          <button type="button" className="btn btn-quiet" onClick={onClose}>Cancel</button>
+        </div>
+      </div>
+    </Dialog>
+  )
+}
+
 /** What pasting would do, cell by cell. Nothing is written before it is asked for here. */
 export function PasteReport({ amendment, proposal, onWrite, onClose }: { amendment: string; proposal: PasteProposal; onWrite: () => void; onClose: () => void }) {
   const { plan } = proposal
   const { data, error, isPending, refetch } = useQuery({ queryKey: ['paste', amendment, proposal.id], queryFn: () => check(amendment, proposal), enabled: plan.rows.length > 0, gcTime: 0, retry: false })
   const checked = (data ?? []).filter((one) => one !== null)
+  const commas = plan.rows.reduce((sum, row) => sum + row.cells.filter((cell) => cell.pasted !== null).length, 0)
   const [errors, warnings] = [countFindings(checked, 'error'), countFindings(checked, 'warning')]
+  if (plan.unclear !== null) return <Unclear number={plan.unclear} onTell={proposal.again} onClose={onClose} />
   return (
     <Dialog title="Before this block is written" onClose={onClose} wide>
       <div className="space-y-3">
         <p>
           {plan.cells === 0 ? 'Nothing in this block differs from what is in the table.' : `${plural(plan.cells, 'cell')} in ${plural(plan.rows.length, 'row')} would change.`}
           {plan.same > 0 && plan.cells > 0 ? ` ${plural(plan.same, 'cell')} ${plan.same === 1 ? 'is' : 'are'} the same already.` : ''}
-          {plan.headed ? ' The first row was read as headings.' : ''} Nothing is written yet.
+          {plan.headed ? ' The first row was read as headings.' : ''}
+          {commas > 0 ? ` The block writes decimal commas: ${plural(commas, 'number')} ${commas === 1 ? 'is' : 'are'} read with a decimal point.` : ''} Nothing is written yet.
         </p>
         {plan.left.length > 0 ? <ul className="space-y-1 text-sm">{plan.left.map((text) => <li key={text} className="flex gap-2"><span className="mt-0.5"><Mark severity="warning" /></span>{text}</li>)}</ul> : null}
         {plan.rows.length === 0 ? null : error ? <ProblemView error={error} onRetry={() => void refetch()} heading="h3" /> : isPending ? <Skeleton label="Checking the block" className="h-28 w-full" /> : (

@@ -2,6 +2,7 @@
 import { useQuery } from '@tanstack/react-query'
 import { parseAsArrayOf, parseAsString, useQueryState } from 'nuqs'
 import { useEffect, useMemo, useState } from 'react'
+import type { Decimal } from '@/lib/curation/import/decimal'
 import type { Source } from '@/openapi/schemas/source'
 import { apiQuery } from '../../_components/data/api'
 import { EmptyState } from '../../_components/empty-state'
@@ -71,7 +72,7 @@ export function TablePart({ amendment, room, canEdit }: { amendment: string; roo
     grid.select(at(line, 1))
     setSaid(`A row for a new level of ${speciesText(of)} is ready.`)
   }
-  const propose = (cells: string[][]) => {
+  const propose = (cells: string[][], decimal: Decimal | null = null) => {
     const block = blockOf(grid.selection)
     // the identifier is the table's own: pasted ones are left out
     const named = /^(id|level)$/i.test(cells[0]?.[0] ?? '')
@@ -79,7 +80,7 @@ export function TablePart({ amendment, room, canEdit }: { amendment: string; roo
     const targetOf = (row: SheetRow): PasteTarget => ({ key: row.key, subject: row.subject, name: subjectName(row.subject), values: shownValues(row), locked: isLocked(row) })
     const targets = keys.slice(block.top).flatMap((key) => { const row = sheet.row(key); return row === undefined ? [] : [targetOf(row)] })
     const fresh = newSpecies === null ? null : () => ({ key: null, subject: { kind: 'level' as const, species: newSpecies, level: null, source: null, massNumber: null }, name: `new level of ${speciesText(newSpecies)}`, values: {}, locked: false })
-    const plan = planPaste(spread(body, { ...block, left: Math.max(1, block.left), right: Math.max(1, block.right) }), valueColumns(columns), Math.max(0, block.left - 1), targets, fresh)
+    const plan = planPaste(spread(body, { ...block, left: Math.max(1, block.left), right: Math.max(1, block.right) }), valueColumns(columns), Math.max(0, block.left - 1), targets, fresh, decimal)
     void Promise.all(plan.rows.map((row) => { const known = row.target.key === null ? undefined : sheet.row(row.target.key); return known === undefined ? undefined : saver.complete(known.key, known) })).then(() => {
       // written upon all published values, which the list of levels may not have told
       const states = plan.rows.map((row): ChangeState | null => {
@@ -89,7 +90,7 @@ export function TablePart({ amendment, room, canEdit }: { amendment: string; roo
       })
       const servers = plan.rows.map((row) => (row.target.key === null ? null : (sheet.row(row.target.key)?.server ?? null)))
       proposals += 1
-      setProposal({ id: proposals, plan, states, servers })
+      setProposal({ id: proposals, plan, states, servers, again: (mark) => propose(cells, mark) })
     })
     setPasting(false)
   }
@@ -146,7 +147,7 @@ export function TablePart({ amendment, room, canEdit }: { amendment: string; roo
       )}
       <p role="status" className="sr-only">{said}</p>
       {pasting ? <PasteBox onPaste={propose} onClose={() => setPasting(false)} /> : null}
-      {proposal ? <PasteReport amendment={amendment} proposal={proposal} onWrite={() => writePasted(proposal)} onClose={() => { setProposal(null); grid.focus() }} /> : null}
+      {proposal ? <PasteReport key={proposal.id} amendment={amendment} proposal={proposal} onWrite={() => writePasted(proposal)} onClose={() => { setProposal(null); grid.focus() }} /> : null}
       {retiring !== null && view.rows.get(retiring) ? (
         <RetireDialog row={view.rows.get(retiring) as SheetRow} onClose={() => setRetiring(null)} onRetire={(state) => { grid.write('retiring a level', new Map([[retiring, state]])); setRetiring(null) }} />
       ) : null}

@@ -3,7 +3,7 @@ import { quoted, readNumber } from '@/lib/units/number'
 import { unescapeText } from '@/openapi/core/cell-text'
 import type { Finding } from '@/openapi/schemas/change'
 import { type OwnColumn, ownColumn } from './columns'
-import { type Decimal, pointInCommaFile, withPoint } from './dialect'
+import { type Decimal, pointInCommaFile, withPoint } from './decimal'
 import type { Layout } from './layout'
 
 export const fault = (code: string, field: string | null, detail: string): Finding => ({ severity: 'error', code, field, detail })

@@ -1,6 +1,7 @@
 import { type ImportReading, type ImportUpload, ROW_LIMIT } from '@/openapi/schemas/import'
 import { type Reader, readerOf } from './cells'
-import { type Decimal, decimalOf, delimiterOf } from './dialect'
+import { type Decimal, decimalOf } from './decimal'
+import { delimiterOf } from './dialect'
 import { decodingOf } from './encoding'
 import { layoutOf } from './layout'
 import { recordsOf, sampleOf } from './records'

@@ -107,6 +107,34 @@ describe('pasting', () => {
     expect(plan.rows[0]?.values).toEqual({ term: '2S1/2', energy_literal: '0', energy_invcm: null })
     expect(headings(['Term', 'nonsense'], shown)).toBeNull()
   })
+  describe('numbers with a comma', () => {
+    const energies = (texts: string[], told?: '.' | ',') => planPaste(texts.map((text) => [text]), shown, shown.findIndex((one) => one.id === 'energy'), texts.map((_, at) => target(`Na-I.${at}`)), null, told)
+    const read = (plan: ReturnType<typeof energies>) => plan.rows.map(({ cells }) => [cells[0]?.after, cells[0]?.pasted])
+    it('are read with a point where the block writes decimal commas, and say so', () => {
+      const plan = energies(['16956,170', '16\u2009973,366(2)', '30266'])
+      expect(plan).toMatchObject({ unclear: null, left: [], cells: 3 })
+      expect(read(plan)).toEqual([['16956.170', '16956,170'], ['16973.366(2)', '16\u2009973,366(2)'], ['30266', null]])
+      expect(plan.rows[0]?.values).toMatchObject({ energy_literal: '16956.170' })
+      // one of a doubtful form is as the others are
+      expect(read(energies(['16956,170', '16,956']))[1]).toEqual(['16.956', '16,956'])
+    })
+    it('are asked about where the comma may divide thousands, and read as told', () => {
+      expect(energies(['16,956', '29,172'])).toMatchObject({ unclear: '16,956', rows: [], cells: 0 })
+      expect(read(energies(['16,956'], ','))).toEqual([['16.956', '16,956']])
+      expect(read(energies(['16,956'], '.'))).toEqual([['16956', null]])
+    })
+    it('are left out where the marks are mixed, with what to do', () => {
+      const comma = energies(['16956,170', '16973,366', '30.266'])
+      expect(read(comma)).toHaveLength(2)
+      expect(comma.left[0]).toContain('left out (30.266)')
+      expect(comma.left[0]).toContain('Write it with a decimal comma')
+      expect(energies(['16956.170', '16973.366', '30,266', '29172,8']).left[0]).toContain('2 numbers have a comma')
+    })
+    it('in columns of text stay as they are', () => {
+      const plan = planPaste([['16956,170', 'seen 1,5']], shown, shown.findIndex((one) => one.id === 'g_evidence'), [target('a')], null)
+      expect(plan.rows[0]?.cells.map((one) => one.after)).toEqual(['16956,170', 'seen 1,5'])
+    })
+  })
   it('says what found no place', () => {
     const plan = planPaste([['a', 'b'], ['c', 'd'], ['e', 'f']], shown, shown.length - 1, [{ ...target('x'), locked: true }, target('y')], null)
     expect(plan.left).toHaveLength(3)

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import { decimalOf, delimiterOf, withPoint } from '@/lib/curation/import/dialect'
+import { decimalOf, withPoint } from '@/lib/curation/import/decimal'
+import { delimiterOf } from '@/lib/curation/import/dialect'
 import { decodingOf } from '@/lib/curation/import/encoding'
 import { layoutOf, suggestionFor } from '@/lib/curation/import/layout'
 import { type Asked, readFile } from '@/lib/curation/import/read-file'
@@ -47,7 +48,7 @@ describe('delimiters and decimal marks', () => {
     expect(delimiterOf(sample)).toBe(delimiter)
   })
 
-  it.each([[['1.5', '2'], '.'], [['1,5', '2'], ','], [['1,5', '2.5', '3.5'], '.'], [['1,234', '0,5'], ','], [['1,234'], null], [['1,234', '1.5'], '.'], [['', 'x'], '.'], [['-0,25', '1,2e-3'], ',']])('%j are written with %j', (cells, decimal) => {
+  it.each([[['1.5', '2'], '.'], [['1,5', '2'], ','], [['1,5', '2.5', '3.5'], '.'], [['1,234', '0,5'], ','], [['1,234'], null], [['1,234', '1.5'], '.'], [['', 'x'], '.'], [['-0,25', '1,2e-3'], ','], [['16956,170(3)'], ','], [['1,234(5)'], null]])('%j are written with %j', (cells, decimal) => {
     expect(decimalOf(cells)).toBe(decimal)
   })
 
