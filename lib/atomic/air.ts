@@ -54,6 +54,15 @@ export function refractivity(formula: AirFormula, vacuumNm: number): number {
   return sum * 1e-8
 }
 
+/** d(n - 1)/d(lambda_vac) of standard air, per nm: each term a/(b - s^2) gives 2 a s/(b - s^2)^2 ds, with ds = -s/lambda. */
+export function refractivitySlope(formula: AirFormula, vacuumNm: number): number {
+  const s = 1000 / vacuumNm
+  const s2 = s * s
+  let sum = 0
+  for (const [a, b] of AIR_FORMULAS[formula].terms) sum += a / ((b - s2) * (b - s2))
+  return (-2 * s2 * sum * 1e-8) / vacuumNm
+}
+
 /** lambda_air = lambda_vac / n(lambda_vac), nm. */
 export const vacToAir = (vacuumNm: number, formula: AirFormula = DEFAULT_AIR_FORMULA): number => vacuumNm / (1 + refractivity(formula, vacuumNm))
 

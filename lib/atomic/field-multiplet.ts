@@ -46,7 +46,8 @@ export interface FieldMultiplet {
   noAmplitude: string | null
 }
 
-function whyNoAmplitude(kind: Kind, lower: FieldTerm, upper: FieldTerm): string | null {
+/** Why the strengths of lines between two terms cannot be had from LS coupling; null where they can. */
+export function whyNoAmplitude(kind: Kind, lower: { twoS: TwoJ; l: number }, upper: { twoS: TwoJ; l: number }): string | null {
   if (kind !== 'E1') return `strengths of ${kind} lines are followed by the linear model only`
   if (!hasLsDipole(lower, upper)) return 'the line has no LS amplitude: its strength comes from a departure from LS coupling'
   return null
@@ -136,7 +137,7 @@ export function multipletOfTerms(lower: TermLevels, upper: TermLevels, kind: Kin
  * Share of the line J_l - J_u in the strength of its multiplet at zero field: (2J_l + 1)(2J_u + 1){L_l J_l S; J_u L_u 1}^2 / (2S + 1), which
  * over all lines sums to 1. H. N. Russell, Proc. Natl. Acad. Sci. 11, 314 (1925); Condon & Shortley, ch. IX. 0 for a line that only the field makes.
  */
-export function lineShare({ lower, upper, noAmplitude }: FieldMultiplet, twoJLower: TwoJ, twoJUpper: TwoJ): number {
+export function lineShare({ lower, upper, noAmplitude }: { lower: { twoS: TwoJ; l: number }; upper: { l: number }; noAmplitude: string | null }, twoJLower: TwoJ, twoJUpper: TwoJ): number {
   if (noAmplitude !== null || !isTriangle(twoJLower, 2, twoJUpper)) return 0
   const key = `${lower.twoS} ${lower.l} ${twoJLower} ${upper.l} ${twoJUpper}`
   return shares(key, () => ((twoJLower + 1) * (twoJUpper + 1) * sixJ(2 * lower.l, twoJLower, lower.twoS, twoJUpper, 2 * upper.l, 2) ** 2) / (lower.twoS + 1))

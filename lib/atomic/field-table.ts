@@ -158,20 +158,44 @@ function check({ fromTesla, toTesla, toleranceInvcm, toleranceStrength }: FieldT
   if (!(toleranceInvcm > 0) || !(toleranceStrength > 0)) throw new PhysicsError('tolerance_not_positive', 'The tolerances of a field table must be above zero.', 'tolerance')
 }
 
+/** Intervals judged, and nodes computed, before a step ends. */
+const INTERVALS_A_STEP = 64
+const NODES_A_STEP = 256
+
+/** Positions and strengths with their slopes at all nodes, some nodes a step. */
+function* atNodes(multiplet: FieldMultiplet, nodes: readonly number[]): Generator<null, Pick<FieldTable, 'positions' | 'positionSlopes' | 'strengths' | 'strengthSlopes'>> {
+  const numbers = () => new Float64Array(nodes.length * multiplet.count)
+  const hasStrengths = multiplet.noAmplitude === null
+  const all = { positions: numbers(), positionSlopes: numbers(), strengths: hasStrengths ? numbers() : null, strengthSlopes: hasStrengths ? numbers() : null }
+  for (let from = 0; from < nodes.length; from += NODES_A_STEP) {
+    const rows = { from, to: Math.min(nodes.length, from + NODES_A_STEP) }
+    const grid = multipletGrid(multiplet, nodes, { derivatives: true, strengths: true, strengthDerivatives: true }, rows)
+    all.positions.set(grid.values, from * multiplet.count)
+    all.positionSlopes.set(grid.derivatives ?? [], from * multiplet.count)
+    all.strengths?.set(grid.strengths ?? [], from * multiplet.count)
+    all.strengthSlopes?.set(grid.strengthDerivatives ?? [], from * multiplet.count)
+    yield null
+  }
+  return all
+}
+
 /**
  * Tabulates a multiplet so that interpolation is proved to keep both tolerances: intervals are halved until the bound of each is small enough.
  * Near an anticrossing they are short, where states run straight they are long. Throws `table_too_large` beyond 5 million numbers.
+ * In steps, so that whoever shares the thread has a turn in between.
  */
-export function fieldTable(multiplet: FieldMultiplet, options: FieldTableOptions): FieldTable {
+export function* fieldTableSteps(multiplet: FieldMultiplet, options: FieldTableOptions): Generator<null, FieldTable> {
   check(options)
   const { fromTesla, toTesla, toleranceInvcm, toleranceStrength } = options
   const maker: Maker = { multiplet, lower: boundsOf(multiplet.lower), upper: boundsOf(multiplet.upper), norms: multiplet.links.map((link) => dipoleNorm(link.dipole, link.upper.n, link.lower.n)) }
   const nodeAt = (tesla: number): Node => ({ tesla, lower: maker.lower.distances(MU_B_OVER_HC_INVCM_PER_T * tesla), upper: maker.upper.distances(MU_B_OVER_HC_INVCM_PER_T * tesla) })
   const nodes = [fromTesla]
-  let [position, strength, proved] = [0, 0, true]
+  let [position, strength, proved, judged] = [0, 0, true, 0]
   // the last pushed is the leftmost, so nodes come out upwards
   const open: [Node, Node][] = [[nodeAt(fromTesla), nodeAt(toTesla)]]
   for (let pair = open.pop(); pair !== undefined; pair = open.pop()) {
+    judged += 1
+    if (judged % INTERVALS_A_STEP === 0) yield null
     const [a, b] = pair
     const errors = intervalErrors(maker, a, b)
     const small = errors.position <= toleranceInvcm && errors.strength <= toleranceStrength
@@ -185,19 +209,25 @@ export function fieldTable(multiplet: FieldMultiplet, options: FieldTableOptions
     nodes.push(b.tesla)
     if (nodes.length * multiplet.count * 4 > MOST_NUMBERS) throw new PhysicsError('table_too_large', 'The field table asked for would be beyond 5 million numbers; narrow the interval or allow a larger error.', 'tolerance')
   }
-  const grid = multipletGrid(multiplet, nodes, { derivatives: true, strengths: true, strengthDerivatives: true })
+  const numbers = yield* atNodes(multiplet, nodes)
   // rounding of the nodes' own values and of the interpolation
-  const rounding = 16 * Number.EPSILON * grid.values.reduce((largest, value) => Math.max(largest, Math.abs(value)), 0)
+  const rounding = 16 * Number.EPSILON * numbers.positions.reduce((largest, value) => Math.max(largest, Math.abs(value)), 0)
   return {
     nodesTesla: Float64Array.from(nodes),
     components: multiplet.count,
-    positions: grid.values,
-    positionSlopes: grid.derivatives ?? new Float64Array(0),
-    strengths: grid.strengths,
-    strengthSlopes: grid.strengthDerivatives,
+    ...numbers,
     maximumErrorInvcm: position + rounding,
-    maximumStrengthError: grid.strengths === null ? null : strength + 1e-13,
+    maximumStrengthError: numbers.strengths === null ? null : strength + 1e-13,
     proved,
+  }
+}
+
+/** `fieldTableSteps` to its end. */
+export function fieldTable(multiplet: FieldMultiplet, options: FieldTableOptions): FieldTable {
+  const steps = fieldTableSteps(multiplet, options)
+  for (;;) {
+    const step = steps.next()
+    if (step.done === true) return step.value
   }
 }
 

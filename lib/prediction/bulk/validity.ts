@@ -1,0 +1,61 @@
+import { autoModel, type FieldModel, type LinearLawValidity, linearLawValidity } from '@/lib/atomic/intermediate-validity'
+import { missingJ, type TermLevels } from '@/lib/atomic/mixing'
+import { remembering } from '@/lib/atomic/remembering'
+import { G_S } from '@/lib/atomic/constants'
+import type { BlockGiven, PredictionOptions } from '@/lib/prediction/bulk/block'
+import { linePairs } from '@/lib/prediction/bulk/places'
+import type { PredictionValidity } from '@/openapi/schemas/predictions'
+
+type Aspect = LinearLawValidity['positions']
+
+/** Of a multiplet's lines the worst speaks: unknown before not valid before valid, then the larger error, and the smallest limit. */
+function worst(aspects: readonly Aspect[], tolerance: number): Aspect {
+  const rank = { valid: 0, not_valid: 1, unknown: 2 }
+  const sorted = [...aspects].sort((a, b) => rank[b.status] - rank[a.status] || (b.relativeError ?? 0) - (a.relativeError ?? 0))
+  const [first] = sorted
+  if (first === undefined) return { status: 'unknown', errorInvcm: null, relativeError: null, tolerance, fieldLimitTesla: null, reason: null }
+  const largest = (name: 'errorInvcm' | 'relativeError') => aspects.reduce<number | null>((most, aspect) => (aspect[name] === null ? most : Math.max(most ?? 0, aspect[name])), null)
+  const limits = aspects.flatMap((aspect) => (aspect.fieldLimitTesla === null ? [] : [aspect.fieldLimitTesla]))
+  return { ...first, errorInvcm: largest('errorInvcm'), relativeError: largest('relativeError'), fieldLimitTesla: limits.length === 0 ? null : Math.min(...limits) }
+}
+
+function linesOf(block: BlockGiven): { lower: { twoJ: number; g: number | null; term: TermLevels | null }; upper: { twoJ: number; g: number | null; term: TermLevels | null } }[] {
+  if (block.form === 'line') return [{ lower: block.lower, upper: block.upper }]
+  const end = (term: TermLevels, twoJ: number) => ({ twoJ, g: term.levels.find((level) => level.twoJ === twoJ)?.g ?? null, term })
+  return linePairs(block).map(({ twoJLower, twoJUpper }) => ({ lower: end(block.lower, twoJLower), upper: end(block.upper, twoJUpper) }))
+}
+
+const told = (aspect: Aspect) => ({ status: aspect.status, relative_error: aspect.relativeError, tolerance: aspect.tolerance, field_limit_tesla: aspect.fieldLimitTesla })
+
+const complete = (term: TermLevels | null): boolean => term !== null && missingJ(term).length === 0
+
+/** Whether both terms of a block can be diagonalised. */
+export const canDiagonalise = (block: BlockGiven): boolean => (block.form === 'line' ? complete(block.lower.term) && complete(block.upper.term) : complete(block.lower) && complete(block.upper))
+
+export interface Decision {
+  model: FieldModel
+  validity: PredictionValidity
+}
+
+/** A fit asks the same blocks at the same fields again and again, and the field limits cost most. */
+const decisions = remembering<Decision>(20_000)
+
+/** The model of a block and the error of the linear law at the largest field asked, which decides it under `auto`. */
+export function decide(block: BlockGiven, fieldTesla: number, { model, tolerance, gS }: PredictionOptions): Decision {
+  const ends = block.form === 'line' ? [block.lower, block.upper] : [block.lower, block.upper]
+  return decisions(`${model}|${tolerance}|${gS}|${fieldTesla}|${block.form}|${block.kind}|${JSON.stringify(ends)}`, () => {
+    const lines = linesOf(block).map(({ lower, upper }) => linearLawValidity({ kind: block.kind, lower, upper, fieldTesla, tolerance, gS: gS ?? G_S }))
+    const positions = worst(lines.map((line) => line.positions), tolerance)
+    const strengths = worst(lines.map((line) => line.strengths), tolerance)
+    const blend = worst(lines.map((line) => line.blend), tolerance)
+    const chosen = model === 'auto' ? (canDiagonalise(block) ? autoModel({ positions, strengths }) : 'linear') : model
+    const validity = {
+      field_tesla: fieldTesla,
+      positions: { ...told(positions), error_invcm: positions.errorInvcm },
+      strengths: told(strengths),
+      blend: { ...told(blend), error_invcm: blend.errorInvcm },
+      method: lines[0]?.method ?? 'No line joins these terms',
+    }
+    return { model: chosen, validity }
+  })
+}
