@@ -56,7 +56,7 @@ const refuseUnknownG = (level: PredictedLine['lower'], { g, none }: ChosenG): vo
 }
 
 /** A line with the g in force at both ends. Refuses `transition_forbidden`, `no_ls_g`, `g_unknown`. */
-export function useLine(line: PredictedLine, choice: GChoice): UsedLine {
+export function lineWithG(line: PredictedLine, choice: GChoice): UsedLine {
   refuseForbidden(line)
   const used = { line, lower: chooseG(line.lower, choice, 'lower'), upper: chooseG(line.upper, choice, 'upper') }
   refuseUnknownG(line.lower, used.lower)
@@ -182,7 +182,7 @@ function componentOf(split: Split, line: PredictedLine, place: ReturnType<typeof
  * Refuses (`PhysicsError`): `transition_forbidden`, `term_incomplete` (model=intermediate), `no_ls_g`, `g_unknown`.
  */
 export function predictComponents(line: PredictedLine, asked: ComponentsAsked): { components: Components; warnings: Warning[] } {
-  const used = useLine(line, asked)
+  const used = lineWithG(line, asked)
   const ends = endsOf(used, asked)
   const validity = judgeLinear(line, ends, asked)
   const decided = decide(used, ends, validity, asked)

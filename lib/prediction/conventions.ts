@@ -45,3 +45,26 @@ export const NUCLEUS_CONVENTIONS = {
   energy: 'Eigenvalues of A I.J + quadrupole + mu_B B (g_J J_z + g_I I_z) over all |m_J, m_I>; g_I in units of mu_B, negative for a positive nuclear moment.',
   names: 'F by continuity from zero field, null where two zero-field energies coincide; m_J, m_I are what the state tends to at high field, the k-th lowest g_J m_J + g_I m_I for the k-th state of an m_F.',
 } as const
+
+/** Of the difference of two sublevels over the field. */
+export const CROSSING_CONVENTIONS = {
+  difference: 'E(a) - E(b); zero field itself is left out.',
+  crossings: 'Fields where both energies are equal; two sublevels of one m do not cross and have anticrossings instead, where they are nearest.',
+  stationary: 'Fields where the difference does not change with the field to first order; root finding on analytic slopes.',
+} as const
+
+/** Of the components of a line with nuclear spin. */
+export const HYPERFINE_LINE_CONVENTIONS = {
+  q: 'q = m_F upper - m_F lower, for absorption and emission alike: q = 0 pi, q = +1 sigma+, q = -1 sigma-.',
+  detuning: `detuning_mhz is counted from ${HYPERFINE_CONVENTIONS.detuning_origin}, with the isotope shift; a positive detuning is to higher frequency. shift_pm is in wavelength: the opposite sign.`,
+  energy: NUCLEUS_CONVENTIONS.energy,
+  names: NUCLEUS_CONVENTIONS.names,
+  left_out: HYPERFINE_CONVENTIONS.left_out,
+  g_l: 1,
+  normalisation: 'isotope: over one isotope the strengths of all components sum to 1 at any field, all states being equally populated; weight is the share of the isotope, and weights sum to 1.',
+  intensity: 'Optically thin emission: three times strength times weight times sin^2(theta)/2 for pi and (1 + cos^2(theta))/4 for each sigma; averaged over angle a third of that product, where no angle is given; the line sums to 1 at every angle at zero field.',
+  isotopes: 'Isotope shifts are not in the table and taken as 0; the natural mixture is weighed by abundance, renormalised to the isotopes listed.',
+  stokes: FIELD_CONVENTIONS.stokes,
+  uncertainty: 'One standard deviation of the detuning, root sum of squares of the parts in budget: A, B and g_J of both levels, the field, mu_B/h; g_I is taken as exact, and the energies of the levels are not in it. Null where any part is unknown; the known part stands beside it.',
+  air: AIR,
+} as const

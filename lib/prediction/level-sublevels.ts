@@ -20,6 +20,8 @@ export interface SublevelsAsked extends GChoice {
   tolerance: number
   /** Whether the quadratic shift is added. */
   diamagnetic: boolean
+  /** Whether the amplitudes of |J m> are told. */
+  amplitudes: boolean
 }
 
 /** A level with the levels of its term and what its quadratic shift is computed from. */
@@ -98,6 +100,7 @@ export function sublevelsOfLevel({ level, members, diamagnetic }: FieldLevel, as
         derivative_invcm_per_tesla: row.derivativeInvcmPerTesla + more.derivativeInvcmPerTesla,
         diamagnetic_shift_invcm: own?.shiftInvcm ?? null,
         diamagnetic_status: diamagnetic.status,
+        ...(asked.amplitudes ? { amplitudes: (state?.amplitudes ?? [{ twoJ: twoJOf(level), amplitude: 1 }]).map((one) => ({ j: one.twoJ / 2, amplitude: one.amplitude })) } : {}),
       }
     }),
     model: diagonalised ? 'intermediate' : 'linear',

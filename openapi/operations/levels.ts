@@ -1,10 +1,14 @@
 import { z } from 'zod'
+import { parseHalf } from '@/lib/atomic/half'
+import { quoted } from '@/lib/units/number'
+import type { Parsed } from '@/lib/units/parsed'
 import { defineOperation } from '@/openapi/core/define'
-import { choiceParameter, explainParameter, halfParameter, numberParameter, repeatable, textParameter } from '@/openapi/core/parameters'
-import { GFactor, Level, LevelDetail, Sublevel } from '@/openapi/schemas/level'
+import { choiceParameter, explainParameter, fieldParameter, halfParameter, numberParameter, readBy, repeatable, textParameter } from '@/openapi/core/parameters'
+import { Crossings, GFactor, HyperfineSublevel, Level, LevelDetail, Sublevel } from '@/openapi/schemas/level'
 import { Transition } from '@/openapi/schemas/transition'
 import {
-  diamagneticParameter, field, gSParameter, gValuesParameter, kindParameter, levelPath, modelParameter, rulesParameter, speciesPath, termParameter, toleranceParameter,
+  amplitudesParameter, diamagneticParameter, field, gSParameter, gValuesParameter, hyperfineFaults, hyperfineParameter, kindParameter, levelPath, massNumberParameter, modelParameter,
+  NUCLEAR_PROBLEMS, rulesParameter, speciesPath, termParameter, toleranceParameter,
 } from './parameters'
 
 const onlyLevel = z.strictObject({ level: levelPath })
@@ -87,6 +91,8 @@ export const getSublevels = defineOperation({
   method: 'get',
   path: '/levels/{level}/sublevels',
   summary: 'Energies of the sublevels at a field, one row per m',
+  description:
+    'model=auto diagonalises within the LS term where the linear law errs by more than the tolerance; meta.validity tells by how much. With hyperfine=true the sublevels F, m_F of one isotope, by full diagonalisation in |m_J, m_I>.',
   tag: 'Levels',
   role: 'reader',
   params: onlyLevel,
@@ -97,13 +103,56 @@ export const getSublevels = defineOperation({
     g_s: gSParameter.optional(),
     tolerance: toleranceParameter,
     diamagnetic: diamagneticParameter,
+    hyperfine: hyperfineParameter,
+    isotope: massNumberParameter.optional(),
+    amplitudes: amplitudesParameter,
   }),
-  answer: Sublevel,
+  check: hyperfineFaults,
+  answer: z.union([Sublevel, HyperfineSublevel]),
   list: true,
   edition: 'computed',
   formats: ['csv', 'ndjson', 'ecsv', 'arrow'],
-  problems: [...gone, 'term_incomplete', 'no_ls_g', 'g_unknown'],
+  problems: [...gone, 'term_incomplete', 'no_ls_g', 'g_unknown', ...NUCLEAR_PROBLEMS],
   example: { params: { level: 'Na-I.2' }, query: { field: '1.5T' } },
+})
+
+const sublevelName = (which: string) =>
+  readBy((text): Parsed<{ twoF: number; twoM: number }> => {
+    const parts = text.split(',')
+    const [f, m] = parts.map((part) => parseHalf(part.trim()))
+    if (parts.length !== 2 || f === undefined || m === undefined) return { ok: false, code: 'sublevel_malformed', detail: `${quoted(text)} is not a sublevel: write F and m_F (or J and m) with a comma between them, such as 2,1 or 3/2,-1/2.` }
+    if (!f.ok) return f
+    if (!m.ok) return m
+    return { ok: true, value: { twoF: f.value, twoM: m.value } }
+  }, { description: `${which} sublevel: F,m_F with hyperfine=true, else J,m of the level's term.`, type: 'string', pattern: '^[0-9./]+,[ ]*-?[0-9./]+$' })
+
+export const getCrossings = defineOperation({
+  id: 'getCrossings',
+  method: 'get',
+  path: '/levels/{level}/crossings',
+  summary: 'Where two sublevels cross, come nearest, or keep their distance to first order in the field',
+  description: 'By root finding on analytic slopes between two fields: hyperfine sublevels (F, m_F) of the level for one isotope, or, without hyperfine=true, sublevels (J, m) of its LS term.',
+  tag: 'Levels',
+  role: 'reader',
+  params: onlyLevel,
+  query: z.strictObject({
+    a: sublevelName('First'),
+    b: sublevelName('Second'),
+    from: fieldParameter('Where to begin, as a field with its unit.').prefault('0T'),
+    to: fieldParameter('Where to end, as a field with its unit.'),
+    hyperfine: hyperfineParameter,
+    isotope: massNumberParameter.optional(),
+    g_values: gValuesParameter,
+    g_s: gSParameter.optional(),
+  }),
+  check: (query) => [
+    ...hyperfineFaults(query),
+    ...(query.from < query.to ? [] : [{ parameter: 'to', code: 'range_reversed', detail: `The search ends at ${query.to} T, which is not beyond its begin at ${query.from} T.` }]),
+  ],
+  answer: Crossings,
+  edition: 'computed',
+  problems: [...gone, 'term_incomplete', 'no_such_sublevel', 'same_sublevel', 'sublevel_malformed', 'no_ls_g', 'g_unknown', ...NUCLEAR_PROBLEMS],
+  example: { params: { level: 'Rb-I.1' }, query: { a: '1,-1', b: '2,1', to: '10G', isotope: '87', hyperfine: 'true' } },
 })
 
 export const listLevelTransitions = defineOperation({

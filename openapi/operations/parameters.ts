@@ -1,6 +1,8 @@
 import { parseSpecies } from '@/lib/atomic/elements'
 import { parseTerm, type Term } from '@/lib/atomic/term'
+import { quoted } from '@/lib/units/number'
 import type { Parsed } from '@/lib/units/parsed'
+import type { ParameterFault } from '@/openapi/core/define'
 import { choiceParameter, fieldParameter, flagParameter, numberParameter, readBy } from '@/openapi/core/parameters'
 import { LEVEL_ID, SPECIES_ID, TRANSITION_ID } from '@/openapi/schemas/common'
 
@@ -69,6 +71,27 @@ export const toleranceParameter = numberParameter('Relative error above which th
 export const fieldUncertaintyParameter = fieldParameter('One standard deviation of the field, as a field with its unit; without it the field is exact.')
 
 export const diamagneticParameter = flagParameter('Add the quadratic (diamagnetic) shift, where one electron outside closed shells allows it to be computed.')
+
+export const hyperfineParameter = flagParameter('Put hyperfine structure in, diagonalised in full within one J for an isotope.')
+export const amplitudesParameter = flagParameter('Tell the amplitudes of each state.')
+export const massNumberParameter = numberParameter('Isotope by its mass number, with hyperfine=true. Without it the only isotope with constants is taken.', { min: 1, max: 400, integer: true, example: 87 })
+export const isotopeParameter = readBy<number | 'natural'>((text) => {
+  if (text === 'natural') return { ok: true, value: text }
+  if (/^[1-9][0-9]{0,2}$/.test(text)) return { ok: true, value: Number(text) }
+  return { ok: false, code: 'number_malformed', detail: `${quoted(text)} is no isotope: give its mass number, such as 87, or "natural" for the mixture by abundance.` }
+}, { description: 'Isotope by its mass number, or natural for the mixture by abundance, with hyperfine=true. Without it the only isotope with constants is taken.', type: 'string', pattern: '^(natural|[1-9][0-9]{0,2})$', example: '87' })
+
+/** Refusals of what is asked of an isotope. */
+export const NUCLEAR_PROBLEMS = ['isotope_unknown', 'isotope_ambiguous', 'hyperfine_unknown', 'nuclear_spin_unknown', 'isotope_without_hyperfine', 'models_conflict'] as const
+
+/** What goes only with hyperfine structure, or not with it. */
+export function hyperfineFaults(query: { hyperfine: boolean; isotope?: unknown; model?: string; diamagnetic?: boolean }): ParameterFault[] {
+  const faults: ParameterFault[] = []
+  if (!query.hyperfine && query.isotope !== undefined) faults.push({ parameter: 'isotope', code: 'isotope_without_hyperfine', detail: 'An isotope is told from others by its hyperfine structure here: add hyperfine=true, or leave isotope out.' })
+  if (query.hyperfine && query.model === 'intermediate') faults.push({ parameter: 'model', code: 'models_conflict', detail: 'hyperfine=true diagonalises within one J, the intermediate model over all J of a term without a nucleus: leave one of them out.' })
+  if (query.hyperfine && query.diamagnetic === true) faults.push({ parameter: 'diamagnetic', code: 'models_conflict', detail: 'The quadratic shift is not added to hyperfine sublevels: leave diamagnetic or hyperfine out.' })
+  return faults
+}
 
 export const field = fieldParameter()
 

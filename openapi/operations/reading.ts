@@ -6,7 +6,7 @@ import {
 import { fitFieldOperation } from './field-fits'
 import { makeFieldTable } from './field-tables'
 import { find } from './find'
-import { getGFactor, getLevel, getSublevels, listLevels, listLevelTransitions } from './levels'
+import { getCrossings, getGFactor, getLevel, getSublevels, listLevels, listLevelTransitions } from './levels'
 import { predict } from './predictions'
 import { computeProfiles } from './profiles'
 import { getSource, getSpecies, listSources, listSpecies } from './species'
@@ -14,7 +14,7 @@ import { getComponents, getTransition, judgeTransition, listTransitions } from '
 
 /** Everything that reads the table or computes from it. */
 export const READING_OPERATIONS = [
-  listSpecies, getSpecies, listLevels, getLevel, getGFactor, getSublevels, listLevelTransitions, listTransitions, getTransition, getComponents,
+  listSpecies, getSpecies, listLevels, getLevel, getGFactor, getSublevels, getCrossings, listLevelTransitions, listTransitions, getTransition, getComponents,
   judgeTransition, decodeTerm, computeSublevels, fitFieldOperation, predict, makeFieldTable, computeProfiles, convertWavelength, listEditions, previewNextEdition, publishEdition, getEdition, listEditionChanges, getLevelMap, downloadEditionLevels,
   getEditionContent, getEditionCitation, listChanges, getLevelHistory, listSources, getSource, getSourceCitation, find,
 ]

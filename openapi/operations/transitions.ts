@@ -1,10 +1,10 @@
 import { z } from 'zod'
 import { defineOperation, type ParameterFault } from '@/openapi/core/define'
 import { choiceParameter, explainParameter, numberParameter, repeatable } from '@/openapi/core/parameters'
-import { Components } from '@/openapi/schemas/components'
+import { Components, HyperfineComponents } from '@/openapi/schemas/components'
 import { JudgedTransition, Transition, TransitionDetail } from '@/openapi/schemas/transition'
 import {
-  diamagneticParameter, field, fieldUncertaintyParameter, gSParameter, gValuesParameter, kindParameter, mediumParameter, modelParameter, rulesParameter, speciesPath, thetaParameter, toleranceParameter, transitionPath,
+  diamagneticParameter, field, fieldUncertaintyParameter, gSParameter, gValuesParameter, hyperfineFaults, hyperfineParameter, isotopeParameter, kindParameter, mediumParameter, modelParameter, NUCLEAR_PROBLEMS, rulesParameter, speciesPath, thetaParameter, toleranceParameter, transitionPath,
 } from './parameters'
 import { InlineLevel } from './inline'
 
@@ -88,7 +88,7 @@ export const getComponents = defineOperation({
   path: '/transitions/{transition}/components',
   summary: 'Components of a line at a field: positions, polarisation, strength, intensity, and how far the model holds',
   description:
-    'q = m_upper - m_lower, for absorption and emission alike; a positive shift is to higher wavenumber, to the blue. Strengths of each q sum to 1.',
+    'q = m_upper - m_lower, for absorption and emission alike; a positive shift is to higher wavenumber, to the blue. Strengths of each q sum to 1 at zero field. model=auto diagonalises within both LS terms where the linear law errs by more than the tolerance in positions or strengths. With hyperfine=true the components of one isotope, or of the natural mixture (isotope=natural), between sublevels F, m_F.',
   tag: 'Lines',
   role: 'reader',
   params: onlyTransition,
@@ -103,11 +103,14 @@ export const getComponents = defineOperation({
     medium: mediumParameter,
     tolerance: toleranceParameter,
     diamagnetic: diamagneticParameter,
+    hyperfine: hyperfineParameter,
+    isotope: isotopeParameter.optional(),
   }),
-  answer: Components,
+  check: hyperfineFaults,
+  answer: z.union([Components, HyperfineComponents]),
   edition: 'computed',
   formats: ['csv', 'ndjson', 'ecsv', 'arrow'],
-  problems: [...gone, 'transition_forbidden', 'term_incomplete', 'no_ls_g', 'g_unknown'],
+  problems: [...gone, 'transition_forbidden', 'term_incomplete', 'no_ls_g', 'g_unknown', ...NUCLEAR_PROBLEMS, 'abundance_unknown'],
   example: { params: { transition: 'Na-I.1~Na-I.2' }, query: { field: '1.5T' } },
 })
 

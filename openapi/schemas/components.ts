@@ -90,6 +90,15 @@ export const UsedIsotope = z
   .meta({ id: 'UsedIsotope' })
 export type UsedIsotope = z.infer<typeof UsedIsotope>
 
+export const HyperfineBudgetPart = z
+  .strictObject({
+    part: z.enum(['a_lower', 'b_lower', 'g_lower', 'a_upper', 'b_upper', 'g_upper', 'field', 'constants']),
+    value_mhz: z.number().nullable(),
+    status: z.enum(['known', 'unknown', 'exact']),
+  })
+  .meta({ id: 'HyperfineBudgetPart' })
+export type HyperfineBudgetPart = z.infer<typeof HyperfineBudgetPart>
+
 export const HyperfineComponent = z
   .strictObject({
     mass_number: z.int(),
@@ -106,15 +115,21 @@ export const HyperfineComponent = z
     detuning_mhz: z.number().meta({ description: 'From the line between the centres of gravity of both levels, isotope shift included.' }),
     derivative_mhz_per_tesla: z.number(),
     shift_invcm: z.number().meta({ description: 'detuning_mhz in wavenumber.' }),
+    shift_ghz: z.number(),
+    shift_pm: z.number().nullable(),
     wavenumber_invcm: z.number(),
     wavelength_vac_nm: z.number().nullable(),
     wavelength_air_nm: z.number().nullable(),
+    frequency_thz: z.number(),
     strength: z.number().meta({ description: 'Over one isotope all components sum to 1 at any field.' }),
     weight: z.number().meta({ description: 'Share of the isotope.' }),
     intensity: z.number().nullable().meta({ description: 'Strength times weight as seen at theta_deg, times three, so that a line sums to 1; averaged over angle when none is given.' }),
     intensity_status: ValueStatus,
     stokes_q: z.number().nullable(),
     stokes_v: z.number().nullable(),
+    detuning_unc_mhz: z.number().nullable().meta({ description: 'One standard deviation of the detuning; the energies of the levels are not in it. Null where any part is unknown.' }),
+    detuning_known_unc_mhz: z.number(),
+    budget: z.array(HyperfineBudgetPart),
   })
   .meta({ id: 'HyperfineComponent' })
 export type HyperfineComponent = z.infer<typeof HyperfineComponent>

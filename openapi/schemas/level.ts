@@ -145,6 +145,10 @@ export const Sublevel = z
     derivative_invcm_per_tesla: z.number().meta({ description: 'Of the energy with respect to the field; analytic.' }),
     diamagnetic_shift_invcm: z.number().nullable().meta({ description: 'Quadratic shift; part of shift and energy with diamagnetic=true only.' }),
     diamagnetic_status: ValueStatus,
+    amplitudes: z
+      .array(z.strictObject({ j: z.number(), amplitude: z.number() }))
+      .optional()
+      .meta({ description: 'Of |J m> in the state; with amplitudes=true.' }),
   })
   .meta({ id: 'Sublevel' })
 export type Sublevel = z.infer<typeof Sublevel>

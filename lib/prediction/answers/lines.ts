@@ -1,16 +1,18 @@
 import type { z } from 'zod'
 import { AIR_MEASURED_TO_NM } from '@/lib/atomic/air'
+import { G_S } from '@/lib/atomic/constants'
 import { defaultKind } from '@/lib/atomic/rules'
 import { type LineExclusion, type LineListQuery, listLines, spectralWindow, type WindowAsked } from '@/lib/catalogue/lines'
 import { LINE_EXCLUSIONS, passes, pairMask } from '@/lib/catalogue/line-scan'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { Problem } from '@/lib/problem'
 import { predictComponents } from '@/lib/prediction/components'
-import { AIR_EXTRAPOLATED, FIELD_CONVENTIONS, LINE_CONVENTIONS } from '@/lib/prediction/conventions'
+import { AIR_EXTRAPOLATED, FIELD_CONVENTIONS, HYPERFINE_LINE_CONVENTIONS, LINE_CONVENTIONS } from '@/lib/prediction/conventions'
+import { predictHyperfine } from '@/lib/prediction/hyperfine'
 import { judgeInline } from '@/lib/prediction/judge'
 import { limitOf, pageOf, type Position } from '@/lib/prediction/paging'
-import { levelIndex, speciesIndex, transitionIndices } from '@/lib/prediction/resolve'
-import { componentTable, lineTable } from '@/lib/prediction/tables/lines'
+import { levelIndex, speciesIndex, speciesOf, transitionIndices } from '@/lib/prediction/resolve'
+import { componentTable, hyperfineComponentTable, lineTable } from '@/lib/prediction/tables/lines'
 import { assembleTransition, transitionDetail } from '@/lib/prediction/transition'
 import type { listLevelTransitions } from '@/openapi/operations/levels'
 import type { getComponents, getTransition, judgeTransition, listTransitions } from '@/openapi/operations/transitions'
@@ -125,10 +127,11 @@ export function oneTransition(snapshot: Snapshot, id: string, query: z.output<(t
   return { data: detail, meta: { conventions: LINE_CONVENTIONS } }
 }
 
-/** The components of a line at a field. */
+/** The components of a line at a field; with hyperfine=true those of one isotope or of the natural mixture. */
 export function componentsAnswer(snapshot: Snapshot, id: string, query: z.output<(typeof getComponents)['query']>, warn: Warn) {
   const [first, second] = transitionIndices(snapshot, id)
-  const { components, warnings } = predictComponents(transitionDetail(snapshot, first, second, query.kind), {
+  const line = transitionDetail(snapshot, first, second, query.kind)
+  const asked = {
     fieldTesla: query.field,
     fieldUncTesla: query.field_unc ?? null,
     model: query.model,
@@ -137,12 +140,21 @@ export function componentsAnswer(snapshot: Snapshot, id: string, query: z.output
     thetaDeg: query.theta_deg ?? null,
     medium: query.medium,
     tolerance: query.tolerance,
-    diamagnetic: query.diamagnetic,
-  })
+  }
+  if (query.hyperfine) {
+    const { components, warnings } = predictHyperfine(line, speciesOf(snapshot, line.lower.species).isotopes, { ...asked, isotope: query.isotope ?? null })
+    for (const { code, detail } of warnings) warn(code, detail)
+    return {
+      data: components,
+      meta: { model: components.model, g_values: query.g_values, conventions: { ...HYPERFINE_LINE_CONVENTIONS, g_s: asked.gS ?? G_S } },
+      table: () => hyperfineComponentTable(components.components),
+    }
+  }
+  const { components, warnings } = predictComponents(line, { ...asked, diamagnetic: query.diamagnetic })
   for (const { code, detail } of warnings) warn(code, detail)
   return {
     data: components,
-    meta: { model: components.model, g_values: query.g_values, conventions: FIELD_CONVENTIONS },
+    meta: { model: components.model, g_values: query.g_values, conventions: { ...FIELD_CONVENTIONS, g_s: asked.gS ?? G_S } },
     table: () => componentTable(components.components),
   }
 }

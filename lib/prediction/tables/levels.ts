@@ -1,5 +1,5 @@
 import type { Table } from '@/openapi/core/table'
-import type { Level, Sublevel } from '@/openapi/schemas/level'
+import type { HyperfineSublevel, Level, Sublevel } from '@/openapi/schemas/level'
 import { flag, type Field, integer, number, tableOf, text } from '@/lib/prediction/tables/column'
 
 const INVCM = 'cm-1'
@@ -71,3 +71,17 @@ const SUBLEVEL_FIELDS: readonly Field<Sublevel>[] = [
 ]
 
 export const sublevelTable = (sublevels: Iterable<Sublevel>): Table => tableOf('sublevels', SUBLEVEL_FIELDS, sublevels)
+
+const HYPERFINE_SUBLEVEL_FIELDS: readonly Field<HyperfineSublevel>[] = [
+  integer('mass_number', 'Isotope', (s) => s.mass_number),
+  number('f', null, 'F by continuity from zero field', (s) => s.f),
+  number('m_f', null, 'm_F', (s) => s.m_f),
+  number('m_j', null, 'm_J at high field', (s) => s.m_j),
+  number('m_i', null, 'm_I at high field', (s) => s.m_i),
+  number('shift_mhz', 'MHz', 'Energy minus that of the hyperfine level F without field', (s) => s.shift_mhz),
+  number('energy_mhz', 'MHz', 'Energy from the centre of gravity of the level J', (s) => s.energy_mhz),
+  number('energy_invcm', INVCM, 'Energy above the ground level', (s) => s.energy_invcm),
+  number('derivative_mhz_per_tesla', 'MHz / T', 'Change of the energy with the field', (s) => s.derivative_mhz_per_tesla),
+]
+
+export const hyperfineSublevelTable = (sublevels: Iterable<HyperfineSublevel>): Table => tableOf('hyperfine-sublevels', HYPERFINE_SUBLEVEL_FIELDS, sublevels)

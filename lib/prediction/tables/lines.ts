@@ -1,5 +1,5 @@
 import type { Table } from '@/openapi/core/table'
-import type { Component } from '@/openapi/schemas/components'
+import type { Component, HyperfineComponent } from '@/openapi/schemas/components'
 import type { Level } from '@/openapi/schemas/level'
 import type { Transition } from '@/openapi/schemas/transition'
 import { flag, type Field, integer, number, tableOf, text } from '@/lib/prediction/tables/column'
@@ -79,3 +79,35 @@ const COMPONENT_FIELDS: readonly Field<Component>[] = [
 ]
 
 export const componentTable = (components: Iterable<Component>): Table => tableOf('components', COMPONENT_FIELDS, components)
+
+const HYPERFINE_COMPONENT_FIELDS: readonly Field<HyperfineComponent>[] = [
+  integer('mass_number', 'Isotope', (c) => c.mass_number),
+  number('f_lower', null, 'F of the lower sublevel, by continuity from zero field', (c) => c.f_lower),
+  number('m_f_lower', null, 'm_F of the lower sublevel', (c) => c.m_f_lower),
+  number('f_upper', null, 'F of the upper sublevel, by continuity from zero field', (c) => c.f_upper),
+  number('m_f_upper', null, 'm_F of the upper sublevel', (c) => c.m_f_upper),
+  integer('q', 'm_F upper - m_F lower', (c) => c.q),
+  text('polarisation', 'pi, sigma+ or sigma-; q itself where |q| = 2', (c) => c.polarisation),
+  number('m_j_lower', null, 'm_J of the lower sublevel at high field', (c) => c.m_j_lower),
+  number('m_i_lower', null, 'm_I of the lower sublevel at high field', (c) => c.m_i_lower),
+  number('m_j_upper', null, 'm_J of the upper sublevel at high field', (c) => c.m_j_upper),
+  number('m_i_upper', null, 'm_I of the upper sublevel at high field', (c) => c.m_i_upper),
+  number('detuning_mhz', 'MHz', 'From the line between the centres of gravity of both levels', (c) => c.detuning_mhz),
+  number('derivative_mhz_per_tesla', 'MHz / T', 'Change of the detuning with the field', (c) => c.derivative_mhz_per_tesla),
+  number('shift_invcm', INVCM, 'The detuning in wavenumber', (c) => c.shift_invcm),
+  number('shift_ghz', 'GHz', 'The detuning in GHz', (c) => c.shift_ghz),
+  number('shift_pm', 'pm', 'The detuning in wavelength, in the medium asked for', (c) => c.shift_pm),
+  number('wavenumber_invcm', INVCM, 'Vacuum wavenumber', (c) => c.wavenumber_invcm),
+  number('wavelength_vac_nm', 'nm', 'Wavelength in vacuum', (c) => c.wavelength_vac_nm),
+  number('wavelength_air_nm', 'nm', 'Wavelength in standard air, from 200 nm up', (c) => c.wavelength_air_nm),
+  number('frequency_thz', 'THz', 'Frequency', (c) => c.frequency_thz),
+  number('strength', null, 'Relative strength; over one isotope all sum to 1', (c) => c.strength),
+  number('weight', null, 'Share of the isotope', (c) => c.weight),
+  number('intensity', null, 'Strength times weight seen at the angle, or averaged over angle', (c) => c.intensity),
+  number('stokes_q', null, 'Stokes Q at the angle', (c) => c.stokes_q),
+  number('stokes_v', null, 'Stokes V at the angle', (c) => c.stokes_v),
+  number('detuning_unc_mhz', 'MHz', 'One standard deviation of the detuning', (c) => c.detuning_unc_mhz),
+  number('detuning_known_unc_mhz', 'MHz', 'Its known parts alone', (c) => c.detuning_known_unc_mhz),
+]
+
+export const hyperfineComponentTable = (components: Iterable<HyperfineComponent>): Table => tableOf('hyperfine-components', HYPERFINE_COMPONENT_FIELDS, components)
