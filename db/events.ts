@@ -21,6 +21,8 @@ export interface EventPayloads {
   /** The token stands here until the mail that carries it is written. */
   'invitation.made': { invitation: string; email: string; name: string; role: string; by: string; expires_at: string; token: string }
   'password.reset': { reset: string; email: string; name: string; expires_at: string; token: string }
+  /** By whoever is signed in, who knew the one before, or by the link of a mail. */
+  'password.changed': { email: string; name: string; by: 'session' | 'link'; at: string }
 }
 
 /**

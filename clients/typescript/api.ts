@@ -2777,7 +2777,7 @@ export interface Operations {
       meta: Meta
     }
   }
-  /** Set a new password; your other sessions end */
+  /** Set a new password; your other sessions end. You are told of it by mail, so that you hear of it where it was not you. */
   changePassword: {
     method: 'post'
     path: '/password-changes'
@@ -2960,7 +2960,7 @@ export interface Operations {
     body: PasswordResetRequest
     answer: undefined
   }
-  /** Set a new password with the link of a mail; every session of the account ends */
+  /** Set a new password with the link of a mail; every session of the account ends. The owner of the account is told of it by mail. */
   usePasswordReset: {
     method: 'post'
     path: '/password-resets/use'

@@ -3,7 +3,7 @@ import { bigint, boolean, check, index, integer, jsonb, pgTable, text, uniqueInd
 import { users } from './access'
 import { instant } from './instant'
 
-export const EVENT_KINDS = ['review.asked', 'review.returned', 'review.accepted', 'edition.published', 'invitation.made', 'password.reset'] as const
+export const EVENT_KINDS = ['review.asked', 'review.returned', 'review.accepted', 'edition.published', 'invitation.made', 'password.reset', 'password.changed'] as const
 export const FOLLOW_KINDS = ['species', 'level', 'line'] as const
 
 /** Something that people or programs are to be told of, written in the transaction that makes it so; told of afterwards. */
@@ -20,7 +20,7 @@ export const noticeEvents = pgTable(
     attempts: integer('attempts').notNull().default(0),
     lastError: text('last_error'),
   },
-  (t) => [index('notice_events_waiting').on(t.id).where(sql`${t.spreadAt} is null`), check('notice_events_kind', sql`${t.kind} in ('review.asked', 'review.returned', 'review.accepted', 'edition.published', 'invitation.made', 'password.reset')`)],
+  (t) => [index('notice_events_waiting').on(t.id).where(sql`${t.spreadAt} is null`), check('notice_events_kind', sql`${t.kind} in ('review.asked', 'review.returned', 'review.accepted', 'edition.published', 'invitation.made', 'password.reset', 'password.changed')`)],
 )
 
 /** Mail on its way out. */

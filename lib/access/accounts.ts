@@ -1,5 +1,6 @@
 import { eq } from 'drizzle-orm'
 import type { Db } from '@/db/client'
+import { recordEvent } from '@/db/events'
 import { users } from '@/db/schema'
 import { type Acting, recordAudit } from '@/lib/access/audit'
 import type { Caller } from '@/lib/access/caller'
@@ -47,10 +48,12 @@ export async function changePassword(db: Db, acting: Acting, given: { password: 
   await succeed(db, attempt)
   if (given.password === given.new_password) throw bodyProblem('/new_password', 'password_unchanged', 'The new password is the present one.')
   const passwordHash = await hashPassword(given.new_password)
+  const now = new Date()
   await db.transaction(async (tx) => {
-    await tx.update(users).set({ passwordHash, updatedAt: new Date() }).where(eq(users.id, user.id))
+    await tx.update(users).set({ passwordHash, updatedAt: now }).where(eq(users.id, user.id))
     await voidResets(tx, user.id)
     if (caller.kind === 'session') await endOtherSessions(tx, user.id, caller.sessionId)
+    await recordEvent(tx, 'password.changed', { email: user.email, name: user.name, by: 'session', at: now.toISOString() })
     await recordAudit(tx, acting, { action: 'password.change', subjectKind: 'user', subjectId: user.id })
   })
   forgetVerified()

@@ -66,6 +66,7 @@ export async function useReset(db: Db, acting: Acting, given: { token: string; n
     await tx.update(users).set({ passwordHash, updatedAt: now }).where(eq(users.id, user.id))
     const ended = await tx.update(sessions).set({ endedAt: now }).where(and(eq(sessions.userId, user.id), isNull(sessions.endedAt))).returning({ id: sessions.id })
     await tx.insert(signInAttempts).values({ email: user.email.toLowerCase(), ip: acting.ip ?? 'unknown', succeeded: true, at: now })
+    await recordEvent(tx, 'password.changed', { email: user.email, name: user.name, by: 'link', at: now.toISOString() })
     await recordAudit(tx, acting, { action: 'password.reset_use', subjectKind: 'user', subjectId: user.id, after: { sessions_ended: ended.length } })
   })
   forgetVerified()

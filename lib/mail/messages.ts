@@ -29,6 +29,18 @@ export function resetMail(given: { name: string; expires_at: string; token: stri
   )
 }
 
+/** For the owner, who may not be the one who did it: what happened, and what to do then. */
+export function passwordChangedMail(given: { name: string; by: 'session' | 'link'; at: string }): Message {
+  return message(
+    'Your password for Lodeterm was changed',
+    `Hello ${oneLine(given.name)},`,
+    `the password of your account at ${page('/')} was changed on ${moment(given.at)}, ${given.by === 'session' ? 'by somebody who was signed in and knew the one before' : 'by the link of a mail that was sent to this address'}.`,
+    `${given.by === 'session' ? 'Every other browser' : 'Every browser'} that was signed in has to sign in again; API keys go on working.`,
+    'If it was you, there is nothing to do.',
+    `If it was not, set a new one at once:\n${page('/reset-password')}\nThen look through your API keys, revoke those that you do not know, and tell an admin:\n${page('/account')}`,
+  )
+}
+
 export interface ReviewNews { amendment: string; title: string; by: { name: string }; comment: string | null }
 const amendmentPage = (id: string): string => page(`/curate/${encodeURIComponent(id)}`)
 const said = (who: string, comment: string | null): string => (comment === null || comment.trim() === '' ? '' : `${oneLine(who)} wrote:\n${quotation(comment)}`)

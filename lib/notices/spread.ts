@@ -3,7 +3,7 @@ import type { Db, Tx } from '@/db/client'
 import type { EventKind, EventPayloads, ReviewPayload } from '@/db/events'
 import { amendmentAuthors, amendments, mails, noticeEvents, users, webhookDeliveries, webhooks } from '@/db/schema'
 import { getConfig } from '@/lib/config'
-import { invitationMail, type Message, resetMail, reviewAskedMail, reviewGivenMail } from '@/lib/mail/messages'
+import { invitationMail, type Message, passwordChangedMail, resetMail, reviewAskedMail, reviewGivenMail } from '@/lib/mail/messages'
 import { editionLetters } from '@/lib/notices/edition-letters'
 import { WebhookEvent } from '@/openapi/schemas/notices'
 
@@ -41,6 +41,7 @@ async function lettersOf(tx: Tx, event: Told): Promise<Letter[]> {
     case 'edition.published': return editionLetters(tx, event.payload)
     case 'invitation.made': return [{ to: event.payload.email, ...invitationMail(event.payload) }]
     case 'password.reset': return [{ to: event.payload.email, ...resetMail(event.payload) }]
+    case 'password.changed': return [{ to: event.payload.email, ...passwordChangedMail(event.payload) }]
   }
 }
 
@@ -51,7 +52,7 @@ function dataOf(event: Told): Record<string, unknown> {
     const { edition, label, since } = event.payload
     return { edition, label, since, url: `${baseUrl}/api/v1/editions/${edition}`, changes_url: `${baseUrl}/api/v1/editions/${edition}/changes?since=${Math.max(1, since)}` }
   }
-  return event.kind === 'invitation.made' || event.kind === 'password.reset' ? {} : { ...event.payload, url: `${baseUrl}/api/v1/amendments/${event.payload.amendment}` }
+  return 'amendment' in event.payload ? { ...event.payload, url: `${baseUrl}/api/v1/amendments/${event.payload.amendment}` } : {}
 }
 
 async function writeDeliveries(tx: Tx, event: Told): Promise<void> {

@@ -51,6 +51,7 @@ export const changePassword = defineOperation({
   method: 'post',
   path: '/password-changes',
   summary: 'Set a new password; your other sessions end',
+  description: 'You are told of it by mail, so that you hear of it where it was not you.',
   tag: 'Account',
   role: 'account',
   sessionOnly: true,

@@ -81,6 +81,7 @@ export const askPasswordReset = defineOperation({
 export const usePasswordReset = defineOperation({
   id: 'usePasswordReset', method: 'post', path: '/password-resets/use', tag: TAG, role: 'public',
   summary: 'Set a new password with the link of a mail; every session of the account ends',
+  description: 'The owner of the account is told of it by mail.',
   body: PasswordReset, answer: z.null(), edition: 'none', status: 204,
   problems: ['reset_unusable', ...POOR_PASSWORD, 'sign_in_unavailable', 'cross_site'], example: { body: { token: 'not-a-token', new_password: 'four quite unrelated words' } },
 })

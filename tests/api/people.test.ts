@@ -223,6 +223,7 @@ describe('a forgotten password', () => {
     expect(await signIn(person, 'a quite new password')).toMatch(/^lodeterm=/)
     expect((await ask('post', '/session', { body: { email: person.email, password: PASSWORD }, headers: SAME_SITE })).status).toBe(401)
     expect((await auditOf('password.reset_use', person.id)).map((row) => row.after)).toEqual([{ sessions_ended: 1 }])
+    await expect.poll(async () => (await mailTo(person.email)).map((mail) => mail.subject).filter((subject) => subject.includes('was changed')), { timeout: 10_000 }).toEqual(['Your password for Lodeterm was changed'])
     const kept = JSON.stringify([await getDb().select().from(passwordResets), await getDb().select().from(noticeEvents)])
     for (const token of [first, second]) expect(kept).not.toContain(token)
   })
@@ -237,6 +238,9 @@ describe('a forgotten password', () => {
     const voided = await linkOf(person, 1)
     const cookie = await signIn(person)
     expect((await ask('post', '/password-changes', { cookie, headers: SAME_SITE, body: { password: PASSWORD, new_password: 'another new password' } })).status).toBe(204)
+    const told = async () => (await mailTo(person.email)).find((mail) => mail.subject.includes('was changed'))?.text
+    await expect.poll(told, { timeout: 10_000 }).toContain('by somebody who was signed in')
+    for (const secret of [PASSWORD, 'another new password', voided]) expect(await told()).not.toContain(secret)
     expect((await set(voided, 'a quite new password')).status).toBe(410)
     expect((await set('x'.repeat(43), 'a quite new password')).json.code).toBe('reset_unusable')
   })

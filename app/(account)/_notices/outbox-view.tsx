@@ -36,7 +36,7 @@ export function OutboxView() {
         <p>{elsewhere ? 'Mail goes to a real mail server here, so that there is nothing to look into.' : 'No mail server is set, so a local stand-in takes the mail and keeps the last five hundred, as files in .data/outbox. Set SMTP_URL to have mail sent. You see your own; an admin sees all.'}</p>
       </PageHead>
       {elsewhere ? null : answer.isPending ? <TableSkeleton label="Loading the mail" rows={3} columns={2} /> : answer.error ? <ProblemView error={answer.error} onRetry={() => void answer.refetch()} /> : mails.length === 0 ? (
-        <EmptyState title="No mail yet"><p>Mail comes of invitations, forgotten passwords, reviews, and editions that change what you follow.</p></EmptyState>
+        <EmptyState title="No mail yet"><p>Mail comes of invitations, forgotten and changed passwords, reviews, and editions that change what you follow.</p></EmptyState>
       ) : <ul className="space-y-3">{mails.map((mail, index) => <li key={mail.id}><Mail mail={mail} open={index === 0} /></li>)}</ul>}
       {answer.hasNextPage ? <button type="button" className="btn mt-4" disabled={answer.isFetchingNextPage} onClick={() => void answer.fetchNextPage()}>Show older mail</button> : null}
     </div>

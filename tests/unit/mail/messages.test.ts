@@ -1,7 +1,7 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { editionMail, type FollowedNews, lineText } from '@/lib/mail/edition-mail'
-import { invitationMail, resetMail, reviewAskedMail, reviewGivenMail } from '@/lib/mail/messages'
+import { invitationMail, passwordChangedMail, resetMail, reviewAskedMail, reviewGivenMail } from '@/lib/mail/messages'
 import { oneLine, quotation } from '@/lib/mail/text'
 
 const BASE = 'http://127.0.0.1:3000'
@@ -39,6 +39,17 @@ describe('messages', () => {
     expect(subject).toBe('Set a new password for Lodeterm')
     expect(text).toContain(`${BASE}/reset-password?token=tok`)
     expect(text).toContain('If it was not you')
+  })
+
+  it('tell of a changed password, with what to do where it was somebody else', () => {
+    const given = { name: 'Jun', at: '2030-01-31T12:00:00.000Z' }
+    const { subject, text } = passwordChangedMail({ ...given, by: 'session' })
+    expect(subject).toBe('Your password for Lodeterm was changed')
+    expect(text).toContain('on 2030-01-31 12:00 UTC, by somebody who was signed in')
+    expect(text).toContain(`${BASE}/reset-password\n`)
+    expect(text).toContain(`${BASE}/account`)
+    expect(text).not.toContain('token')
+    expect(passwordChangedMail({ ...given, by: 'link' }).text).toContain('by the link of a mail')
   })
 
   it('tell of reviews with what was written', () => {

@@ -1,0 +1,2 @@
+ALTER TABLE "notice_events" DROP CONSTRAINT "notice_events_kind";--> statement-breakpoint
+ALTER TABLE "notice_events" ADD CONSTRAINT "notice_events_kind" CHECK ("notice_events"."kind" in ('review.asked', 'review.returned', 'review.accepted', 'edition.published', 'invitation.made', 'password.reset', 'password.changed'));
