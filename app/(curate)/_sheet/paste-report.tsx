@@ -45,7 +45,7 @@ function Lines({ row, checked }: { row: PastedRow; checked: CheckedChange | null
           {index === 0 ? head : null}
           <td className="text-muted">{cell.column.label}</td>
           <td className="whitespace-normal! text-muted [overflow-wrap:anywhere]">{cell.before === '' ? 'empty' : <del className="no-underline">{cell.before}</del>}</td>
-          <td className="whitespace-normal! [overflow-wrap:anywhere]">{cell.after === '' ? <span className="text-muted">empty</span> : <ins className="no-underline">{cell.after}</ins>}{cell.pasted === null ? null : <span className="block text-xs text-muted">pasted as {cell.pasted}: its comma is read as the decimal point</span>}</td>
+          <td className="whitespace-normal! [overflow-wrap:anywhere]">{cell.after === '' ? <span className="text-muted">empty</span> : <ins className="no-underline">{cell.after}</ins>}{cell.pasted === null ? null : <span className="block w-36 text-xs whitespace-normal text-muted">pasted as {cell.pasted}, the comma read as a decimal point</span>}</td>
           <td className="min-w-56 whitespace-normal!">{findings.has(cell.column.id) ? <FindingsList findings={findings.get(cell.column.id) ?? []} /> : null}</td>
         </tr>
       ))}
