@@ -43,7 +43,7 @@ export function Differences({ fields, caption, fresh = false }: { fields: readon
   if (fields.length === 0) return <p className="note">Nothing differs from the newest edition.</p>
   return (
     <div className="scroll-x" tabIndex={0} role="region" aria-label={`${caption}, scrolls sideways`}>
-      <table className="ruled">
+      <table className="ruled min-w-0!">
         <caption className="sr-only">{caption}</caption>
         <thead><tr><th scope="col">Value</th>{fresh ? null : <th scope="col">Before</th>}<th scope="col">{fresh ? 'New' : 'After'}</th></tr></thead>
         <tbody>
