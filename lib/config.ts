@@ -1,3 +1,4 @@
+import os from 'node:os'
 import path from 'node:path'
 import { z } from 'zod'
 
@@ -34,6 +35,7 @@ const Environment = z.object({
   MAIL_FROM: z.string().regex(MAIL_FROM, 'is one mail address, alone or as Name <address>').optional(),
   OUTBOX_FOLDER: z.string().min(1).optional(),
   WEBHOOK_PRIVATE_TARGETS: flag.default(false),
+  PREDICTION_WORKERS: z.coerce.number({ error: 'is a whole number of worker threads' }).int().min(1).max(256).optional(),
   NODE_ENV: z.enum(['development', 'test', 'production']).default('development'),
   LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'trace', 'silent']).default('info'),
 })
@@ -64,6 +66,8 @@ export interface Config {
   outboxFolder: string | undefined
   /** Whether webhooks may go to addresses of the own network; off, they go to public ones only. */
   webhookPrivateTargets: boolean
+  /** Threads that compute large answers beside the one that answers: by default one for each processor but one. */
+  predictionWorkers: number
   nodeEnv: 'development' | 'test' | 'production'
   logLevel: 'fatal' | 'error' | 'warn' | 'info' | 'debug' | 'trace' | 'silent'
 }
@@ -101,6 +105,7 @@ export function parseConfig(env: Readonly<Record<string, string | undefined>>): 
     mailFrom: e.MAIL_FROM ?? `Lodeterm <lodeterm@${mailHost(baseUrl)}>`,
     outboxFolder: e.OUTBOX_FOLDER === undefined ? undefined : path.resolve(/* turbopackIgnore: true */ process.cwd(), e.OUTBOX_FOLDER),
     webhookPrivateTargets: e.WEBHOOK_PRIVATE_TARGETS,
+    predictionWorkers: e.PREDICTION_WORKERS ?? Math.max(1, os.availableParallelism() - 1),
     nodeEnv: e.NODE_ENV,
     logLevel: e.LOG_LEVEL,
   }

@@ -6,7 +6,7 @@ import type { House } from '@/lib/http/house'
 import { API_PREFIX, type ReadRequest } from '@/lib/http/request'
 import type { Answer, Warning } from '@/lib/http/types'
 import { streamedText } from '@/lib/http/writers/stream'
-import type { Format, Operation } from '@/openapi/core/define'
+import { type Format, MEDIA_TYPES, type Operation } from '@/openapi/core/define'
 
 export interface Setting {
   operation: Operation
@@ -62,7 +62,13 @@ export async function writeAnswer<S>(house: House<S>, setting: Setting, answer: 
   let body: Written['body']
   let json: unknown = null
   const table = answer.table === undefined ? undefined : typeof answer.table === 'function' ? (format === 'json' && answer.data !== undefined ? undefined : answer.table()) : answer.table
-  if (answer.text !== undefined) {
+  if (answer.stream !== undefined) {
+    const streamed = await answer.stream(meta)
+    headers['content-type'] = `${MEDIA_TYPES[format]}${format === 'ndjson' ? '; charset=utf-8' : ''}`
+    if (format !== 'json') headers['content-disposition'] = `inline; filename="${streamed.name}.${format}"`
+    if (streamed.body instanceof Uint8Array) headers['content-length'] = String(streamed.body.byteLength)
+    body = streamed.body
+  } else if (answer.text !== undefined) {
     headers['content-type'] ??= 'application/json'
     body = streamedText(answer.text)
   } else if (format !== 'json' || answer.data === undefined) {

@@ -28,10 +28,18 @@ export interface Call<P, Q, B, S> {
   /** Adds to `meta.warnings`. */
   warn: (code: string, detail: string) => void
   clientAddress: string
+  /** Told when whoever asked has gone. */
+  signal: AbortSignal
   /** What this request holds of its Idempotency-Key: goes into the transaction of its effect (`actingOf`, `recordAudit`). */
   claim: HeldClaim | null
   /** Fields of the request, for the few operations that need one (cookies at sign-in). */
   requestFields: Headers
+}
+
+export interface Streamed {
+  /** Name of the file without its ending. */
+  name: string
+  body: Uint8Array<ArrayBuffer> | ReadableStream<Uint8Array>
 }
 
 export interface Answer<D> {
@@ -46,6 +54,8 @@ export interface Answer<D> {
   table?: Table | (() => Table)
   /** The whole body of an operation without envelope, piece by piece, where it is JSON made elsewhere. */
   text?: AsyncIterable<string>
+  /** A body made elsewhere in the format asked, given the meta that belongs into it: for answers too large to stand in memory. */
+  stream?: (meta: Record<string, unknown>) => Promise<Streamed> | Streamed
   status?: number
   headers?: Record<string, string>
   /** Set-Cookie fields. */

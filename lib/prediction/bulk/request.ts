@@ -90,7 +90,7 @@ function centreOf(block: BlockGiven): number {
 }
 
 /** What the intermediate model cannot do of a block. */
-function modelFaults(block: BlockGiven, at: string): Fault[] {
+export function modelFaults(block: BlockGiven, at: string): Fault[] {
   if (canDiagonalise(block)) return []
   const [lower, upper] = termsOf(block)
   const why = (name: string, term: (typeof lower)): string | null => {
