@@ -1,7 +1,7 @@
 import { randomUUID } from 'node:crypto'
-import type { Browser, Page } from 'playwright-core'
+import type { Browser, BrowserContext, Page } from 'playwright-core'
 import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest'
-import { accessibilityFindings, go, openBrowser, overflow, type Theme, visit } from './browser'
+import { accessibilityFindings, go, lookOver, openBrowser, visit } from './browser'
 
 /** Looks again and again until it is so: pages ask the API, and the API asks the mail. */
 const soon = { timeout: 15_000 }
@@ -42,41 +42,22 @@ const OPEN_PAGES: readonly { path: string; shows: RegExp }[] = [
   { path: '/sign-in', shows: /Forgotten your password/ },
 ]
 
-describe.each<Theme>(['light', 'dark'])('in the %s theme', (theme) => {
-  it('the pages of an admin are accessible, quiet, and have their content', async () => {
-    const { context, page, complaints } = await visit(browser, { theme })
+describe('in both themes and at every width', () => {
+  let admin: BrowserContext
+  beforeAll(async () => {
+    const { context, page } = await visit(browser)
     await signIn(page, 'admin')
-    for (const { path, shows } of ADMIN_PAGES) {
-      await go(page, path)
-      await expect.poll(() => page.locator('#main').innerText(), { timeout: 15_000, message: path }).toMatch(shows)
-      expect(await page.locator('h1').count(), path).toBe(1)
-      expect(await accessibilityFindings(page), path).toEqual([])
-    }
-    expect(complaints).toEqual([])
-    await context.close()
-  // seven pages, each looked through by axe
-  }, 180_000)
+    admin = context
+  })
+  afterAll(() => admin.close())
 
-  it('so are those that a link in a mail leads to', async () => {
-    const { context, page, complaints } = await visit(browser, { theme })
-    for (const { path, shows } of OPEN_PAGES) {
-      await go(page, path)
-      await expect.poll(() => page.locator('#main').innerText(), { timeout: 15_000, message: path }).toMatch(shows)
-      expect(await accessibilityFindings(page), path).toEqual([])
-    }
-    expect(complaints).toEqual([])
+  it.each(ADMIN_PAGES)('$path of an admin is accessible, quiet, does not scroll sideways, and has its content', (page) => lookOver(admin, page))
+
+  it.each(OPEN_PAGES)('so is $path, which a link in a mail leads to', async (page) => {
+    const { context } = await visit(browser)
+    await lookOver(context, page)
     await context.close()
   })
-})
-
-it.each([320, 390, 1440])('none of them scrolls sideways at %i pixels', async (width) => {
-  const { context, page } = await visit(browser, { width, height: 844 })
-  await signIn(page, 'admin')
-  for (const { path } of [...ADMIN_PAGES, ...OPEN_PAGES]) {
-    await go(page, path)
-    expect(await overflow(page), path).toBeLessThanOrEqual(0)
-  }
-  await context.close()
 })
 
 it('a stranger is asked to sign in, and comes back to the page', async () => {
