@@ -25,8 +25,8 @@ export const inEdition = (t: { publishedFrom: AnyPgColumn; publishedUntil: AnyPg
 const within = (n: number): SQL => sql`r.published_from <= ${n} and (r.published_until is null or r.published_until > ${n})`
 
 /**
- * One query for each kind, the fields in the order of their names: so the text that JSON.stringify makes of a row is its
- * canonical one (RFC 8785), since a row is flat and its numbers are finite. The order of the kinds is that of their names too.
+ * One query for each kind, the fields in the order of their names: so the text that PostgreSQL makes of a row is, but for some numbers,
+ * its canonical one (RFC 8785), since a row is flat. The order of the kinds is that of their names too.
  */
 const KINDS: { [kind in keyof EditionContent]: (n: number, species: readonly string[]) => SQL } = {
   hyperfine_constants: (n) => sql`
@@ -35,11 +35,13 @@ const KINDS: { [kind in keyof EditionContent]: (n: number, species: readonly str
   isotopes: (n) => sql`
     select r.abundance_percent, r.evidence, r.g_i, r.isotope_id as id, i.mass_number, r.mass_u, r.note, r.source, i.species_id as species, r.two_i
     from isotope_revisions r join isotopes i on i.id = r.isotope_id where ${within(n)}`,
+  // a level's id ends with its ordinal (the constraint levels_id), so that 100 000 of them need not be looked up in levels
   levels: (n, species) => sql`
     select r.alternative_name, r.configuration, r.core_l, r.core_two_j, r.core_two_s, r.coupling, r.energy_evidence, r.energy_invcm, r.energy_literal,
-      r.energy_source, r.energy_unc_invcm, r.g_chosen, r.g_chosen_reason, r.level_id as id, r.l, r.l_outer, r.label, r.line_checked, r.note, l.ordinal,
-      r.outer_two_j, r.parity, r.repeat_index, r.retired_reason, r.revision, r.species_id as species, r.status, r.successor, r.two_j, r.two_k, r.two_s
-    from level_revisions r join levels l on l.id = r.level_id where r.species_id = any(${sql.param(species)}) and ${within(n)}`,
+      r.energy_source, r.energy_unc_invcm, r.g_chosen, r.g_chosen_reason, r.level_id as id, r.l, r.l_outer, r.label, r.line_checked, r.note,
+      split_part(r.level_id, '.', 2)::integer as ordinal, r.outer_two_j, r.parity, r.repeat_index, r.retired_reason, r.revision, r.species_id as species,
+      r.status, r.successor, r.two_j, r.two_k, r.two_s
+    from level_revisions r where r.species_id = any(${sql.param(species)}) and ${within(n)}`,
   measured_g: (n) => sql`
     select r.evidence, g.level_id as id, r.literal, r.note, r.source, r.unc, r.value
     from measured_g_revisions r join measured_g g on g.id = r.measured_g_id where ${within(n)}`,
@@ -58,11 +60,22 @@ const SPECIES_AT_ONCE = 20
 
 const ascending = (a: string, b: string): number => (a < b ? -1 : a > b ? 1 : 0)
 
+/** What ECMAScript may write otherwise than PostgreSQL: numbers with an exponent, and negative zero. */
+const OTHERWISE = /:-?[0-9.]+e[+-][0-9]|:-0[,}]/
+
 /**
- * One kind's entities with their canonical texts, part by part, in the order of their ids (several values of one level in the
+ * The canonical text of a row from the one that PostgreSQL makes. Both escape the same characters, and both write the shortest digits that
+ * give the number back; without an exponent (below 10^15, where no tie between two numbers has so few digits) those are the same.
+ */
+const canonicalText = (text: string): string => (OTHERWISE.test(text) ? JSON.stringify(JSON.parse(text)) : text)
+
+interface Written extends Record<string, unknown> { id: string; text: string }
+
+/**
+ * One kind's entities as their canonical texts, part by part, in the order of their ids (several values of one level in the
  * order of their text). Levels come species by species: the dot ends a species' name before any letter, so that the whole is in order.
  */
-async function* entitiesOf(db: Db | Tx, n: number, kind: keyof EditionContent): AsyncGenerator<{ entity: Entity; text: string }[]> {
+async function* entitiesOf(db: Db | Tx, n: number, kind: keyof EditionContent): AsyncGenerator<Written[]> {
   const parts: (readonly string[])[] = []
   if (kind === 'levels') {
     const { rows } = await db.execute<{ id: string }>(sql`select id from species`)
@@ -70,7 +83,7 @@ async function* entitiesOf(db: Db | Tx, n: number, kind: keyof EditionContent): 
     for (let i = 0; i < ids.length; i += SPECIES_AT_ONCE) parts.push(ids.slice(i, i + SPECIES_AT_ONCE))
   } else parts.push([])
   const ask = (part: readonly string[]) => {
-    const asked = db.execute<Entity>(KINDS[kind](n, part))
+    const asked = db.execute<Written>(sql`select e.id, row_to_json(e)::text as text from (${KINDS[kind](n, part)}) e`)
     // awaited below, unless whoever reads stops before
     asked.catch(() => undefined)
     return asked
@@ -80,14 +93,14 @@ async function* entitiesOf(db: Db | Tx, n: number, kind: keyof EditionContent): 
   for (let at = 0; at < parts.length; at += 1) {
     const { rows } = await asked
     if (at + 1 < parts.length) asked = ask(parts[at + 1] ?? [])
-    yield rows.map((entity) => ({ entity, text: JSON.stringify(entity) })).sort((a, b) => ascending(a.entity.id, b.entity.id) || ascending(a.text, b.text))
+    yield rows.map(({ id, text }) => ({ id, text: canonicalText(text) })).sort((a, b) => ascending(a.id, b.id) || ascending(a.text, b.text))
   }
 }
 
 /** Reads all that edition `n` shows, each kind in the order of its ids (several values of one level in the order of their text). */
 export async function readEditionContent(db: Db | Tx, n: number): Promise<EditionContent> {
   const content: EditionContent = { species: [], isotopes: [], sources: [], levels: [], measured_g: [], hyperfine_constants: [] }
-  for (const kind of KIND_NAMES) for await (const part of entitiesOf(db, n, kind)) for (const { entity } of part) content[kind].push(entity)
+  for (const kind of KIND_NAMES) for await (const part of entitiesOf(db, n, kind)) for (const { text } of part) content[kind].push(JSON.parse(text) as Entity)
   return content
 }
 
@@ -110,6 +123,9 @@ interface EditionHead {
   counts?: EditionCounts
 }
 
+/** No text of a value holds this, since quotes within one are escaped. */
+const ACTIVE = '"status":"active"'
+
 /**
  * The canonical text of an edition, piece by piece: one JSON object with what the edition is called, how much it holds, and all
  * that it shows, in the one form of RFC 8785. Returns what it counted at its end.
@@ -124,7 +140,7 @@ export async function* canonicalEdition(db: Db | Tx, { number, label, notes, con
       if (part.length === 0) continue
       yield `${begun ? ',' : ''}${part.map(({ text }) => text).join(',')}`
       begun = true
-      counts[kind] += kind === 'levels' ? part.reduce((sum, { entity }) => sum + (entity.status === 'active' ? 1 : 0), 0) : part.length
+      counts[kind] += kind === 'levels' ? part.reduce((sum, { text }) => sum + (text.includes(ACTIVE) ? 1 : 0), 0) : part.length
     }
     yield ']'
   }

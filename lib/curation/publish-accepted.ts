@@ -6,20 +6,25 @@ import { checkChangesInSteps } from './checks'
 import type { Parties } from './conflict-parties'
 import { baseWords, type InForce, inForceWords, readInForce } from './in-force'
 import type { ChangeInput, Checked, PublishedTable } from './rows'
-import { sameRow } from './stored-findings'
+import { storedAs } from './stored-row'
 import { publishedIn } from './subjects'
 import { loadPublishedTable, newestEdition } from './table'
 
 /** An accepted amendment on its way into the next edition. */
 export interface AcceptedAmendment { id: string; title: string; version: number; author: { id: string; name: string }; reviewer: string | null; changes: number }
 
-export interface AcceptedChange extends ChangeInput { amendment: string; baseRevision: number | null }
+export interface AcceptedChange extends ChangeInput {
+  amendment: string
+  baseRevision: number | null
+  /** The row stored with it, as the database writes it out; read for publishing, not for a preview. */
+  stored?: string | null
+}
 
 /** All that is accepted, with what the newest edition holds of it. */
 export interface Accepted { amendments: AcceptedAmendment[]; changes: AcceptedChange[]; table: PublishedTable; inForce: (kind: ChangeKind, subject: string) => InForce | null }
 
 interface AmendmentRow extends Record<string, unknown> { id: string; title: string; version: number; author_id: string; author_name: string; reviewer: string | null; changes: number }
-interface ChangeRow extends Record<string, unknown> { id: string; amendment: string; kind: ChangeKind; action: ChangeAction; subject: string; species: string | null; given: unknown; reason: string | null; successor: string | null; base: number | null }
+interface ChangeRow extends Record<string, unknown> { id: string; amendment: string; kind: ChangeKind; action: ChangeAction; subject: string; species: string | null; given: unknown; reason: string | null; successor: string | null; base: number | null; stored?: string | null }
 
 /**
  * Reads what is accepted. With `lock` the amendments' rows are held to the end of the transaction: an edit of one of them, which
@@ -33,7 +38,7 @@ export async function readAccepted(tx: Tx, lock: boolean): Promise<Accepted> {
       (select count(*)::integer from amendment_changes c where c.amendment_id = a.id) as changes
     from amendments a join users u on u.id = a.author where a.id = any(${sql.param(found.map(({ id }) => id))}::uuid[]) order by a.created_at, a.id`)
   const { rows } = await tx.execute<ChangeRow>(sql`
-    select c.id, c.amendment_id as amendment, c.kind, c.action, c.subject, c.species_id as species, c.given, c.reason, c.successor, c.base_revision as base
+    select c.id, c.amendment_id as amendment, c.kind, c.action, c.subject, c.species_id as species, c.given, c.reason, c.successor, c.base_revision as base${sql.raw(lock ? ', c.row::text as stored' : '')}
     from amendment_changes c where c.amendment_id = any(${sql.param(amendments.map(({ id }) => id))}::uuid[]) order by c.position`)
   const changes = rows.map(({ species, base, ...row }): AcceptedChange => ({ ...row, speciesId: species, baseRevision: base }))
   const species = new Set(changes.flatMap(({ speciesId }) => (speciesId === null ? [] : [speciesId])))
@@ -109,31 +114,26 @@ export function conflictsOf({ amendments, changes, table, inForce }: Accepted, c
   return conflicts
 }
 
-const PAGE = 5000
+const PAUSE_EVERY = 2000
 
 /**
  * Changes whose values are read otherwise now than when they were stored, which a new release of the readers may bring about: what was
- * accepted is then not what was checked. Page by page, so that 100 000 rows need no memory at once.
+ * accepted is then not what was checked. Gives the event loop back now and then.
  */
-export async function readOtherwise(tx: Tx, { amendments, changes }: Pick<Accepted, 'amendments' | 'changes'>, checked: ReadonlyMap<string, Checked>): Promise<PublicationConflict[]> {
-  const [byId, titles] = [new Map(changes.map((change) => [change.id, change])), new Map(amendments.map(({ id, title }) => [id, title]))]
+export async function readOtherwise({ amendments, changes }: Pick<Accepted, 'amendments' | 'changes'>, checked: ReadonlyMap<string, Checked>): Promise<PublicationConflict[]> {
+  const titles = new Map(amendments.map(({ id, title }) => [id, title]))
   const conflicts: PublicationConflict[] = []
-  for (let after = -1; ;) {
-    const { rows } = await tx.execute<{ id: string; row: unknown; position: string }>(sql`
-      select id, row, position from amendment_changes where amendment_id = any(${sql.param([...titles.keys()])}::uuid[]) and position > ${after} order by position limit ${PAGE}`)
-    for (const { id, row } of rows) {
-      const [change, now] = [byId.get(id), checked.get(id)]
-      if (change === undefined || now === undefined || sameRow(row, now.row)) continue
-      const title = titles.get(change.amendment) ?? ''
-      conflicts.push({
-        code: 'read_otherwise', kind: change.kind, subject: change.subject, detail: `The values of ${change.subject} in \u201c${title}\u201d are read otherwise now than when they were accepted: save the change again, and have it accepted.`,
-        changes: [{ amendment: { id: change.amendment, title }, change: id, subject: change.subject }], base_revision: null, current_revision: null,
-      })
-    }
-    const last = rows.at(-1)
-    if (last === undefined || rows.length < PAGE) return conflicts
-    after = Number(last.position)
+  for (const [at, change] of changes.entries()) {
+    if (at % PAUSE_EVERY === PAUSE_EVERY - 1) await new Promise((resolve) => void setImmediate(resolve))
+    const now = checked.get(change.id)
+    if (now === undefined || storedAs(change.stored ?? null, now.row)) continue
+    const title = titles.get(change.amendment) ?? ''
+    conflicts.push({
+      code: 'read_otherwise', kind: change.kind, subject: change.subject, detail: `The values of ${change.subject} in \u201c${title}\u201d are read otherwise now than when they were accepted: save the change again, and have it accepted.`,
+      changes: [{ amendment: { id: change.amendment, title }, change: change.id, subject: change.subject }], base_revision: null, current_revision: null,
+    })
   }
+  return conflicts
 }
 
 /** Runs every check on the union of what is accepted; the process goes on answering meanwhile. */

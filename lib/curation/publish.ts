@@ -7,8 +7,9 @@ import { knownCaller } from '@/lib/access/accounts'
 import { type Acting, recordAudit } from '@/lib/access/audit'
 import { CONSTANTS_EDITION } from '@/lib/atomic/constants'
 import { Problem } from '@/lib/problem'
-import type { NewEdition, PublicationConflict } from '@/openapi/schemas/edition'
+import type { NewEdition, NextEdition, PublicationConflict } from '@/openapi/schemas/edition'
 import { findParties } from './conflict-parties'
+import { collectAfter } from './import/memory'
 import { countChanges, MOST_CONFLICTS, suggestedNotes } from './next-edition'
 import { type Accepted, type AcceptedAmendment, checkUnion, conflictsOf, readAccepted, readOtherwise } from './publish-accepted'
 import { measuredDifference, readMeasuredInForce, writeMeasured } from './publish-measured'
@@ -19,6 +20,8 @@ import type { Checked, LevelRow } from './rows'
 const LOCK = 7_272_741
 /** One statement may write 100 000 revisions, and the connection waits while their checks run. */
 const PATIENCE = '10min'
+/** So that 100 000 changes are sorted, and seen by the guards, without files on disk. */
+const SORTING = '64MB'
 
 export const conflictProblem = (conflicts: readonly PublicationConflict[]): Problem => {
   const [first] = conflicts
@@ -40,13 +43,45 @@ function checkSeen(accepted: readonly AcceptedAmendment[], seen: NewEdition['ame
 async function write(tx: Tx, edition: number, { amendments, changes }: Accepted, measured: () => Promise<Map<string, Checked>>): Promise<void> {
   const publication = { edition, amendments: amendments.map(({ id }) => id) }
   await writeRevisions(tx, publication, new Set(changes.map(({ kind }) => kind)))
+  await writeFeed(tx, publication)
   const checked = await measured()
   const levels = changes.filter(({ kind, action }) => kind === 'level' && action !== 'retire')
   const known = levels.filter(({ action }) => action === 'replace').map(({ subject }) => subject)
   const inForce = known.length === 0 ? new Map<string, never[]>() : await readMeasuredInForce(tx, known)
   const wanted = levels.map(({ id, subject, amendment }) => ({ level: subject, amendment, wanted: (checked.get(id)?.row as LevelRow | null)?.measured ?? [] }))
   await writeMeasured(tx, edition, measuredDifference(wanted, inForce))
-  await writeFeed(tx, publication)
+}
+
+/** What stands in the way of the edition, and what its notes say where nothing does. */
+async function judge(accepted: Accepted, checking: Promise<Map<string, Checked>>, notes: string | undefined): Promise<{ conflicts: PublicationConflict[]; otherwise: PublicationConflict[]; notes: string }> {
+  const checked = await checking
+  const conflicts = conflictsOf(accepted, checked, await findParties(accepted, checked))
+  if (conflicts.length > 0) return { conflicts, otherwise: [], notes: '' }
+  return { conflicts, otherwise: await readOtherwise(accepted, checked), notes: notes ?? suggestedNotes(accepted, checked) }
+}
+
+/** What of the changes is told of the edition once they are written. */
+interface Entered { number: number; notes: string; counts: NextEdition['counts']; amendments: AcceptedAmendment[] }
+
+/** Reads, checks and writes all that is accepted. The changes themselves are let go of: the edition is read anew for its checksum, which needs the memory. */
+async function enter(tx: Tx, given: NewEdition): Promise<Entered> {
+  const accepted = await readAccepted(tx, true)
+  checkSeen(accepted.amendments, given.amendments)
+  if (accepted.amendments.length === 0) throw new Problem('nothing_to_publish', 'No amendment is accepted and waiting; nothing was published.')
+  const number = accepted.table.edition + 1
+  const checking = checkUnion(accepted)
+  // the database writes while the checks run here; what they find goes before what it may refuse
+  const writing = write(tx, number, accepted, () => checking).then(() => null, (error: unknown) => ({ error }))
+  const { conflicts, otherwise, notes } = await judge(accepted, checking, given.notes).catch(async (error: unknown) => {
+    // what is being written has to end in this transaction, not after it
+    await writing
+    throw error
+  })
+  const refused = await writing
+  if (conflicts.length > 0) throw conflictProblem(conflicts)
+  if (refused !== null) throw refused.error
+  if (otherwise.length > 0) throw conflictProblem(otherwise)
+  return { number, notes, counts: countChanges(accepted.changes), amendments: accepted.amendments }
 }
 
 /**
@@ -57,34 +92,17 @@ async function write(tx: Tx, edition: number, { amendments, changes }: Accepted,
 export async function publishEdition(db: Db, acting: Acting, given: NewEdition): Promise<number> {
   const caller = knownCaller(acting.caller)
   return db.transaction(async (tx) => {
-    await tx.execute(sql.raw(`set local statement_timeout = '${PATIENCE}'; set local idle_in_transaction_session_timeout = '${PATIENCE}'`))
+    await tx.execute(sql.raw(`set local statement_timeout = '${PATIENCE}'; set local idle_in_transaction_session_timeout = '${PATIENCE}'; set local work_mem = '${SORTING}'`))
     await tx.execute(sql`select pg_advisory_xact_lock(${LOCK})`)
-    const accepted = await readAccepted(tx, true)
-    checkSeen(accepted.amendments, given.amendments)
-    if (accepted.amendments.length === 0) throw new Problem('nothing_to_publish', 'No amendment is accepted and waiting; nothing was published.')
-    const number = accepted.table.edition + 1
-    const checking = checkUnion(accepted)
-    // the database writes while the checks run here; what they find goes before what it may refuse
-    const writing = write(tx, number, accepted, () => checking).then(() => null, (error: unknown) => ({ error }))
-    const checked = await checking.catch(async (error: unknown) => {
-      await writing
-      throw error
-    })
-    const conflicts = conflictsOf(accepted, checked, await findParties(accepted, checked))
-    const refused = await writing
-    if (conflicts.length > 0) throw conflictProblem(conflicts)
-    if (refused !== null) throw refused.error
-    const otherwise = await readOtherwise(tx, accepted, checked)
-    if (otherwise.length > 0) throw conflictProblem(otherwise)
-    const notes = given.notes ?? suggestedNotes(accepted, checked)
+    const { number, notes, counts, amendments } = await enter(tx, given)
+    collectAfter(counts.changes)
     const [person] = await tx.select({ name: users.name }).from(users).where(eq(users.id, caller.userId))
-    const counts = countChanges(accepted.changes)
     const head = { number, label: given.label, notes, constants: CONSTANTS_EDITION, publishedBy: caller.userId, ...(person === undefined ? {} : { publisherName: person.name }) }
     await recordEvent(tx, 'edition.published', { edition: number, label: given.label, since: number - 1 })
     const sealed = await sealEdition(tx, head)
     await recordAudit(tx, acting, {
       action: 'edition.publish', subjectKind: 'edition', subjectId: String(number),
-      after: { label: given.label, checksum: sealed.checksum, counts: sealed.counts, changes: counts, amendments: accepted.amendments.map(({ id, title, version }) => ({ id, title, version })) },
+      after: { label: given.label, checksum: sealed.checksum, counts: sealed.counts, changes: counts, amendments: amendments.map(({ id, title, version }) => ({ id, title, version })) },
     })
     return number
   })

@@ -3,22 +3,18 @@ import type { Tx } from '@/db/client'
 import type { ChangeRow } from './change-view'
 import { storable } from './editing'
 import type { Checked } from './rows'
+import { sameRow } from './stored-row'
 
-const same = (row: ChangeRow, checked: Checked): boolean => sameRow(row.findings, checked.findings) && sameRow(row.row, checked.row)
+/** A change as it is stored, as far as a new check may say otherwise. */
+type Judged = Pick<ChangeRow, 'id' | 'row' | 'findings'>
 
-/** jsonb gives the members back in an order of its own. */
-export function sameRow(a: unknown, b: unknown): boolean {
-  if (typeof a !== 'object' || typeof b !== 'object' || a === null || b === null) return a === b
-  const [x, y] = [a as Record<string, unknown>, b as Record<string, unknown>]
-  const keys = Object.keys(x)
-  return keys.length === Object.keys(y).length && keys.every((key) => sameRow(x[key], y[key]))
-}
+const same = (row: Judged, checked: Checked): boolean => sameRow(row.findings, checked.findings) && sameRow(row.row, checked.row)
 
 const count = (checked: Checked, severity: 'error' | 'warning'): number => checked.findings.filter((one) => one.severity === severity).length
 const BATCH = 2000
 
 /** Writes what a new check found where it is not what is stored. The version of a change stays: nobody edited it. */
-export async function storeFindings(tx: Tx, judged: readonly { row: ChangeRow; checked: Checked }[]): Promise<void> {
+export async function storeFindings(tx: Tx, judged: readonly { row: Judged; checked: Checked }[]): Promise<void> {
   const different = judged.filter(({ row, checked }) => !same(row, checked))
   for (let from = 0; from < different.length; from += BATCH) {
     const batch = different.slice(from, from + BATCH).map(({ row, checked }) => ({ id: row.id, row: checked.row, findings: checked.findings, errors: count(checked, 'error'), warnings: count(checked, 'warning') }))

@@ -2,7 +2,7 @@ import { quoted } from '@/lib/units/number'
 import type { FieldDifference, Finding, LevelValues } from '@/openapi/schemas/change'
 import type { ImportVerdict } from '@/openapi/schemas/import'
 import { checkChangesInSteps } from '../checks'
-import type { ChangeInput, LevelRow, PublishedTable, SpeciesRow } from '../rows'
+import type { ChangeInput, Checked, LevelRow, PublishedTable, SpeciesRow } from '../rows'
 import { type Atom, atomOf, differences, readLevelValues } from '../values'
 import { fault, type Reader, RowCells } from './cells'
 import { contradictions, olderRevision, saysTheSame, valuesOf } from './level-values'
@@ -196,7 +196,7 @@ const inputOf = (id: string, change: RowChange): ChangeInput => ({
 })
 
 /** Checks everything that the amendment would hold, in union, and settles the verdicts. Resolves to what is found anew about changes that were there before. */
-export async function checkPlan(rows: PlannedRow[], ground: Ground, steps: Steps): Promise<Map<string, { row: unknown; findings: Finding[] }>> {
+export async function checkPlan(rows: PlannedRow[], ground: Ground, steps: Steps): Promise<Map<string, Checked>> {
   const gone = new Set(rows.flatMap(({ change, takeOut }) => [takeOut, change?.known?.changeId].filter((id) => typeof id === 'string')))
   const staying = ground.own.filter(({ id }) => !gone.has(id))
   const making = rows.flatMap((planned) => (planned.change === null ? [] : [{ planned, change: planned.change }]))

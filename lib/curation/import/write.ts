@@ -1,12 +1,13 @@
 import { sql } from 'drizzle-orm'
 import type { Db, Tx } from '@/db/client'
-import type { Finding } from '@/openapi/schemas/change'
-import { type AmendmentRow, insertChanges, noteEdit, type PreparedChange, recordAuthors, reserveOrdinals, storable } from '../editing'
+import { type AmendmentRow, insertChanges, noteEdit, type PreparedChange, recordAuthors, reserveOrdinals } from '../editing'
+import type { Checked } from '../rows'
+import { storeFindings } from '../stored-findings'
 import type { LoadedGround } from './ground'
 import { collectAfter } from './memory'
 import { type PlannedRow, renamed, type RowChange, type Steps, turn } from './plan'
 
-interface Target { amendment: AmendmentRow; author: string; importId: string; ground: LoadedGround; reserved: Reserved; others: ReadonlyMap<string, { row: unknown; findings: Finding[] }> }
+interface Target { amendment: AmendmentRow; author: string; importId: string; ground: LoadedGround; reserved: Reserved; others: ReadonlyMap<string, Checked> }
 type Making = PlannedRow & { change: RowChange }
 
 const BATCH = 1000
@@ -54,17 +55,11 @@ async function takeOut(tx: Tx, rows: readonly PlannedRow[]): Promise<boolean> {
   return ids.length > 0
 }
 
-/** What is found anew about changes that were there before. */
-async function storeOtherFindings(tx: Tx, { ground, others }: Target): Promise<void> {
-  const moved = ground.own.flatMap(({ id, findings }) => {
-    const now = others.get(id)?.findings
-    return now === undefined || JSON.stringify(now) === JSON.stringify(findings) ? [] : [{ id, findings: now, errors: now.filter((one) => one.severity === 'error').length, warnings: now.filter((one) => one.severity === 'warning').length }]
-  })
-  for (let from = 0; from < moved.length; from += BATCH) {
-    await tx.execute(sql`update amendment_changes c set findings = r.findings, errors = r.errors, warnings = r.warnings
-      from jsonb_to_recordset(${storable(moved.slice(from, from + BATCH))}::jsonb) as r (id uuid, findings jsonb, errors int, warnings int) where c.id = r.id`)
-  }
-}
+/** What is found anew about changes that were there before, under the names that new levels have got. */
+const judgedAnew = ({ ground, others }: Target, nameOf: (row: number) => string) => ground.own.flatMap((row) => {
+  const checked = others.get(row.id)
+  return checked === undefined ? [] : [{ row, checked: { row: checked.row, findings: renamed(checked.findings, nameOf) } }]
+})
 
 /**
  * Writes what the rows make of the amendment, and raises its version; null where they make nothing. The rows get the levels that were
@@ -102,7 +97,7 @@ export async function writePlan(tx: Tx, target: Target, rows: readonly PlannedRo
     for (const planned of making.splice(0, BATCH)) (planned as PlannedRow).change = null
     if ((written += prepared.length) % COLLECT_EVERY === 0) collectAfter(total)
   }
-  await storeOtherFindings(tx, target)
+  await storeFindings(tx, judgedAnew(target, nameOf))
   await recordAuthors(tx, amendment.id, author)
   return noteEdit(tx, amendment, author)
 }
