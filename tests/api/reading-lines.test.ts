@@ -2,9 +2,9 @@ import { describe, expect, it } from 'vitest'
 import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 import { type Json, get, ask, faultsOf } from './helpers/client'
 
-/** Components of a line; the query begins after `?`. */
+/** Components of a line in the linear model; the query begins after `?`. */
 async function components(line: string, query: string): Promise<Json> {
-  const reply = await get(`/transitions/${line}/components?${query}`)
+  const reply = await get(`/transitions/${line}/components?model=linear&${query}`)
   expect(reply.status, reply.text).toBe(200)
   return reply.json.data
 }
@@ -51,13 +51,13 @@ describe('the sodium D lines at 1.5 T', () => {
   })
 
   it('keeps the whole shape of a component', async () => {
-    const reply = await get('/transitions/Na-I.1~Na-I.3/components?field=15kG&theta_deg=90&field_unc=10mT')
+    const reply = await get('/transitions/Na-I.1~Na-I.3/components?field=15kG&theta_deg=90&field_unc=10mT&model=linear')
     const { data, meta } = reply.json
     expect(data).toMatchObject({ transition: 'Na-I.1~Na-I.3', field_tesla: 1.5, model: 'linear', theta_deg: 90 })
     const first = data.components[0] as Json
     expect(Object.keys(first).sort()).toEqual(
-      ['budget', 'frequency_thz', 'intensity', 'intensity_status', 'm_lower', 'm_upper', 'polarisation', 'q', 'shift_ghz', 'shift_invcm', 'shift_lorentz', 'shift_pm', 'stokes_q', 'stokes_v', 'strength',
-        'vanishes_by', 'wavelength_air_nm', 'wavelength_vac_nm', 'wavenumber_invcm', 'wavenumber_known_unc_invcm', 'wavenumber_unc_invcm'].sort(),
+      ['budget', 'derivative_invcm_per_tesla', 'frequency_thz', 'intensity', 'intensity_status', 'j_lower', 'j_upper', 'm_l_lower', 'm_l_upper', 'm_lower', 'm_s_lower', 'm_s_upper', 'm_upper', 'polarisation', 'q',
+        'shift_ghz', 'shift_invcm', 'shift_lorentz', 'shift_mhz', 'shift_pm', 'stokes_q', 'stokes_v', 'strength', 'vanishes_by', 'wavelength_air_nm', 'wavelength_vac_nm', 'wavenumber_invcm', 'wavenumber_known_unc_invcm', 'wavenumber_unc_invcm'].sort(),
     )
     expect(first.shift_invcm).toBeCloseTo((first.shift_lorentz as number) * 1.5 * MU_B_OVER_HC_INVCM_PER_T, 14)
     expect(first.shift_ghz).toBe((first.shift_invcm as number) * 29.9792458)
@@ -66,17 +66,18 @@ describe('the sodium D lines at 1.5 T', () => {
     // wavelength grows where wavenumber falls
     expect(first.shift_pm).toBeGreaterThan(0)
     expect(first.shift_pm).toBeCloseTo(1000 * ((first.wavelength_air_nm as number) - (data.centre?.wavelength_air_nm as number)), 8)
-    expect(of(first.budget, 'part')).toEqual(['energy_lower', 'energy_upper', 'g_lower', 'g_upper', 'field'])
+    expect(of(first.budget, 'part')).toEqual(['energy_lower', 'energy_upper', 'g_lower', 'g_upper', 'field', 'constants'])
     expect(first.budget[4]).toMatchObject({ status: 'known', value_invcm: expect.closeTo(Math.abs(first.shift_lorentz as number) * 0.01 * MU_B_OVER_HC_INVCM_PER_T, 14) as number })
     expect(first).toMatchObject({ wavenumber_unc_invcm: null })
     expect(meta?.conventions).toMatchObject({ g_l: 1, normalisation: 'line: the strengths of each q sum to 1 at zero field.' })
   })
 
-  it('warns that auto is linear, and not when linear was asked', async () => {
+  it('says which model auto took', async () => {
     const auto = await get('/transitions/Na-I.1~Na-I.3/components?field=1.5T')
-    expect(of(auto.json.meta.warnings, 'code')).toContain('intermediate_not_built')
+    // strengths are off by 3 % there
+    expect([auto.json.meta.model, auto.json.data.validity.strengths.status]).toEqual(['intermediate', 'not_valid'])
     const linear = await get('/transitions/Na-I.1~Na-I.3/components?field=1.5T&model=linear')
-    expect(of(linear.json.meta.warnings, 'code')).not.toContain('intermediate_not_built')
+    expect([linear.json.meta.model, linear.json.data.validity.strengths.status]).toEqual(['linear', 'not_valid'])
   })
 
   it('warns of the hyperfine structure that is left out, with its size beside that of the field', async () => {
@@ -203,7 +204,6 @@ describe('forbidden pairs and refusals', () => {
 
   it.each([
     ['/transitions/Na-I.1~Na-I.4/components?field=1T&kind=E1', 'transition_forbidden', /parity/],
-    ['/transitions/Na-I.1~Na-I.3/components?field=1T&model=intermediate', 'intermediate_not_built', /linear/],
     ['/transitions/Na-I.1~K-I.2', 'species_differ', /one/],
     ['/transitions/Na-I.1~Na-I.1', 'zero_interval', /twice/],
     ['/transitions/C-II.1~C-II.1/components?field=1T', 'zero_interval', /twice/],

@@ -94,17 +94,19 @@ describe('sublevels of a term given in the request', () => {
   it('takes one field as text or as a number in tesla', async () => {
     const [text, number] = [await compute({ levels: [half], field: '15kG' }), await compute({ levels: [half], field: 1.5 })]
     expect(text.json.data).toEqual(number.json.data)
-    expect(text.json.meta.warnings.map((warning: Json) => warning.code)).toEqual(['intermediate_not_built'])
+    expect(text.json.meta.warnings.map((warning: Json) => warning.code)).toEqual(['term_incomplete'])
   })
 
   it.each([
     [{ levels: [half, { ...threeHalves, l: 2 }], field: 1 }, 422, ['/levels/1/l term_mixed']],
     [{ levels: [half, half], field: 1 }, 422, ['/levels/1/j term_mixed']],
     [{ levels: [{ ...half, j: 2.5 }], field: 1 }, 422, ['/levels/0/j term_impossible']],
-    [{ levels: [half], field: 1, model: 'intermediate' }, 422, ['/model intermediate_not_built']],
+    [{ levels: [half], field: 1, model: 'intermediate' }, 422, ['/levels term_incomplete']],
     [{ levels: [half], field: '3furlong' }, 400, ['/field field_unit_unknown']],
     [{ levels: [half], field: { values: [1, 20000], unit: 'T' } }, 400, ['/field/values/1 field_too_large']],
-    [{ level: { j: 0.5, g_j: 2 }, nucleus: { i: 1.5, a_mhz: 885.8 }, field: 1 }, 422, ['/nucleus hyperfine_not_built']],
+    [{ level: { j: 0.5 }, nucleus: { i: 1.5, a_mhz: 885.8 }, field: 1 }, 422, ['/level/g_j g_unknown']],
+    [{ level: { j: 0, g_j: 1 }, nucleus: { i: 1.5, a_mhz: 885.8 }, field: 1 }, 422, ['/level/g_j g_impossible']],
+    [{ level: { j: 0.3, g_j: 2 }, nucleus: { i: 1.5, a_mhz: 885.8 }, field: 1 }, 400, ['/level/j half_integer_malformed']],
   ])('refuses %j', async (body, status, faults) => {
     const reply = await compute(body)
     expect([reply.status, ...faultsOf(reply)]).toEqual([status, ...faults])

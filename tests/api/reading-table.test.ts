@@ -111,7 +111,7 @@ describe('sublevels', () => {
   })
 
   it('a level of J = 0 has one, which does not move', async () => {
-    expect((await get('/levels/Hg-I.1/sublevels?field=3T')).json.data).toEqual([{ m: 0, shift_invcm: 0, shift_ghz: 0, energy_invcm: 0 }])
+    expect((await get('/levels/Hg-I.1/sublevels?field=3T')).json.data).toMatchObject([{ j: 0, m: 0, shift_invcm: 0, shift_ghz: 0, shift_mhz: 0, energy_invcm: 0, derivative_invcm_per_tesla: 0 }])
   })
 })
 

@@ -17,7 +17,7 @@ describe('the envelope', () => {
 
   it('tells the physics version, model and conventions of what is computed', async () => {
     const reply = await get(COMPONENTS)
-    expect(reply.json.meta).toMatchObject({ physics: PHYSICS_VERSION, model: 'linear' })
+    expect(reply.json.meta).toMatchObject({ physics: PHYSICS_VERSION, model: 'intermediate' })
     expect(reply.json.meta?.conventions).toBeTypeOf('object')
   })
 
