@@ -17,14 +17,23 @@ export const mayHaveHoles = (quantity: PredictionQuantity): boolean => quantity 
 
 const NM_WITHOUT = Number.NaN
 
-/** Shifts (cm^-1) to the quantity asked, in place. */
+/** Shifts (cm^-1) to the quantity asked, in place; a loop for each, since this is what all values go through. */
 function convertValues(quantity: PredictionQuantity, centre: number, values: Float64Array, at: number, count: number): void {
-  for (let i = at; i < at + count; i += 1) {
-    const shift = values[i] as number
-    if (quantity === 'wavenumber_invcm') values[i] = centre + shift
-    else if (quantity === 'shift_ghz') values[i] = shift * GHZ_PER_INVCM
-    else if (quantity === 'frequency_thz') values[i] = thzOfWavenumber(centre + shift)
-    else if (quantity !== 'shift_invcm') values[i] = wavelengthOf(quantity, centre + shift)
+  const to = at + count
+  switch (quantity) {
+    case 'shift_invcm':
+      return
+    case 'wavenumber_invcm':
+      for (let i = at; i < to; i += 1) values[i] = centre + (values[i] as number)
+      return
+    case 'shift_ghz':
+      for (let i = at; i < to; i += 1) values[i] = (values[i] as number) * GHZ_PER_INVCM
+      return
+    case 'frequency_thz':
+      for (let i = at; i < to; i += 1) values[i] = thzOfWavenumber(centre + (values[i] as number))
+      return
+    default:
+      for (let i = at; i < to; i += 1) values[i] = wavelengthOf(quantity, centre + (values[i] as number))
   }
 }
 
@@ -108,7 +117,7 @@ export class BlockReader {
     const centre = this.block.centres[component] as number
     if (column === 'value') {
       this.shifts(component, part, out, at)
-      if (this.options.quantity !== 'shift_invcm') convertValues(this.options.quantity, centre, out, at, to - from)
+      convertValues(this.options.quantity, centre, out, at, to - from)
     } else if (column === 'derivative') this.derivatives(component, part, centre, out, at)
     else {
       this.strengths(component, part, out, at)

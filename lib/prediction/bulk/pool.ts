@@ -36,7 +36,7 @@ export interface PoolSettings {
 
 /** Slices that a worker has at once: one being worked on, one to go on with. */
 const IN_FLIGHT = 2
-/** Chunks of one job that wait to be taken. */
+/** Chunks of one job that are ready or asked for: two, so that a caller of one job has as many turns as one of several. */
 const AHEAD = 2
 
 const interrupted = (detail: string): Problem => new Problem('computing_interrupted', detail, { headers: { 'retry-after': '2' } })
@@ -55,8 +55,8 @@ export class Job {
   private taker: { resolve: (chunk: Uint8Array | null) => void; reject: (reason: unknown) => void } | null = null
   private ended = false
   private failure: unknown = null
-  /** A slice is waiting for its turn or being worked on. */
-  asked = false
+  /** Slices that wait for their turn or are being worked on. */
+  asked = 0
   chunks = 0
 
   constructor(readonly id: number, readonly caller: string, private readonly pool: Pool) {}
@@ -76,7 +76,7 @@ export class Job {
 
   /** Whether a further slice should be worked on. */
   get hungry(): boolean {
-    return !this.ended && this.failure === null && !this.asked && this.ready.length < AHEAD
+    return this.open && this.asked + this.ready.length < AHEAD
   }
 
   get open(): boolean {
@@ -203,12 +203,11 @@ export class Pool {
     return bench
   }
 
-  /** A job would have its next slice worked on. */
+  /** A job would have its next slices worked on. */
   wants(job: Job): void {
     const bench = this.homes.get(job)
-    if (bench === undefined || !job.hungry) return
-    job.asked = true
-    bench.turns.add(job.caller, job)
+    if (bench === undefined) return
+    for (; job.hungry; job.asked += 1) bench.turns.add(job.caller, job)
     this.feed(bench)
   }
 
@@ -226,7 +225,7 @@ export class Pool {
     this.counts.slices += 1
     const job = [...bench.jobs].find((one) => one.id === message.id)
     if (job !== undefined) {
-      job.asked = false
+      job.asked -= 1
       if (message.type === 'chunk') job.take(message.bytes)
       else if (message.type === 'done') job.end()
       else if (message.type === 'failed') {
@@ -248,7 +247,6 @@ export class Pool {
     if (bench === undefined) return
     this.counts.cancelled += 1
     this.settings.tell?.({ event: 'cancelled', detail: { caller: job.caller, chunks: job.chunks } })
-    bench.turns.remove(job.caller, job)
     bench.worker.postMessage({ type: 'drop', id: job.id })
     this.close(job)
   }
@@ -256,6 +254,7 @@ export class Pool {
   private close(job: Job): void {
     const bench = this.homes.get(job)
     if (bench === undefined) return
+    while (bench.turns.remove(job.caller, job));
     bench.jobs.delete(job)
     this.homes.delete(job)
     const left = (this.active.get(job.caller) ?? 1) - 1
