@@ -5,7 +5,7 @@ import type { DeterminedField } from '@/openapi/schemas/field-fits'
 import { BottomAxis } from '@/app/_components/plots/axis'
 import { PlotFrame } from '@/app/_components/plots/plot-frame'
 import { polarisationName, styleOf } from '@/app/_components/plots/polarisation'
-import { ruler } from '@/app/_components/plots/ruler'
+import { ruler, spread } from '@/app/_components/plots/ruler'
 import { DataTable, type Column } from '@/app/_components/data-table'
 import { halves } from '@/app/_components/number'
 
@@ -54,17 +54,17 @@ export function FittedPattern({ answer, names }: { answer: DeterminedField; name
           const axis = top + HALF + 6
           const bottom = axis + HALF + 6
           const tallest = Math.max(...pattern.map((c) => c.strength))
+          const labels = spread(measured.map((r) => x(r.position_invcm - centre)), 15, left, right)
           return (
             <g key={line}>
               {lines.length > 1 ? <text x={left} y={top - 6} fontSize={12} fill="var(--muted)">{names[line] ?? `line ${line + 1}`}</text> : null}
               <path d={`M${left},${axis}H${right}`} stroke="var(--rule-strong)" />
-              {measured.map((r) => {
+              {measured.map((r, n) => {
                 const at = x(r.position_invcm - centre)
-                const up = (r.components[0]?.q ?? 0) === 0
                 return (
                   <g key={r.measurement}>
-                    <path d={`M${at},${axis - HALF}V${axis + HALF}`} stroke="var(--lamp)" strokeWidth={1} strokeDasharray="2 3" />
-                    <text x={at} y={up ? axis - HALF - 3 : axis + HALF + 11} textAnchor="middle" fontSize={11} fontWeight={600} fill="var(--lamp-ink)">{r.measurement + 1}</text>
+                    <path d={`M${at},${axis + HALF}V${axis - HALF + 6}L${labels[n] ?? at},${axis - HALF}`} stroke="var(--lamp)" strokeWidth={1} strokeDasharray="2 3" fill="none" />
+                    <text x={labels[n] ?? at} y={axis - HALF - 3} textAnchor="middle" fontSize={11} fontWeight={600} fill="var(--lamp-ink)">{r.measurement + 1}</text>
                   </g>
                 )
               })}

@@ -43,7 +43,7 @@ export function MeasureView() {
       </div>
       <PrintHead lines={lines} meta={fit.answer?.meta} address={address} />
       {address.invented ? (
-        <div className="mb-5">
+        <div className="no-print mb-5">
           <Notice tone="warn" title="An example with invented data.">
             <p>These positions were made up for this page: sodium D2 at 0.8&#8239;T with noise. Nobody measured them.</p>
           </Notice>

@@ -124,9 +124,9 @@ export function PositionsGrid({ rows, onChange, lines, header, byHand, read, dis
                       </select>
                     </td>
                   ) : null}
-                  <td>{numberCell(row, place, 'value', header, 'w-32!')}</td>
-                  <td>{numberCell(row, place, 'unc', 'Uncertainty', 'w-20!')}</td>
-                  <td className="min-w-38">
+                  <td>{numberCell(row, place, 'value', header, 'w-27! sm:w-32!')}</td>
+                  <td>{numberCell(row, place, 'unc', 'Uncertainty', 'w-17! sm:w-20!')}</td>
+                  <td className="min-w-36">
                     <AssignmentSelect row={row} line={lines[row.line]} byHand={byHand} label={`Component of ${place + 1}`} disabled={disabled} onChange={(assigned) => set(place, { assigned })} />
                     {residual ? (
                       <span className="note mt-0.5 flex items-center gap-1.5 text-2xs">

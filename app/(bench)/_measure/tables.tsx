@@ -56,7 +56,7 @@ export function BudgetTable({ answer, unit }: { answer: DeterminedField; unit: F
   const columns: Column<Line>[] = [
     { name: 'part', header: 'Part', rowHeader: true, value: (row) => row.part, cell: (row) => PART_NAME[row.part] },
     { name: `unc_${unit}`, header: 'One σ of B', align: 'right', value: (row) => (row.value_tesla === null ? null : fieldIn(row.value_tesla, unit)), cell: (row) => (row.status === 'exact' ? 'none' : row.value_tesla === null ? <span className="text-warn">not known</span> : uncText(row.value_tesla, unit)) },
-    { name: 'share', header: 'Share', align: 'right', value: (row) => (row.value_tesla === null || !total ? null : (row.value_tesla / total) ** 2), cell: (row) => (row.value_tesla === null || !total ? <span className="text-muted">–</span> : `${significant(100 * (row.value_tesla / total) ** 2, 2)} %`) },
+    { name: 'share', header: 'Share', align: 'right', value: (row) => (row.value_tesla === null || !total ? null : (row.value_tesla / total) ** 2), cell: (row) => (row.value_tesla === null || row.value_tesla === 0 || !total ? <span className="text-muted">–</span> : (row.value_tesla / total) ** 2 < 1e-4 ? 'under 0.01 %' : `${significant(100 * (row.value_tesla / total) ** 2, 2)} %`) },
   ]
   return <DataTable columns={columns} rows={answer.budget} rowKey={(row) => row.part} caption="Budget of the uncertainty" hideCaption />
 }

@@ -28,7 +28,7 @@ export function fieldText(tesla: number, unc: number | null, unit: FieldUnit): s
 export const uncText = (tesla: number, unit: FieldUnit): string => {
   const value = fieldIn(tesla, unit)
   const digits = value > 0 ? Math.max(0, 1 - Math.floor(Math.log10(value))) : 0
-  return `${digits > 12 ? significant(value, 2) : fixed(value, digits)}\u202f${unit}`
+  return `${digits > 6 ? significant(value, 2) : fixed(value, digits)}\u202f${unit}`
 }
 
 /** Which model was used and whether it holds, in a sentence. */

@@ -44,7 +44,7 @@ export function HeaderBar({ curator = false }: { curator?: boolean }) {
         Lodeterm
       </Link>
       <nav aria-label="Main" className="order-3 -mx-2 w-full lg:order-2 lg:w-auto">
-        <ul className="flex">
+        <ul className="flex flex-wrap">
           {ROOMS.filter((room) => curator || room.curators !== true).map((room) => {
             const here = room.is(path)
             return (
