@@ -34,6 +34,8 @@ export interface Isotope {
   /** I, a half-integer. */
   nuclear_spin: number | null
   abundance_percent: number | null
+  /** g_I' in units of mu_B, negative for a positive moment. */
+  g_i: number | null
   source: string | null
   evidence: Evidence
 }
@@ -262,10 +264,95 @@ export interface GFactor {
 }
 
 export interface Sublevel {
+  /** By continuity from zero field; null where two zero-field energies of the term coincide. */
+  j: number | null
   m: number
+  /** M_L that the sublevel tends to at high field; null in the linear model, which names none. */
+  m_l: number | null
+  /** M_S that it tends to at high field. */
+  m_s: number | null
   shift_invcm: number
   shift_ghz: number
+  shift_mhz: number
   energy_invcm: number
+  /** Of the energy with respect to the field; analytic. */
+  derivative_invcm_per_tesla: number
+  /** Quadratic shift; part of shift and energy with diamagnetic=true only. */
+  diamagnetic_shift_invcm: number | null
+  diamagnetic_status: ValueStatus
+  /** Of |J m> in the state; with amplitudes=true. */
+  amplitudes?: {
+    j: number
+    amplitude: number
+  }[]
+}
+
+export interface HyperfineSublevel {
+  mass_number: number
+  /** By continuity from zero field; null where two zero-field energies coincide. */
+  f: number | null
+  m_f: number
+  /** m_J that the sublevel tends to at high field. */
+  m_j: number
+  /** m_I that it tends to at high field. */
+  m_i: number
+  /** From the hyperfine level F at zero field. */
+  shift_mhz: number
+  /** From the centre of gravity of the level J. */
+  energy_mhz: number
+  /** From the ground level. */
+  energy_invcm: number
+  derivative_mhz_per_tesla: number
+  /** Of |m_J, m_I> in the state; with amplitudes=true. */
+  amplitudes?: {
+    m_j: number
+    m_i: number
+    amplitude: number
+  }[]
+}
+
+export interface Crossings {
+  /** Species, dot, ordinal given at creation and never reused. */
+  level: string
+  /** Null without hyperfine structure. */
+  mass_number: number | null
+  a: {
+    name: string
+    f: number | null
+    j: number | null
+    m: number
+  }
+  b: {
+    name: string
+    f: number | null
+    j: number | null
+    m: number
+  }
+  from_tesla: number
+  to_tesla: number
+  crossings: {
+    field_tesla: number
+    field_gauss: number
+    /** Of E(a) - E(b). */
+    slope_mhz_per_tesla: number
+  }[]
+  /** Two sublevels of one m do not cross: where they are nearest. */
+  anticrossings: {
+    field_tesla: number
+    field_gauss: number
+    gap_mhz: number
+    gap_invcm: number
+  }[]
+  /** Where the difference does not change with the field to first order. */
+  stationary: ({
+    field_tesla: number
+    field_gauss: number
+    difference_mhz: number
+    difference_invcm: number
+    curvature_mhz_per_tesla2: number
+    /** Of E(a) - E(b). */
+    kind: 'minimum' | 'maximum'
+  })[]
 }
 
 export interface Transition {
@@ -337,7 +424,7 @@ export interface TransitionDetail {
   g_eff_status: ValueStatus
   pattern: Pattern
   moments_lorentz: Moments
-  /** The levels of both terms, which is what the validity of the linear law is judged from. */
+  /** The levels of both terms: what the intermediate model diagonalises and the linear law is judged by. */
   terms: {
     lower: {
       s: number | null
@@ -347,7 +434,10 @@ export interface TransitionDetail {
         id: string
         j: number
         energy_invcm: number
+        energy_unc_invcm: number | null
         g_j: number | null
+        /** One standard deviation of the adopted g_J. */
+        g_j_unc: number | null
       })[]
       missing_j: number[]
     }
@@ -359,12 +449,20 @@ export interface TransitionDetail {
         id: string
         j: number
         energy_invcm: number
+        energy_unc_invcm: number | null
         g_j: number | null
+        /** One standard deviation of the adopted g_J. */
+        g_j_unc: number | null
       })[]
       missing_j: number[]
     }
   }
-  /** Hyperfine constants stored for both ends; the components leave hyperfine structure out. */
+  /** What the quadratic shifts of both ends are computed from. */
+  diamagnetic: {
+    lower: LevelDiamagnetic
+    upper: LevelDiamagnetic
+  }
+  /** Hyperfine constants stored for both ends; components with hyperfine=true are made with them. */
   hyperfine: {
     lower: HyperfineConstants[]
     upper: HyperfineConstants[]
@@ -376,6 +474,18 @@ export interface TransitionDetail {
     lower: string
     upper: string
   }
+}
+
+export interface LevelDiamagnetic {
+  /** not_applicable: no single electron outside closed shells, or the level is none of a series that the ionisation energy limits. */
+  status: 'ok' | 'unknown' | 'not_applicable'
+  /** Why there is none; null where there is. */
+  reason: string | null
+  effective_n: number | null
+  /** <r^2> in Bohr radii squared, hydrogenic with the effective quantum number. */
+  mean_square_radius_bohr2: number | null
+  /** l_mixing: levels of other l lie so near that first order is only a guide; penetrating: the electron is much inside the core. */
+  cautions: ('l_mixing' | 'penetrating')[]
 }
 
 export interface Components {
@@ -397,14 +507,27 @@ export interface Components {
 }
 
 export interface Component {
+  /** By continuity from zero field; null where two zero-field energies coincide. */
+  j_lower: number | null
   m_lower: number
+  j_upper: number | null
   m_upper: number
   /** m_upper - m_lower, for absorption and emission alike. */
   q: number
   polarisation: 'pi' | 'sigma+' | 'sigma-' | 'q=+2' | 'q=-2'
+  /** M_L or M_S that the sublevel tends to at high field; null in the linear model, which names none. */
+  m_l_lower: number | null
+  /** M_L or M_S that the sublevel tends to at high field; null in the linear model, which names none. */
+  m_s_lower: number | null
+  /** M_L or M_S that the sublevel tends to at high field; null in the linear model, which names none. */
+  m_l_upper: number | null
+  /** M_L or M_S that the sublevel tends to at high field; null in the linear model, which names none. */
+  m_s_upper: number | null
+  /** Null at zero field in the intermediate model. */
   shift_lorentz: number | null
   shift_invcm: number
   shift_ghz: number
+  shift_mhz: number
   /** Wavelength minus that of the centre, in the medium asked for. */
   shift_pm: number | null
   /** Negative where the field has brought the upper sublevel below the lower one; wavelengths are then null, with warning level_crossing. */
@@ -412,6 +535,9 @@ export interface Component {
   wavelength_vac_nm: number | null
   wavelength_air_nm: number | null
   frequency_thz: number
+  /** Of the position with respect to the field; analytic. */
+  derivative_invcm_per_tesla: number
+  /** Null where the model gives none: meta.warnings says why. */
   strength: number | null
   /** Strength seen at theta_deg; averaged over angle when none is given. */
   intensity: number | null
@@ -428,12 +554,12 @@ export interface Component {
 }
 
 export interface BudgetPart {
-  part: string
+  part: 'energy_lower' | 'energy_upper' | 'g_lower' | 'g_upper' | 'field' | 'constants'
   value_invcm: number | null
   status: 'known' | 'unknown' | 'exact'
 }
 
-/** How far the linear law may be trusted at this field, positions and strengths apart. */
+/** How far the linear law may be trusted at this field: positions, strengths, and the centre of an unresolved blend apart. */
 export interface Validity {
   positions: {
     status: ValidityStatus
@@ -450,6 +576,17 @@ export interface Validity {
     tolerance: number
     field_limit_tesla: number | null
   }
+  blend: {
+    status: ValidityStatus
+    /** How far the linear law misplaces the centre of gravity of the lines seen in one, the worst q. */
+    error_invcm: number | null
+    /** error_invcm divided by the larger of the largest linear displacement of a centre and 0.01 mu_B B. */
+    relative_error: number | null
+    tolerance: number
+    field_limit_tesla: number | null
+    /** The lines seen in one with this line, itself included. */
+    lines: BlendedLine[]
+  }
   levels: {
     lower: LevelValidity
     upper: LevelValidity
@@ -459,6 +596,13 @@ export interface Validity {
 }
 
 export type ValidityStatus = 'valid' | 'not_valid' | 'unknown'
+
+export interface BlendedLine {
+  /** Null for levels of no table. */
+  transition: string | null
+  j_lower: number
+  j_upper: number
+}
 
 export interface LevelValidity {
   /** Species, dot, ordinal given at creation and never reused. */
@@ -475,6 +619,127 @@ export interface LevelValidity {
   field_limit_tesla: number | null
   /** J of the term that the table does not hold. */
   missing_j: number[]
+}
+
+export interface HyperfineComponents {
+  /** lower~upper; lower is the level of lower energy in the edition read. */
+  transition: string
+  field_tesla: number
+  field_gauss: number
+  model: 'hyperfine'
+  theta_deg: number | null
+  centre: {
+    wavenumber_invcm: number
+    wavelength_vac_nm: number
+    wavelength_air_nm: number | null
+    wavelength_air_status: ValueStatus
+    frequency_thz: number
+  }
+  isotopes: UsedIsotope[]
+  /** Sum of the abundances that the weights were divided by; null for one isotope named. */
+  listed_abundance_percent: number | null
+  /** Sorted by q, then detuning, then isotope and m_F lower. */
+  components: HyperfineComponent[]
+  /** Of the law without hyperfine structure: where J itself stops being good. */
+  validity: {
+    positions: {
+      status: ValidityStatus
+      error_invcm: number | null
+      /** Largest component error divided by the larger of the largest linear shift and 0.01 mu_B B. */
+      relative_error: number | null
+      tolerance: number
+      field_limit_tesla: number | null
+    }
+    strengths: {
+      status: ValidityStatus
+      /** Largest change of a component's strength as a fraction of the largest in its q. */
+      relative_error: number | null
+      tolerance: number
+      field_limit_tesla: number | null
+    }
+    blend: {
+      status: ValidityStatus
+      /** How far the linear law misplaces the centre of gravity of the lines seen in one, the worst q. */
+      error_invcm: number | null
+      /** error_invcm divided by the larger of the largest linear displacement of a centre and 0.01 mu_B B. */
+      relative_error: number | null
+      tolerance: number
+      field_limit_tesla: number | null
+      /** The lines seen in one with this line, itself included. */
+      lines: BlendedLine[]
+    }
+    levels: {
+      lower: LevelValidity
+      upper: LevelValidity
+    }
+    method: string
+    sentence: string
+  }
+}
+
+export interface UsedIsotope {
+  mass_number: number
+  nuclear_spin: number | null
+  /** g_I' in units of mu_B, negative for a positive moment; null is not known and taken as 0. */
+  g_i: number | null
+  abundance_percent: number | null
+  /** Share in the pattern; the weights of an answer sum to 1. */
+  weight: number
+  /** Isotope shift of the line that was put in. */
+  shift_mhz: number
+  /** unknown: the table gives no isotope shift, and 0 was put in. */
+  shift_status: 'ok' | 'unknown' | 'not_applicable'
+  a_lower_mhz: number | null
+  b_lower_mhz: number | null
+  a_upper_mhz: number | null
+  b_upper_mhz: number | null
+}
+
+export interface HyperfineComponent {
+  mass_number: number
+  /** By continuity from zero field; null where two zero-field energies coincide. */
+  f_lower: number | null
+  m_f_lower: number
+  f_upper: number | null
+  m_f_upper: number
+  /** m_F upper - m_F lower. */
+  q: number
+  polarisation: 'pi' | 'sigma+' | 'sigma-' | 'q=+2' | 'q=-2'
+  /** What the sublevel tends to at high field. */
+  m_j_lower: number
+  m_i_lower: number
+  m_j_upper: number
+  m_i_upper: number
+  /** From the line between the centres of gravity of both levels, isotope shift included. */
+  detuning_mhz: number
+  derivative_mhz_per_tesla: number
+  /** detuning_mhz in wavenumber. */
+  shift_invcm: number
+  shift_ghz: number
+  shift_pm: number | null
+  wavenumber_invcm: number
+  wavelength_vac_nm: number | null
+  wavelength_air_nm: number | null
+  frequency_thz: number
+  /** Over one isotope all components sum to 1 at any field. */
+  strength: number
+  /** Share of the isotope. */
+  weight: number
+  /** Strength times weight as seen at theta_deg, times three, so that a line sums to 1; averaged over angle when none is given. */
+  intensity: number | null
+  intensity_status: ValueStatus
+  stokes_q: number | null
+  stokes_v: number | null
+  /** One standard deviation of the detuning; the energies of the levels are not in it. Null where any part is unknown. */
+  detuning_unc_mhz: number | null
+  detuning_known_unc_mhz: number
+  budget: HyperfineBudgetPart[]
+}
+
+export interface HyperfineBudgetPart {
+  part: 'a_lower' | 'b_lower' | 'g_lower' | 'a_upper' | 'b_upper' | 'g_upper' | 'field' | 'constants'
+  value_mhz: number | null
+  status: 'known' | 'unknown' | 'exact'
 }
 
 export interface JudgedTransition {
@@ -563,6 +828,278 @@ export interface SublevelMatrix {
   derivatives: number[][]
 }
 
+export interface HyperfineMatrix {
+  /** By continuity from zero field; null where two zero-field energies coincide. */
+  f: (number | null)[]
+  m_f: number[]
+  /** High-field name. */
+  m_j: number[]
+  m_i: number[]
+  /** From the hyperfine level F at zero field. */
+  shifts_mhz: number[][]
+  /** From the centre of gravity of the level J. */
+  energies_mhz: number[][]
+  /** MHz per tesla. */
+  derivatives: number[][]
+}
+
+/** A field (or g) from measured positions. An undetermined fit is an answer too: it says why. */
+export type FieldFit = DeterminedField | DeterminedG | UndeterminedFit
+
+export interface DeterminedField {
+  unknown: 'field'
+  status: 'determined'
+  mode: 'positions'
+  /** The model used. */
+  model: 'linear' | 'intermediate'
+  lines: ({
+    line: number
+    /** Null for a line given in the request. */
+    transition: string | null
+    kind: Kind
+    name: string
+    /** Without field, from the levels. */
+    wavenumber_invcm: number
+    wavelength_vac_nm: number
+    wavelength_air_nm: number | null
+    /** In which its wavelengths were read; null where none were given. */
+    medium: 'air' | 'vacuum' | null
+    /** Wavenumber that separations in wavelength were taken from; null where none were. */
+    reference_invcm: number | null
+  })[]
+  /** Whether the model used holds at the fitted field for the positions of every line within the tolerance; null where it is not known. */
+  model_valid: boolean | null
+  /** Below zero where the assignment says that the field is reversed. */
+  field_tesla: number
+  /** One standard deviation, all parts of the budget; null where any part is unknown. */
+  field_unc_tesla: number | null
+  /** Its known parts alone; null where neither deviations are stated nor anything is left over to judge scatter by. */
+  field_known_unc_tesla: number | null
+  /** coverage_factor times field_known_unc_tesla. */
+  expanded_unc_tesla: number | null
+  coverage_factor: 2
+  /** Whether every part of the budget is known. */
+  uncertainty_complete: boolean
+  /** From the positions, and the scale where it is fitted: the last but one entry of the covariance, or the last. */
+  statistical_unc_tesla: number | null
+  /** statistical_unc_tesla times the root of chi-squared per degree of freedom; null without degrees of freedom. */
+  scaled_unc_tesla: number | null
+  budget: ({
+    part: 'positions' | 'scale' | 'g_lower' | 'g_upper' | 'energy_lower' | 'energy_upper' | 'constants'
+    value_tesla: number | null
+    status: 'known' | 'unknown' | 'exact'
+  })[]
+  /** Zeros by name, field, and scale where it is fitted: the order of covariance. */
+  parameters: string[]
+  parameter_units: string[]
+  covariance: number[][] | null
+  /** Null where no deviations are stated. */
+  chi_squared: number | null
+  degrees_of_freedom: number
+  zeros: ({
+    name: string
+    lines: number[]
+    /** Where the first of its lines would stand without field, on the scale of the measurement. */
+    position_invcm: number
+    /** One standard deviation of it; null where not known. */
+    position_unc_invcm: number | null
+    /** The same minus the wavenumber from the levels; null for separations and ring radii. */
+    table_offset_invcm: number | null
+  })[]
+  scale: {
+    value: number
+    unc: number | null
+    status: 'exact' | 'uncertain' | 'free'
+  }
+  residuals: FieldFitResidual[]
+  /** Components with any strength at the fitted field, on the scale of the measurement; strengths of each q sum to 1 at zero field. */
+  pattern: {
+    line: number
+    m_lower: number
+    m_upper: number
+    q: number
+    position_invcm: number
+    strength: number
+  }[]
+  /** How far the linear law holds at the fitted field, line by line. */
+  validity: ({
+    line: number
+    /** lower~upper; lower is the level of lower energy in the edition read. */
+    transition: string | null
+    linear_law: Validity
+  })[]
+  /** Other readings of the peaks that fit about as well. */
+  alternatives: {
+    field_tesla: number
+    /** How much worse than the reading taken, in units of chi-squared. */
+    cost_more: number
+    /** By measurement. */
+    components: {
+      m_lower: number
+      m_upper: number
+      q: number
+    }[][]
+  }[]
+}
+
+export interface FieldFitResidual {
+  /** Its place in the request, from 0. */
+  measurement: number
+  /** Index of its line, from 0. */
+  line: number
+  /** lower~upper; lower is the level of lower energy in the edition read. */
+  transition: string | null
+  /** As given. */
+  position: number
+  position_unc: number | null
+  /** Vacuum wavenumber, or distance from the reference of its line. */
+  position_invcm: number
+  position_unc_invcm: number | null
+  fitted_invcm: number
+  /** Measured minus fitted. */
+  residual_invcm: number
+  /** Residual over its own deviation, sigma sqrt(1 - leverage); null where sigma is not known or the fit must pass through the point. */
+  standardised: number | null
+  /** Share of the point in its own fitted value, 0 to 1. */
+  leverage: number
+  /** What the peak was read as; several where they are not resolved. */
+  components: {
+    m_lower: number
+    m_upper: number
+    q: number
+  }[]
+  assigned: 'by_hand' | 'automatic'
+  /** The field fitted without this point; null where nothing is determined without it, and where the field is given. */
+  field_without_tesla: number | null
+  /** Change of the field by this point, in standard deviations of the field from the positions. */
+  influence: number | null
+}
+
+export interface DeterminedG {
+  unknown: 'g'
+  status: 'determined'
+  mode: 'positions'
+  /** The model used. */
+  model: 'linear' | 'intermediate'
+  lines: ({
+    line: number
+    /** Null for a line given in the request. */
+    transition: string | null
+    kind: Kind
+    name: string
+    /** Without field, from the levels. */
+    wavenumber_invcm: number
+    wavelength_vac_nm: number
+    wavelength_air_nm: number | null
+    /** In which its wavelengths were read; null where none were given. */
+    medium: 'air' | 'vacuum' | null
+    /** Wavenumber that separations in wavelength were taken from; null where none were. */
+    reference_invcm: number | null
+  })[]
+  model_valid: boolean | null
+  field_tesla: number
+  /** As given, the scale’s uncertainty with it; null: taken as exact. */
+  field_unc_tesla: number | null
+  coverage_factor: 2
+  /** Null where it was held. */
+  lower: {
+    level: string
+    g_j: number
+    /** One standard deviation, all parts; null where any part is unknown. */
+    g_j_unc: number | null
+    g_j_known_unc: number | null
+    /** Twice g_j_known_unc. */
+    expanded_unc: number | null
+    /** From the positions alone. */
+    statistical_unc: number | null
+    budget: ({
+      part: 'positions' | 'field' | 'g_held'
+      value: number | null
+      status: 'known' | 'unknown' | 'exact'
+    })[]
+    /** The value in force without this fit. */
+    table_g_j: number | null
+  } | null
+  /** Null where it was held. */
+  upper: {
+    level: string
+    g_j: number
+    /** One standard deviation, all parts; null where any part is unknown. */
+    g_j_unc: number | null
+    g_j_known_unc: number | null
+    /** Twice g_j_known_unc. */
+    expanded_unc: number | null
+    /** From the positions alone. */
+    statistical_unc: number | null
+    budget: ({
+      part: 'positions' | 'field' | 'g_held'
+      value: number | null
+      status: 'known' | 'unknown' | 'exact'
+    })[]
+    /** The value in force without this fit. */
+    table_g_j: number | null
+  } | null
+  parameters: string[]
+  parameter_units: string[]
+  covariance: number[][] | null
+  chi_squared: number | null
+  degrees_of_freedom: number
+  zeros: ({
+    name: string
+    lines: number[]
+    /** Where the first of its lines would stand without field, on the scale of the measurement. */
+    position_invcm: number
+    /** One standard deviation of it; null where not known. */
+    position_unc_invcm: number | null
+    /** The same minus the wavenumber from the levels; null for separations and ring radii. */
+    table_offset_invcm: number | null
+  })[]
+  residuals: FieldFitResidual[]
+  validity: ({
+    line: number
+    /** lower~upper; lower is the level of lower energy in the edition read. */
+    transition: string | null
+    linear_law: Validity
+  })[]
+}
+
+export interface UndeterminedFit {
+  unknown: 'field' | 'g'
+  status: 'undetermined'
+  mode: 'positions'
+  /** The model used. */
+  model: 'linear' | 'intermediate'
+  lines: ({
+    line: number
+    /** Null for a line given in the request. */
+    transition: string | null
+    kind: Kind
+    name: string
+    /** Without field, from the levels. */
+    wavenumber_invcm: number
+    wavelength_vac_nm: number
+    wavelength_air_nm: number | null
+    /** In which its wavelengths were read; null where none were given. */
+    medium: 'air' | 'vacuum' | null
+    /** Wavenumber that separations in wavelength were taken from; null where none were. */
+    reference_invcm: number | null
+  })[]
+  /** Why the data do not fix what is asked, and what to add. */
+  reasons: {
+    code: string
+    detail: string
+  }[]
+}
+
+/** positions: places in the spectrum. separations: distances from one place in each line, which need not be its centre; to the red is below zero in wavenumber and frequency, above zero in wavelength. ring_radii: radii of the rings of a plane etalon. */
+export type FitQuantity = 'positions' | 'separations' | 'ring_radii'
+
+/** linear: the weak-field law. intermediate: diagonalised within the term. auto: intermediate where linear errs by more than the tolerance. */
+export type Model = 'linear' | 'intermediate' | 'auto'
+
+/** Which Landé factors are used: the adopted ones, those of the stated coupling, or those of LS coupling. */
+export type GValues = 'adopted' | 'coupled' | 'ls'
+
 /** Components keep one order over all fields: q, m_lower, j_lower, j_upper. */
 export interface PredictionBlock {
   /** The line, or the line that named the multiplet; null for levels given inline. */
@@ -649,12 +1186,6 @@ export type PredictionField = {
   unit: 'T' | 'mT' | 'µT' | 'G' | 'kG'
 }
 
-/** linear: the weak-field law. intermediate: diagonalised within the term. auto: intermediate where linear errs by more than the tolerance. */
-export type Model = 'linear' | 'intermediate' | 'auto'
-
-/** Which Landé factors are used: the adopted ones, those of the stated coupling, or those of LS coupling. */
-export type GValues = 'adopted' | 'coupled' | 'ls'
-
 /** What `values` are. Shifts are from the line without field; derivatives are in the same unit per tesla. Air wavelengths are null below 200 nm, wavelengths where the field has brought the upper sublevel to or below the lower one. */
 export type PredictionQuantity = 'wavenumber_invcm' | 'shift_invcm' | 'wavelength_vac_nm' | 'wavelength_air_nm' | 'frequency_thz' | 'shift_ghz'
 
@@ -686,6 +1217,98 @@ export interface FieldTable {
   /** Of the numbers of the table; meta.conventions.checksum says of what exactly. */
   checksum_sha256: string
 }
+
+export interface Profiles {
+  field_tesla: number
+  theta_deg: number | null
+  mode: 'emission' | 'absorption'
+  analyser: Analyser
+  grid: {
+    unit: GridUnit
+    start: number
+    stop: number
+    count: number
+    /** Whether the grid was chosen to show the lines. */
+    automatic: boolean
+  }
+  /** In the order of the grid: falling where it steps in wavelength. */
+  wavenumber_invcm: number[]
+  wavelength_vac_nm: number[]
+  /** Null below 200 nm, where air does not apply. */
+  wavelength_air_nm: (number | null)[]
+  /** What the lines add (emission) or take away (absorption), in weight per cm^-1. */
+  stokes_i: number[]
+  /** Null without theta_deg. */
+  stokes_q: number[] | null
+  /** Null without theta_deg. */
+  stokes_v: number[] | null
+  /** What the lines add or take away behind the analyser; null where there is none. */
+  behind_analyser: number[] | null
+  lines: ProfiledLine[]
+  /** What someone at the apparatus sees. */
+  bench_sentence: string
+}
+
+/** Ideal analyser in front of the instrument: none, linear at an angle, or circular in either sense. */
+export type Analyser = {
+  kind: 'none'
+} | {
+  kind: 'linear'
+  /** From the field projected on the sky. */
+  angle_deg: number
+} | {
+  kind: 'circular'
+  /** Turn of the electric vector that passes, as the observer sees it. */
+  sense: 'counterclockwise' | 'clockwise'
+}
+
+/** Quantity in which a grid takes even steps. */
+export type GridUnit = 'wavenumber_invcm' | 'vacuum_nm' | 'air_nm' | 'frequency_ghz'
+
+export interface ProfiledLine {
+  /** Null for a line given in the request. */
+  transition: string | null
+  /** Element and Roman stage. */
+  species: string | null
+  kind: Kind
+  weight: number
+  model: 'linear' | 'intermediate'
+  wavenumber_invcm: number
+  wavelength_vac_nm: number
+  wavelength_air_nm: number | null
+  component_count: number
+  /** Integral of I of this line over wavenumber: its weight in the linear model; in the intermediate one strength flows between the lines of a multiplet. */
+  integral: number
+  /** Thermal motion and microturbulence. */
+  doppler_fwhm_invcm: number
+  instrument_fwhm_invcm: number
+  /** Doppler and instrument in quadrature. */
+  gaussian_fwhm_invcm: number
+  lorentzian_fwhm_invcm: number
+  /** Full width at half maximum of one component. */
+  fwhm_invcm: number
+  mass_u: number | null
+  /** not_applicable: no temperature was given, so no mass is needed. */
+  mass_status: 'ok' | 'unknown' | 'not_applicable'
+  /** mean_of_isotopes: weighted by abundance. */
+  mass_basis: 'given' | 'isotope' | 'mean_of_isotopes' | null
+  /** The isotopes whose hyperfine structure is in the profile; empty without it. */
+  isotopes: {
+    mass_number: number
+    /** Share of the line; weights sum to 1. */
+    weight: number
+    /** Of the line from that of the table. */
+    shift_mhz: number
+    /** False where none is stored, and 0 was taken. */
+    shift_known: boolean
+    /** Whether its components are those of a nucleus with spin. */
+    hyperfine: boolean
+  }[]
+  validity: Validity
+}
+
+/** iau: V > 0 turns counter-clockwise as the observer sees it; solar: clockwise. */
+export type StokesSign = 'iau' | 'solar'
 
 export interface Conversion {
   value: number
@@ -2049,7 +2672,7 @@ export interface Operations {
       meta: Meta
     }
   }
-  /** Energies of the sublevels at a field, one row per m */
+  /** Energies of the sublevels at a field, one row per m. model=auto diagonalises within the LS term where the linear law errs by more than the tolerance; meta.validity tells by how much. With hyperfine=true the sublevels F, m_F of one isotope, by full diagonalisation in |m_J, m_I>. */
   getSublevels: {
     method: 'get'
     path: '/levels/{level}/sublevels'
@@ -2066,6 +2689,14 @@ export interface Operations {
       g_s?: number
       /** Relative error above which the linear law counts as not valid. */
       tolerance?: number
+      /** Add the quadratic (diamagnetic) shift, where one electron outside closed shells allows it to be computed. */
+      diamagnetic?: true | false
+      /** Put hyperfine structure in, diagonalised in full within one J for an isotope. */
+      hyperfine?: true | false
+      /** Isotope by its mass number, with hyperfine=true. Without it the only isotope with constants is taken. */
+      isotope?: number
+      /** Tell the amplitudes of each state. */
+      amplitudes?: true | false
       /** Rows on one page. */
       limit?: number
       /** Where the next page begins: page.next_cursor of the page before, as it was given. It belongs to one query and one edition. */
@@ -2077,9 +2708,41 @@ export interface Operations {
     }
     body: undefined
     answer: {
-      data: Sublevel[]
+      data: (Sublevel | HyperfineSublevel)[]
       meta: Meta
       page: Page
+    }
+  }
+  /** Where two sublevels cross, come nearest, or keep their distance to first order in the field. By root finding on analytic slopes between two fields: hyperfine sublevels (F, m_F) of the level for one isotope, or, without hyperfine=true, sublevels (J, m) of its LS term. */
+  getCrossings: {
+    method: 'get'
+    path: '/levels/{level}/crossings'
+    parameters: {
+      /** Level: species, dot, ordinal. */
+      level: string | number
+      /** First sublevel: F,m_F with hyperfine=true, else J,m of the level's term. */
+      a: string | number
+      /** Second sublevel: F,m_F with hyperfine=true, else J,m of the level's term. */
+      b: string | number
+      /** Where to begin, as a field with its unit. */
+      from?: string | number
+      /** Where to end, as a field with its unit. */
+      to: string | number
+      /** Put hyperfine structure in, diagonalised in full within one J for an isotope. */
+      hyperfine?: true | false
+      /** Isotope by its mass number, with hyperfine=true. Without it the only isotope with constants is taken. */
+      isotope?: number
+      /** Landé factors to use: adopted, of the stated coupling, or of LS coupling. */
+      g_values?: 'adopted' | 'coupled' | 'ls'
+      /** g factor of the electron spin; default: the CODATA value. */
+      g_s?: number
+      /** Edition to read: its number, or latest. */
+      edition?: string | number
+    }
+    body: undefined
+    answer: {
+      data: Crossings
+      meta: Meta
     }
   }
   /** Allowed partners of a level; the others too, with the rules that fail. Without kind each pair is judged as E1 where the parities differ, else M1, else E2. What the rules leave out is counted in meta.excluded. */
@@ -2178,7 +2841,7 @@ export interface Operations {
       meta: Meta
     }
   }
-  /** Components of a line at a field: positions, polarisation, strength, intensity, and how far the model holds. q = m_upper - m_lower, for absorption and emission alike; a positive shift is to higher wavenumber, to the blue. Strengths of each q sum to 1. */
+  /** Components of a line at a field: positions, polarisation, strength, intensity, and how far the model holds. q = m_upper - m_lower, for absorption and emission alike; a positive shift is to higher wavenumber, to the blue. Strengths of each q sum to 1 at zero field. model=auto diagonalises within both LS terms where the linear law errs by more than the tolerance in positions or strengths. With hyperfine=true the components of one isotope, or of the natural mixture (isotope=natural), between sublevels F, m_F. */
   getComponents: {
     method: 'get'
     path: '/transitions/{transition}/components'
@@ -2203,6 +2866,12 @@ export interface Operations {
       medium?: 'conventional' | 'air' | 'vacuum'
       /** Relative error above which the linear law counts as not valid. */
       tolerance?: number
+      /** Add the quadratic (diamagnetic) shift, where one electron outside closed shells allows it to be computed. */
+      diamagnetic?: true | false
+      /** Put hyperfine structure in, diagonalised in full within one J for an isotope. */
+      hyperfine?: true | false
+      /** Isotope by its mass number, or natural for the mixture by abundance, with hyperfine=true. Without it the only isotope with constants is taken. */
+      isotope?: string | number
       /** Edition to read: its number, or latest. */
       edition?: string | number
       /** Representation, instead of the Accept field. Default: what Accept prefers, else json. */
@@ -2210,7 +2879,7 @@ export interface Operations {
     }
     body: undefined
     answer: {
-      data: Components
+      data: Components | HyperfineComponents
       meta: Meta
     }
   }
@@ -2251,7 +2920,7 @@ export interface Operations {
       meta: Meta
     }
   }
-  /** Sublevels of one LS term given in the request, over fields. Either `levels` of one LS term, or `level` with `nucleus`. The second form, hyperfine structure, is refused as hyperfine_not_built, and model=intermediate as intermediate_not_built, until they are built. */
+  /** Sublevels of one LS term, or of one level with its nucleus, given in the request, over fields. Either `levels` of one LS term, or `level` with `nucleus` (hyperfine structure, diagonalised in full). model=auto diagonalises within the term where the linear law of some level errs by more than the tolerance at the largest field. */
   computeSublevels: {
     method: 'post'
     path: '/sublevels'
@@ -2268,15 +2937,20 @@ export interface Operations {
       model?: 'auto' | 'linear' | 'intermediate'
       g_values?: 'adopted' | 'coupled' | 'ls'
       g_s?: number | null
+      /** Relative error above which model=auto leaves the linear law; 0.01. */
+      tolerance?: number | null
     } | {
       level: {
         j: number
-        g_j: number
+        /** Null only for J = 0. */
+        g_j?: number | null
       }
       nucleus: {
         i: number
         a_mhz: number
+        /** Dropped where I or J is under 1. */
         b_mhz?: number | null
+        /** g_I' in units of mu_B, negative for a positive moment; without it 0. */
         g_i?: number | null
       }
       field: string | number | {
@@ -2285,7 +2959,104 @@ export interface Operations {
       }
     }
     answer: {
-      data: SublevelMatrix
+      data: SublevelMatrix | HyperfineMatrix
+      meta: Meta
+    }
+  }
+  /** A magnetic field from measured positions of components, with its uncertainty. Weighted least squares on centred data for one field and a free zero of each line. Components are assigned by hand (m_lower with m_upper), by polarisation (q), as a whole unresolved group (group), or automatically. model=auto fits by the linear law, and again by diagonalised terms where the linear law does not hold at the field found. Where the data do not fix the field the answer is 200 with status undetermined and says why. mode is positions; a fit to a whole spectrum is not built yet, and another mode is refused as spectrum_fit_not_built. Tables (csv, ndjson, arrow) hold the residuals, one row per measurement. Up to 20 lines and 300 measurements; assignments that would need too much work are refused as fit_too_large. */
+  fitField: {
+    method: 'post'
+    path: '/field-fits'
+    parameters: {
+      /** Edition to read: its number, or latest. */
+      edition?: string | number
+      /** Representation, instead of the Accept field. Default: what Accept prefers, else json. */
+      format?: 'json' | 'csv' | 'ndjson' | 'arrow'
+    }
+    body: {
+      /** Edition to read: its number, or latest, which is the default. */
+      edition?: number | 'latest'
+      mode?: 'positions'
+      /** field: one field over all lines. g: the field is known, and g_J of one or both levels of one line is wanted. */
+      unknown?: 'field' | 'g'
+      lines: ({
+        transition: string
+        kind?: Kind | null
+        /** Lines with the same text share one zero, their distances taken from the levels; without it each line has a zero of its own. */
+        zero?: string | null
+      } | {
+        lower: InlineLevel
+        upper: InlineLevel
+        /** The other levels of the term of the lower level, which the intermediate model needs. */
+        lower_others?: InlineLevel[] | null
+        /** The other levels of the term of the upper level, which the intermediate model needs. */
+        upper_others?: InlineLevel[] | null
+        kind?: Kind | null
+        /** Lines with the same text share one zero, their distances taken from the levels; without it each line has a zero of its own. */
+        zero?: string | null
+      })[]
+      quantity?: FitQuantity
+      /** Of positions and separations; ring radii have none. */
+      unit?: 'nm' | 'pm' | 'cm-1' | 'mcm-1' | 'GHz' | 'MHz' | null
+      /** Of wavelengths; default conventional, judged on each line. */
+      medium?: 'conventional' | 'air' | 'vacuum' | null
+      etalon?: {
+        /** Or give thickness_mm. */
+        free_spectral_range_invcm?: number | null
+        /** One standard deviation. */
+        free_spectral_range_unc_invcm?: number | null
+        /** Distance of the plates: the free spectral range is 1/(2 n t). */
+        thickness_mm?: number | null
+        refractive_index?: number
+        /** Step of radius squared from one order to the next, for the first line; or give order_radii. That of the other lines follows, since it grows as the wavelength. */
+        square_step?: number | null
+        /** One standard deviation. */
+        square_step_unc?: number | null
+        /** Radii of one component of the first line in successive orders, from the inside: the step is found by least squares, with its deviation from the scatter where there are three. */
+        order_radii?: number[] | null
+      } | null
+      measurements: ({
+        /** Index of its line, from 0. */
+        line?: number
+        /** Position, separation or ring radius, in the unit given. */
+        position: number
+        /** One standard deviation in the same unit; for all measurements or for none. */
+        position_unc?: number | null
+        /** With m_upper: the component, assigned by hand. */
+        m_lower?: number | null
+        m_upper?: number | null
+        /** Polarisation where it is known; sigma: either sense. The component is then found among these. */
+        q?: number | 'sigma' | null
+        /** The peak is the whole unresolved group of this q, at its centre of gravity. */
+        group?: number | null
+        /** Rings only: how many orders outwards from the innermost one used. */
+        order?: number | null
+      })[]
+      scale?: {
+        /** Measured = zero + scale x true distance. */
+        value?: number
+        /** One standard deviation: the scale is then fitted within it. Without it, or at 0, exact. */
+        unc?: number | null
+        /** Fitted without knowing anything of it, which needs lines that share a zero. */
+        free?: boolean
+      } | null
+      model?: Model
+      g_values?: GValues
+      g_s?: number | null
+      tolerance?: number
+      /** Which polarisations can be seen, for automatic assignment; default all. */
+      visible_q?: number[] | null
+      /** Or the angle between field and line of sight: along the field only sigma is seen. */
+      theta_deg?: number | null
+      /** unknown=g: the field, with its unit; a bare number is tesla. */
+      field?: string | number | null
+      /** unknown=g: one standard deviation of it; without it exact. */
+      field_unc?: string | number | null
+      /** unknown=g: whose g_J is fitted; default upper. */
+      free_g?: 'lower' | 'upper' | 'both' | null
+    }
+    answer: {
+      data: FieldFit
       meta: Meta
     }
   }
@@ -2354,6 +3125,80 @@ export interface Operations {
     }
     answer: {
       data: FieldTable
+      meta: Meta
+    }
+  }
+  /** Stokes I, Q and V of several lines at one field, as an instrument shows them. Optically thin sums of Voigt profiles over the components of every line. The integral of I of a line over wavenumber is its weight. Widths: temperature with mass, microturbulence, instrument, Lorentzian; at least one is needed. Reversing the field (theta_deg to 180 - theta_deg) turns V and leaves I and Q. */
+  computeProfiles: {
+    method: 'post'
+    path: '/profiles'
+    parameters: {
+      /** Edition to read: its number, or latest. */
+      edition?: string | number
+      /** Representation, instead of the Accept field. Default: what Accept prefers, else json. */
+      format?: 'json' | 'csv' | 'ndjson' | 'arrow'
+    }
+    body: {
+      /** Edition to read: its number, or latest, which is the default. */
+      edition?: number | 'latest'
+      lines: ({
+        transition: string
+        /** Integral of Stokes I over wavenumber, in any unit that all lines share. */
+        weight?: number
+        kind?: Kind | null
+        /** Mass of this line's atom, before every other source of it. */
+        mass_u?: number | null
+      } | {
+        lower: InlineLevel
+        upper: InlineLevel
+        /** The other levels of the term of the lower level, which the intermediate model needs. */
+        lower_others?: InlineLevel[] | null
+        /** The other levels of the term of the upper level, which the intermediate model needs. */
+        upper_others?: InlineLevel[] | null
+        /** Integral of Stokes I over wavenumber, in any unit that all lines share. */
+        weight?: number
+        kind?: Kind | null
+        /** Mass of this line's atom, before every other source of it. */
+        mass_u?: number | null
+      })[]
+      field: string | number | {
+        values: number[]
+        unit: 'T' | 'mT' | 'µT' | 'G' | 'kG'
+      }
+      model?: Model
+      g_values?: GValues
+      g_s?: number | null
+      tolerance?: number
+      /** Angle between the field and the direction from source to observer; without it intensities are averaged over angle, and there are no Q and V. */
+      theta_deg?: number | null
+      /** Mass number: its mass broadens, and with hyperfine its structure is in the profile. natural: the isotopes listed, by abundance. */
+      isotope?: number | 'natural' | null
+      /** Put the hyperfine structure of the isotope into the profile; without isotope the natural mixture. */
+      hyperfine?: boolean
+      temperature_k?: number | null
+      /** Mass of the atom for all lines; without it that of the isotope, or the mean of the isotopes listed. */
+      mass_u?: number | null
+      /** Most probable speed. */
+      microturbulence_km_s?: number | null
+      /** Full width at half maximum of the instrument; or give resolving_power. */
+      instrument_fwhm_invcm?: number | null
+      /** Wavenumber over the full width at half maximum of the instrument. */
+      resolving_power?: number | null
+      /** Natural and pressure width, full at half maximum. */
+      lorentzian_fwhm_invcm?: number | null
+      mode?: 'emission' | 'absorption'
+      stokes_sign?: StokesSign
+      analyser?: Analyser
+      /** Even steps from start up to stop; without it a grid that shows the lines. */
+      grid?: {
+        start: number
+        stop: number
+        count: number
+        unit?: 'wavenumber_invcm' | 'vacuum_nm' | 'air_nm' | 'frequency_ghz'
+      } | null
+    }
+    answer: {
+      data: Profiles
       meta: Meta
     }
   }
@@ -3508,16 +4353,19 @@ export const OPERATIONS = {
   listLevels: { method: 'get', path: '/levels', inPath: [], inQuery: ['species', 'q', 'term', 's', 'l', 'j', 'parity', 'configuration', 'energy_min_invcm', 'energy_max_invcm', 'g_min', 'g_max', 'source', 'sort', 'explain', 'limit', 'cursor', 'edition', 'format'], formats: ['json', 'csv', 'ndjson', 'ecsv', 'arrow'], safe: true },
   getLevel: { method: 'get', path: '/levels/{level}', inPath: ['level'], inQuery: ['edition'], formats: ['json'], safe: true },
   getGFactor: { method: 'get', path: '/levels/{level}/g-factor', inPath: ['level'], inQuery: ['g_s', 'edition'], formats: ['json'], safe: true },
-  getSublevels: { method: 'get', path: '/levels/{level}/sublevels', inPath: ['level'], inQuery: ['field', 'model', 'g_values', 'g_s', 'tolerance', 'limit', 'cursor', 'edition', 'format'], formats: ['json', 'csv', 'ndjson', 'ecsv', 'arrow'], safe: true },
+  getSublevels: { method: 'get', path: '/levels/{level}/sublevels', inPath: ['level'], inQuery: ['field', 'model', 'g_values', 'g_s', 'tolerance', 'diamagnetic', 'hyperfine', 'isotope', 'amplitudes', 'limit', 'cursor', 'edition', 'format'], formats: ['json', 'csv', 'ndjson', 'ecsv', 'arrow'], safe: true },
+  getCrossings: { method: 'get', path: '/levels/{level}/crossings', inPath: ['level'], inQuery: ['a', 'b', 'from', 'to', 'hyperfine', 'isotope', 'g_values', 'g_s', 'edition'], formats: ['json'], safe: true },
   listLevelTransitions: { method: 'get', path: '/levels/{level}/transitions', inPath: ['level'], inQuery: ['kind', 'rules', 'include', 'explain', 'limit', 'cursor', 'edition', 'format'], formats: ['json', 'csv', 'ndjson', 'ecsv', 'arrow'], safe: true },
   listTransitions: { method: 'get', path: '/transitions', inPath: [], inQuery: ['species', 'kind', 'rules', 'wavelength_min_nm', 'wavelength_max_nm', 'medium', 'wavenumber_min_invcm', 'wavenumber_max_invcm', 'frequency_min_thz', 'frequency_max_thz', 'g_eff_min', 'g_eff_max', 'explain', 'limit', 'cursor', 'edition', 'format'], formats: ['json', 'csv', 'ndjson', 'ecsv', 'arrow'], safe: true },
   getTransition: { method: 'get', path: '/transitions/{transition}', inPath: ['transition'], inQuery: ['kind', 'edition'], formats: ['json'], safe: true },
-  getComponents: { method: 'get', path: '/transitions/{transition}/components', inPath: ['transition'], inQuery: ['field', 'field_unc', 'kind', 'model', 'g_values', 'g_s', 'theta_deg', 'medium', 'tolerance', 'edition', 'format'], formats: ['json', 'csv', 'ndjson', 'ecsv', 'arrow'], safe: true },
+  getComponents: { method: 'get', path: '/transitions/{transition}/components', inPath: ['transition'], inQuery: ['field', 'field_unc', 'kind', 'model', 'g_values', 'g_s', 'theta_deg', 'medium', 'tolerance', 'diamagnetic', 'hyperfine', 'isotope', 'edition', 'format'], formats: ['json', 'csv', 'ndjson', 'ecsv', 'arrow'], safe: true },
   judgeTransition: { method: 'post', path: '/transitions/judge', inPath: [], inQuery: ['edition'], formats: ['json'], safe: true },
   decodeTerm: { method: 'get', path: '/terms/{symbol}', inPath: ['symbol'], inQuery: ['g_s', 'edition'], formats: ['json'], safe: true },
   computeSublevels: { method: 'post', path: '/sublevels', inPath: [], inQuery: ['edition'], formats: ['json'], safe: true },
+  fitField: { method: 'post', path: '/field-fits', inPath: [], inQuery: ['edition', 'format'], formats: ['json', 'csv', 'ndjson', 'arrow'], safe: true },
   predict: { method: 'post', path: '/predictions', inPath: [], inQuery: ['edition', 'format'], formats: ['json', 'ndjson', 'arrow'], safe: true },
   makeFieldTable: { method: 'post', path: '/field-tables', inPath: [], inQuery: ['edition', 'format'], formats: ['json', 'arrow'], safe: true },
+  computeProfiles: { method: 'post', path: '/profiles', inPath: [], inQuery: ['edition', 'format'], formats: ['json', 'csv', 'ndjson', 'arrow'], safe: true },
   convertWavelength: { method: 'get', path: '/wavelengths/convert', inPath: [], inQuery: ['value', 'from', 'to', 'formula', 'edition'], formats: ['json'], safe: true },
   listEditions: { method: 'get', path: '/editions', inPath: [], inQuery: ['limit', 'cursor'], formats: ['json'], safe: true },
   publishEdition: { method: 'post', path: '/editions', inPath: [], inQuery: [], formats: [], safe: false },

@@ -46,7 +46,7 @@ const width = (description: string) => z.number().min(0).max(1e6).nullish().meta
 const given = (value: unknown): boolean => value !== undefined && value !== null
 
 /** What is wrong between several members, told beside what is wrong in each. */
-const together = { when: () => true }
+const together = { when: ({ value }: { value: unknown }) => typeof value === 'object' && value !== null }
 interface Together {
   instrument_fwhm_invcm?: unknown
   resolving_power?: unknown
