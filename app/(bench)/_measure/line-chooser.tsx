@@ -2,7 +2,7 @@
 import { keepPreviousData, useQuery } from '@tanstack/react-query'
 import { Plus, Search } from 'lucide-react'
 import Link from 'next/link'
-import { useDeferredValue, useId, useState, type KeyboardEvent } from 'react'
+import { useDeferredValue, useId, useRef, useState, type KeyboardEvent } from 'react'
 import type { Find } from '@/openapi/schemas/find'
 import type { Transition } from '@/openapi/schemas/transition'
 import { Chip } from '@/app/_components/chip'
@@ -26,7 +26,7 @@ const SHOWN = 8
 
 function Results({ q, chosen, onAdd }: { q: string; chosen: ReadonlySet<string>; onAdd: (id: string) => void }) {
   const { param: edition } = useEdition()
-  const { data, error, isFetching } = useQuery({ ...apiQuery<Find>('/find', { q, limit: SHOWN, edition }), placeholderData: keepPreviousData })
+  const { data, error, isFetching } = useQuery({ ...apiQuery<Find>('/find', { q, lines_limit: SHOWN, edition }), placeholderData: keepPreviousData })
   if (error) return <p role="alert" className="note mt-2 text-bad">{problemOf(error).detail}</p>
   if (!data) return <p role="status" className="note mt-2">Looking for lines…</p>
   const lines = data.data.lines.filter((line) => line.verdict.allowed).slice(0, SHOWN)
@@ -58,12 +58,15 @@ function Results({ q, chosen, onAdd }: { q: string; chosen: ReadonlySet<string>;
 export function LineChooser({ lines, onChange }: { lines: readonly ChosenLine[]; onChange: (ids: string[]) => void }) {
   const id = useId()
   const { href } = useEdition()
+  const box = useRef<HTMLInputElement>(null)
   const [text, setText] = useState('')
   const q = useDeferredValue(text.trim())
   const ids = lines.map((line) => line.id)
   const add = (line: string) => {
     onChange([...ids, line])
     setText('')
+    // the list that held the focus goes away
+    box.current?.focus()
   }
   const onKeyDown = (event: KeyboardEvent) => {
     if (event.key === 'Escape') setText('')
@@ -86,7 +89,7 @@ export function LineChooser({ lines, onChange }: { lines: readonly ChosenLine[];
           <label htmlFor={id} className="label">{lines.length === 0 ? 'Which line was measured?' : 'Another line of the same field'}</label>
           <div className="relative">
             <Search size={16} aria-hidden="true" className="pointer-events-none absolute top-1/2 left-2.5 -translate-y-1/2 text-muted" />
-            <input id={id} type="search" className="input pl-8!" value={text} onChange={(event) => setText(event.target.value)} autoComplete="off" autoCapitalize="none" spellCheck={false} maxLength={200} placeholder="D2, Hg I 546.1 nm, Na-I.1~Na-I.3" />
+            <input ref={box} id={id} type="search" className="input pl-8!" value={text} onChange={(event) => setText(event.target.value)} autoComplete="off" autoCapitalize="none" spellCheck={false} maxLength={200} placeholder="D2, Hg I 546.1 nm, Na-I.1~Na-I.3" />
           </div>
           {q === '' ? null : <Results q={q} chosen={new Set(ids)} onAdd={add} />}
         </div>
