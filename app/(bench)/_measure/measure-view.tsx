@@ -37,7 +37,7 @@ export function MeasureView() {
   return (
     <div className={`page pb-16 ${sheet.page}`}>
       <div className="no-print">
-        <PageHead title="Measure B" aside={<button type="button" className="btn" onClick={example}>Show an example</button>}>
+        <PageHead title="Measure B" aside={lines.length === 0 ? null : <button type="button" className="btn" onClick={example}>Show an example</button>}>
           The field from the measured positions of Zeeman components: one field for all lines, a free zero for each.
         </PageHead>
       </div>
@@ -49,7 +49,7 @@ export function MeasureView() {
           </Notice>
         </div>
       ) : null}
-      <div className="grid gap-x-10 gap-y-8 lg:grid-cols-[minmax(0,27rem)_minmax(0,1fr)] print:block">
+      <div className="grid gap-x-10 gap-y-8 lg:grid-cols-[minmax(0,27rem)_minmax(0,1fr)] xl:grid-cols-[minmax(0,31rem)_minmax(0,1fr)] print:block">
         <section aria-label="The measurement" className="no-print min-w-0 space-y-5">
           <LineChooser lines={lines} onChange={chooseLines} />
           <WhatWasMeasured address={address} change={change} />

@@ -112,7 +112,7 @@ export function Result({ fit, address, lines, rows, places, onUnit, onRows }: Pr
 
 function Residuals({ answer, address }: { answer: Extract<FieldFitAnswer, { status: 'determined' }>; address: Address }) {
   const unit = residualUnit(address, answer.lines)
-  const table = <ResidualsTable residuals={answer.residuals} header={headerOf(address)} unit={unit} shownField={address.show} severalLines={answer.lines.length > 1} />
+  const table = <ResidualsTable residuals={answer.residuals} header={headerOf(address)} unit={unit} shownField={address.show} severalLines={answer.lines.length > 1} withInfluence={answer.unknown === 'field'} />
   return (
     <>
       <ResidualPlot residuals={answer.residuals} scatter={scatterOf(answer)} unit={unit} table={table} withInfluence={answer.unknown === 'field'} />

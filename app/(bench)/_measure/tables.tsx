@@ -16,10 +16,15 @@ interface ResidualsProps {
   unit: ResidualUnit
   shownField: FieldUnit
   severalLines: boolean
+  /** False where the field is given: there is no influence on it. */
+  withInfluence: boolean
 }
 
+/** Rounding of a point that the fit must pass through is no residual. */
+const NO_RESIDUAL_INVCM = 1e-9
+
 /** Every measurement with its assignment, its residual and its influence; copies carry all of it in full. */
-export function ResidualsTable({ residuals, header, unit, shownField, severalLines }: ResidualsProps) {
+export function ResidualsTable({ residuals, header, unit, shownField, severalLines, withInfluence }: ResidualsProps) {
   const columns: Column<FitResidual>[] = [
     { name: 'measurement', header: 'No.', align: 'right', rowHeader: true, value: (r) => r.measurement + 1 },
     ...(severalLines ? [{ name: 'line', header: 'Line', align: 'right', value: (r: FitResidual) => r.line + 1 } satisfies Column<FitResidual>] : []),
@@ -37,14 +42,13 @@ export function ResidualsTable({ residuals, header, unit, shownField, severalLin
     },
     { name: 'fitted_invcm', header: 'Fitted, cm⁻¹', align: 'right', value: (r) => r.fitted_invcm, cell: (r) => r.fitted_invcm.toFixed(5).replace('-', '−'), only: 'copy' },
     { name: 'residual_invcm', header: 'Residual, cm⁻¹', align: 'right', value: (r) => r.residual_invcm, only: 'copy' },
-    { name: 'residual', header: `Residual, ${unit.name}`, align: 'right', value: (r) => residualIn(unit, r, r.residual_invcm), cell: (r) => signed(residualIn(unit, r, r.residual_invcm), 2), only: 'screen' },
+    { name: 'residual', header: `Residual, ${unit.name}`, align: 'right', value: (r) => residualIn(unit, r, r.residual_invcm), cell: (r) => (Math.abs(r.residual_invcm) < NO_RESIDUAL_INVCM ? '0' : signed(residualIn(unit, r, r.residual_invcm), 2)), only: 'screen' },
     { name: 'standardised', header: 'in σ', align: 'right', value: (r) => r.standardised, cell: (r) => (r.standardised === null ? <span className="text-muted">–</span> : signed(r.standardised, 2)) },
     { name: 'leverage', header: 'Leverage', align: 'right', value: (r) => r.leverage, cell: (r) => r.leverage.toFixed(2) },
-    { name: 'influence', header: 'Influence, σ', align: 'right', value: (r) => r.influence, cell: (r) => (r.influence === null ? <span className="text-muted">–</span> : signed(r.influence, 2)) },
-    {
-      name: `field_without_${shownField}`, header: `B without it, ${shownField}`, align: 'right', value: (r) => (r.field_without_tesla === null ? null : fieldIn(r.field_without_tesla, shownField)),
-      cell: (r) => (r.field_without_tesla === null ? <span className="text-muted">undetermined</span> : significant(fieldIn(r.field_without_tesla, shownField), 6)),
-    },
+    ...(!withInfluence ? [] : [{ name: 'influence', header: 'Influence, σ', align: 'right', value: (r: FitResidual) => r.influence, cell: (r: FitResidual) => (r.influence === null ? <span className="text-muted">–</span> : signed(r.influence, 2)) } satisfies Column<FitResidual>, {
+      name: `field_without_${shownField}`, header: `B without it, ${shownField}`, align: 'right', value: (r: FitResidual) => (r.field_without_tesla === null ? null : fieldIn(r.field_without_tesla, shownField)),
+      cell: (r: FitResidual) => (r.field_without_tesla === null ? <span className="text-muted">undetermined</span> : significant(fieldIn(r.field_without_tesla, shownField), 6)),
+    } satisfies Column<FitResidual>]),
   ]
   return <DataTable columns={columns} rows={residuals} rowKey={(r) => String(r.measurement)} caption="Measurements and residuals" hideCaption />
 }
