@@ -19,6 +19,7 @@ const PAGES: readonly { path: string; shows: RegExp }[] = [
   { path: '/problems', shows: /invalid_input/ },
   { path: '/problems/invalid_input', shows: /request/i },
   { path: '/sign-in', shows: /Password/ },
+  { path: '/measure-b?lines=Na-I.1~Na-I.3&unit=cm-1&p=16972.73584,0.006;16973.49179,0.002;16973.99492,0.006', shows: /0\.80\d+\(\d+\)/ },
   { path: '/api-docs', shows: /API/ },
 ]
 
