@@ -2,6 +2,7 @@ import { type CentredOutcome, type CentredProblem, type CentredSolution, solveCe
 import { CONSTANTS, G_S, MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 import { PhysicsError } from '@/lib/atomic/errors'
 import { type AssignOptions, likelyReadings, type PeakHint, readAt } from '@/lib/atomic/field-fit-assign'
+import { tabulatedModel } from '@/lib/atomic/field-fit-table'
 import { type FitComponent, type FitLine, intermediateLineModel, type LineModel, linearLineModel } from '@/lib/atomic/field-fit-model'
 import { type Assignment, type FieldBudgetRow, fieldProblem, type FitMeasurement, type FitSetup, fitSetup, type Scale, systematicBudget } from '@/lib/atomic/field-fit-problem'
 import { autoModel, type FieldModel, type LinearLawValidity, linearLawValidity } from '@/lib/atomic/intermediate-validity'
@@ -176,9 +177,11 @@ function startsOf(input: FieldFitInput, setup: FitSetup, assignments: Assignment
 }
 
 /** Readings of the peaks fitted, read anew at the fit and fitted again until they stay; cheapest first. */
-function solveReadings(setup: FitSetup, options: AssignOptions): Solved[] {
+function solveReadings(setup: FitSetup, options: AssignOptions, model: FieldModel): Solved[] {
   const solved: Solved[] = []
-  for (const reading of likelyReadings(setup, options)) {
+  // a diagonalisation for each of the many fields tried would be slow
+  const searched = model === 'linear' ? setup : { ...setup, models: setup.models.map(tabulatedModel) }
+  for (const reading of likelyReadings(searched, options)) {
     let [assignments, field] = [reading.assignments, reading.fieldTesla]
     for (let round = 0; round < 3; round += 1) {
       const { problem, outcome } = solveFrom(setup, assignments, [field])
@@ -315,7 +318,7 @@ function fitWith(input: FieldFitInput, model: FieldModel): FieldFit {
     return report(input, model, setup, { problem, solution: outcome.solution, assignments, cost: 0 }, [], false)
   }
   if (short) return undetermined(model, short)
-  const solved = solveReadings(setup, { hints, visibleQ: input.visibleQ ?? [-1, 0, 1], mostTesla: MOST_TESLA })
+  const solved = solveReadings(setup, { hints, visibleQ: input.visibleQ ?? [-1, 0, 1], mostTesla: MOST_TESLA }, model)
   const [best, ...others] = solved
   if (!best) return undetermined(model, because('no_reading', 'No field up to 10 000 T lays the outermost two peaks of a line on two of its components; give at least two peaks of one line, or name the components.'))
   return report(input, model, setup, best, others, true)

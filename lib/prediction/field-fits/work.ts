@@ -5,12 +5,16 @@ import { Problem } from '@/lib/problem'
 import type { FieldFitRequest } from '@/openapi/operations/field-fits'
 
 /** Steps of arithmetic, about; a fit of this many takes under a second. */
-const MOST_WORK = 3e8
-/** Evaluations of a model that a fit makes for each of its pairs of candidates: Newton's steps to the field, and the reading there. */
-const PER_PAIR = { linear: 1, intermediate: 8 }
+const MOST_WORK = 5e8
+/** Fields that the intermediate model is solved at for a search, between which it is read off cubics. */
+const NODES = 150
+/** Steps per component for each pair of candidates: Newton's way to the field. */
+const PER_PAIR = 200
+/** Steps for each peak laid on each component. */
+const PER_PLACE = 6
 /** Evaluations of the fit from several starts, and of each fit without one point, which begins where that one ended. */
 const OF_THE_FIT = { linear: 4, intermediate: 100 }
-const PER_POINT = { linear: 4, intermediate: 8 }
+const PER_POINT = { linear: 4, intermediate: 40 }
 
 /** Arithmetic of diagonalising a term at one field: the cubes of its blocks' sizes, some 30 times. */
 function termWork({ term }: ReadLine['fit']['lower']): number {
@@ -55,7 +59,9 @@ export function boundedModels(body: FieldFitRequest, lines: readonly ReadLine[])
   const automatic = body.measurements.some((m) => (m.m_lower ?? null) === null && (m.group ?? null) === null)
   const kind = intermediate ? 'intermediate' : 'linear'
   const tried = automatic ? pairs(body, models) : { pairs: 0, reading: 0 }
-  const work = tried.pairs * (tried.reading + PER_PAIR[kind] * one) + (OF_THE_FIT[kind] + body.measurements.length * PER_POINT[kind]) * one
+  const components = models.reduce((sum, model) => sum + model.components.length, 0)
+  const search = tried.pairs * (PER_PLACE * tried.reading + PER_PAIR * components) + (tried.pairs > 0 && intermediate ? NODES * one : 0)
+  const work = search + (OF_THE_FIT[kind] + body.measurements.length * PER_POINT[kind]) * one
   if (work <= MOST_WORK) return models
   const cure = tried.pairs > 0 ? 'Name the components (m_lower with m_upper), or say which q can be seen' : 'Fit fewer lines or positions at once'
   throw new Problem('fit_too_large', `${lines.length} lines and ${body.measurements.length} positions would take too long to fit${tried.pairs > 0 ? ` with ${tried.pairs} pairs of components to try` : ''}. ${cure}, or use model=linear.`, {
