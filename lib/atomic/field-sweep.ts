@@ -142,15 +142,24 @@ export interface SweepPart {
   column: number
 }
 
-/** Shifts (cm^-1) of one component from its line at zero field. */
-export function sweepShifts(multiplet: FieldMultiplet, sweep: MultipletSweep, component: number, { fieldsTesla, from, to, column }: SweepPart, out: Float64Array, at: number): void {
-  const [l, u] = [multiplet.lowerState[component] as number, multiplet.upperState[component] as number]
-  const [low, high] = [sweep.lower.shifts[l] as Float64Array | null, sweep.upper.shifts[u] as Float64Array | null]
-  const [gLow, gHigh] = [sweep.lower.straight[l] as number, sweep.upper.straight[u] as number]
-  for (let i = 0; i < to - from; i += 1) {
-    const x = MU_B_OVER_HC_INVCM_PER_T * (fieldsTesla[from + i] as number)
-    out[at + i] = (high === null ? x * gHigh : (high[column + i] as number)) - (low === null ? x * gLow : (low[column + i] as number)) + 0
+/** Upper less lower state by state, where either may run straight (null: `x` times its slope). A loop for each case, free of tests. */
+function writeShifts(high: Float64Array | null, gHigh: number, low: Float64Array | null, gLow: number, { fieldsTesla, from, to, column }: SweepPart, out: Float64Array, at: number): void {
+  const count = to - from
+  if (high !== null && low !== null) for (let i = 0; i < count; i += 1) out[at + i] = (high[column + i] as number) - (low[column + i] as number) + 0
+  else if (high !== null) for (let i = 0; i < count; i += 1) out[at + i] = (high[column + i] as number) - MU_B_OVER_HC_INVCM_PER_T * (fieldsTesla[from + i] as number) * gLow + 0
+  else if (low !== null) for (let i = 0; i < count; i += 1) out[at + i] = MU_B_OVER_HC_INVCM_PER_T * (fieldsTesla[from + i] as number) * gHigh - (low[column + i] as number) + 0
+  else {
+    for (let i = 0; i < count; i += 1) {
+      const x = MU_B_OVER_HC_INVCM_PER_T * (fieldsTesla[from + i] as number)
+      out[at + i] = x * gHigh - x * gLow + 0
+    }
   }
+}
+
+/** Shifts (cm^-1) of one component from its line at zero field. */
+export function sweepShifts(multiplet: FieldMultiplet, sweep: MultipletSweep, component: number, part: SweepPart, out: Float64Array, at: number): void {
+  const [l, u] = [multiplet.lowerState[component] as number, multiplet.upperState[component] as number]
+  writeShifts(sweep.upper.shifts[u] as Float64Array | null, sweep.upper.straight[u] as number, sweep.lower.shifts[l] as Float64Array | null, sweep.lower.straight[l] as number, part, out, at)
 }
 
 /** Derivatives of one component, cm^-1 per tesla. */
@@ -158,37 +167,73 @@ export function sweepDerivatives(multiplet: FieldMultiplet, sweep: MultipletSwee
   const [l, u] = [multiplet.lowerState[component] as number, multiplet.upperState[component] as number]
   const [low, high] = [sweep.lower.slopes[l] as Float64Array | null, sweep.upper.slopes[u] as Float64Array | null]
   const [gLow, gHigh] = [sweep.lower.straight[l] as number, sweep.upper.straight[u] as number]
-  for (let i = 0; i < to - from; i += 1) {
-    const slope = (high === null ? gHigh : (high[column + i] as number)) - (low === null ? gLow : (low[column + i] as number))
-    out[at + i] = MU_B_OVER_HC_INVCM_PER_T * slope + 0
+  const count = to - from
+  if (high !== null && low !== null) for (let i = 0; i < count; i += 1) out[at + i] = MU_B_OVER_HC_INVCM_PER_T * ((high[column + i] as number) - (low[column + i] as number)) + 0
+  else if (high !== null) for (let i = 0; i < count; i += 1) out[at + i] = MU_B_OVER_HC_INVCM_PER_T * ((high[column + i] as number) - gLow) + 0
+  else if (low !== null) for (let i = 0; i < count; i += 1) out[at + i] = MU_B_OVER_HC_INVCM_PER_T * (gHigh - (low[column + i] as number)) + 0
+  else out.fill(MU_B_OVER_HC_INVCM_PER_T * (gHigh - gLow) + 0, at, at + count)
+}
+
+/** Fields whose strengths are summed at once: their numbers stay in the processor's nearest cache. */
+const AT_ONCE = 512
+/** The vector of a state that is alone in its block. */
+const ALONE = new Float64Array(AT_ONCE).fill(1)
+const amplitudes = new Float64Array(AT_ONCE)
+
+/** One upper J of an amplitude: upper x (sum of factor x lower) over the lower J's that the dipole joins to it, three at most. */
+interface AmplitudeTerm {
+  high: Float64Array
+  factors: number[]
+  lows: Float64Array[]
+}
+
+/** Adds one term of an amplitude at some fields; a loop for each number of lower J's. */
+function addAmplitudes({ high, factors, lows }: AmplitudeTerm, count: number, highAt: number, lowAt: number): void {
+  const [a, b, c] = [factors[0] as number, factors[1] as number, factors[2] as number]
+  const [first, second, third] = [lows[0] as Float64Array, lows[1] as Float64Array, lows[2] as Float64Array]
+  const sums = amplitudes
+  if (factors.length === 1) {
+    for (let i = 0; i < count; i += 1) sums[i] = (sums[i] as number) + (high[highAt + i] as number) * (a * (first[lowAt + i] as number))
+  } else if (factors.length === 2) {
+    for (let i = 0; i < count; i += 1) sums[i] = (sums[i] as number) + (high[highAt + i] as number) * (a * (first[lowAt + i] as number) + b * (second[lowAt + i] as number))
+  } else {
+    for (let i = 0; i < count; i += 1) sums[i] = (sums[i] as number) + (high[highAt + i] as number) * (a * (first[lowAt + i] as number) + b * (second[lowAt + i] as number) + c * (third[lowAt + i] as number))
   }
 }
 
-/** Adds factor x upper x lower over the columns; a null one is 1 (a block of one state). */
-function addProduct(out: Float64Array, at: number, count: number, factor: number, high: Float64Array | null, low: Float64Array | null, column: number): void {
-  if (high === null && low === null) for (let i = 0; i < count; i += 1) (out[at + i] as number) += factor
-  else if (high === null || low === null) {
-    const only = (high ?? low) as Float64Array
-    for (let i = 0; i < count; i += 1) (out[at + i] as number) += factor * (only[column + i] as number)
-  } else for (let i = 0; i < count; i += 1) (out[at + i] as number) += factor * (high[column + i] as number) * (low[column + i] as number)
+/** What a component's amplitude is the sum of: one term for each upper J. */
+function amplitudeTerms({ lower, upper, dipole }: BlockLink, sweep: MultipletSweep, rowLow: number, rowHigh: number): AmplitudeTerm[] {
+  const terms: AmplitudeTerm[] = []
+  for (let i = 0; i < upper.n; i += 1) {
+    const term: AmplitudeTerm = { high: sweep.upper.vectors[rowHigh + i] ?? ALONE, factors: [], lows: [] }
+    for (let j = 0; j < lower.n; j += 1) {
+      const factor = dipole[i * lower.n + j] as number
+      // elements between other J's are zero but for rounding
+      if (factor === 0 || Math.abs((upper.twoJs[i] as number) - (lower.twoJs[j] as number)) > 2) continue
+      term.factors.push(factor)
+      term.lows.push(sweep.lower.vectors[rowLow + j] ?? ALONE)
+    }
+    if (term.factors.length > 0) terms.push(term)
+  }
+  return terms
 }
 
 /** Strengths of one component, as a share of the multiplet times `factor`; interference between J's included. */
 export function sweepStrengths(multiplet: FieldMultiplet, sweep: MultipletSweep, component: number, { from, to, column }: SweepPart, factor: number, out: Float64Array, at: number): void {
-  const { lower, upper, dipole } = multiplet.links[multiplet.linkOf[component] as number] as BlockLink
-  const rowLow = lower.firstVector + ((multiplet.lowerState[component] as number) - lower.firstState) * lower.n
-  const rowHigh = upper.firstVector + ((multiplet.upperState[component] as number) - upper.firstState) * upper.n
-  const count = to - from
-  out.fill(0, at, at + count)
-  for (let i = 0; i < upper.n; i += 1) {
-    for (let j = 0; j < lower.n; j += 1) {
-      const element = dipole[i * lower.n + j] as number
-      if (element !== 0) addProduct(out, at, count, element, sweep.upper.vectors[rowHigh + i] as Float64Array | null, sweep.lower.vectors[rowLow + j] as Float64Array | null, column)
-    }
-  }
+  const link = multiplet.links[multiplet.linkOf[component] as number] as BlockLink
+  const rowLow = link.lower.firstVector + ((multiplet.lowerState[component] as number) - link.lower.firstState) * link.lower.n
+  const rowHigh = link.upper.firstVector + ((multiplet.upperState[component] as number) - link.upper.firstState) * link.upper.n
+  const terms = amplitudeTerms(link, sweep, rowLow, rowHigh)
   const scale = factor / multiplet.norm
-  for (let i = 0; i < count; i += 1) {
-    const amplitude = out[at + i] as number
-    out[at + i] = amplitude * amplitude * scale
+  for (let done = 0; done < to - from; done += AT_ONCE) {
+    const count = Math.min(AT_ONCE, to - from - done)
+    amplitudes.fill(0, 0, count)
+    const [highAt, lowAt] = [link.upper.n === 1 ? 0 : column + done, link.lower.n === 1 ? 0 : column + done]
+    for (const term of terms) addAmplitudes(term, count, highAt, lowAt)
+    const place = at + done
+    for (let i = 0; i < count; i += 1) {
+      const amplitude = amplitudes[i] as number
+      out[place + i] = amplitude * amplitude * scale
+    }
   }
 }

@@ -88,6 +88,17 @@ async function firstPage(env) {
   }
 }
 
+/** Bulk predictions by the built product against NumPy, their memory, and small requests beside them. */
+async function bulkPredictions(env) {
+  await build()
+  const { child, base } = await serve('127.0.0.1', await freePort(), env)
+  try {
+    await node(['--import', 'tsx', 'tests/bench/bulk.mjs'], { env: { BENCH_BASE: base, BENCH_PID: String(child.pid), BENCH_KEY: await makeKey(env) } })
+  } finally {
+    await endServer(child)
+  }
+}
+
 /** A large table imported into the built product. */
 async function importTable(env) {
   await build()
@@ -107,6 +118,13 @@ await main(async () => {
     console.log(`${kept ? 'kept  ' : 'BROKEN'} ${what}: ${value.toFixed(2)}${unit} (at most ${limit}${unit})`)
   }
   const env = await environment()
+  // npm run bench -- bulk measures that alone
+  if (process.argv.includes('bulk')) {
+    await bulkPredictions(env).catch((error) => broken.push(`bulk (${error.message})`))
+    await releaseDatabase()
+    if (broken.length > 0) process.exitCode = 1
+    return
+  }
   const key = await makeKey(env)
   say('comparing routes')
   const medians = await compareRoutes(env, key)
@@ -121,6 +139,8 @@ await main(async () => {
   await migrate(editions)
   await seed(editions)
   await node(['--import', 'tsx', 'tests/bench/editions.mjs'], { env: editions }).catch(() => broken.push('editions'))
+  say('bulk predictions against NumPy')
+  await bulkPredictions(env).catch((error) => broken.push(`bulk (${error.message})`))
   say('importing a table of 100 000 rows')
   await importTable(env).catch((error) => broken.push(`import (${error.message})`))
   say('weighing the first page')
