@@ -378,3 +378,151 @@ class Client:
     def fit_field(self, **body: Any) -> Json:
         """The field from measured positions: the body of POST /field-fits. Returns ``data``; an undetermined fit says why in it."""
         return self.compute("/field-fits", body)["data"]
+
+    def field_table(self, multiplet: Any, start: float, stop: float, unit: str = "T", **options: Any) -> "FieldTable":
+        """A multiplet over an interval of fields, to evaluate without the network. Needs NumPy.
+
+        multiplet -- any one line of it, such as "Li-I.1~Li-I.2", or {"lower": [levels], "upper": [levels]}
+        start, stop -- the interval, in ``unit`` (T, mT, G, kG)
+        options   -- members of the body of POST /field-tables: max_error_invcm (cm^-1), max_strength_error, g_values, g_s, model
+        """
+        named = {"transition": multiplet} if isinstance(multiplet, str) else multiplet
+        body = {"multiplet": named, "field": {"start": start, "stop": stop, "unit": unit}, **options}
+        return FieldTable(self.compute("/field-tables", body))
+
+
+class Block:
+    """A line's or a multiplet's components over a grid of fields, as arrays.
+
+    values      -- [field][component], in the quantity asked (default: wavenumber in cm^-1); NaN where there is none
+    derivatives -- the same per tesla, or None where not asked
+    strengths   -- [component] in the linear model, [field][component] in the intermediate one, or None; intensities likewise
+    q, m_lower, m_upper, j_lower, j_upper -- by component; J by continuity from zero field, NaN where it has no name
+    transition, model, strength_normalisation, validity -- as in the API
+    """
+
+    def __init__(self, transition: Optional[str], model: str, names: Json, values: Any, derivatives: Any, strengths: Any, intensities: Any,
+                 strength_normalisation: str, validity: Json) -> None:
+        self.transition, self.model = transition, model
+        self.q, self.m_lower, self.m_upper = names["q"], names["m_lower"], names["m_upper"]
+        self.j_lower, self.j_upper = names["j_lower"], names["j_upper"]
+        self.values, self.derivatives, self.strengths, self.intensities = values, derivatives, strengths, intensities
+        self.strength_normalisation, self.validity = strength_normalisation, validity
+
+    @staticmethod
+    def of(row: Json) -> "Block":
+        """From a block of the API as JSON."""
+        numbers = {name: None if row[name] is None else numpy.array(row[name], dtype=float) for name in ("values", "derivatives", "strengths", "intensities")}
+        names = {name: numpy.array(row[name], dtype=int if name == "q" else float) for name in _NAMES}
+        return Block(row["transition"], row["model"], names, **numbers, strength_normalisation=row["strength_normalisation"], validity=row["validity"])
+
+
+_NAMES = ("q", "m_lower", "m_upper", "j_lower", "j_upper")
+
+
+def _arrow_blocks(stream: Any) -> Iterator[Block]:
+    """Blocks of an Arrow stream, one record batch each. Through pyarrow, and NOT tested."""
+    import pyarrow.ipc  # type: ignore[import-not-found]
+
+    with pyarrow.ipc.open_stream(stream) as reader:
+        while True:
+            try:
+                batch, told = reader.read_next_batch_with_custom_metadata()
+            except StopIteration:
+                return
+            told = {key.decode(): value.decode() for key, value in dict(told).items()}
+            columns = {name: batch.column(name) for name in batch.schema.names}
+            names = {name: columns[name].to_numpy(zero_copy_only=False) for name in _NAMES}
+            # lists are [component][field]
+            lists = {}
+            for wanted, name in (("values", "value"), ("derivatives", "derivative"), ("strengths", "strength"), ("intensities", "intensity")):
+                column = columns.get(name)
+                lists[wanted] = None if column is None or column.null_count == len(column) > 0 else column.flatten().to_numpy(zero_copy_only=False).reshape(len(column), -1).T
+            yield Block(told.get("transition"), told["model"], names, **lists, strength_normalisation=told["strength_normalisation"], validity=json.loads(told["validity"]))
+
+
+class FieldTable:
+    """Positions and strengths of a multiplet over an interval of fields: cubic Hermite interpolation in NumPy, without the network.
+
+    max_error_invcm    -- no interpolated position is farther from the model than this, in cm^-1 (proved where ``proved``)
+    max_strength_error -- the same for strengths, all of which sum to 1; None without an LS amplitude
+    start_tesla, stop_tesla -- the interval, in T; a field outside is a ValueError
+    q, m_lower, m_upper, j_lower, j_upper -- by component, in the order of ``Block``
+    edition, meta      -- what the table was made from
+
+    Made by ``Client.field_table``; ``save`` and ``load`` keep it as a file. The checksum is verified whenever one is made.
+    """
+
+    def __init__(self, answer: Json) -> None:
+        _need_numpy()
+        data = answer["data"]
+        self._answer = answer
+        self.meta: Json = answer["meta"]
+        self.edition: int = self.meta["edition"]
+        self.transition: Optional[str] = data["transition"]
+        self.model: str = data["model"]
+        self.q = numpy.array(data["q"], dtype=int)
+        self.m_lower, self.m_upper, self.j_lower, self.j_upper = (numpy.array(data[name], dtype=float) for name in _NAMES[1:])
+        self.nodes_tesla = numpy.array(data["nodes_tesla"], dtype=float)
+        self.max_error_invcm: float = data["max_error_invcm"]
+        self.max_strength_error: Optional[float] = data["max_strength_error"]
+        self.proved: bool = data["proved"]
+        self.checksum_sha256: str = data["checksum_sha256"]
+        self.start_tesla, self.stop_tesla = float(self.nodes_tesla[0]), float(self.nodes_tesla[-1])
+        read = {name: None if data[name] is None else numpy.array(data[name], dtype=float) for name in _MATRICES}
+        self._positions, self._position_slopes, self._strengths, self._strength_slopes = (read[name] for name in _MATRICES)
+        self.verify()
+
+    def verify(self) -> None:
+        """Raises BrokenAnswerError where the numbers are not those of the checksum: SHA-256 over them as little-endian float64."""
+        digest = hashlib.sha256()
+        for numbers in (self.q, self.m_lower, self.m_upper, self.nodes_tesla, self._positions, self._position_slopes, self._strengths, self._strength_slopes):
+            if numbers is not None:
+                digest.update(numpy.ascontiguousarray(numbers, dtype="<f8").tobytes())
+        if digest.hexdigest() != self.checksum_sha256:
+            raise BrokenAnswerError("The field table has the checksum {} and says {}: it is damaged.".format(digest.hexdigest(), self.checksum_sha256))
+
+    def save(self, path: Any) -> None:
+        """Keeps the table as a JSON file."""
+        with open(path, "w", encoding="utf-8") as file:
+            json.dump(self._answer, file)
+
+    @staticmethod
+    def load(path: Any) -> "FieldTable":
+        """A table that was saved; a damaged one raises BrokenAnswerError."""
+        with open(path, encoding="utf-8") as file:
+            return FieldTable(json.load(file))
+
+    def _place(self, field_tesla: Any) -> Tuple[Any, Any, Any]:
+        """Interval, its length and the place in it, for each field."""
+        field = numpy.asarray(field_tesla, dtype=float)
+        if not numpy.all((field >= self.start_tesla) & (field <= self.stop_tesla)):
+            raise ValueError("a field is outside the table, which runs from {} to {} T".format(self.start_tesla, self.stop_tesla))
+        i = numpy.clip(numpy.searchsorted(self.nodes_tesla, field, side="right") - 1, 0, len(self.nodes_tesla) - 2)
+        h = self.nodes_tesla[i + 1] - self.nodes_tesla[i]
+        return i, h[..., None], ((field - self.nodes_tesla[i]) / h)[..., None]
+
+    def positions(self, field_tesla: Any, components: Any = slice(None)) -> Any:
+        """Wavenumbers in cm^-1 at a field or an array of fields in T: [...field][component]. ``components`` picks some, by index or mask."""
+        return _hermite(self._place(field_tesla), self._positions[:, components], self._position_slopes[:, components])
+
+    def slopes(self, field_tesla: Any, components: Any = slice(None)) -> Any:
+        """Derivatives of the interpolated positions, in cm^-1 per tesla."""
+        i, h, t = self._place(field_tesla)
+        v, s = self._positions[:, components], self._position_slopes[:, components]
+        return 6 * t * (1 - t) * (v[i + 1] - v[i]) / h + (1 - t) * (1 - 3 * t) * s[i] + t * (3 * t - 2) * s[i + 1]
+
+    def strengths(self, field_tesla: Any, components: Any = slice(None)) -> Any:
+        """Strengths, all of which sum to 1 at each field (dimensionless); None without an LS amplitude."""
+        if self._strengths is None or self._strength_slopes is None:
+            return None
+        return _hermite(self._place(field_tesla), self._strengths[:, components], self._strength_slopes[:, components])
+
+
+_MATRICES = ("positions_invcm", "position_slopes_invcm_per_tesla", "strengths", "strength_slopes_per_tesla")
+
+
+def _hermite(place: Tuple[Any, Any, Any], v: Any, s: Any) -> Any:
+    """v_a + (v_b - v_a) t^2 (3 - 2t) + h t (1 - t) ((1 - t) s_a - t s_b), with t = (B - a)/h: the interpolation that the bound is proved for."""
+    i, h, t = place
+    return v[i] + (v[i + 1] - v[i]) * (t * t * (3 - 2 * t)) + h * t * (1 - t) * ((1 - t) * s[i] - t * s[i + 1])

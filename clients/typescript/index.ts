@@ -1,4 +1,6 @@
 export * from './api'
+export { type ArrayBlock, type Columns, predictArrays, predictBlocks } from './arrow'
 export * from './client'
+export { interpolate, type Interpolated, verifyFieldTable } from './field-table'
 export * from './problem'
 export { PATIENCE, type Patience, retryAfterMs } from './retry'

@@ -13,7 +13,8 @@ function filtersOf(level: Level): [Record<string, string | number>, (row: Level)
     [{ species, configuration: level.configuration }, (row) => row.species === species && row.configuration === level.configuration],
     [{ species, source: level.energy_source }, (row) => row.species === species],
   ]
-  if (level.coupling === 'LS') filters.push([{ species, term: term.symbol }, (row) => row.species === species && row.term.symbol === term.symbol])
+  // a symbol with the mark of odd parity means odd, one without it either
+  if (level.coupling === 'LS') filters.push([{ species, term: term.symbol }, (row) => row.species === species && (row.term.symbol === term.symbol || row.term.symbol.replace('*', '') === term.symbol)])
   if (g.adopted !== null) filters.push([{ species, g_min: g.adopted, g_max: g.adopted }, (row) => row.g_j.adopted === g.adopted])
   return filters
 }
