@@ -10,6 +10,8 @@ import { readingText } from './positions-grid'
 const MARGIN = { top: 14, right: 14, bottom: 34, left: 62 }
 const GAP = 30
 const BAND = 84
+/** Residuals smaller than this are rounding: the axis does not blow them up. */
+const LEAST_REACH = 1e-5
 
 /** The unit that residuals are shown in: how many of it one cm^-1 is, line by line, below zero where it runs the other way. */
 export interface ResidualUnit {
@@ -31,7 +33,7 @@ interface Props {
 /** Measured minus fitted with one standard deviation, and below it how far each point moves the field. */
 export function ResidualPlot({ residuals, scatter, unit, table, withInfluence }: Props) {
   const rows = residuals.map((row) => ({ row, y: residualIn(unit, row, row.residual_invcm), bar: Math.abs(residualIn(unit, row, row.position_unc_invcm ?? scatter ?? 0)) }))
-  const reach = niceCeil(1.08 * Math.max(...rows.map(({ y, bar }) => Math.abs(y) + bar), Number.MIN_VALUE))
+  const reach = niceCeil(1.08 * Math.max(...rows.map(({ y, bar }) => Math.abs(y) + bar), LEAST_REACH))
   const pull = niceCeil(1.05 * Math.max(...residuals.map((row) => Math.abs(row.influence ?? 0)), 0.1))
   const worst = residuals.reduce((a, b) => (Math.abs(b.standardised ?? 0) > Math.abs(a.standardised ?? 0) ? b : a), residuals[0] as FitResidual)
   return (
