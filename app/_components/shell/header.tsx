@@ -10,6 +10,7 @@ import { ThemeSwitch } from './theme-switch'
 const ROOMS: readonly { href: string; label: string; curators?: boolean; is: (path: string) => boolean }[] = [
   { href: '/', label: 'Find', is: (path) => path === '/' || path.startsWith('/levels') || path.startsWith('/species') || path.startsWith('/sources') },
   { href: '/lines', label: 'Lines', is: (path) => path.startsWith('/lines') },
+  { href: '/patterns', label: 'Patterns', is: (path) => path.startsWith('/patterns') },
   { href: '/measure-b', label: 'Measure B', is: (path) => path.startsWith('/measure-b') },
   { href: '/editions', label: 'Editions', is: (path) => path.startsWith('/editions') },
   { href: '/curate', label: 'Curate', curators: true, is: (path) => path.startsWith('/curate') },
