@@ -113,7 +113,8 @@ async function perform<S>(house: House<S>, planned: Map<string, Planned<S>>, one
   const warnings: Warning[] = []
   const setting: Setting = { operation, read, edition, fingerprint, format, warnings, path: where.path, noneMatch }
   const call = {
-    params: read.params, query: read.query, body: read.body, edition, after, format, caller: progress.caller, requestId: progress.requestId, ifMatch: read.ifMatch, clientAddress: address, signal: request.signal, requestFields: headers, claim: null,
+    params: read.params, query: read.query, body: read.body, edition, after, format, caller: progress.caller, requestId: progress.requestId, ifMatch: read.ifMatch, clientAddress: address, requestFields: headers, claim: null,
+    get signal() { return request.signal },
     snapshot: operation.edition === 'none' || operation.numberOnly === true ? null : await house.snapshotFor(edition),
     warn: (code: string, detail: string) => void (warnings.some((warning) => warning.code === code && warning.detail === detail) || warnings.push({ code, detail })),
   } as unknown as Call<never, never, never, never>
