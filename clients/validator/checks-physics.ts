@@ -1,15 +1,7 @@
-import type { Components, Transition } from '../typescript'
-import { type Check, type Inquiry, NothingToCheck, unlessImpossible } from './inquiry'
+import { type Check, componentsOf, NothingToCheck } from './inquiry'
 
 /** Half the distance of two neighbouring doubles at 1: the largest relative error of one rounding. */
 const EPS = 2 ** -53
-type Options = Record<string, string | number>
-
-async function componentsOf(the: Inquiry, line: Transition, options: Options): Promise<Components | null> {
-  const parameters = { transition: line.id, kind: line.kind, ...options } as never
-  the.note('getComponents', parameters)
-  return (await unlessImpossible(the.table.get('getComponents', parameters)))?.data ?? null
-}
 
 const sums: Check = {
   name: 'strengths of a line',

@@ -1,4 +1,4 @@
-import { type Level, type ListId, type Lodeterm, type OperationId, OPERATIONS, type Parameters, ProblemError, type Row, type Transition } from '../typescript'
+import { type Components, type Level, type ListId, type Lodeterm, type OperationId, OPERATIONS, type Parameters, ProblemError, type Row, type Transition } from '../typescript'
 import type { Random } from './random'
 
 /** A claim that did not hold, with the request that shows it. */
@@ -83,4 +83,13 @@ export async function unlessImpossible<T>(asked: Promise<T>): Promise<T | null> 
     if (error instanceof ProblemError && error.status === 422) return null
     throw error
   }
+}
+
+/** The components of a line without its nucleus, noted; null where the model does not exist for it. */
+export async function componentsOf(the: Inquiry, line: Transition, options: Partial<Parameters<'getComponents'>>): Promise<Components | null> {
+  const parameters = { transition: line.id, kind: line.kind, ...options } as Parameters<'getComponents'>
+  the.note('getComponents', parameters)
+  const answer = await unlessImpossible(the.table.get('getComponents', parameters))
+  // hyperfine components come only where they are asked for
+  return answer === null ? null : (answer.data as Components)
 }

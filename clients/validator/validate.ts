@@ -1,5 +1,7 @@
 import { type Level, Lodeterm, type Transition } from '../typescript'
+import { BULK_CHECKS } from './checks-bulk'
 import { EDITION_CHECKS } from './checks-editions'
+import { FORMAT_CHECKS } from './checks-formats'
 import { PHYSICS_CHECKS } from './checks-physics'
 import { TABLE_CHECKS } from './checks-table'
 import { type Check, type Failure, Inquiry, NothingToCheck } from './inquiry'
@@ -28,7 +30,7 @@ export interface Report {
   passed: boolean
 }
 
-export const CHECKS: readonly Check[] = [...TABLE_CHECKS, ...EDITION_CHECKS, ...PHYSICS_CHECKS]
+export const CHECKS: readonly Check[] = [...TABLE_CHECKS, ...EDITION_CHECKS, ...PHYSICS_CHECKS, ...BULK_CHECKS, ...FORMAT_CHECKS]
 
 export interface Questions { key?: string; seed: number; count: number; told?: (result: Result) => void; checks?: readonly Check[] }
 

@@ -22,7 +22,7 @@ describe('asking by operation', () => {
 
   it('sends a body, and the edition with it', async () => {
     const { data, meta } = await table.post('computeSublevels', { levels: [{ energy_invcm: 0, s: 0, l: 1, j: 1, parity: 'odd' }], field: { values: [1], unit: 'T' }, model: 'linear' })
-    expect(data.m).toEqual([-1, 0, 1])
+    expect(data).toMatchObject({ m: [-1, 0, 1] })
     expect(meta.edition).toBe(1)
   })
 
