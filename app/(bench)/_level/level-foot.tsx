@@ -1,5 +1,8 @@
 'use client'
 import type { HyperfineConstants, LevelDetail } from '@/openapi/schemas/level'
+import { fieldForUrl } from '@/lib/units/field'
+import { useField } from '@/app/_components/field/use-field'
+import { useModel, useNucleus, useQuadratic } from '@/app/_components/field/use-model'
 import { Configuration } from '@/app/_components/configuration'
 import { DataTable, type Column } from '@/app/_components/data-table'
 import { EvidenceKey } from '@/app/_components/evidence'
@@ -25,7 +28,7 @@ export function LevelFoot({ level }: { level: LevelDetail }) {
   return (
     <>
       {level.hyperfine_constants.length > 0 ? (
-        <Part title="Hyperfine constants" aside="A: magnetic dipole, B: electric quadrupole; stored, not yet used in the pattern">
+        <Part title="Hyperfine constants" aside="A: magnetic dipole, B: electric quadrupole">
           <DataTable columns={hyperfine} rows={level.hyperfine_constants} rowKey={(row) => String(row.mass_number)} caption={`Hyperfine constants of ${level.id}`} hideCaption />
         </Part>
       ) : null}
@@ -58,6 +61,17 @@ export function LevelFoot({ level }: { level: LevelDetail }) {
         <div className="mt-5"><EvidenceKey /></div>
       </Part>
       <RequestPanel path={`/levels/${level.id}`} />
+      <SublevelRequest level={level} />
     </>
   )
+}
+
+/** Alone, so that a drag of the field redraws no more of the foot than this. */
+function SublevelRequest({ level }: { level: LevelDetail }) {
+  const { field } = useField()
+  const [model] = useModel()
+  const [quadratic] = useQuadratic()
+  const [nucleus] = useNucleus()
+  const what = nucleus.on ? { hyperfine: 'true', isotope: nucleus.isotope } : { model, diamagnetic: quadratic ? 'true' : null }
+  return <RequestPanel title="The request behind the sublevels" path={`/levels/${level.id}/sublevels`} query={{ field: fieldForUrl(field.tesla, field.unit), ...what }} />
 }

@@ -30,6 +30,20 @@ function numeric(name: Name, header: React.ReactNode, print: (value: number) => 
   }
 }
 
+/** The pair that a sublevel tends to at high field: what it is called, and where the two numbers stand. */
+const far = (name: string, header: React.ReactNode, mL: 'm_l_lower' | 'm_l_upper', mS: 'm_s_lower' | 'm_s_upper'): Column<Component> => ({
+  name,
+  header,
+  align: 'right',
+  value: (c) => (c[mL] === null || c[mS] === null ? null : `${c[mL]},${c[mS]}`),
+  cell: (c) => (c[mL] === null || c[mS] === null ? absent('not named') : `${halves(c[mL])}, ${halves(c[mS])}`),
+})
+
+const farColumns: Column<Component>[] = [
+  far('m_l_m_s_lower', <>M<sub>L</sub>, M<sub>S</sub> lower</>, 'm_l_lower', 'm_s_lower'),
+  far('m_l_m_s_upper', <>M<sub>L</sub>, M<sub>S</sub> upper</>, 'm_l_upper', 'm_s_upper'),
+]
+
 function columnsOf(answer: Components, medium: 'air' | 'vacuum'): Column<Component>[] {
   const angle = answer.theta_deg !== null
   const wavelength =
@@ -52,10 +66,12 @@ function columnsOf(answer: Components, medium: 'air' | 'vacuum'): Column<Compone
     numeric('m_lower', <>m<sub>lower</sub></>, halves),
     numeric('m_upper', <>m<sub>upper</sub></>, halves),
     { ...numeric('q', 'q', (v) => signed(v, 1)), only: 'copy' },
+    ...(answer.model === 'intermediate' ? farColumns : []),
     numeric('shift_lorentz', 'Shift, L', (v) => signed(v, 6), 'does not apply'),
     numeric('shift_invcm', <>Shift, cm<sup>−1</sup></>, (v) => signed(v, 6)),
     numeric('shift_ghz', 'Shift, GHz', (v) => signed(v, 6)),
     numeric('shift_pm', 'Shift, pm', (v) => signed(v, 5)),
+    numeric('derivative_invcm_per_tesla', <>Slope, cm<sup>−1</sup>/T</>, (v) => signed(v, 6)),
     numeric('wavenumber_invcm', <>Wavenumber, cm<sup>−1</sup></>, (v) => fixed(v, 4)),
     wavelength,
     ...copied.map((name): Column<Component> => ({ ...numeric(name, name, String), only: 'copy' })),
@@ -81,7 +97,7 @@ export function ComponentsTable({ answer, medium, active }: { answer: Components
         rowKey={componentKey}
         caption={`Components of ${answer.transition} at ${answer.field_tesla} T`}
         hideCaption
-        summary={`${answer.components.length} components; wavelengths in ${medium}; L is the Lorentz unit, μB·B/hc`}
+        summary={`${answer.components.length} components; wavelengths in ${medium}; L is the Lorentz unit, μB·B/hc${answer.model === 'intermediate' ? '; M_L, M_S: what a sublevel tends to at high field' : ''}`}
         rowClassName={(component) => (componentKey(component) === active ? 'bg-lamp-wash' : '')}
       />
       {first ? <Budget components={answer.components} /> : null}

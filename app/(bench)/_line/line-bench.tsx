@@ -1,34 +1,46 @@
 'use client'
-import { memo, useDeferredValue, useMemo, useState } from 'react'
-import type { Level } from '@/openapi/schemas/level'
+import { useQuery } from '@tanstack/react-query'
+import { useCallback, useDeferredValue, useMemo } from 'react'
+import type { Species } from '@/openapi/schemas/species'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
+import { apiQuery } from '@/app/_components/data/api'
+import { useEdition } from '@/app/_components/data/edition'
 import { AngleControl } from '@/app/_components/field/angle-control'
 import { FieldControl } from '@/app/_components/field/field-control'
+import { ModelControl } from '@/app/_components/field/model-control'
 import { useAngle, useField } from '@/app/_components/field/use-field'
+import { useModel, useNucleus, useQuadratic } from '@/app/_components/field/use-model'
 import { Notice } from '@/app/_components/notice'
-import { Part } from '@/app/_components/page-head'
-import { PatternPlot } from '@/app/_components/plots/pattern-plot'
-import { SplittingDiagram, type SplitLevel } from '@/app/_components/plots/splitting-diagram'
-import { Warnings } from '@/app/_components/warnings'
-import { ComponentsTable } from './components-table'
-import { usePrediction, type Prediction } from './use-prediction'
-import { ValidityPart } from './validity-part'
+import { modelWords } from '../_parts/model-words'
+import { FineBench } from './fine-bench'
+import { NuclearBench } from './nuclear-bench'
+import { usePrediction } from './use-prediction'
 import { shortVerdict, worse } from './verdict-words'
 
-const splitLevel = (level: Level): SplitLevel => ({ configuration: level.configuration, symbol: level.term.symbol, twoJ: Math.round(2 * level.term.j), g: level.g_j.adopted })
+/** Mass numbers with a constant A for an end of the line. */
+const isotopesOf = ({ hyperfine }: TransitionDetail): number[] =>
+  [...new Set([...hyperfine.lower, ...hyperfine.upper].filter((one) => one.a_mhz !== null).map((one) => one.mass_number))].sort((a, b) => a - b)
 
-/** The bench of a line: its field, its angle, and everything that follows them. */
+/** The bench of a line: its field, its angle, its model, and everything that follows them. */
 export function LineBench({ line }: { line: TransitionDetail }) {
+  const { param: edition } = useEdition()
   const { field, setField, problem: fieldProblem } = useField()
   const { thetaDeg, setThetaDeg, problem: angleProblem } = useAngle()
-  const [active, setActive] = useState<string | null>(null)
-  const prediction = usePrediction(line, field.tesla, thetaDeg)
-  // The drawings follow the slider; the tables below may lag a frame or two, so that no step of a drag waits for them.
-  const settled = useDeferredValue(prediction)
+  const [model, setModel] = useModel()
+  const [quadratic, setQuadratic] = useQuadratic()
+  const [nucleus, setNucleus] = useNucleus()
+  const isotopes = useMemo(() => isotopesOf(line), [line])
+  const species = useQuery({ ...apiQuery<Species>(`/species/${line.lower.species}`, { edition }), enabled: nucleus.on })
+  const asked = useMemo(() => ({ fieldTesla: field.tesla, thetaDeg, model, quadratic }), [field.tesla, thetaDeg, model, quadratic])
+  const prediction = usePrediction(line, asked)
+  const { unit } = field
+  const toField = useCallback((tesla: number) => setField({ tesla, unit }), [setField, unit])
+  // Drawings of one field follow the slider; curves, profile and tables may lag a frame or two, so that no step of a drag waits for them.
+  const settledAsked = useDeferredValue(asked)
   const validity = prediction.ok ? prediction.components.validity : null
-  const ends = useMemo(() => ({ lower: splitLevel(line.lower), upper: splitLevel(line.upper) }), [line])
-  const name = line.id.replace('~', '_')
-  const shared = { fieldTesla: field.tesla, thetaDeg, active, onActive: setActive, name }
+  const inForce = prediction.ok ? prediction.components.model : 'linear'
+  const bends = line.diamagnetic.lower.status === 'ok' || line.diamagnetic.upper.status === 'ok'
+  const linearStatus = validity ? worse(validity.positions.status, validity.strengths.status) : 'unknown'
 
   return (
     <>
@@ -36,10 +48,16 @@ export function LineBench({ line }: { line: TransitionDetail }) {
         value={field}
         onChange={setField}
         problem={fieldProblem}
-        model="linear (weak field)"
-        tone={validity ? worse(validity.positions.status, validity.strengths.status) : 'unknown'}
-        verdict={validity ? shortVerdict(validity, line) : undefined}
+        model={nucleus.on ? 'hyperfine (diagonalised within one J)' : modelWords(inForce, model)}
+        tone={!nucleus.on && inForce === 'intermediate' ? 'valid' : linearStatus}
+        verdict={validity ? shortVerdict(validity, line, nucleus.on ? 'linear' : inForce) : undefined}
         limitTesla={validity?.positions.field_limit_tesla ?? null}
+      />
+      <ModelControl
+        model={model}
+        onModel={setModel}
+        nucleus={isotopes.length === 0 && !nucleus.on ? null : { ...nucleus, onChange: setNucleus, isotopes, natural: isotopes.length > 0, element: line.lower.species.split('-')[0] ?? '' }}
+        quadratic={bends || quadratic ? { on: quadratic, onChange: setQuadratic } : null}
       />
       <div className="mt-3">
         <AngleControl value={thetaDeg} onChange={setThetaDeg} problem={angleProblem} />
@@ -50,51 +68,11 @@ export function LineBench({ line }: { line: TransitionDetail }) {
             <p>{prediction.detail}</p>
           </Notice>
         </div>
+      ) : nucleus.on ? (
+        <NuclearBench line={line} isotopes={species.data?.data.isotopes ?? null} error={species.error} isotope={nucleus.isotope} asked={settledAsked} fieldUnit={unit} onField={toField} />
       ) : (
-        <>
-          <div className="mt-7 grid gap-x-8 gap-y-8 xl:grid-cols-[minmax(0,1.12fr)_minmax(0,1fr)]">
-            <PatternPlot {...shared} components={prediction.components.components} medium={line.conventional_medium} />
-            <SplittingDiagram {...shared} components={prediction.components.components} {...ends} />
-          </div>
-          <Numbers line={line} prediction={settled} active={active} />
-        </>
+        <FineBench line={line} prediction={prediction} asked={asked} settledAsked={settledAsked} fieldUnit={unit} onField={toField} />
       )}
     </>
-  )
-}
-
-interface NumbersProps {
-  line: TransitionDetail
-  prediction: Prediction
-  active: string | null
-}
-
-/** Everything in words and figures that follows the field. */
-const Numbers = memo(function Numbers({ line, prediction, active }: NumbersProps) {
-  if (!prediction.ok) return null
-  const { components, warnings } = prediction
-  return (
-    <>
-      <SignConvention thetaDeg={components.theta_deg} kind={line.kind} />
-      <Warnings meta={{ warnings }} />
-      <Part title="Components" aside={`At ${components.field_tesla}\u202fT, linear law, adopted g values`}>
-        <ComponentsTable answer={components} medium={line.conventional_medium} active={active} />
-      </Part>
-      <ValidityPart validity={components.validity} fieldTesla={components.field_tesla} />
-    </>
-  )
-})
-
-/** What the signs mean, wherever σ+ and σ− are shown. */
-function SignConvention({ thetaDeg, kind }: { thetaDeg: number | null; kind: string }) {
-  return (
-    <p className="note mt-4 max-w-[60rem]">
-      q = m<sub>upper</sub> − m<sub>lower</sub> is the same in absorption and emission: q = 0 is π, q = +1 σ+, q = −1 σ−. A positive shift is to higher wavenumber, to the blue.
-      The strengths of each q sum to 1.{' '}
-      {thetaDeg === null
-        ? 'Without an angle heights are strengths; intensities in the table are averaged over angle.'
-        : `Heights are intensities seen at ${thetaDeg}° to the field, and the whole line sums to 1 at every angle.`}
-      {kind === 'E2' ? ' The angular intensity of quadrupole lines is not computed.' : ' Stokes V > 0 is counter-clockwise as the observer sees it, Q > 0 along the field projected on the sky, in emission.'}
-    </p>
   )
 }

@@ -8,6 +8,7 @@ import { Configuration } from '@/app/_components/configuration'
 import { useEdition } from '@/app/_components/data/edition'
 import { Evidence, EvidenceKey } from '@/app/_components/evidence'
 import { useAngle, useField } from '@/app/_components/field/use-field'
+import { useModel, useNucleus, useQuadratic } from '@/app/_components/field/use-model'
 import { levelPage } from '@/app/_components/names'
 import { Part } from '@/app/_components/page-head'
 import { Quantity } from '@/app/_components/quantity'
@@ -45,8 +46,12 @@ export const LineFoot = memo(function LineFoot({ line, kind }: { line: Transitio
 function Request({ line, kind }: { line: TransitionDetail; kind: string | null }) {
   const { field } = useField()
   const { thetaDeg } = useAngle()
+  const [model] = useModel()
+  const [quadratic] = useQuadratic()
+  const [nucleus] = useNucleus()
   if (!line.verdict.allowed) return <RequestPanel path={`/transitions/${line.id}`} query={{ kind }} />
-  return <RequestPanel path={`/transitions/${line.id}/components`} query={{ field: fieldForUrl(field.tesla, field.unit), theta_deg: thetaDeg, kind, model: 'linear' }} />
+  const what = nucleus.on ? { hyperfine: 'true', isotope: nucleus.isotope } : { model, diamagnetic: quadratic ? 'true' : null }
+  return <RequestPanel path={`/transitions/${line.id}/components`} query={{ field: fieldForUrl(field.tesla, field.unit), theta_deg: thetaDeg, kind, ...what }} />
 }
 
 const PATTERN = {

@@ -26,10 +26,11 @@ function mixing(level: Level, validity: LevelValidity, members: TransitionDetail
 }
 
 /** The judgement of the linear law in a line or two, for the place where the field is set. */
-export function shortVerdict(validity: Validity, line: TransitionDetail): string {
+export function shortVerdict(validity: Validity, line: TransitionDetail, inForce: 'linear' | 'intermediate'): string {
   const { positions, strengths, levels } = validity
   const both = strengths.relative_error === 0 && positions.relative_error === 0 && positions.status === 'valid' && strengths.status === 'valid'
-  const first = both ? 'Positions and strengths are exact within the terms: neither has a neighbour to mix with.' : `${aspect('Positions', positions.status, positions.relative_error)}, ${aspect('strengths', strengths.status, strengths.relative_error)}.`
+  const whose = inForce === 'intermediate' ? 'The linear law here: ' : ''
+  const first = both ? 'Positions and strengths are exact within the terms: neither has a neighbour to mix with.' : `${whose}${aspect(whose === '' ? 'Positions' : 'positions', positions.status, positions.relative_error)}, ${aspect('strengths', strengths.status, strengths.relative_error)}.`
   const rest = [mixing(line.upper, levels.upper, line.terms.upper), mixing(line.lower, levels.lower, line.terms.lower)].filter((text) => text !== null)
   return [first, ...rest].join(' ')
 }

@@ -1,17 +1,14 @@
 'use client'
 import { printFixed } from '@/lib/units/print'
-import type { Component } from '@/openapi/schemas/components'
 import { DataTable, type Column } from '../data-table'
 import { halves } from '../number'
-import { componentKey, SHIFT_UNITS, shiftIn, type ShiftUnit } from './component-text'
+import { componentKey, type DrawnComponent, endsText, SHIFT_UNITS, shiftIn, type ShiftUnit } from './component-text'
 import { PolarisationSign, polarisationName } from './polarisation'
 import { signed } from './ruler'
 
-const SHIFTS: ShiftUnit[] = ['lorentz', 'invcm', 'ghz', 'pm']
-
 /** The numbers of a pattern as a table: what the drawing shows, for reading and copying. */
-export function ComponentsTwin({ components, thetaDeg, caption }: { components: readonly Component[]; thetaDeg: number | null; caption: string }) {
-  const columns: Column<Component>[] = [
+export function ComponentsTwin({ components, thetaDeg, caption, units }: { components: readonly DrawnComponent[]; thetaDeg: number | null; caption: string; units: readonly ShiftUnit[] }) {
+  const columns: Column<DrawnComponent>[] = [
     {
       name: 'polarisation',
       header: 'Polarisation',
@@ -24,10 +21,14 @@ export function ComponentsTwin({ components, thetaDeg, caption }: { components: 
         </span>
       ),
     },
-    { name: 'm_lower', header: 'm lower', align: 'right', value: (c) => c.m_lower, cell: (c) => halves(c.m_lower) },
-    { name: 'm_upper', header: 'm upper', align: 'right', value: (c) => c.m_upper, cell: (c) => halves(c.m_upper) },
-    ...SHIFTS.map(
-      (unit): Column<Component> => ({
+    ...(components.some((c) => c.ends !== undefined)
+      ? [{ name: 'sublevels', header: 'Lower → upper', value: (c: DrawnComponent) => endsText(c) } satisfies Column<DrawnComponent>]
+      : [
+          { name: 'm_lower', header: 'm lower', align: 'right', value: (c: DrawnComponent) => c.m_lower, cell: (c: DrawnComponent) => halves(c.m_lower) } satisfies Column<DrawnComponent>,
+          { name: 'm_upper', header: 'm upper', align: 'right', value: (c: DrawnComponent) => c.m_upper, cell: (c: DrawnComponent) => halves(c.m_upper) } satisfies Column<DrawnComponent>,
+        ]),
+    ...units.map(
+      (unit): Column<DrawnComponent> => ({
         name: `shift_${unit}`,
         header: `Shift, ${SHIFT_UNITS[unit].unit}`,
         align: 'right',
@@ -41,7 +42,7 @@ export function ComponentsTwin({ components, thetaDeg, caption }: { components: 
     { name: 'strength', header: 'Strength', align: 'right', value: (c) => c.strength, cell: (c) => (c.strength === null ? 'not known' : printFixed(c.strength, 4)) },
     ...(thetaDeg === null
       ? []
-      : [{ name: 'intensity', header: `Intensity at ${thetaDeg}°`, align: 'right', value: (c: Component) => c.intensity, cell: (c: Component) => (c.intensity === null ? 'does not apply' : printFixed(c.intensity, 4)) } satisfies Column<Component>]),
+      : [{ name: 'intensity', header: `Intensity at ${thetaDeg}°`, align: 'right', value: (c: DrawnComponent) => c.intensity, cell: (c: DrawnComponent) => (c.intensity === null ? 'does not apply' : printFixed(c.intensity, 4)) } satisfies Column<DrawnComponent>]),
   ]
   return <DataTable columns={columns} rows={components} rowKey={componentKey} caption={caption} hideCaption summary={caption} />
 }

@@ -1,11 +1,9 @@
 'use client'
 import { scaleLinear } from 'd3-scale'
 import { useState, type PointerEvent } from 'react'
-import type { Component } from '@/openapi/schemas/components'
-import { halves } from '../number'
 import { BottomAxis, LeftAxis } from './axis'
 import { ComponentsTwin } from './components-twin'
-import { componentKey, componentText, heightOf, isDrawn, SHIFT_UNITS, shiftIn, type ShiftUnit } from './component-text'
+import { componentKey, componentText, type DrawnComponent, endsText, heightOf, isDrawn, SHIFT_UNITS, shiftIn, type ShiftUnit } from './component-text'
 import { Choices, PlotFrame } from './plot-frame'
 import { polarisationName, styleOf } from './polarisation'
 import { niceCeil, ruler } from './ruler'
@@ -13,7 +11,7 @@ import { stacks, type Standing } from './stacks'
 import { roving } from './use-roving'
 
 export interface PatternPlotProps {
-  components: readonly Component[]
+  components: readonly DrawnComponent[]
   /** What the wavelengths are in. */
   medium: 'air' | 'vacuum'
   fieldTesla: number
@@ -24,9 +22,13 @@ export interface PatternPlotProps {
   onActive: (key: string | null) => void
   name: string
   title?: string
+  /** Of the axis, the first being shown until another is chosen. */
+  units?: readonly ShiftUnit[]
+  /** Beside the drawing's words. */
+  note?: string
 }
 
-const UNITS = (Object.keys(SHIFT_UNITS) as ShiftUnit[]).map((value) => ({ value, label: SHIFT_UNITS[value].label }))
+const UNITS: readonly ShiftUnit[] = ['lorentz', 'invcm', 'ghz', 'pm']
 const HEADING = { top: 34, bottom: 62 }
 
 /** Half-width of the axis: room for every component, in steps, so that the field moves the lines and not the ruler. */
@@ -36,15 +38,16 @@ function reach(unit: ShiftUnit, shifts: readonly number[]): number {
 }
 
 /** The Zeeman pattern of a line: π stands above the axis, σ hangs below, height for strength. */
-export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, onActive, name, title = 'Pattern' }: PatternPlotProps) {
-  const [unit, setUnit] = useState<ShiftUnit>('lorentz')
+export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, onActive, name, title = 'Pattern', units = UNITS, note }: PatternPlotProps) {
+  const [chosen, setUnit] = useState<ShiftUnit | null>(null)
+  const unit = chosen !== null && units.includes(chosen) ? chosen : (units[0] ?? 'invcm')
   const shown = components.filter(isDrawn)
   const shifts = shown.map((component) => shiftIn(unit, component) ?? 0)
   const half = reach(unit, shifts)
   const current = shown.find((component) => componentKey(component) === active)
   const quantity = thetaDeg === null ? 'Strength' : 'Intensity'
   const counts = [0, 1, -1].map((q) => `${shown.filter((c) => Math.sign(c.q) === q).length} ${styleOf(q).name}`).join(', ')
-  const together = fieldTesla === 0 && unit !== 'lorentz'
+  const together = fieldTesla === 0 && unit !== 'lorentz' && shifts.every((shift) => shift === 0)
 
   return (
     <PlotFrame
@@ -52,9 +55,10 @@ export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, 
       name={`${name}-pattern`}
       description={`Pattern of ${shown.length} components (${counts}): π above the axis, σ below, height for ${quantity.toLowerCase()}. Arrow keys go through the components.`}
       height={(width) => (width < 560 ? 330 : 380)}
-      controls={<Choices label="Axis" value={unit} choices={UNITS} onChange={setUnit} />}
+      controls={<Choices label="Axis" value={unit} choices={units.map((value) => ({ value, label: SHIFT_UNITS[value].label }))} onChange={setUnit} />}
       reading={current ? componentText(current, thetaDeg) : together ? 'At zero field all components lie on the line.' : `${shown.length} components: ${counts}. Point at one, or tab to it.`}
-      table={<ComponentsTwin components={components} thetaDeg={thetaDeg} caption={`Components at ${fieldTesla} T`} />}
+      table={<ComponentsTwin components={components} thetaDeg={thetaDeg} caption={`Components at ${fieldTesla} T`} units={units} />}
+      note={note}
     >
       {(width, height) => {
         const narrow = width < 560
@@ -78,14 +82,14 @@ export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, 
         const xRuler = ruler([-half, half], right - left - 24, narrow ? 58 : 84)
         const yRuler = ruler([0, full], (bottom - top) / 2 - 20, 40)
 
-        function stand(items: Component[]) {
+        function stand(items: DrawnComponent[]) {
           return stacks(items.map((component) => ({ component, id: componentKey(component), x: x(shiftIn(unit, component) ?? 0), height: heightOf(component, thetaDeg) })))
         }
         function strongest() {
-          const plain = (items: Component[]) => stacks(items.map((c) => ({ component: c, id: '', x: x(shiftIn(unit, c) ?? 0), height: heightOf(c, null) })))
+          const plain = (items: DrawnComponent[]) => stacks(items.map((c) => ({ component: c, id: '', x: x(shiftIn(unit, c) ?? 0), height: heightOf(c, null) })))
           return Math.max(0, ...[...plain(shown.filter((c) => c.q === 0)), ...plain(shown.filter((c) => c.q !== 0))].map((s) => s.to))
         }
-        const nearest = (event: PointerEvent<SVGRectElement>, side: Standing<Component>[]) => {
+        const nearest = (event: PointerEvent<SVGRectElement>, side: Standing<DrawnComponent>[]) => {
           const box = event.currentTarget.getBoundingClientRect()
           const at = left + ((event.clientX - box.left) / box.width) * (right - left)
           const away = ((event.clientY - box.top) / box.height) * ((bottom - top) / 2)
@@ -95,7 +99,7 @@ export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, 
           const within = side.filter((s) => s.x === column.x)
           onActive((within.find((s) => y(s.to) >= up) ?? within[within.length - 1] ?? column).id)
         }
-        const sticks = (side: Standing<Component>[], direction: 1 | -1) =>
+        const sticks = (side: Standing<DrawnComponent>[], direction: 1 | -1) =>
           side.map((standing) => <Stick key={standing.id} {...standing} middle={middle} y={y} direction={direction} thetaDeg={thetaDeg} active={active === standing.id} mark={mark(standing.id)} />)
 
         return (
@@ -134,7 +138,7 @@ export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, 
   )
 }
 
-interface StickProps extends Standing<Component> {
+interface StickProps extends Standing<DrawnComponent> {
   middle: number
   y: (height: number) => number
   direction: 1 | -1
@@ -154,7 +158,7 @@ function Stick({ component, x, from, to, middle, y, direction, thetaDeg, active,
       <path d={style.mark} transform={`translate(${x} ${end})`} fill={style.colour} stroke="var(--sheet)" strokeWidth={1} />
       {active && (
         <text x={x} y={end - direction * 11} dy={direction === 1 ? 0 : '0.7em'} textAnchor="middle" fontSize={12} fontWeight={600} fill="var(--ink)" stroke="var(--sheet)" strokeWidth={4} paintOrder="stroke" data-screen-only>
-          {`${halves(component.m_lower)} → ${halves(component.m_upper)}`}
+          {endsText(component)}
         </text>
       )}
     </g>
@@ -162,7 +166,7 @@ function Stick({ component, x, from, to, middle, y, direction, thetaDeg, active,
 }
 
 /** The key: each polarisation with its stroke, its mark and how many components it has. */
-function Key({ x, shown, narrow }: { x: number; shown: readonly Component[]; narrow: boolean }) {
+function Key({ x, shown, narrow }: { x: number; shown: readonly DrawnComponent[]; narrow: boolean }) {
   const groups = [...new Set([0, 1, -1, ...shown.map((c) => c.q)])].filter((q) => shown.some((c) => c.q === q))
   const step = groups.length > 3 ? (narrow ? 64 : 100) : narrow ? 92 : 110
   return (

@@ -1,10 +1,9 @@
 'use client'
-import { useMemo } from 'react'
 import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
-import { formatHalfUnicode, magneticNumbers, type TwoJ } from '@/lib/atomic/half'
-import { linearSublevels, type Sublevel } from '@/lib/atomic/sublevels'
+import { formatHalfUnicode, type TwoJ } from '@/lib/atomic/half'
 import type { Component } from '@/openapi/schemas/components'
 import { componentKey, componentText, isDrawn } from './component-text'
+import type { FanPoint } from './fan'
 import { PlotFrame } from './plot-frame'
 import { styleOf } from './polarisation'
 import { niceCeil, spread } from './ruler'
@@ -19,7 +18,8 @@ export interface SplitLevel {
   /** ASCII term symbol, e.g. `2P*3/2`. */
   symbol: string
   twoJ: TwoJ
-  g: number | null
+  /** Its sublevels at the field, keyed by twice m. */
+  points: readonly FanPoint[]
 }
 
 export interface SplittingDiagramProps {
@@ -32,9 +32,13 @@ export interface SplittingDiagramProps {
   onActive: (key: string | null) => void
   name: string
   title?: string
+  /** The law that places the sublevels, in words. */
+  law: string
 }
 
-interface Rung extends Sublevel {
+interface Rung {
+  twoM: TwoJ
+  far: string | null
   y: number
   labelY: number
 }
@@ -43,19 +47,15 @@ const GAP = 12.5
 
 const nameOf = ({ configuration, symbol }: SplitLevel): string => `${configuration} ${symbol}`
 
-const sublevelsOf = (level: SplitLevel, fieldTesla: number): Sublevel[] =>
-  level.twoJ > 0 && level.g === null
-    ? magneticNumbers(level.twoJ).map((twoM) => ({ twoM, shiftInvcm: 0, shiftGhz: 0, energyInvcm: 0 }))
-    : linearSublevels({ twoJ: level.twoJ, g: level.g, energyInvcm: 0, fieldTesla })
-
-const widest = (sublevels: readonly Sublevel[]): number => Math.max(0, ...sublevels.map((s) => Math.abs(s.shiftInvcm)))
+const widest = ({ points }: SplitLevel): number => Math.max(0, ...points.map((point) => Math.abs(point.shiftInvcm)))
 
 /** Two levels without the field and in it, sublevels named by m, an arrow for each component. Both splittings share one scale. */
-export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDeg, active, onActive, name, title = 'Splitting' }: SplittingDiagramProps) {
-  const split = useMemo(() => ({ lower: sublevelsOf(lower, fieldTesla), upper: sublevelsOf(upper, fieldTesla) }), [lower, upper, fieldTesla])
+export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDeg, active, onActive, name, title = 'Splitting', law }: SplittingDiagramProps) {
   const shown = components.filter(isDrawn)
   const current = shown.find((component) => componentKey(component) === active)
-  const total = widest(split.lower) + widest(split.upper)
+  const total = widest(lower) + widest(upper)
+  const heads = { name: 'm', far: 'M_L, M_S' }
+  const far = [...lower.points, ...upper.points].some((point) => point.far !== null)
   // The scale goes in steps: between two of them the sublevels open as the field grows.
   // A splitting that all but vanishes is not blown up: a fifth of a Lorentz unit is the least that fills the sheet.
   const full = niceCeil(Math.max(total * 1.02, 0.2 * MU_B_OVER_HC_INVCM_PER_T * fieldTesla))
@@ -68,7 +68,7 @@ export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDe
       description={`The levels ${nameOf(lower)} and ${nameOf(upper)} before and in a field of ${fieldTesla} T, with ${shown.length} arrows from lower to upper sublevels. Arrow keys go through the components.`}
       height={(width) => Math.max(width < 560 ? 400 : 440, rows * GAP + 190)}
       reading={current ? componentText(current, thetaDeg) : 'Arrows rise from the lower to the upper sublevel; q = m upper − m lower is the same in emission.'}
-      table={<SublevelsTwin levels={[{ name: nameOf(upper), sublevels: split.upper }, { name: nameOf(lower), sublevels: split.lower }]} caption={`Sublevels at ${fieldTesla} T, linear law`} />}
+      table={<SublevelsTwin levels={[{ name: nameOf(upper), points: upper.points, heads }, { name: nameOf(lower), points: lower.points, heads }]} caption={`Sublevels at ${fieldTesla} T, ${law}`} />}
     >
       {(width, height) => {
         const narrow = width < 560
@@ -78,21 +78,21 @@ export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDe
         // Each level gets its share of the height, never less than its m labels need.
         const before = { upper: brief(upper), lower: brief(lower) }
         const share = (mine: number, twoJ: TwoJ) => Math.max(total > 0 ? (room * mine) / total : room / 2, 76, (twoJ + 1) * GAP)
-        const wish = { upper: share(widest(split.upper), upper.twoJ), lower: share(widest(split.lower), lower.twoJ) }
+        const wish = { upper: share(widest(upper), upper.twoJ), lower: share(widest(lower), lower.twoJ) }
         const fit = room / (wish.upper + wish.lower)
         const pxPerInvcm = total > 0 ? (fit * room) / 2 / full : 0
         const upperHeight = wish.upper * fit
         const centres = { upper: top + upperHeight / 2, lower: bottom - (wish.lower * fit) / 2 }
-        const [plain, leave, arrive, labels] = narrow ? [12, 64, 96, width - 44] : [24, 132, 184, width - 64]
+        const [plain, leave, arrive, labels] = narrow ? [12, 64, 96, width - (far ? 90 : 44)] : [24, 132, 184, width - (far ? 116 : 64)]
 
-        const rungs = (sublevels: readonly Sublevel[], centre: number, low: number, high: number): Rung[] => {
-          const ys = sublevels.map((s) => centre - s.shiftInvcm * pxPerInvcm)
+        const rungs = ({ points }: SplitLevel, centre: number, low: number, high: number): Rung[] => {
+          const ys = points.map((point) => centre - point.shiftInvcm * pxPerInvcm)
           // At small field the rungs lie on one another; ordering by m first keeps their labels in order.
-          const order = sublevels.map((s, i) => (ys[i] ?? 0) - s.twoM * 1e-6)
+          const order = points.map((point, i) => (ys[i] ?? 0) - Number(point.key) * 1e-6)
           const placed = spread(order, GAP, low, high)
-          return sublevels.map((s, i) => ({ ...s, y: ys[i] ?? centre, labelY: placed[i] ?? centre }))
+          return points.map((point, i) => ({ twoM: Number(point.key), far: point.far, y: ys[i] ?? centre, labelY: placed[i] ?? centre }))
         }
-        const ladder = { upper: rungs(split.upper, centres.upper, top - 8, top + upperHeight + 8), lower: rungs(split.lower, centres.lower, top + upperHeight + middleGap - 8, bottom + 8) }
+        const ladder = { upper: rungs(upper, centres.upper, top - 8, top + upperHeight + 8), lower: rungs(lower, centres.lower, top + upperHeight + middleGap - 8, bottom + 8) }
         const at = (list: readonly Rung[], m: number, other: number) => list.find((r) => r.twoM === 2 * m)?.y ?? other
         const step = (labels - arrive - 20) / Math.max(1, shown.length + groupsOf(shown) - 1)
         const arrows = shown.map((component, index) => ({ component, x: arrive + 14 + step * (index + 0.5 + groupsBefore(shown, index)) }))
@@ -103,6 +103,11 @@ export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDe
             <text x={plain} y={20} fontSize={12} fill="var(--muted)" aria-hidden="true">no field</text>
             <text x={arrive} y={20} fontSize={12} fill="var(--muted)" aria-hidden="true">{fieldTesla === 0 ? 'no field' : 'in the field'}</text>
             <text x={labels + 8} y={20} fontSize={13} fill="var(--muted)" fontStyle="italic" aria-hidden="true" fontFamily="'STIX Two Text Variable', serif">m</text>
+            {far && (
+              <text x={width - 6} y={20} textAnchor="end" fontSize={13} fill="var(--muted)" fontStyle="italic" aria-hidden="true" fontFamily="'STIX Two Text Variable', serif">
+                M<tspan dy={3.5} fontSize={10}>L</tspan><tspan dy={-3.5}>, M</tspan><tspan dy={3.5} fontSize={10}>S</tspan>
+              </text>
+            )}
             {(['upper', 'lower'] as const).map((end) => (
               <g key={end} aria-hidden="true">
                 <path d={`M${plain},${centres[end]}H${leave}`} stroke="var(--ink)" strokeWidth={2} />
@@ -124,6 +129,7 @@ export function SplittingDiagram({ lower, upper, components, fieldTesla, thetaDe
                       <text x={labels + 8} y={rung.labelY} dy="0.34em" fontSize={12} fontWeight={lit ? 700 : 400} fill="var(--ink)">
                         {formatHalfUnicode(rung.twoM)}
                       </text>
+                      {rung.far !== null && <text x={width - 6} y={rung.labelY} dy="0.34em" textAnchor="end" fontSize={12} fill="var(--muted)">{rung.far}</text>}
                     </g>
                   )
                 })}
