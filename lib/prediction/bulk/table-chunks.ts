@@ -52,6 +52,14 @@ function linearTable(block: PreparedBlock, fromTesla: number, toTesla: number): 
   }
 }
 
+/** JSON writes a negative zero as 0: without any, every format and the checksum are of the same bits. */
+function withoutNegativeZeros(table: FieldTable): FieldTable {
+  for (const numbers of [table.positions, table.positionSlopes, table.strengths, table.strengthSlopes]) {
+    for (let i = 0; i < (numbers?.length ?? 0); i += 1) if (numbers?.[i] === 0) numbers[i] = 0
+  }
+  return table
+}
+
 function* makeTable(job: FieldTableJob, block: PreparedBlock): Generator<null, FieldTable> {
   const { fromTesla, toTesla, maxErrorInvcm, maxStrengthError } = job
   if (job.model === 'linear') return linearTable(block, fromTesla, toTesla)
@@ -149,7 +157,7 @@ const encoder = new TextEncoder()
 export function* fieldTableChunks(job: FieldTableJob): Generator<Uint8Array | null> {
   const block = prepareBlock(job.multiplet, job.toTesla, { ...OPTIONS, model: job.model, gS: job.gS })
   yield null
-  const table = yield* makeTable(job, block)
+  const table = withoutNegativeZeros(yield* makeTable(job, block))
   if (job.format === 'arrow') yield* arrowBytes(job, block, table)
   else for (const text of jsonText(job, block, table)) yield encoder.encode(text)
 }
