@@ -9,6 +9,7 @@ import { ruler, signed, spread, superscript } from './ruler'
 import { roving } from './use-roving'
 
 export interface FanScale {
+  quantity: 'Shift' | 'Energy'
   /** Of the unit shown in one cm^-1. */
   per: number
   label: string
@@ -75,7 +76,7 @@ export function FanSheet({ width, height, id, fan, scale, edge, here, fieldTesla
         {yUnits.ticks.map(({ value, rank }) => rank === 0 && <path key={value} d={`M${left},${y(value)}H${right}`} stroke="var(--rule)" strokeDasharray={value === 0 ? undefined : '1 4'} />)}
         {limit !== null && <rect x={limit} y={top} width={right - limit} height={bottom - top} fill={`url(#${id}-hatch)`} />}
       </g>
-      <LeftAxis ruler={yUnits} at={y} x={left} from={top} to={bottom} title={narrow ? undefined : 'Shift'} unit={scale.label} />
+      <LeftAxis ruler={yUnits} at={y} x={left} from={top} to={bottom} title={narrow ? undefined : scale.quantity} unit={scale.label} />
       <BottomAxis ruler={xUnits} at={(value) => x(value / fieldIn(1, fieldUnit))} y={bottom} from={left} to={right} title="Field" unit={fieldUnit} />
       {narrow && <text x={4} y={14} fontSize={12} fill="var(--muted)" aria-hidden="true">{`${yUnits.exponent === 0 ? '' : `10${superscript(yUnits.exponent)} `}${scale.label}`}</text>}
       {onField && (

@@ -29,6 +29,8 @@ export interface PatternPlotProps {
 }
 
 const UNITS: readonly ShiftUnit[] = ['lorentz', 'invcm', 'ghz', 'pm']
+/** More components than this are drawn slim. */
+const CROWDED = 40
 const HEADING = { top: 34, bottom: 62 }
 
 /** Half-width of the axis: room for every component, in steps, so that the field moves the lines and not the ruler. */
@@ -46,6 +48,7 @@ export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, 
   const half = reach(unit, shifts)
   const current = shown.find((component) => componentKey(component) === active)
   const quantity = thetaDeg === null ? 'Strength' : 'Intensity'
+  const crowded = shown.length > CROWDED
   const counts = [0, 1, -1].map((q) => `${shown.filter((c) => Math.sign(c.q) === q).length} ${styleOf(q).name}`).join(', ')
   const together = fieldTesla === 0 && unit !== 'lorentz' && shifts.every((shift) => shift === 0)
 
@@ -100,7 +103,7 @@ export function PatternPlot({ components, medium, fieldTesla, thetaDeg, active, 
           onActive((within.find((s) => y(s.to) >= up) ?? within[within.length - 1] ?? column).id)
         }
         const sticks = (side: Standing<DrawnComponent>[], direction: 1 | -1) =>
-          side.map((standing) => <Stick key={standing.id} {...standing} middle={middle} y={y} direction={direction} thetaDeg={thetaDeg} active={active === standing.id} mark={mark(standing.id)} />)
+          side.map((standing) => <Stick key={standing.id} {...standing} middle={middle} y={y} direction={direction} slim={crowded} thetaDeg={thetaDeg} active={active === standing.id} mark={mark(standing.id)} />)
 
         return (
           <>
@@ -142,20 +145,22 @@ interface StickProps extends Standing<DrawnComponent> {
   middle: number
   y: (height: number) => number
   direction: 1 | -1
+  /** Among many: a thinner stroke and a smaller mark. */
+  slim: boolean
   thetaDeg: number | null
   active: boolean
   mark: object
 }
 
-function Stick({ component, x, from, to, middle, y, direction, thetaDeg, active, mark }: StickProps) {
+function Stick({ component, x, from, to, middle, y, direction, slim, thetaDeg, active, mark }: StickProps) {
   const style = styleOf(component.q)
   const [start, end] = [middle - direction * y(from), middle - direction * y(to)]
   const label = componentText(component, thetaDeg)
   return (
     <g {...mark} role="img" aria-label={label}>
       {active && <path d={`M${x},${start}V${end}`} stroke="var(--lamp)" strokeOpacity={0.45} strokeWidth={11} strokeLinecap="round" data-screen-only />}
-      <path d={`M${x},${start}V${end}`} stroke={style.colour} strokeWidth={style.width} strokeDasharray={style.dash} strokeLinecap={style.cap} />
-      <path d={style.mark} transform={`translate(${x} ${end})`} fill={style.colour} stroke="var(--sheet)" strokeWidth={1} />
+      <path d={`M${x},${start}V${end}`} stroke={style.colour} strokeWidth={style.width * (slim ? 0.6 : 1)} strokeDasharray={style.dash} strokeLinecap={style.cap} />
+      <path d={style.mark} transform={`translate(${x} ${end})${slim ? ' scale(0.55)' : ''}`} fill={style.colour} stroke="var(--sheet)" strokeWidth={1} />
       {active && (
         <text x={x} y={end - direction * 11} dy={direction === 1 ? 0 : '0.7em'} textAnchor="middle" fontSize={12} fontWeight={600} fill="var(--ink)" stroke="var(--sheet)" strokeWidth={4} paintOrder="stroke" data-screen-only>
           {endsText(component)}

@@ -74,8 +74,8 @@ export const SublevelFan = memo(function SublevelFan({ fanTo, here, fieldTesla, 
   const scale = useMemo((): FanScale => {
     const { per, label } = UNITS[unit]
     const [low, high] = reach(fan)
-    return { per, label, low: low * per, high: high * per }
-  }, [fan, unit])
+    return { quantity: nuclear ? 'Energy' : 'Shift', per, label, low: low * per, high: high * per }
+  }, [fan, unit, nuclear])
   const current = here.find((point) => point.key === active)
   const labelled = fan.curves.length <= LABELS_MOST
   const dashed = fan.curves.some((curve) => curve.linear !== null)
@@ -97,7 +97,7 @@ export const SublevelFan = memo(function SublevelFan({ fanTo, here, fieldTesla, 
         <>
           {controls}
           <Choices label="Up to" value={range} choices={RANGES} onChange={setRange} />
-          <Choices label="Shift in" value={unit} choices={ENERGIES} onChange={setUnit} />
+          <Choices label={nuclear ? 'Energy in' : 'Shift in'} value={unit} choices={ENERGIES} onChange={setUnit} />
         </>
       }
       reading={current ? readingOf(current, fan, formatField(fieldTesla, fieldUnit), nuclear) : `${fan.curves.length} sublevel${fan.curves.length === 1 ? '' : 's'}; the line marks ${formatField(fieldTesla, fieldUnit)}.`}
