@@ -40,6 +40,7 @@ const askedOf = (body: ProfilesRequest, fieldTesla: number): ProfilesAsked => ({
   instrumentFwhmInvcm: body.instrument_fwhm_invcm ?? null,
   resolvingPower: body.resolving_power ?? null,
   lorentzianFwhmInvcm: body.lorentzian_fwhm_invcm ?? null,
+  hyperfine: body.hyperfine ? { isotope: body.isotope ?? 'natural' } : null,
 })
 
 /** Collects the faults of a step that can refuse. */
@@ -68,11 +69,11 @@ function weigh(body: ProfilesRequest, found: (FoundLine | null)[], faults: Fault
     const { species, line, weight } = one
     if (massNumber !== null && species !== null) attempt(faults, () => isotopeOf(species, massNumber), (error) => physicsFault(error, index))
     const mass = massOf(species, { line: body.lines[index]?.mass_u ?? null, all: body.mass_u ?? null, isotope: massNumber })
-    return [{ index, mass, weighed: { line, weight, massU: mass.u } }]
+    return [{ index, mass, weighed: { line, weight, massU: mass.u, isotopes: species?.isotopes ?? [] } }]
   })
 }
 
-function lineAnswer({ weighed, components, profile, ...ready }: ReadyLine, mass: Mass, thermal: boolean, given: boolean): ProfiledLine {
+function lineAnswer({ weighed, components, hyperfine, profile, ...ready }: ReadyLine, mass: Mass, thermal: boolean, given: boolean): ProfiledLine {
   const { line, weight } = weighed
   const { centre } = components
   return {
@@ -80,7 +81,7 @@ function lineAnswer({ weighed, components, profile, ...ready }: ReadyLine, mass:
     species: given ? null : line.lower.species,
     kind: line.kind,
     weight,
-    model: components.model,
+    model: hyperfine?.model ?? components.model,
     wavenumber_invcm: centre.wavenumber_invcm,
     wavelength_vac_nm: centre.wavelength_vac_nm,
     wavelength_air_nm: centre.wavelength_air_nm,
@@ -94,7 +95,7 @@ function lineAnswer({ weighed, components, profile, ...ready }: ReadyLine, mass:
     mass_u: mass.u,
     mass_status: mass.u !== null ? 'ok' : thermal ? 'unknown' : 'not_applicable',
     mass_basis: mass.basis,
-    isotopes: [],
+    isotopes: (hyperfine?.isotopes ?? []).map(({ mass_number, weight: share, shift_mhz, shift_status, a_lower_mhz, a_upper_mhz }) => ({ mass_number, weight: share, shift_mhz, shift_known: shift_status === 'ok', hyperfine: a_lower_mhz !== null || a_upper_mhz !== null })),
     validity: components.validity,
   }
 }
@@ -130,7 +131,7 @@ function warnOfGrid(ready: readonly ReadyLine[], { wavenumberInvcm }: SpectralGr
   if (!seen) warn('grid_without_lines', 'No component of the lines asked lies in the grid.')
 }
 
-const modelOf = (ready: readonly ReadyLine[]): string => [...new Set(ready.map(({ components }) => components.model))].sort().join(' and ')
+const modelOf = (ready: readonly ReadyLine[]): string => [...new Set(ready.map(({ components, hyperfine }) => hyperfine?.model ?? components.model))].sort().join(' and ')
 
 /** Stokes profiles of the lines of a request; everything that is wrong with it is told at once. */
 export async function profilesAnswer(snapshot: Snapshot, body: ProfilesRequest, warn: Warn) {

@@ -3,7 +3,10 @@ import { PhysicsError } from '@/lib/atomic/errors'
 import { dopplerRatio, lineWidths, voigtFwhm } from '@/lib/atomic/profile'
 import { fittingGrid, type ProfileComponent, type ProfileLine, stokesProfiles, type StokesProfiles, type ViewOptions, evenGrid } from '@/lib/atomic/profile-stokes'
 import { type ComponentsAsked, type PredictedLine, predictComponents, type Warning } from '@/lib/prediction/components'
-import type { Components } from '@/openapi/schemas/components'
+import { predictHyperfine } from '@/lib/prediction/hyperfine'
+import type { IsotopeAsked } from '@/lib/prediction/isotopes'
+import type { Components, HyperfineComponents } from '@/openapi/schemas/components'
+import type { Isotope } from '@/openapi/schemas/species'
 
 /** What broadens all lines of a profile; null is none. */
 export interface Broadened {
@@ -15,7 +18,10 @@ export interface Broadened {
   lorentzianFwhmInvcm: number | null
 }
 
-export interface ProfilesAsked extends ComponentsAsked, Broadened {}
+export interface ProfilesAsked extends ComponentsAsked, Broadened {
+  /** Puts the hyperfine structure of an isotope, or of the natural mixture, into the profiles; null or left out: none. */
+  hyperfine?: { isotope: IsotopeAsked } | null
+}
 
 /** A line to be profiled. */
 export interface WeighedLine {
@@ -24,14 +30,16 @@ export interface WeighedLine {
   weight: number
   /** u; null where it is not known. */
   massU: number | null
-  /** Components in place of those of the fine structure, for a nucleus with spin. */
-  nuclear?: (components: Components) => ProfileComponent[]
+  /** Isotopes of the species, where hyperfine structure is asked. */
+  isotopes?: readonly Isotope[]
 }
 
 /** A line with everything that its profile needs. */
 export interface ReadyLine {
   weighed: WeighedLine
   components: Components
+  /** The components that the profile is made of where hyperfine structure is asked. */
+  hyperfine: HyperfineComponents | null
   profile: ProfileLine
   dopplerFwhmInvcm: number
   instrumentFwhmInvcm: number
@@ -49,6 +57,8 @@ export interface ReadyLines {
 }
 
 const METRES_PER_KM = 1000
+/** q = -1, 0, +1. */
+const DIPOLE_GROUPS = 3
 
 /** The widths of a line. Throws `profile_no_width`, `mass_unknown`, `instrument_twice`. */
 export function widthsOf(line: Pick<PredictedLine, 'wavenumber_invcm'>, massU: number | null, by: Broadened): Pick<ReadyLine, 'dopplerFwhmInvcm' | 'instrumentFwhmInvcm' | 'fwhmInvcm'> & Pick<ProfileLine, 'widths'> {
@@ -84,11 +94,15 @@ function readyLine(weighed: WeighedLine, asked: ProfilesAsked): { ready: ReadyLi
   const { line, weight, massU } = weighed
   if (line.kind === 'E2') throw new PhysicsError('profile_e2', `The angular intensity of E2 lines is not computed, so ${line.id} has no profile here.`, 'kind')
   const { widths, ...told } = widthsOf(line, massU, asked)
-  const { components, warnings } = predicted(weighed, asked)
+  const { hyperfine, ...plainly } = asked
+  const nuclear = hyperfine ? predictHyperfine(line, weighed.isotopes ?? [], { ...plainly, isotope: hyperfine.isotope }) : null
+  const { components, warnings } = predicted(weighed, nuclear === null ? plainly : { ...plainly, model: 'linear' })
+  // each isotope's strengths sum to 1 over everything; those of a line sum to 1 in each q
+  const split = nuclear?.components.components.map(({ wavenumber_invcm: positionInvcm, q, strength, weight: share }): ProfileComponent => ({ positionInvcm, q, strength: DIPOLE_GROUPS * strength * share }))
   const plain = (): ProfileComponent[] => components.components.map((component) => ({ positionInvcm: component.wavenumber_invcm, q: component.q, strength: component.strength ?? 0 }))
-  const profile: ProfileLine = { kind: line.kind, weight, widths, components: weighed.nuclear?.(components) ?? plain() }
+  const profile: ProfileLine = { kind: line.kind, weight, widths, components: split ?? plain() }
   const seen = profile.components.reduce((sum, { q, strength }) => sum + strength * (angularFactors(line.kind, q, asked.thetaDeg).intensity ?? 0), 0)
-  return { ready: { weighed, components, profile, ...told, integral: weight * seen }, warnings }
+  return { ready: { weighed, components, hyperfine: nuclear?.components ?? null, profile, ...told, integral: weight * seen }, warnings: nuclear?.warnings ?? warnings }
 }
 
 /** Whether a refusal of the intermediate model leaves the linear one to a line. */

@@ -52,6 +52,8 @@ interface Together {
   resolving_power?: unknown
   analyser?: { kind?: unknown } | null
   theta_deg?: unknown
+  hyperfine?: unknown
+  model?: unknown
   grid?: { start?: unknown; stop?: unknown } | null
 }
 
@@ -92,6 +94,12 @@ export const ProfilesRequest = z
     message: 'Behind an analyser the viewing angle counts; give theta_deg.',
     params: { code: 'analyser_without_angle' },
   })
+  .refine((body: Together) => !(body.hyperfine === true && body.model === 'intermediate'), {
+    ...together,
+    path: ['hyperfine'],
+    message: 'Hyperfine structure is diagonalised within one J, where the intermediate model has no part; ask for one of them.',
+    params: { code: 'models_conflict' },
+  })
   .refine((body: Together) => !(typeof body.grid?.start === 'number' && typeof body.grid.stop === 'number') || body.grid.start < body.grid.stop, {
     ...together,
     path: ['grid', 'stop'],
@@ -115,7 +123,7 @@ export const computeProfiles = defineOperation({
   formats: ['csv', 'ndjson', 'arrow'],
   problems: [
     'level_unknown', 'level_retired', 'zero_interval', 'species_differ', 'transition_malformed', 'transition_forbidden', 'term_impossible', 'g_impossible', 'no_ls_g', 'g_unknown', 'field_too_large',
-    'profile_no_width', 'profile_e2', 'no_ls_amplitude', 'mass_unknown', 'instrument_twice', 'analyser_without_angle', 'grid_malformed', 'isotope_unknown', 'answer_too_large', 'term_incomplete', 'term_mixed', 'air_not_applicable', 'physics_impossible',
+    'profile_no_width', 'profile_e2', 'no_ls_amplitude', 'mass_unknown', 'instrument_twice', 'analyser_without_angle', 'grid_malformed', 'isotope_unknown', 'answer_too_large', 'term_incomplete', 'term_mixed', 'air_not_applicable', 'models_conflict', 'hyperfine_unknown', 'nuclear_spin_unknown', 'abundance_unknown', 'physics_impossible',
   ],
   example: {
     body: {

@@ -27,7 +27,7 @@ export const ProfiledLine = z
     species: SpeciesId.nullable(),
     kind: Kind,
     weight: z.number(),
-    model: z.enum(['linear', 'intermediate']),
+    model: z.enum(['linear', 'intermediate', 'hyperfine']).meta({ description: 'hyperfine: diagonalised with the nuclear spin, within one J.' }),
     wavenumber_invcm: z.number(),
     wavelength_vac_nm: z.number(),
     wavelength_air_nm: z.number().nullable(),
