@@ -1272,7 +1272,8 @@ export interface ProfiledLine {
   species: string | null
   kind: Kind
   weight: number
-  model: 'linear' | 'intermediate'
+  /** hyperfine: diagonalised with the nuclear spin, within one J. */
+  model: 'linear' | 'intermediate' | 'hyperfine'
   wavenumber_invcm: number
   wavelength_vac_nm: number
   wavelength_air_nm: number | null
