@@ -167,10 +167,17 @@ class Client:
         """The same table held at an edition: the one given, or the newest published by now."""
         if edition is None:
             newest = self.get("/editions", limit=1)["data"]
+            self.close()
             if not newest:
                 raise BrokenAnswerError("Nothing is published yet: there is no edition to hold to.")
             edition = newest[0]["number"]
         return Client(self.base_url, self.key, edition, timeout=self.timeout, attempts=self.attempts, longest_wait=self.longest_wait)
+
+    def __enter__(self) -> "Client":
+        return self
+
+    def __exit__(self, *_: Any) -> None:
+        self.close()
 
     # ---- asking
 

@@ -3,7 +3,7 @@ import type { AddressInfo } from 'node:net'
 import { build } from 'esbuild'
 import path from 'node:path'
 import { afterEach, describe, expect, inject, it } from 'vitest'
-import { Lodeterm, ProblemError, retryAfterMs } from '@/clients/typescript'
+import { interpolate, Lodeterm, predictArrays, predictBlocks, ProblemError, retryAfterMs, verifyFieldTable } from '@/clients/typescript'
 
 const base = inject('baseUrl')
 const table = new Lodeterm(base, { edition: 1 })
@@ -161,6 +161,60 @@ describe('a busy server', () => {
     expect(retryAfterMs('7')).toBe(7000)
     expect(retryAfterMs('Thu, 01 Jan 2026 00:00:10 GMT', Date.parse('2026-01-01T00:00:00Z'))).toBe(10_000)
     expect(retryAfterMs(null)).toBeUndefined()
+  })
+})
+
+describe('predictions', () => {
+  const body = {
+    lines: [{ transition: 'Na-I.1~Na-I.3' }], multiplets: [{ transition: 'Li-I.1~Li-I.2' }], field: { start: 0, stop: 50, count: 6, unit: 'kG' as const }, derivatives: true, theta_deg: 60,
+  }
+
+  it.each(['linear', 'intermediate'] as const)('Arrow carries the bits of the JSON: %s', async (model) => {
+    const { data, meta } = await table.post('predict', { ...body, model })
+    const blocks = []
+    for await (const block of predictArrays(table, { ...body, model })) blocks.push(block)
+    expect(blocks.map((block) => [block.transition, block.model, block.strengthNormalisation, block.unit])).toEqual([['Na-I.1~Na-I.3', model, 'line', 'cm^-1'], ['Li-I.1~Li-I.2', model, 'multiplet', 'cm^-1']])
+    for (const [i, block] of blocks.entries()) {
+      const json = data[i]
+      if (json === undefined) throw new Error('a block too many')
+      const rows = (columns: readonly Float64Array[] | null) => Array.from({ length: 6 }, (_, f) => columns?.map((column) => column[f]))
+      const each = (numbers: unknown) => (model === 'linear' ? Array(6).fill(numbers) : numbers)
+      expect(rows(block.values)).toStrictEqual(json.values)
+      expect(rows(block.derivatives)).toStrictEqual(json.derivatives)
+      expect(rows(block.strengths)).toStrictEqual(each(json.strengths))
+      expect(rows(block.intensities)).toStrictEqual(each(json.intensities))
+      expect([[...block.q], [...block.mLower], [...block.mUpper], [...block.jLower], [...block.jUpper]]).toEqual([json.q, json.m_lower, json.m_upper, json.j_lower, json.j_upper])
+      expect([block.validity, block.field, block.meta.edition]).toEqual([json.validity, body.field, meta.edition])
+    }
+  })
+
+  it('NDJSON gives the same blocks, and a stream that is cut is told', async () => {
+    const { data } = await table.post('predict', body)
+    const blocks = []
+    for await (const block of predictBlocks(table, body)) blocks.push(block)
+    expect(blocks).toEqual(data)
+    const cutting: typeof fetch = async (input, init) => {
+      const answer = await fetch(input, init)
+      const lines = (await answer.text()).trimEnd().split('\n')
+      return new Response(`${lines.slice(0, -1).join('\n')}\n`, { headers: answer.headers })
+    }
+    const read = async () => {
+      for await (const block of predictBlocks(new Lodeterm(base, { fetch: cutting }), body)) expect(block.q.length).toBeGreaterThan(0)
+    }
+    await expect(read()).rejects.toThrow('before the line that says it is complete')
+  })
+
+  it('a field table is verified, and as close to the model as it says', async () => {
+    const { data } = await table.post('makeFieldTable', { multiplet: { transition: 'Li-I.1~Li-I.2' }, field: { start: 0, stop: 5, unit: 'T' }, max_error_invcm: 1e-7 })
+    await verifyFieldTable(data)
+    const { data: [model] } = await table.post('predict', { multiplets: [{ transition: 'Li-I.1~Li-I.2' }], field: { values: [1.2345], unit: 'T' }, model: 'intermediate', derivatives: true })
+    const read = interpolate(data, 1.2345)
+    const worst = Math.max(...read.positions.map((position, c) => Math.abs(position - (model?.values[0]?.[c] ?? Number.NaN))))
+    // rounding of wavenumbers near 15 000 cm^-1 beside the bound
+    expect(worst).toBeLessThanOrEqual(data.max_error_invcm + 1e-11)
+    expect(() => interpolate(data, 5.1)).toThrow(RangeError)
+    const first = data.positions_invcm[0] ?? []
+    await expect(verifyFieldTable({ ...data, positions_invcm: [first.map((value) => value + 1e-9), ...data.positions_invcm.slice(1)] })).rejects.toThrow('damaged')
   })
 })
 

@@ -94,7 +94,11 @@ def by_tables(tables, indices):
 
 
 def main(base_url: str) -> int:
-    table = Client(base_url).pinned()
+    with Client(base_url).pinned() as table:
+        return show(table)
+
+
+def show(table: Client) -> int:
     seen, measured = invent(table)
     print("{} positions of {} lines (invented: {} T, noise {} cm^-1), edition {}".format(sum(map(len, measured)), len(LINES), TRUE_TESLA, NOISE_INVCM, table.edition))
     found = []
