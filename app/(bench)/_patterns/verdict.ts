@@ -32,6 +32,6 @@ export function verdictOf(ready: readonly NumberedLine[], lines: readonly Patter
   const name = worst === null ? '' : `${worst.index + 1} ${lines[worst.index]?.name ?? ''}`
   const off = worst === null ? '' : `positions off by ${percent(worst.positions.relative_error ?? 0)}, strengths by ${percent(worst.strengths.relative_error ?? 0)}`
   const told = unknown.length === 0 ? '' : ` Of ${unknown.length === 1 ? 'line' : 'lines'} ${unknown.join(', ')} it cannot be told, since a term is not whole.`
-  const said = worst === null ? '' : worst.error === 0 ? 'Linear is exact within the terms for every line.' : failing ? `Linear ${intermediate ? 'would err' : 'errs'} most for ${name}: ${off}.` : `Linear holds for every line; it errs most for ${name}: ${off}.`
+  const said = worst === null ? '' : worst.error === 0 ? 'Linear is exact within the terms for every line.' : unknown.length === ready.length ? `Linear errs by no less than this, for ${name}: ${off}.` : failing ? `Linear ${intermediate ? 'would err' : 'errs'} most for ${name}: ${off}.` : `Linear holds for every line; it errs most for ${name}: ${off}.`
   return { model, tone: failing && !intermediate ? 'not_valid' : unknown.length > 0 ? 'unknown' : 'valid', sentence: `${said}${told}`.trim(), limitTesla }
 }

@@ -20,6 +20,7 @@ import { ProblemView } from '../../_components/problem-view'
 import { RequestPanel } from '../../_components/request-panel'
 import { TableSkeleton } from '../../_components/skeleton'
 import { Warnings } from '../../_components/warnings'
+import { LINES_MOST, patternsPage } from '../../(bench)/_patterns/line-ids'
 import { lineQuery, SCALES, scaleOf } from './line-query'
 import { LinesForm, type LinesFields } from './lines-form'
 
@@ -106,7 +107,7 @@ function Results({ query }: { query: ReturnType<typeof lineQuery> }) {
     <>
       <DataTable columns={columns} rows={rows} rowKey={(line) => line.id} caption="Lines, by wavenumber" hideCaption
         summary={<span role="status">{answer.hasNextPage ? `The first ${plural(rows.length, 'line')}, by wavenumber` : plural(rows.length, 'line')}</span>}
-        actions={<a className="btn btn-small" href={apiPath('/transitions', { ...query, limit: 1000, format: 'csv' })} download="lines.csv">Download CSV</a>} />
+        actions={<><Link className="btn btn-small" href={href(patternsPage(rows.filter((line) => line.kind !== 'E2').map((line) => line.id)))}>See {rows.length > LINES_MOST ? `the first ${LINES_MOST}` : 'these'} in Patterns</Link><a className="btn btn-small" href={apiPath('/transitions', { ...query, limit: 1000, format: 'csv' })} download="lines.csv">Download CSV</a></>} />
       <div className="mt-4 flex flex-wrap items-start justify-between gap-4">
         <div>
           {excluded}
