@@ -46,18 +46,18 @@ export function termSweep(term: FieldTerm, fields: number, wanted: { slopes: boo
 /** Any block, field by field. */
 function sweepBlock(block: FieldBlock, fieldsTesla: Float64Array, from: number, to: number, sweep: TermSweep, at: number, room: TermSolution): void {
   const { n, firstState, firstVector } = block
-  const withSlopes = (sweep.slopes[firstState] as Float64Array).length > 0
-  const withVectors = (sweep.vectors[firstVector] as Float64Array).length > 0
+  const columnsOf = (list: (Float64Array | null)[], first: number, count: number) => list.slice(first, first + count).filter((column) => column !== null && column.length > 0) as Float64Array[]
+  const shifts = columnsOf(sweep.shifts, firstState, n)
+  const slopes = columnsOf(sweep.slopes, firstState, n)
+  const vectors = columnsOf(sweep.vectors, firstVector, n * n)
   for (let f = from; f < to; f += 1) {
     const x = MU_B_OVER_HC_INVCM_PER_T * (fieldsTesla[f] as number)
     solveBlock(block, x, room)
     readBlock(block, x, room)
     const column = at + f - from
-    for (let k = 0; k < n; k += 1) {
-      ;(sweep.shifts[firstState + k] as Float64Array)[column] = room.shifts[firstState + k] as number
-      if (withSlopes) (sweep.slopes[firstState + k] as Float64Array)[column] = room.slopes[firstState + k] as number
-    }
-    if (withVectors) for (let i = 0; i < n * n; i += 1) (sweep.vectors[firstVector + i] as Float64Array)[column] = room.vectors[firstVector + i] as number
+    for (let k = 0; k < shifts.length; k += 1) (shifts[k] as Float64Array)[column] = room.shifts[firstState + k] as number
+    for (let k = 0; k < slopes.length; k += 1) (slopes[k] as Float64Array)[column] = room.slopes[firstState + k] as number
+    for (let i = 0; i < vectors.length; i += 1) (vectors[i] as Float64Array)[column] = room.vectors[firstVector + i] as number
   }
 }
 
