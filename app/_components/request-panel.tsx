@@ -19,7 +19,7 @@ function permanentLink(edition: number | null): string {
  * "The request behind this view": the API call that gives these numbers, ready to copy, with the edition pinned
  * so that it gives the same numbers next year.
  */
-export function RequestPanel({ path, query = {}, method, body, unpinned = false, title = 'The request behind this view', open = false }: ShownRequest & { unpinned?: boolean; title?: string; open?: boolean }) {
+export function RequestPanel({ path, query = {}, method, body, unpinned = false, title = 'The request behind this view', open = false, withLink = !unpinned }: ShownRequest & { unpinned?: boolean; title?: string; open?: boolean; withLink?: boolean }) {
   const [language, setLanguage] = useState<RequestLanguage>('curl')
   const { number } = useEdition()
   const origin = useOrigin()
@@ -53,7 +53,7 @@ export function RequestPanel({ path, query = {}, method, body, unpinned = false,
           {unpinned ? null : <p className="note mt-2">{number === null ? 'The edition in force is not known yet.' : `Edition ${number} is pinned: the same request gives the same stored values next year.`}</p>}
         </div>
       </details>
-      {unpinned ? null : (
+      {!withLink ? null : (
         <p className="mt-3 flex flex-wrap items-center gap-x-3 gap-y-1">
           <CopyButton text={() => permanentLink(number)} label="Copy permanent link" />
           <span className="note">to this view{number === null ? '' : `, edition ${number} pinned`}</span>

@@ -80,7 +80,7 @@ export const CrossingsPart = memo(function CrossingsPart({ level, found, isotope
         {answer === null ? <p className="note">Choose two sublevels to see where they cross, where they come nearest, and where their difference does not change with the field.</p> : answer.ok ? <Found crossings={answer.crossings} /> : <p className="text-sm text-warn">{answer.detail}</p>}
       </div>
       {wanted === null ? null : (
-        <RequestPanel title="The request behind these fields" path={`/levels/${level.id}/crossings`} query={{ a: nameOf(wanted.a), b: nameOf(wanted.b), to: to ?? '1T', ...(nuclear ? { hyperfine: 'true', isotope } : {}) }} />
+        <RequestPanel withLink={false} title="The request behind these fields" path={`/levels/${level.id}/crossings`} query={{ a: nameOf(wanted.a), b: nameOf(wanted.b), to: to ?? '1T', ...(nuclear ? { hyperfine: 'true', isotope } : {}) }} />
       )}
     </Part>
   )

@@ -73,5 +73,5 @@ function SublevelRequest({ level }: { level: LevelDetail }) {
   const [quadratic] = useQuadratic()
   const [nucleus] = useNucleus()
   const what = nucleus.on ? { hyperfine: 'true', isotope: nucleus.isotope } : { model, diamagnetic: quadratic ? 'true' : null }
-  return <RequestPanel title="The request behind the sublevels" path={`/levels/${level.id}/sublevels`} query={{ field: fieldForUrl(field.tesla, field.unit), ...what }} />
+  return <RequestPanel withLink={false} title="The request behind the sublevels" path={`/levels/${level.id}/sublevels`} query={{ field: fieldForUrl(field.tesla, field.unit), ...what }} />
 }

@@ -52,7 +52,6 @@ function drawn(component: HyperfineComponent, answer: HyperfineComponents): Draw
   }
 }
 
-/** The line of one isotope, or of the natural mixture, with nuclear spin. */
 interface NuclearBenchProps {
   line: TransitionDetail
   /** Null while they are being read. */
@@ -64,6 +63,7 @@ interface NuclearBenchProps {
   onField: (tesla: number) => void
 }
 
+/** The line of one isotope, or of the natural mixture, with nuclear spin. */
 export const NuclearBench = memo(function NuclearBench({ line, isotopes, error, isotope, asked, fieldUnit, onField }: NuclearBenchProps) {
   const [active, setActive] = useState<string | null>(null)
   const prediction = useNuclearPrediction(line, isotopes, isotope, asked.fieldTesla, asked.thetaDeg)
@@ -90,7 +90,7 @@ export const NuclearBench = memo(function NuclearBench({ line, isotopes, error, 
       <SignConvention thetaDeg={answer.theta_deg} kind={line.kind} sums="isotope" />
       <Warnings meta={{ warnings: prediction.warnings }} />
       <Part title="Hyperfine components" aside={`At ${answer.field_tesla}\u202fT, which is ${Number(gauss.toPrecision(10))}\u202fG; ${answer.isotopes.map((one) => one.mass_number).join(', ')}`}>
-        <NuclearTable answer={answer} medium={line.conventional_medium} active={active} />
+        <NuclearTable answer={answer} active={active} />
       </Part>
       <ProfilePart line={line} asked={asked} nuclear={answer} />
       <ValidityPart validity={answer.validity} fieldTesla={answer.field_tesla} model="hyperfine" />

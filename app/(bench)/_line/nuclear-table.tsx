@@ -29,7 +29,7 @@ function numeric(name: Name, header: React.ReactNode, print: (value: number) => 
 
 const copied = (name: Name): Column<HyperfineComponent> => ({ ...numeric(name, name, String), only: 'copy' })
 
-function columnsOf(answer: HyperfineComponents, medium: 'air' | 'vacuum'): Column<HyperfineComponent>[] {
+function columnsOf(answer: HyperfineComponents): Column<HyperfineComponent>[] {
   const angle = answer.theta_deg !== null
   return [
     {
@@ -57,7 +57,8 @@ function columnsOf(answer: HyperfineComponents, medium: 'air' | 'vacuum'): Colum
     numeric('derivative_mhz_per_tesla', 'Slope, MHz/T', (v) => signed(v, 7)),
     numeric('shift_invcm', <>Shift, cm<sup>−1</sup></>, (v) => signed(v, 6)),
     numeric('wavenumber_invcm', <>Wavenumber, cm<sup>−1</sup></>, (v) => fixed(v, 5)),
-    ...(medium === 'air' ? [numeric('wavelength_air_nm', 'In air, nm', (v) => fixed(v, 6), 'does not apply'), copied('wavelength_vac_nm')] : [numeric('wavelength_vac_nm', 'In vacuum, nm', (v) => fixed(v, 6)), copied('wavelength_air_nm')]),
+    copied('wavelength_vac_nm'),
+    copied('wavelength_air_nm'),
     copied('frequency_thz'),
     numeric('strength', 'Strength', (v) => fixed(v, 6)),
     copied('weight'),
@@ -69,8 +70,8 @@ function columnsOf(answer: HyperfineComponents, medium: 'air' | 'vacuum'): Colum
 }
 
 /** Every hyperfine component with its place on each scale; copies carry full precision. */
-export const NuclearTable = memo(function NuclearTable({ answer, medium, active }: { answer: HyperfineComponents; medium: 'air' | 'vacuum'; active: string | null }) {
-  const columns = useMemo(() => columnsOf(answer, medium), [answer, medium])
+export const NuclearTable = memo(function NuclearTable({ answer, active }: { answer: HyperfineComponents; active: string | null }) {
+  const columns = useMemo(() => columnsOf(answer), [answer])
   const { isotopes } = answer
   return (
     <>

@@ -96,7 +96,7 @@ export const ComponentCurves = memo(function ComponentCurves({ multiplet, pair, 
     >
       {(width, height) => {
         const narrow = width < 560
-        const [left, right, top, bottom] = [narrow ? 46 : 70, width - (narrow ? 92 : 104), 30, height - 48]
+        const [left, right, top, bottom] = [narrow ? 46 : 70, width - (narrow ? 108 : 112), 30, height - 48]
         const x = scaleLinear().domain([0, edge]).range([left, right])
         const y = scaleLinear().domain([-half, half]).range([bottom - 6, top + 6])
         const xUnits = ruler([0, fieldIn(edge, fieldUnit)], right - left, narrow ? 62 : 90)
@@ -140,7 +140,7 @@ export const ComponentCurves = memo(function ComponentCurves({ multiplet, pair, 
               {limit !== null && <path d={`M${limit},${top}V${bottom}`} stroke="var(--warn)" strokeWidth={1.5} strokeDasharray="2 3" />}
               <path d={`M${cursor},${top}V${bottom}`} stroke="var(--lamp)" strokeWidth={2} />
             </g>
-            {limit !== null && right - limit > 90 && <text aria-hidden="true" x={limit + 6} y={bottom - 8} fontSize={12} fill="var(--warn)" stroke="var(--sheet)" strokeWidth={4} paintOrder="stroke">{narrow ? 'linear fails' : `linear fails from ${limited ?? ''}`}</text>}
+            {limit !== null && right - limit > 90 && <text aria-hidden="true" x={limit + 6} y={bottom - 16} fontSize={12} fill="var(--warn)" stroke="var(--sheet)" strokeWidth={4} paintOrder="stroke">{narrow ? 'linear fails' : `linear fails from ${limited ?? ''}`}</text>}
             {drawn.map(({ curve, component, path, end }, index) => {
               const style = styleOf(component.q)
               const lit = curve.key === active

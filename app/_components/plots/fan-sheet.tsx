@@ -96,7 +96,7 @@ export function FanSheet({ width, height, id, fan, scale, edge, here, fieldTesla
       )}
       <g aria-hidden="true" clipPath={`url(#${id}-sheet)`} fill="none" pointerEvents="none">
         {neighbours.map(({ key, path }) => <path key={key} d={path} stroke="var(--rule-strong)" strokeWidth={1} />)}
-        {neighbours.map(({ key, name, start }) => name !== null && start > top + 8 && start < bottom - 2 && (
+        {neighbours.map(({ key, name, start }) => name !== null && start > top + 8 && start < bottom - 2 && Math.abs(start - y(0)) > 16 && (
           <text key={`${key} name`} x={left + 6} y={start - 4} fontSize={12} fill="var(--muted)" stroke="var(--sheet)" strokeWidth={3} paintOrder="stroke">{name}</text>
         ))}
         {lines.map(({ key, linear }) => linear !== null && <path key={key} d={linear} stroke="var(--muted)" strokeWidth={1} strokeDasharray="4 4" />)}
@@ -105,7 +105,7 @@ export function FanSheet({ width, height, id, fan, scale, edge, here, fieldTesla
         <g aria-hidden="true" pointerEvents="none">
           <path d={`M${limit},${top}V${bottom}`} stroke="var(--warn)" strokeWidth={1.5} strokeDasharray="2 3" />
           {limitText && (
-            <text x={limitText.x} y={bottom - 8} textAnchor={limitText.anchor} fontSize={12} fill="var(--warn)" stroke="var(--sheet)" strokeWidth={4} paintOrder="stroke">
+            <text x={limitText.x} y={bottom - 16} textAnchor={limitText.anchor} fontSize={12} fill="var(--warn)" stroke="var(--sheet)" strokeWidth={4} paintOrder="stroke">
               {`linear off by over ${tolerance * 100} % from ${formatField(Number((limitTesla ?? 0).toPrecision(3)), fieldUnit)}`}
             </text>
           )}
