@@ -13,6 +13,7 @@ import type { Nucleus } from '@/app/_components/field/use-model'
 import { halves, significant } from '@/app/_components/number'
 import { Part } from '@/app/_components/page-head'
 import { signed } from '@/app/_components/plots/ruler'
+import { Symbols } from '@/app/_components/plots/symbols'
 import { RequestPanel } from '@/app/_components/request-panel'
 
 interface Props {
@@ -66,7 +67,7 @@ export const CrossingsPart = memo(function CrossingsPart({ level, found, isotope
   if (names.length < 2) return null
 
   return (
-    <Part title="Where two sublevels meet" aside={nuclear ? 'F, mF of the isotope chosen' : 'J, m of the term'}>
+    <Part title="Where two sublevels meet" aside={nuclear ? <Symbols text="F, m_F of the isotope chosen" /> : 'J, m of the term'}>
       <div className="flex flex-wrap items-end gap-x-4 gap-y-3">
         <Choice id={`${id}-a`} label="One sublevel" names={names} value={first} onChange={setA} nuclear={nuclear} />
         <Choice id={`${id}-b`} label="and another" names={names} value={second} onChange={setB} nuclear={nuclear} />
@@ -114,11 +115,11 @@ function Found({ crossings: { a, b, crossings, anticrossings, stationary, to_tes
     ...anticrossings.map((one) => ({ what: 'they come nearest', tesla: one.field_tesla, gauss: one.field_gauss, mhz: signed(one.gap_mhz, 8), more: `${significant(one.gap_invcm, 4)} cm⁻¹` })),
     ...stationary.map((one) => ({ what: `the difference is stationary, a ${one.kind}`, tesla: one.field_tesla, gauss: one.field_gauss, mhz: signed(one.difference_mhz, 10), more: `${signed(one.curvature_mhz_per_tesla2, 4)} MHz/T²` })),
   ].sort((one, other) => one.tesla - other.tesla)
-  if (lines.length === 0) return <p className="note">{a.name} and {b.name} neither cross nor keep their distance anywhere above zero up to {to_tesla} T.</p>
+  if (lines.length === 0) return <p className="note"><Symbols text={`${a.name} and ${b.name}`} /> neither cross nor keep their distance anywhere above zero up to {to_tesla} T.</p>
   return (
     <div className="scroll-x" tabIndex={0} role="region" aria-label="Where the two sublevels meet, scrolls sideways">
       <table className="ruled">
-        <caption className="note pb-1 text-left">{a.name} and {b.name}, up to {to_tesla} T</caption>
+        <caption className="note pb-1 text-left"><Symbols text={`${a.name} and ${b.name}`} />, up to {to_tesla} T</caption>
         <thead>
           <tr>
             <th scope="col">Where</th>

@@ -8,6 +8,7 @@ import { Notice } from '@/app/_components/notice'
 import { fixed, halves } from '@/app/_components/number'
 import { useNuclearFan } from '@/app/_components/plots/nuclear-fan'
 import { signed } from '@/app/_components/plots/ruler'
+import { Symbols } from '@/app/_components/plots/symbols'
 import { SublevelFan } from '@/app/_components/plots/sublevel-fan'
 import { Skeleton } from '@/app/_components/skeleton'
 import { Warnings } from '@/app/_components/warnings'
@@ -52,7 +53,7 @@ export function NuclearSublevels({ level, isotopes, isotope, field, onField }: P
       <SublevelFan nuclear fanTo={fanTo} here={here} fieldTesla={tesla} fieldUnit={field.unit} limitTesla={null} tolerance={0.01} onField={onField} name={`${level.id}-${massNumber}-hyperfine`} title={`Sublevels of mass number ${massNumber}, I = ${halves(twoI / 2)}`} caption={`Hyperfine sublevels at ${tesla} T`} />
       <Warnings meta={{ warnings: sublevels.warnings }} quiet />
       <div className="mt-4">
-        <DataTable columns={columns} rows={sublevels.rows} rowKey={(row) => `${row.m_j} ${row.m_i}`} caption={`Hyperfine sublevels of ${level.id} at ${tesla} T`} hideCaption summary={`At ${tesla} T, which is ${Number((tesla * 1e4).toPrecision(10))} G; energies in MHz from the centre of gravity of the level; m_J and m_I at high field`} />
+        <DataTable columns={columns} rows={sublevels.rows} rowKey={(row) => `${row.m_j} ${row.m_i}`} caption={`Hyperfine sublevels of ${level.id} at ${tesla} T`} hideCaption summary={<Symbols text={`At ${tesla} T, which is ${Number((tesla * 1e4).toPrecision(10))} G; energies from the centre of gravity of the level; m_J and m_I at high field`} />} />
       </div>
     </>
   )

@@ -4,6 +4,7 @@ import type { Sublevel } from '@/openapi/schemas/level'
 import { DataTable, type Column } from '@/app/_components/data-table'
 import { fixed, halves } from '@/app/_components/number'
 import { signed } from '@/app/_components/plots/ruler'
+import { Symbols } from '@/app/_components/plots/symbols'
 
 function numeric(name: keyof Sublevel & string, header: React.ReactNode, print: (value: number) => string): Column<Sublevel> {
   const value = (row: Sublevel): number | null => {
@@ -39,7 +40,7 @@ export const SublevelTable = memo(function SublevelTable({ level, fieldTesla, ro
   return (
     <div className="mt-4">
       <DataTable columns={columnsOf(model, quadratic)} rows={rows} rowKey={(row) => String(row.m)} caption={`Sublevels of ${level} at ${fieldTesla} T`} hideCaption
-        summary={model === 'intermediate' ? 'M_L and M_S are what a sublevel tends to at high field' : `${rows.length} sublevel${rows.length === 1 ? '' : 's'}, linear law`} />
+        summary={model === 'intermediate' ? <Symbols text="M_L and M_S are what a sublevel tends to at high field" /> : `${rows.length} sublevel${rows.length === 1 ? '' : 's'}, linear law`} />
     </div>
   )
 })

@@ -5,6 +5,7 @@ import { fixed, halves, significant } from '@/app/_components/number'
 import { componentKey } from '@/app/_components/plots/component-text'
 import { PolarisationSign, polarisationName } from '@/app/_components/plots/polarisation'
 import { signed } from '@/app/_components/plots/ruler'
+import { Symbols } from '@/app/_components/plots/symbols'
 import { RULE_NAMES } from '../_parts/rule-words'
 
 type Name = keyof Component & string
@@ -97,7 +98,7 @@ export function ComponentsTable({ answer, medium, active }: { answer: Components
         rowKey={componentKey}
         caption={`Components of ${answer.transition} at ${answer.field_tesla} T`}
         hideCaption
-        summary={`${answer.components.length} components; wavelengths in ${medium}; L is the Lorentz unit, μB·B/hc${answer.model === 'intermediate' ? '; M_L, M_S: what a sublevel tends to at high field' : ''}`}
+        summary={<Symbols text={`${answer.components.length} components; wavelengths in ${medium}; L is the Lorentz unit, μB·B/hc${answer.model === 'intermediate' ? '; M_L, M_S: what a sublevel tends to at high field' : ''}`} />}
         rowClassName={(component) => (componentKey(component) === active ? 'bg-lamp-wash' : '')}
       />
       {first ? <Budget components={answer.components} /> : null}

@@ -5,6 +5,7 @@ import { DataTable, type Column } from '@/app/_components/data-table'
 import { fixed, halves, significant } from '@/app/_components/number'
 import { PolarisationSign, polarisationName } from '@/app/_components/plots/polarisation'
 import { signed } from '@/app/_components/plots/ruler'
+import { Symbols } from '@/app/_components/plots/symbols'
 import { nuclearKey } from './nuclear-key'
 
 type Name = keyof HyperfineComponent & string
@@ -82,7 +83,7 @@ export const NuclearTable = memo(function NuclearTable({ answer, active }: { ans
           rowKey={nuclearKey}
           caption={`Hyperfine components of ${answer.transition} at ${answer.field_tesla} T`}
           hideCaption
-          summary={`${answer.components.length} components; F by continuity from zero field, m_J and m_I at high field`}
+          summary={<Symbols text={`${answer.components.length} components; F by continuity from zero field, m_J and m_I at high field`} />}
           rowClassName={(one) => (nuclearKey(one) === active ? 'bg-lamp-wash' : '')}
         />
       </div>

@@ -44,13 +44,23 @@ function placeText(limit: number, left: number, right: number, cursor: number): 
   return limit - Math.max(left, cursor < limit ? cursor : left) >= room ? { x: limit - 7, anchor: 'end' } : null
 }
 
+/** What the names at the right edge need, from their lengths: the longest of either kind with the lines that lead to them. */
+function roomFor({ curves, heads }: Fan): number {
+  const longest = (texts: readonly (string | null)[]) => Math.max(...texts.map((text) => text?.length ?? 0))
+  const names = Math.max(longest(curves.map((curve) => curve.name)), heads.name.length - 1) * NAME_PX
+  const fars = heads.far === null ? 0 : Math.max(longest(curves.map((curve) => curve.far)), heads.far.length - 1) * FAR_PX + 12
+  return 30 + names + fars
+}
+const NAME_PX = 6.6
+const FAR_PX = 6.2
+
 const pathOf = (xs: readonly number[], ys: readonly number[]): string => xs.map((x, i) => `${i === 0 ? 'M' : 'L'}${x.toFixed(2)},${(ys[i] ?? 0).toFixed(2)}`).join('')
 
 /** The drawing of a fan: curves with their names at the right edge, the field in force, and where the linear law fails. */
 export function FanSheet({ width, height, id, fan, scale, edge, here, fieldTesla, fieldUnit, limitTesla, tolerance, labelled, active, onActive, onField }: FanSheetProps) {
   const narrow = width < 560
   const far = labelled && fan.heads.far !== null
-  const margin = !labelled ? 24 : far ? (narrow ? 96 : 118) : narrow ? 48 : 64
+  const margin = labelled ? roomFor(fan) : 24
   const [left, right, top, bottom] = [narrow ? 52 : 78, width - margin, labelled ? 30 : 16, height - 48]
   const x = scaleLinear().domain([0, edge]).range([left, right])
   const y = scaleLinear().domain([scale.low, scale.high]).range([bottom - 8, top + 8])

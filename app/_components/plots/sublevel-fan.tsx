@@ -7,6 +7,7 @@ import { FanSheet, type FanScale } from './fan-sheet'
 import { Choices, PlotFrame } from './plot-frame'
 import { niceCeil, signed } from './ruler'
 import { SublevelsTwin } from './sublevels-twin'
+import { Symbols } from './symbols'
 
 export interface SublevelFanProps {
   /** The curves up to a field; made anew when the edge moves, not at every step of a drag. */
@@ -100,7 +101,7 @@ export const SublevelFan = memo(function SublevelFan({ fanTo, here, fieldTesla, 
           <Choices label={nuclear ? 'Energy in' : 'Shift in'} value={unit} choices={ENERGIES} onChange={setUnit} />
         </>
       }
-      reading={current ? readingOf(current, fan, formatField(fieldTesla, fieldUnit), nuclear) : `${fan.curves.length} sublevel${fan.curves.length === 1 ? '' : 's'}; the line marks ${formatField(fieldTesla, fieldUnit)}.`}
+      reading={current ? <Reading point={current} heads={fan.heads} field={formatField(fieldTesla, fieldUnit)} nuclear={nuclear} /> : `${fan.curves.length} sublevel${fan.curves.length === 1 ? '' : 's'}; the line marks ${formatField(fieldTesla, fieldUnit)}.`}
       note={notes.length > 0 ? notes.join(' ') : undefined}
       table={<SublevelsTwin levels={[{ name: 'level', points: here, heads: fan.heads }]} caption={caption} nuclear={nuclear} />}
     >
@@ -109,9 +110,13 @@ export const SublevelFan = memo(function SublevelFan({ fanTo, here, fieldTesla, 
   )
 })
 
-function readingOf(point: FanPoint, { heads }: Fan, field: string, nuclear: boolean): string {
-  const far = point.far === null ? '' : `, ${heads.far ?? ''} → ${point.far}`
+function Reading({ point, heads, field, nuclear }: { point: FanPoint; heads: Fan['heads']; field: string; nuclear: boolean }) {
   const mhz = point.energyInvcm * GHZ_PER_INVCM * 1000
   const size = nuclear ? `${signed(mhz, 8)} MHz (${signed(point.energyInvcm, 6)} cm⁻¹)` : `${signed(point.shiftInvcm, 6)} cm⁻¹ (${signed(point.shiftInvcm * GHZ_PER_INVCM, 6)} GHz)`
-  return `${heads.name} = ${point.name}${far} at ${field}: ${size}`
+  return (
+    <>
+      <Symbols text={heads.name} /> = {point.name} at {field}: {size}
+      {point.far === null || heads.far === null ? null : <>; at high field <Symbols text={heads.far} /> = {point.far}</>}
+    </>
+  )
 }
