@@ -55,9 +55,9 @@ const rowsOf = ({ shiftsInvcm, intensity, stokesQ, stokesV }: LineProfile, centr
   Array.from(shiftsInvcm, (shift, at) => ({ shift, wavenumber: centre + shift, i: intensity[at] ?? 0, q: stokesQ?.[at] ?? null, v: stokesV?.[at] ?? null }))
 
 function columnsOf(polarised: boolean): Column<Row>[] {
-  const size = (name: string, header: ReactNode, value: (row: Row) => number | null): Column<Row> => ({ name, header, align: 'right', value, cell: (row) => signed(value(row) ?? 0, 5) })
+  const size = (name: string, header: ReactNode, value: (row: Row) => number | null): Column<Row> => ({ name, header, align: 'right', value, cell: (row) => <span title={String(value(row))}>{signed(value(row) ?? 0, 5)}</span> })
   return [
-    { name: 'shift_invcm', header: 'Shift, cm⁻¹', rowHeader: true, align: 'right', value: (row) => row.shift, cell: (row) => signed(row.shift, 6) },
+    { name: 'shift_invcm', header: 'Shift, cm⁻¹', rowHeader: true, align: 'right', value: (row) => row.shift, cell: (row) => <span title={String(row.shift)}>{signed(row.shift, 6)}</span> },
     { name: 'wavenumber_invcm', header: 'Wavenumber, cm⁻¹', align: 'right', value: (row) => row.wavenumber, cell: (row) => fixed(row.wavenumber, 5) },
     size('stokes_i', 'Stokes I, cm', (row) => row.i),
     ...(polarised ? [size('stokes_q', 'Stokes Q, cm', (row) => row.q), size('stokes_v', 'Stokes V, cm', (row) => row.v)] : []),
