@@ -10,6 +10,7 @@ const PAGES: readonly { path: string; shows: RegExp }[] = [
   { path: '/lines?wavelength_min_nm=588&wavelength_max_nm=590', shows: /Na/ },
   { path: '/lines/Na-I.1~Na-I.2?field=1.5T', shows: /2\.8/ },
   { path: '/lines/Na-I.2~Na-I.3', shows: /M1/ },
+  { path: '/patterns?lines=Na-I.1~Na-I.2,Na-I.1~Na-I.3&field=1T', shows: /Components[\s\S]*589\.6/ },
   { path: '/levels/Na-I.2', shows: /0\.66581/ },
   { path: '/levels/Ne-I.2', shows: /1s5/ },
   { path: '/species/Fe-I', shows: /iron/i },

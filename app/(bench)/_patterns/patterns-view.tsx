@@ -1,5 +1,5 @@
 'use client'
-import { memo, useCallback, useDeferredValue, useMemo } from 'react'
+import { memo, useCallback, useEffect, useMemo, useState } from 'react'
 import { benchSentence } from '@/lib/atomic/profile-stokes'
 import { fieldForUrl } from '@/lib/units/field'
 import { AngleControl } from '@/app/_components/field/angle-control'
@@ -43,6 +43,19 @@ export function PatternsView() {
   )
 }
 
+/** As long as this nothing has moved: the hand rests. */
+const RESTS_MS = 180
+
+/** A value as it was when it last stood still. */
+function useSettled<T>(value: T): T {
+  const [settled, setSettled] = useState(value)
+  useEffect(() => {
+    const timer = setTimeout(() => setSettled(value), RESTS_MS)
+    return () => clearTimeout(timer)
+  }, [value])
+  return settled
+}
+
 function Bench({ wanted, lines, setLines }: { wanted: readonly LineWanted[]; lines: readonly PatternLine[]; setLines: (lines: readonly LineWanted[]) => void }) {
   const { field, setField, problem: fieldProblem } = useField()
   const { thetaDeg, setThetaDeg, problem: angleProblem } = useAngle()
@@ -52,15 +65,15 @@ function Bench({ wanted, lines, setLines }: { wanted: readonly LineWanted[]; lin
   const overlay = useOverlay(weighed, { fieldTesla: field.tesla, thetaDeg, model, width }, massesPending)
   const frame = useFrame(overlay.lines, axis, window)
   const curve = useCurve(overlay.lines, frame?.window ?? null, thetaDeg, CURVE_POINTS)
-  // the drawing follows the slider; words and tables may lag a frame or two, so that no step of a drag waits for them
-  const settled = useDeferredValue(overlay)
-  const settledCurve = useDeferredValue(curve)
+  // the drawing follows the slider; words and tables wait until it rests, for a table of many lines takes longer than a step of a drag may
+  const settled = useSettled(overlay)
+  const settledCurve = useSettled(curve)
   const verdict = useMemo(() => verdictOf(settled.lines, lines), [settled, lines])
 
   const remove = useCallback((id: string) => setLines(wanted.filter((line) => line.id !== id)), [wanted, setLines])
   const setWeight = useCallback((id: string, weight: number) => setLines(wanted.map((line) => (line.id === id ? { ...line, weight } : line))), [wanted, setLines])
   const go = useCallback((line: NumberedLine) => setWindow(windowAround(line)), [setWindow])
-  const table = useMemo(() => <OverlayTable components={settled.components} lines={lines} fieldTesla={field.tesla} thetaDeg={thetaDeg} />, [settled, lines, field.tesla, thetaDeg])
+  const table = useMemo(() => <OverlayTable components={settled.components} lines={lines} fieldTesla={settled.lines[0]?.components.field_tesla ?? 0} thetaDeg={settled.lines[0]?.components.theta_deg ?? null} />, [settled, lines])
   const caption = `Stokes profile at ${field.tesla} T`
   const first = lines.find(({ detail }) => detail !== null)?.detail ?? null
 
