@@ -12,6 +12,7 @@ import { readFields } from '@/lib/prediction/sublevels'
 import { bodyProblem, type Fault, faultsProblem, Problem } from '@/lib/problem'
 import type { ProfilesRequest } from '@/openapi/operations/profiles'
 import type { Analyser, ProfiledLine, Profiles } from '@/openapi/schemas/profiles'
+import type { Validity } from '@/openapi/schemas/validity'
 
 type Warn = (code: string, detail: string) => void
 
@@ -73,6 +74,13 @@ function weigh(body: ProfilesRequest, found: (FoundLine | null)[], faults: Fault
   })
 }
 
+/** Levels of no table have no id: the names that refusals give them stay out of the answer. */
+const nameless = (validity: Validity): Validity => ({
+  ...validity,
+  blend: { ...validity.blend, lines: validity.blend.lines.map((line) => ({ ...line, transition: null })) },
+  levels: { lower: { ...validity.levels.lower, level: null }, upper: { ...validity.levels.upper, level: null } },
+})
+
 function lineAnswer({ weighed, components, hyperfine, profile, ...ready }: ReadyLine, mass: Mass, thermal: boolean, given: boolean): ProfiledLine {
   const { line, weight } = weighed
   const { centre } = components
@@ -96,7 +104,7 @@ function lineAnswer({ weighed, components, hyperfine, profile, ...ready }: Ready
     mass_status: mass.u !== null ? 'ok' : thermal ? 'unknown' : 'not_applicable',
     mass_basis: mass.basis,
     isotopes: (hyperfine?.isotopes ?? []).map(({ mass_number, weight: share, shift_mhz, shift_status, a_lower_mhz, a_upper_mhz }) => ({ mass_number, weight: share, shift_mhz, shift_known: shift_status === 'ok', hyperfine: a_lower_mhz !== null || a_upper_mhz !== null })),
-    validity: components.validity,
+    validity: given ? nameless(components.validity) : components.validity,
   }
 }
 
