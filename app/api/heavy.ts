@@ -3,8 +3,10 @@ import { shared } from '@/lib/access/shared'
 import { getConfig } from '@/lib/config'
 import { processLog } from '@/lib/http/log'
 import type { Asking } from '@/lib/prediction/answers/bulk'
-import { Pool } from '@/lib/prediction/bulk/pool'
+import { Pool, type PoolEvent } from '@/lib/prediction/bulk/pool'
 import { spawnWorker } from '@/lib/prediction/bulk/spawn'
+
+const BY_CALLER: ReadonlySet<PoolEvent['event']> = new Set(['cancelled', 'stalled'])
 
 /** The process's one pool, started at the first large request. */
 const pool = (): Pool =>
@@ -14,7 +16,7 @@ const pool = (): Pool =>
     return new Pool({
       spawn: spawnWorker,
       workers: predictionWorkers,
-      tell: ({ event, detail }) => log[event === 'cancelled' ? 'info' : 'error']({ event, ...detail }, event === 'cancelled' ? 'a large computation was left by its caller' : 'a large computation was interrupted'),
+      tell: ({ event, detail }) => log[BY_CALLER.has(event) ? 'info' : 'error']({ event, ...detail }, BY_CALLER.has(event) ? 'a large computation was left by its caller' : 'a large computation was interrupted'),
     })
   })
 

@@ -18,7 +18,7 @@ export interface WorkerLike {
 }
 
 export interface PoolEvent {
-  event: 'cancelled' | 'worker_lost' | 'job_failed'
+  event: 'cancelled' | 'stalled' | 'worker_lost' | 'job_failed'
   detail: Record<string, unknown>
 }
 
@@ -31,6 +31,8 @@ export interface PoolSettings {
   /** Jobs that one worker holds at once: each may hold some tens of megabytes. */
   perWorker?: number
   longestWaitMs?: number
+  /** How long a chunk may lie ready untaken before its job is given up. */
+  longestStallMs?: number
   tell?: (event: PoolEvent) => void
 }
 
@@ -55,6 +57,7 @@ export class Job {
   private taker: { resolve: (chunk: Uint8Array | null) => void; reject: (reason: unknown) => void } | null = null
   private ended = false
   private failure: unknown = null
+  private stall: ReturnType<typeof setTimeout> | undefined
   /** Slices that wait for their turn or are being worked on. */
   asked = 0
   chunks = 0
@@ -64,7 +67,9 @@ export class Job {
   /** The next chunk; null at the end. Rejects with a Problem where the worker was lost. */
   next(): Promise<Uint8Array | null> {
     const chunk = this.ready.shift()
+    clearTimeout(this.stall)
     if (chunk !== undefined) {
+      if (this.ready.length > 0) this.watch()
       this.pool.wants(this)
       return Promise.resolve(chunk)
     }
@@ -87,8 +92,15 @@ export class Job {
     this.chunks += 1
     const { taker } = this
     this.taker = null
-    if (taker === null) this.ready.push(chunk)
-    else taker.resolve(chunk)
+    if (taker !== null) return taker.resolve(chunk)
+    this.ready.push(chunk)
+    if (this.ready.length === 1) this.watch()
+  }
+
+  /** A reader that takes nothing for long would keep its place in a worker from others for ever. */
+  private watch(): void {
+    this.stall = setTimeout(() => this.pool.giveUp(this), this.pool.longestStallMs)
+    this.stall.unref()
   }
 
   end(): void {
@@ -98,6 +110,7 @@ export class Job {
   }
 
   fail(reason: unknown): void {
+    clearTimeout(this.stall)
     this.failure = reason
     this.taker?.reject(reason)
     this.taker = null
@@ -107,8 +120,14 @@ export class Job {
   cancel(): void {
     if (!this.open) return
     this.end()
-    this.ready.length = 0
+    this.release()
     this.pool.drop(this)
+  }
+
+  /** Forgets what is ready. */
+  release(): void {
+    clearTimeout(this.stall)
+    this.ready.length = 0
   }
 }
 
@@ -136,6 +155,10 @@ export class Pool {
 
   private get perCaller(): number {
     return this.settings.perCaller ?? 2
+  }
+
+  get longestStallMs(): number {
+    return this.settings.longestStallMs ?? 120_000
   }
 
   /** Admits a job, at once or when its turn comes. Refuses with 429 where the caller has too many waiting, with 503 after a long wait. */
@@ -241,12 +264,21 @@ export class Pool {
     this.feed(bench)
   }
 
+  /** Breaks off a job whose reader is there and takes nothing. */
+  giveUp(job: Job): void {
+    // what is made whole holds no worker, and may be read as slowly as anyone likes
+    if (!job.open) return
+    job.fail(interrupted('The answer was not read for too long, so the computation was given up.'))
+    job.release()
+    this.drop(job, 'stalled')
+  }
+
   /** Forgets a job whose caller left. */
-  drop(job: Job): void {
+  drop(job: Job, event: 'cancelled' | 'stalled' = 'cancelled'): void {
     const bench = this.homes.get(job)
     if (bench === undefined) return
-    this.counts.cancelled += 1
-    this.settings.tell?.({ event: 'cancelled', detail: { caller: job.caller, chunks: job.chunks } })
+    if (event === 'cancelled') this.counts.cancelled += 1
+    this.settings.tell?.({ event, detail: { caller: job.caller, chunks: job.chunks } })
     bench.worker.postMessage({ type: 'drop', id: job.id })
     this.close(job)
   }

@@ -166,6 +166,26 @@ describe('the pool', () => {
     await whole(first)
   })
 
+  it('gives up a job whose reader takes nothing for long, so that its place is free, and breaks its answer off', async () => {
+    const { pool, workers, events } = made({ workers: 1, perWorker: 1, longestStallMs: 20 })
+    const stalled = await pool.open('a', count('a', 1000))
+    await stalled.next()
+    expect(await whole(await pool.open('b', count('b', 2)))).toBe('b0 b1 ')
+    await expect(stalled.next()).rejects.toMatchObject({ code: 'computing_interrupted' })
+    expect(events.map(({ event }) => event)).toEqual(['stalled'])
+    expect([pool.load.active, pool.counts.cancelled, workers[0]?.returned[0]]).toEqual([0, 0, 'a'])
+  })
+
+  it('lets what is made whole be read as slowly as anyone likes', async () => {
+    const { pool } = made({ longestStallMs: 10 })
+    const job = await pool.open('a', count('a', 3))
+    await job.next()
+    await job.next()
+    await turns(20)
+    await new Promise((resolve) => setTimeout(resolve, 30))
+    expect(await whole(job)).toBe('a2 ')
+  })
+
   it('answers 503 for the jobs of a worker that was lost, and starts another', async () => {
     const { pool, workers, events } = made()
     const job = await pool.open('a', count('a', 100))
