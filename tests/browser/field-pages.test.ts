@@ -147,6 +147,23 @@ describe('the profile', () => {
   })
 })
 
+describe('the profile of an isotope', () => {
+  it('shows the two groups of rubidium 87 that the ground level makes, 6.8 GHz apart', async () => {
+    const { context, page } = await visit(browser)
+    await goUntil(page, '/lines/Rb-I.1~Rb-I.3?field=0T&hyperfine=true&isotope=87&fwhm=0.03', /Seen with an instrument/)
+    const figure = page.locator('figure').filter({ has: page.locator('[data-plot$="-profile"]') })
+    await figure.getByRole('button', { name: 'Table' }).click()
+    // shift in cm^-1 and I of each point
+    const rows = await figure.locator('tbody tr').evaluateAll((all) => all.map((row) => [...row.querySelectorAll('[title]')].map((cell) => Number(cell.getAttribute('title')))))
+    const highest = (side: number[][]) => side.reduce((best, row) => ((row[1] ?? 0) > (best[1] ?? 0) ? row : best), [0, 0])[0] ?? 0
+    const [red, blue] = [highest(rows.filter((row) => (row[0] ?? 0) < 0)), highest(rows.filter((row) => (row[0] ?? 0) > 0))]
+    // 2 A = 6834.7 MHz is 0.228 cm^-1; the groups are not narrow, their upper levels lying over 0.017 cm^-1
+    expect(blue - red).toBeGreaterThan(0.21)
+    expect(blue - red).toBeLessThan(0.245)
+    await context.close()
+  })
+})
+
 describe('in both themes and on a narrow screen', () => {
   const PAGES = [
     { path: '/lines/Li-I.1~Li-I.3?field=5T&theta=45', shows: /intermediate/ },

@@ -11,6 +11,7 @@ import { signed } from '@/app/_components/plots/ruler'
 import { Symbols } from '@/app/_components/plots/symbols'
 import { SublevelFan } from '@/app/_components/plots/sublevel-fan'
 import { Skeleton } from '@/app/_components/skeleton'
+import { useResting } from '@/app/_components/use-resting'
 import { Warnings } from '@/app/_components/warnings'
 
 const number = (name: keyof HyperfineSublevel & string, header: React.ReactNode, print: (value: number) => string): Column<HyperfineSublevel> => ({
@@ -45,6 +46,9 @@ export function NuclearSublevels({ level, isotopes, isotope, field, onField }: P
   // a drag does not wait for diagonalisation
   const tesla = useDeferredValue(field.tesla)
   const { sublevels, here, fanTo, problem } = useNuclearFan(found, isotope, tesla)
+  // the table waits for the end of the drag
+  const rested = useResting(sublevels)
+  const restedTesla = useResting(tesla)
   if (problem !== null) return <Notice tone="warn" title="No hyperfine sublevels can be computed."><p>{problem}</p></Notice>
   if (sublevels === null) return <Skeleton label="Reading the isotopes" className="h-96" />
   const { massNumber, twoI } = sublevels.isotope
@@ -53,7 +57,7 @@ export function NuclearSublevels({ level, isotopes, isotope, field, onField }: P
       <SublevelFan nuclear fanTo={fanTo} here={here} fieldTesla={tesla} fieldUnit={field.unit} limitTesla={null} tolerance={0.01} onField={onField} name={`${level.id}-${massNumber}-hyperfine`} title={`Sublevels of mass number ${massNumber}, I = ${halves(twoI / 2)}`} caption={`Hyperfine sublevels at ${tesla} T`} />
       <Warnings meta={{ warnings: sublevels.warnings }} quiet />
       <div className="mt-4">
-        <DataTable columns={columns} rows={sublevels.rows} rowKey={(row) => `${row.m_j} ${row.m_i}`} caption={`Hyperfine sublevels of ${level.id} at ${tesla} T`} hideCaption summary={<Symbols text={`At ${tesla} T, which is ${Number((tesla * 1e4).toPrecision(10))} G; energies from the centre of gravity of the level; m_J and m_I at high field`} />} />
+        <DataTable columns={columns} rows={(rested ?? sublevels).rows} rowKey={(row) => `${row.m_j} ${row.m_i}`} caption={`Hyperfine sublevels of ${level.id} at ${restedTesla} T`} hideCaption summary={<Symbols text={`At ${restedTesla} T, which is ${Number((restedTesla * 1e4).toPrecision(10))} G; energies from the centre of gravity of the level; m_J and m_I at high field`} />} />
       </div>
     </>
   )

@@ -16,12 +16,14 @@ import { Choices } from '@/app/_components/plots/plot-frame'
 import { SublevelFan } from '@/app/_components/plots/sublevel-fan'
 import { ProblemView } from '@/app/_components/problem-view'
 import { Skeleton } from '@/app/_components/skeleton'
+import { useResting } from '@/app/_components/use-resting'
 import { Warnings } from '@/app/_components/warnings'
 import { NuclearTable } from './nuclear-table'
 import { nuclearKey } from './nuclear-key'
 import { ProfilePart } from './profile-part'
 import { SignConvention } from './sign-convention'
-import { type PredictionAsked, useNuclearPrediction } from './use-prediction'
+import { type NuclearPrediction, type PredictionAsked, useNuclearPrediction } from './use-prediction'
+import type { ProfiledNucleus } from './use-profile'
 import { ValidityPart } from './validity-part'
 
 type End = 'lower' | 'upper'
@@ -64,10 +66,15 @@ interface NuclearBenchProps {
 }
 
 /** The line of one isotope, or of the natural mixture, with nuclear spin. */
-export const NuclearBench = memo(function NuclearBench({ line, isotopes, error, isotope, asked, fieldUnit, onField }: NuclearBenchProps) {
+export const NuclearBench = memo(function NuclearBench({ line, isotopes, error, isotope, asked: moving, fieldUnit, onField }: NuclearBenchProps) {
   const [active, setActive] = useState<string | null>(null)
+  // several isotopes at once are too much to draw at every step of a drag; of one the tables and the profile wait for its end
+  const standing = useResting(moving)
+  const asked = isotope === 'natural' ? standing : moving
   const prediction = useNuclearPrediction(line, isotopes, isotope, asked.fieldTesla, asked.thetaDeg)
+  const rested = useResting(prediction, isotope === 'natural' ? 0 : undefined)
   const components = useMemo(() => (prediction?.ok ? prediction.components.components.filter((one) => one.strength > 1e-9).map((one) => drawn(one, prediction.components)) : []), [prediction])
+  const nuclear = useMemo(() => (isotopes === null ? null : { isotopes, isotope }), [isotopes, isotope])
   if (error) return <div className="mt-6"><ProblemView error={error} heading="h2" /></div>
   if (prediction === null || isotopes === null) return <Skeleton label="Reading the isotopes" className="mt-7 h-96" />
   if (!prediction.ok) {
@@ -79,7 +86,6 @@ export const NuclearBench = memo(function NuclearBench({ line, isotopes, error, 
   }
   const answer = prediction.components
   const name = line.id.replace('~', '_')
-  const gauss = answer.field_gauss
   return (
     <>
       <div className="mt-7 grid gap-x-8 gap-y-8 xl:grid-cols-[minmax(0,1.12fr)_minmax(0,1fr)]">
@@ -88,15 +94,33 @@ export const NuclearBench = memo(function NuclearBench({ line, isotopes, error, 
         <NuclearFan line={line} isotopes={isotopes} answer={answer} fieldUnit={fieldUnit} onField={onField} />
       </div>
       <SignConvention thetaDeg={answer.theta_deg} kind={line.kind} sums="isotope" />
-      <Warnings meta={{ warnings: prediction.warnings }} />
-      <Part title="Hyperfine components" aside={`At ${answer.field_tesla}\u202fT, which is ${Number(gauss.toPrecision(10))}\u202fG; ${answer.isotopes.map((one) => one.mass_number).join(', ')}`}>
-        <NuclearTable answer={answer} active={active} />
-      </Part>
-      <ProfilePart line={line} asked={asked} nuclear={answer} />
-      <ValidityPart validity={answer.validity} fieldTesla={answer.field_tesla} model="hyperfine" />
+      {rested?.ok ? <NuclearNumbers line={line} prediction={rested} asked={standing} active={active} nuclear={nuclear} /> : null}
     </>
   )
 })
+
+interface NuclearNumbersProps {
+  line: TransitionDetail
+  prediction: NuclearPrediction & { ok: true }
+  asked: PredictionAsked
+  active: string | null
+  nuclear: ProfiledNucleus | null
+}
+
+/** Everything in words and figures. */
+function NuclearNumbers({ line, prediction, asked, active, nuclear }: NuclearNumbersProps) {
+  const { components: answer, warnings } = prediction
+  return (
+    <>
+      <Warnings meta={{ warnings }} />
+      <Part title="Hyperfine components" aside={`At ${answer.field_tesla}\u202fT, which is ${Number(answer.field_gauss.toPrecision(10))}\u202fG`}>
+        <NuclearTable answer={answer} active={active} />
+      </Part>
+      <ProfilePart line={line} asked={asked} nuclear={nuclear} />
+      <ValidityPart validity={answer.validity} fieldTesla={answer.field_tesla} model="hyperfine" />
+    </>
+  )
+}
 
 interface NuclearFanProps {
   line: TransitionDetail

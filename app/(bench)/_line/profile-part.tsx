@@ -3,7 +3,6 @@ import { useQuery } from '@tanstack/react-query'
 import { memo, useId, useState } from 'react'
 import { benchSentence, STOKES_CONVENTIONS } from '@/lib/atomic/profile-stokes'
 import { massOf } from '@/lib/prediction/profiles-mass'
-import type { HyperfineComponents } from '@/openapi/schemas/components'
 import type { Species } from '@/openapi/schemas/species'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
 import { apiQuery } from '@/app/_components/data/api'
@@ -14,16 +13,16 @@ import { significant } from '@/app/_components/number'
 import { Part } from '@/app/_components/page-head'
 import { ProfilePlot } from '@/app/_components/plots/profile-plot'
 import type { PredictionAsked } from './use-prediction'
-import { useProfile } from './use-profile'
+import { type ProfiledNucleus, useProfile } from './use-profile'
 
 interface ProfilePartProps {
   line: TransitionDetail
   asked: PredictionAsked
-  nuclear?: HyperfineComponents | null
+  nuclear?: ProfiledNucleus | null
 }
 
-/** Of one isotope; of several that are shown together the mean by abundance. */
-const isotopeOf = (nuclear: HyperfineComponents | null): number | null => (nuclear?.isotopes.length === 1 ? (nuclear.isotopes[0]?.mass_number ?? null) : null)
+/** The isotope whose mass is taken; of several that are shown together the mean by abundance. */
+const isotopeOf = (nuclear: ProfiledNucleus | null): number | null => (typeof nuclear?.isotope === 'number' ? nuclear.isotope : null)
 
 /** What an instrument of finite width would record: Stokes I, and V and Q at an angle. */
 export const ProfilePart = memo(function ProfilePart({ line, asked, nuclear = null }: ProfilePartProps) {

@@ -2,9 +2,9 @@
 import { useMemo } from 'react'
 import { PhysicsError } from '@/lib/atomic/errors'
 import { profilesOver, readyLines } from '@/lib/prediction/profiles'
-import type { HyperfineComponents } from '@/openapi/schemas/components'
+import type { Isotope } from '@/openapi/schemas/species'
 import type { TransitionDetail } from '@/openapi/schemas/transition'
-import type { SeenWidth } from '@/app/_components/field/use-model'
+import type { IsotopeChosen, SeenWidth } from '@/app/_components/field/use-model'
 import type { LineProfile } from '@/app/_components/plots/profile-plot'
 import { componentsAsked, type PredictionAsked } from './use-prediction'
 
@@ -32,25 +32,26 @@ function gridAbout(positions: readonly number[], fwhm: number): Float64Array {
   }))
 }
 
-/** How a component with nuclear spin weighs among those of the line: strengths that sum to 1 over an isotope, of three polarisations. */
-const GROUPS = 3
+/** Isotopes of the species, and which of them are shown with their hyperfine structure. */
+export interface ProfiledNucleus {
+  isotopes: readonly Isotope[]
+  isotope: IsotopeChosen
+}
 
 interface ProfileAsked {
   asked: PredictionAsked
   width: SeenWidth
   /** u; null where it is not known. */
   massU: number | null
-  nuclear: HyperfineComponents | null
+  nuclear: ProfiledNucleus | null
 }
 
 function profileOf(line: TransitionDetail, { asked, width, massU, nuclear }: ProfileAsked): Profiled {
   const { ready, refused } = readyLines(
-    [{
-      line, weight: 1, massU,
-      ...(nuclear === null ? {} : { nuclear: () => nuclear.components.map((one) => ({ positionInvcm: one.wavenumber_invcm, q: one.q, strength: GROUPS * one.strength * one.weight })) }),
-    }],
+    [{ line, weight: 1, massU, isotopes: nuclear?.isotopes ?? [] }],
     {
       ...componentsAsked(asked),
+      hyperfine: nuclear === null ? null : { isotope: nuclear.isotope },
       temperatureK: width.temperatureK > 0 ? width.temperatureK : null,
       microturbulenceKmPerS: null,
       instrumentFwhmInvcm: width.instrument === 'fwhm' ? width.value : null,
