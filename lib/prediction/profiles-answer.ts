@@ -3,12 +3,13 @@ import { benchSentence, STOKES_CONVENTIONS } from '@/lib/atomic/profile-stokes'
 import { PhysicsError } from '@/lib/atomic/errors'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { AIR, FIELD_CONVENTIONS } from '@/lib/prediction/conventions'
-import { foundLines, type FoundLine, isotopeOf, physicsFault } from '@/lib/prediction/profiles-lines'
+import { foundLines, type FoundLine, givenTerms, isotopeOf, physicsFault } from '@/lib/prediction/profiles-lines'
 import { type Mass, massOf } from '@/lib/prediction/profiles-mass'
-import { gridAround, profilesOver, type ProfilesAsked, readyLines, type ReadyLine, type WeighedLine, workOf } from '@/lib/prediction/profiles'
+import { gridAround, profilesOver, type ProfilesAsked, type ReadyLine, type ReadyLines, readyLinesSteps, type WeighedLine, workOf } from '@/lib/prediction/profiles'
 import { gridOfWavenumbers, spectralGrid, type SpectralGrid } from '@/lib/prediction/profiles-grid'
 import { profileTable } from '@/lib/prediction/profiles-table'
 import { readFields } from '@/lib/prediction/sublevels'
+import { boundGivenTerms } from '@/lib/prediction/term-work'
 import { bodyProblem, type Fault, faultsProblem, Problem } from '@/lib/problem'
 import type { ProfilesRequest } from '@/openapi/operations/profiles'
 import type { Analyser, ProfiledLine, Profiles } from '@/openapi/schemas/profiles'
@@ -110,6 +111,16 @@ function lineAnswer({ weighed, components, hyperfine, profile, ...ready }: Ready
 
 const pause = (): Promise<void> => new Promise((resolve) => setImmediate(resolve))
 
+/** `readyLines`, other requests being answered between two lines. */
+async function readyInTurns(lines: readonly WeighedLine[], asked: ProfilesAsked): Promise<ReadyLines> {
+  const steps = readyLinesSteps(lines, asked)
+  for (;;) {
+    const step = steps.next()
+    if (step.done === true) return step.value
+    await pause()
+  }
+}
+
 /** The profiles over a grid that rises, piece by piece: other requests are answered between two pieces. */
 async function profilesInPieces(ready: readonly ReadyLine[], grid: Float64Array, view: ViewOptions): Promise<StokesProfiles> {
   const step = Math.max(16, Math.floor(WORK_A_SLICE / Math.max(1, workOf(ready, 1))))
@@ -149,7 +160,8 @@ export async function profilesAnswer(snapshot: Snapshot, body: ProfilesRequest, 
   const { found, faults: missing } = foundLines(snapshot, body.lines, body.g_s ?? null)
   const weighings = weigh(body, found, faults)
   const asked = askedOf(body, fieldTesla)
-  const { ready, refused, warnings } = readyLines(weighings.map(({ weighed }) => weighed), asked)
+  boundGivenTerms(weighings.flatMap(({ weighed: { line }, index }) => (found[index]?.species === null ? [givenTerms(line)] : [])), 'answer_too_large')
+  const { ready, refused, warnings } = await readyInTurns(weighings.map(({ weighed }) => weighed), asked)
   faults.push(...missing, ...refused.map(({ index, error }) => physicsFault(error, weighings[index]?.index ?? 0)))
   const told = faults.filter((fault, i) => faults.findIndex((other) => other.pointer === fault.pointer && other.code === fault.code && other.detail === fault.detail) === i)
   if (told.length > 0) throw faultsProblem(told)

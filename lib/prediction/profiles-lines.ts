@@ -7,6 +7,7 @@ import type { PredictedLine } from '@/lib/prediction/components'
 import { inlineFaults, inlineLevel, type InlineLevelGiven } from '@/lib/prediction/inline'
 import { judgeInline } from '@/lib/prediction/judge'
 import { twice } from '@/lib/prediction/levels'
+import type { GivenTerms } from '@/lib/prediction/term-work'
 import { transitionDetail } from '@/lib/prediction/transition'
 import type { Kind } from '@/openapi/schemas/common'
 import type { Level } from '@/openapi/schemas/level'
@@ -86,6 +87,12 @@ export function inlineLine(given: InlineLineGiven, gS: number | null, name: stri
     terms: { lower: termOf(lower, low.level, low.others, gS), upper: termOf(upper, high.level, high.others, gS) },
     hyperfine: { lower: [], upper: [] },
   }
+}
+
+/** The terms of a line of inline levels, as they bound a request. */
+export const givenTerms = ({ kind, terms }: PredictedLine): GivenTerms => {
+  const levels = (members: Members) => ({ levels: members.levels.map((level) => ({ twoJ: twice(level.j), energyInvcm: level.energy_invcm, g: level.g_j })) })
+  return { kind, lower: levels(terms.lower), upper: levels(terms.upper) }
 }
 
 /** The faults of a refusal, in the body's place of a line. */

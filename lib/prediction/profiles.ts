@@ -114,6 +114,15 @@ const LINEAR_INSTEAD = new Set(['term_incomplete', 'no_ls_amplitude', 'intermedi
  * is told in `refused`, the others stand. Pure: the same function serves `POST /profiles` and the page of patterns.
  */
 export function readyLines(lines: readonly WeighedLine[], asked: ProfilesAsked): ReadyLines {
+  const steps = readyLinesSteps(lines, asked)
+  for (;;) {
+    const step = steps.next()
+    if (step.done === true) return step.value
+  }
+}
+
+/** `readyLines` line by line, so that whoever shares the thread has a turn in between. */
+export function* readyLinesSteps(lines: readonly WeighedLine[], asked: ProfilesAsked): Generator<null, ReadyLines> {
   const refused: ReadyLines['refused'] = []
   const warnings = new Map<string, Warning>()
   const attempt = (weighed: WeighedLine, index: number, model: ProfilesAsked['model']): ReadyLine | null => {
@@ -128,7 +137,11 @@ export function readyLines(lines: readonly WeighedLine[], asked: ProfilesAsked):
       return null
     }
   }
-  const first = lines.map((weighed, index) => ({ weighed, index, ready: attempt(weighed, index, asked.model) }))
+  const first: { weighed: WeighedLine; index: number; ready: ReadyLine | null }[] = []
+  for (const [index, weighed] of lines.entries()) {
+    first.push({ weighed, index, ready: attempt(weighed, index, asked.model) })
+    yield null
+  }
   const beyond = asked.model === 'auto' && first.some(({ ready }) => ready?.components.model === 'intermediate')
   const ready = first.flatMap(({ weighed, index, ready: found }) => {
     if (found === null) return []

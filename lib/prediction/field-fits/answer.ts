@@ -5,6 +5,7 @@ import { readLines, type ReadLine } from '@/lib/prediction/field-fits/lines'
 import { componentFaults, readEtalon, readMeasurements, readScale, scalesOf } from '@/lib/prediction/field-fits/measurements'
 import { residualTable } from '@/lib/prediction/field-fits/table'
 import { boundedModels, canDiagonalise } from '@/lib/prediction/field-fits/work'
+import { boundGivenTerms } from '@/lib/prediction/term-work'
 import { linearLineModel } from '@/lib/atomic/field-fit-model'
 import { missingJ } from '@/lib/atomic/mixing'
 import { AIR } from '@/lib/prediction/conventions'
@@ -56,6 +57,7 @@ function read(snapshot: Snapshot, body: FieldFitRequest): ReadFit & { field: Ret
 export function fieldFitAnswer(snapshot: Snapshot, body: FieldFitRequest, warn: Warn) {
   const fit = read(snapshot, body)
   if (body.unknown === 'field') boundedModels(body, fit.lines)
+  boundGivenTerms(fit.lines.flatMap(({ detail, facts, fit: { lower, upper } }) => (detail === null && lower.term && upper.term ? [{ kind: facts.kind, lower: lower.term, upper: upper.term }] : [])), 'fit_too_large')
   const data = body.unknown === 'g' ? gAnswer(fit, fit.field, warn) : fieldAnswer(fit, warn)
   return {
     data,

@@ -1,0 +1,55 @@
+import { describe, expect, it } from 'vitest'
+import type { Snapshot } from '@/lib/catalogue/shape'
+import { fieldFitAnswer } from '@/lib/prediction/field-fits/answer'
+import { profilesAnswer } from '@/lib/prediction/profiles-answer'
+import { boundGivenTerms, GIVEN_COMPONENTS_MOST, type GivenTerms } from '@/lib/prediction/term-work'
+import { Problem } from '@/lib/problem'
+import { FieldFitRequest } from '@/openapi/operations/field-fits'
+import { ProfilesRequest } from '@/openapi/operations/profiles'
+
+const terms = (levels: number, energyInvcm = 0): GivenTerms => {
+  const term = { levels: Array.from({ length: levels }, (_, i) => ({ twoJ: 2 * i + 1, energyInvcm: energyInvcm + i, g: null })) }
+  return { kind: 'E1', lower: term, upper: term }
+}
+const refusal = (given: GivenTerms[]): unknown => {
+  try {
+    return boundGivenTerms(given, 'answer_too_large')
+  } catch (error) {
+    return error
+  }
+}
+
+/** A line between the highest J of two terms of 40 levels, which no atom has. */
+const monstrous = (from: number) => {
+  const term = (l: number, energy: number, parity: 'even' | 'odd') => Array.from({ length: 40 }, (_, i) => ({ energy_invcm: energy + 10 * i, s: 19.5, l, j: l - 19.5 + i, parity }))
+  const [low, high] = [term(20, from, 'even'), term(21, from + 30_000, 'odd')]
+  return { lower: low[39], lower_others: low.slice(0, 39), upper: high[39], upper_others: high.slice(0, 39) }
+}
+const noTable = {} as Snapshot
+
+describe('terms given in a request', () => {
+  it('may be many of an atom, or the same one for many lines', () => {
+    expect(refusal(Array.from({ length: 50 }, (_, i) => terms(5, i)))).toBeUndefined()
+    expect(refusal(Array.from({ length: 100 }, () => terms(15)))).toBeUndefined()
+  })
+
+  it('are refused where all together are larger than a second of work, with the limit', () => {
+    const error = refusal(Array.from({ length: 100 }, (_, i) => terms(15, i)))
+    expect(error).toBeInstanceOf(Problem)
+    expect(error).toMatchObject({ code: 'answer_too_large', extra: { limit: GIVEN_COMPONENTS_MOST } })
+  })
+
+  it('are bounded for profiles before any of them is diagonalised', async () => {
+    const body = ProfilesRequest.parse({ lines: Array.from({ length: 100 }, (_, i) => monstrous(i)), field: 1, resolving_power: 1000 })
+    const before = performance.now()
+    await expect(profilesAnswer(noTable, body, () => undefined)).rejects.toMatchObject({ code: 'answer_too_large', status: 413 })
+    expect(performance.now() - before).toBeLessThan(5000)
+  })
+
+  it('are bounded for fits, of g and in the linear law too', () => {
+    const one = { lines: [monstrous(0)], unit: 'cm-1', model: 'linear', measurements: [29_999, 30_001].map((position) => ({ position, m_lower: 0.5, m_upper: 0.5 })) }
+    for (const more of [{}, { unknown: 'g', field: 1 }]) {
+      expect(() => fieldFitAnswer(noTable, FieldFitRequest.parse({ ...one, ...more }), () => undefined)).toThrow(expect.objectContaining({ code: 'fit_too_large' }))
+    }
+  })
+})
