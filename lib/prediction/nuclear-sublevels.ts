@@ -19,6 +19,9 @@ function faultsOf({ level }: NuclearSublevelsAsked): Fault[] {
   return []
 }
 
+/** How many pairs of m_J and m_I have each m_F. */
+const blocksOf = (twoJ: number, twoI: number): number[] => Array.from({ length: twoJ + twoI + 1 }, (_, k) => Math.min(k, twoJ + twoI - k, twoJ, twoI) + 1)
+
 /**
  * Hyperfine sublevels of one level over fields: states by m_F, then upwards; shifts from F at zero field and energies from the centre of gravity of J
  * in MHz, derivatives in MHz per tesla. Refuses `g_unknown`, `g_impossible`, `answer_too_large`.
@@ -28,7 +31,7 @@ export function nuclearSublevels(asked: NuclearSublevelsAsked): { matrix: Hyperf
   if (faults.length > 0) throw faultsProblem(faults)
   const fields = readFields(asked.field)
   const { level, nucleus } = asked
-  checkSize((twice(level.j) + 1) * (twice(nucleus.i) + 1), fields.length, 3)
+  checkSize((twice(level.j) + 1) * (twice(nucleus.i) + 1), fields.length, 3, blocksOf(twice(level.j), twice(nucleus.i)))
   const ready = hyperfineLevel({ twoJ: twice(level.j), gJ: level.g_j ?? null, twoI: twice(nucleus.i), aMhz: nucleus.a_mhz, bMhz: nucleus.b_mhz ?? null, gI: nucleus.g_i ?? null })
   const names = hyperfineSublevels(ready, 0)
   const { states, energiesMhz, derivatives } = hyperfineGrid(ready, fields)

@@ -78,6 +78,12 @@ function termOf({ levels, g_values: gValues, g_s }: TermSublevelsAsked): Term {
   return { levels: { twoS: twice(first?.s ?? 0), l: first?.l ?? 0, levels: read }, gS: choice.gS ?? G_S }
 }
 
+/** How many levels have each m. */
+function blocksOf({ levels }: TermLevels): number[] {
+  const highest = Math.max(...levels.map(({ twoJ }) => twoJ))
+  return Array.from({ length: highest + 1 }, (_, k) => levels.filter(({ twoJ }) => twoJ >= Math.abs(2 * k - highest)).length)
+}
+
 const missingIn = (term: TermLevels): string => missingJ(term).map(formatHalf).join(', ')
 
 /** Whether `auto` diagonalises: the linear law of some level errs by more than the tolerance at the largest field asked. */
@@ -119,10 +125,18 @@ function diagonalisedMatrix({ levels, gS }: Term, fields: readonly number[]): Su
   }
 }
 
-/** Refuses an answer of too many numbers before it is computed. */
-export function checkSize(states: number, fields: number, perState: number): void {
+/** Fields times the cubes of the sizes of their blocks, which diagonalising takes time by: a few seconds. */
+export const SUBLEVEL_CUBES_MAX = 3e7
+
+/** Refuses an answer of too many numbers, or of too much work, before it is computed; `blocks` are the sizes of what is diagonalised. */
+export function checkSize(states: number, fields: number, perState: number, blocks: readonly number[]): void {
   const values = perState * states * fields
-  if (values <= SUBLEVEL_VALUES_MAX) return
+  if (values <= SUBLEVEL_VALUES_MAX) {
+    const cubes = blocks.reduce((sum, n) => sum + n ** 3, 0)
+    const most = Math.max(1, Math.floor(SUBLEVEL_CUBES_MAX / cubes))
+    if (fields <= most) return
+    throw new Problem('answer_too_large', `${states} states, up to ${Math.max(...blocks)} of which mix, take too long at ${fields} fields; ask for up to ${most} at once.`, { extra: { limit: most } })
+  }
   throw new Problem('answer_too_large', `${states} states at ${fields} fields are ${values} numbers; one answer holds up to ${SUBLEVEL_VALUES_MAX}. Ask for fewer fields at once.`, { extra: { limit: SUBLEVEL_VALUES_MAX } })
 }
 
@@ -140,7 +154,7 @@ export function termSublevels(asked: TermSublevelsAsked): { matrix: SublevelMatr
   if (asked.model === 'intermediate' && !whole) {
     throw bodyProblem('/levels', 'term_incomplete', `The intermediate model diagonalises within the term, which lacks J = ${missingIn(term.levels)}: give the whole term, or use model=linear or model=auto.`)
   }
-  checkSize(asked.levels.reduce((sum, level) => sum + twice(level.j) + 1, 0), fields.length, 2)
+  checkSize(asked.levels.reduce((sum, level) => sum + twice(level.j) + 1, 0), fields.length, 2, asked.model === 'linear' ? [] : blocksOf(term.levels))
   const fails = whole && linearFails(term, Math.max(0, ...fields), asked.tolerance ?? DEFAULT_TOLERANCE)
   const model = asked.model === 'intermediate' || (asked.model === 'auto' && fails) ? 'intermediate' : 'linear'
   const warnings: Warning[] = []
