@@ -142,8 +142,8 @@ describe('profiles of lines of the table', () => {
     const reply = await profiles({ lines, field: '2T', resolving_power: 1e6 })
     expect(reply.json.meta.model).toBe('intermediate')
     expect(reply.json.data.lines.map((line: Json) => line.model)).toEqual(['intermediate', 'intermediate'])
-    // strength flows between the lines of a multiplet, weighed as LS has them (1 : 2) it keeps its sum
-    const weighed = await dataOf({ lines: [lines[0], { ...lines[1], weight: 2 }], field: '2T', resolving_power: 1e6 })
+    // each q flows between the lines of a multiplet; weighed as LS has them (1 : 2) it keeps its sum
+    const weighed = await dataOf({ lines: [lines[0], { ...lines[1], weight: 2 }], field: '2T', theta_deg: 0, resolving_power: 1e6 })
     expect(weighed.lines[0].integral + weighed.lines[1].integral).toBeCloseTo(3, 9)
     expect(Math.abs(weighed.lines[0].integral - 1)).toBeGreaterThan(0.01)
   })
