@@ -125,7 +125,9 @@ export function fieldMultiplet(lower: FieldTerm, upper: FieldTerm, kind: Kind = 
 }
 
 const shares = remembering<number>(20_000)
-const multiplets = remembering<FieldMultiplet>(1000)
+/** Components of the multiplets remembered: some 370 bytes each, and 307 of a quintet in iron. */
+const COMPONENTS_REMEMBERED = 400_000
+const multiplets = remembering<FieldMultiplet>(COMPONENTS_REMEMBERED, ({ count }) => count)
 
 /** `fieldMultiplet` of two lists of levels, remembered, since a slider or a fit asks the same terms again and again. */
 export function multipletOfTerms(lower: TermLevels, upper: TermLevels, kind: Kind = 'E1', options: FieldOptions = {}): FieldMultiplet {

@@ -53,7 +53,9 @@ interface ReadyLevel {
   limit: number | null
 }
 
-const levelMemory = remembering<ReadyLevel>()
+/** Numbers of the vectors of the terms remembered, and components of the multiplets. */
+const NUMBERS_REMEMBERED = 400_000
+const levelMemory = remembering<ReadyLevel>(NUMBERS_REMEMBERED, ({ term }) => Math.max(100, term.vectorLength))
 
 function largestBeyond(level: Pick<ReadyLevel, 'room' | 'states'>): number {
   let largest = 0
@@ -121,7 +123,7 @@ interface Errors {
   blend: number | null
 }
 
-const lineMemory = remembering<ReadyLine>(1000)
+const lineMemory = remembering<ReadyLine>(NUMBERS_REMEMBERED, ({ multiplet }) => Math.max(100, multiplet.count))
 
 /** All three errors at x = mu_B B; the terms are solved once for them. */
 function errorsAt(line: ReadyLine, x: number): Errors {

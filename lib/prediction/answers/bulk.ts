@@ -3,8 +3,10 @@ import { G_S } from '@/lib/atomic/constants'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { faultsProblem, Problem } from '@/lib/problem'
 import { streamedAnswer, wholeAnswer } from '@/lib/prediction/bulk/answer'
+import type { MultipletGiven } from '@/lib/prediction/bulk/block'
 import type { HeavyJob } from '@/lib/prediction/bulk/heavy'
 import type { Pool } from '@/lib/prediction/bulk/pool'
+import { componentCount, linePairs } from '@/lib/prediction/bulk/places'
 import { planFieldTable } from '@/lib/prediction/bulk/table-request'
 import { planPredictions, type PredictionPlan, type PredictionsAsked } from '@/lib/prediction/bulk/request'
 import { TABLE_CHECKSUM } from '@/lib/prediction/bulk/table-chunks'
@@ -60,7 +62,11 @@ export async function predictionsAnswer(snapshot: Snapshot, body: PredictionsAsk
 
 type FieldTableAsked = z.output<NonNullable<(typeof makeFieldTable)['body']>>
 
-/** A multiplet over an interval of fields as nodes and slopes. Always by the pool: how many nodes there will be is not known before. */
+/** Whether a table is two nodes of few components; how many nodes a diagonalised one will have is not known before, and of many lines the validity takes long. */
+const isSmallTable = ({ model, multiplet }: { model: string; multiplet: MultipletGiven }): boolean =>
+  model === 'linear' && 4 * componentCount(multiplet) <= SMALL_VALUES && linePairs(multiplet).length <= SMALL_LINES
+
+/** A multiplet over an interval of fields as nodes and slopes. */
 export function fieldTableAnswer(snapshot: Snapshot, body: FieldTableAsked, format: Format, asking: Asking) {
   const { plan, faults } = planFieldTable(snapshot, body)
   if (plan === null) throw faultsProblem(faults)
@@ -68,7 +74,7 @@ export function fieldTableAnswer(snapshot: Snapshot, body: FieldTableAsked, form
     meta: { model: body.model, g_values: body.g_values, conventions: { order: CONVENTIONS.order, q: CONVENTIONS.q, g_l: 1, g_s: body.g_s ?? G_S, nucleus: CONVENTIONS.nucleus, checksum: TABLE_CHECKSUM } },
     stream: async (meta: Record<string, unknown>) => {
       try {
-        return { name: 'field-table', body: await bodyOf({ ...plan, format: format === 'arrow' ? 'arrow' : 'json', meta: JSON.stringify(meta) }, plan.model === 'linear', asking) }
+        return { name: 'field-table', body: await bodyOf({ ...plan, format: format === 'arrow' ? 'arrow' : 'json', meta: JSON.stringify(meta) }, isSmallTable(plan), asking) }
       } catch (error) {
         throw error instanceof Error && 'code' in error && error.code === 'table_too_large' ? new Problem('table_too_large', error.message, { errors: [{ pointer: '/max_error_invcm', code: 'table_too_large', detail: error.message }] }) : error
       }

@@ -37,8 +37,11 @@ export interface Decision {
   validity: PredictionValidity
 }
 
+/** Characters, about, of what is remembered: a key holds both terms. */
+const DECISIONS_REMEMBERED = 2e7
+
 /** A fit asks the same blocks at the same fields again and again, and the field limits cost most. */
-const decisions = remembering<Decision>(20_000)
+const decisions = remembering<Decision>(DECISIONS_REMEMBERED, (_, key) => 500 + key.length)
 
 /** The model of a block and the error of the linear law at the largest field asked, which decides it under `auto`. */
 export function decide(block: BlockGiven, fieldTesla: number, { model, tolerance, gS }: PredictionOptions): Decision {

@@ -1,10 +1,13 @@
 import { describe, expect, it } from 'vitest'
+import type { z } from 'zod'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { fieldFitAnswer } from '@/lib/prediction/field-fits/answer'
+import { fieldTableAnswer } from '@/lib/prediction/answers/bulk'
 import { profilesAnswer } from '@/lib/prediction/profiles-answer'
 import { boundGivenTerms, GIVEN_COMPONENTS_MOST, type GivenTerms } from '@/lib/prediction/term-work'
 import { Problem } from '@/lib/problem'
 import { FieldFitRequest } from '@/openapi/operations/field-fits'
+import { makeFieldTable } from '@/openapi/operations/field-tables'
 import { ProfilesRequest } from '@/openapi/operations/profiles'
 
 const terms = (levels: number, energyInvcm = 0): GivenTerms => {
@@ -51,5 +54,22 @@ describe('terms given in a request', () => {
     for (const more of [{}, { unknown: 'g', field: 1 }]) {
       expect(() => fieldFitAnswer(noTable, FieldFitRequest.parse({ ...one, ...more }), () => undefined)).toThrow(expect.objectContaining({ code: 'fit_too_large' }))
     }
+  })
+})
+
+describe('a field table in the linear law', () => {
+  const level = (l: number, j: number, from: number) => ({ energy_invcm: from + 10 * j, s: 2, l, j, parity: l === 2 ? 'even' : 'odd' })
+  const table = (lower: unknown[], upper: unknown[]) => {
+    const body = (makeFieldTable.body as z.ZodType).parse({ multiplet: { lower, upper }, field: { start: 0, stop: 1, unit: 'T' }, model: 'linear' }) as Parameters<typeof fieldTableAnswer>[1]
+    const noPool = () => {
+      throw new Error('asked the pool')
+    }
+    return fieldTableAnswer(noTable, body, 'json', { pool: noPool, caller: 'a', signal: new AbortController().signal }).stream({})
+  }
+
+  it('is made at once where it is small, and elsewhere where its validity takes long', async () => {
+    const small = await table([level(2, 4, 0)], [level(3, 5, 30_000)])
+    expect(JSON.parse(new TextDecoder().decode(small.body as Uint8Array))).toMatchObject({ data: { model: 'linear', nodes_tesla: [0, 1] } })
+    await expect(table([0, 1, 2, 3, 4].map((j) => level(2, j, 0)), [1, 2, 3, 4, 5].map((j) => level(3, j, 30_000)))).rejects.toThrow('asked the pool')
   })
 })
