@@ -69,8 +69,9 @@ async function enter(tx: Tx, given: NewEdition): Promise<Entered> {
   checkSeen(accepted.amendments, given.amendments)
   if (accepted.amendments.length === 0) throw new Problem('nothing_to_publish', 'No amendment is accepted and waiting; nothing was published.')
   const number = accepted.table.edition + 1
-  const checking = checkUnion(accepted)
-  // the database writes while the checks run here; what they find goes before what it may refuse
+  // the database writes while the checks run here, so it is asked first, and the event loop sends what it is asked before the checks take the
+  // processor; what they find goes before what it may refuse
+  const checking = new Promise((sent) => void setImmediate(sent)).then(() => checkUnion(accepted))
   const writing = write(tx, number, accepted, () => checking).then(() => null, (error: unknown) => ({ error }))
   const { conflicts, otherwise, notes } = await judge(accepted, checking, given.notes).catch(async (error: unknown) => {
     // what is being written has to end in this transaction, not after it
