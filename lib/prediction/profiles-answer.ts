@@ -75,6 +75,18 @@ function weigh(body: ProfilesRequest, found: (FoundLine | null)[], faults: Fault
   })
 }
 
+/** An isotope is one of a species: lines given in the request have none, so that it would be ignored. */
+function isotopeOfTable(body: ProfilesRequest, faults: Fault[], warn: Warn): void {
+  // with hyperfine each such line is refused by itself
+  if (body.isotope === null || body.isotope === undefined || body.hyperfine) return
+  const given = body.lines.flatMap((line, index) => ('lower' in line ? [index] : []))
+  if (given.length === body.lines.length) {
+    faults.push({ pointer: '/isotope', code: 'isotope_unknown', detail: 'Levels given in the request are of no species and have no isotopes: leave isotope out, and give mass_u for the mass.' })
+  } else if (given.length > 0) {
+    warn('isotope_not_applied', `isotope is of the lines of the table; of lines ${given.join(', ')} (counted from 0), given in the request, only mass_u tells the mass.`)
+  }
+}
+
 /** Levels of no table have no id: the names that refusals give them stay out of the answer. */
 const nameless = (validity: Validity): Validity => ({
   ...validity,
@@ -159,6 +171,7 @@ export async function profilesAnswer(snapshot: Snapshot, body: ProfilesRequest, 
   const fixed = body.grid ? attempt(faults, () => spectralGrid(body.grid as NonNullable<typeof body.grid>), (error) => ({ pointer: '/grid', code: error.code, detail: error.detail })) : null
   const { found, faults: missing } = foundLines(snapshot, body.lines, body.g_s ?? null)
   const weighings = weigh(body, found, faults)
+  isotopeOfTable(body, faults, warn)
   const asked = askedOf(body, fieldTesla)
   boundGivenTerms(weighings.flatMap(({ weighed: { line }, index }) => (found[index]?.species === null ? [givenTerms(line)] : [])), 'answer_too_large')
   const { ready, refused, warnings } = await readyInTurns(weighings.map(({ weighed }) => weighed), asked)

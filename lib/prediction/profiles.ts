@@ -60,6 +60,20 @@ const METRES_PER_KM = 1000
 /** q = -1, 0, +1. */
 const DIPOLE_GROUPS = 3
 
+/** A width below this share of the wavenumber is lost in its digits; one below or above these, cm^-1, takes the profile out of all numbers. */
+const NARROWEST = { ofWavenumber: 1e-15, invcm: 1e-30 }
+const WIDEST_INVCM = 1e20
+
+/** Refuses widths that are not none and that no profile can be computed with. */
+function checkWidths({ gaussianFwhm, lorentzianFwhm }: ProfileLine['widths'], wavenumberInvcm: number): void {
+  const least = Math.max(NARROWEST.ofWavenumber * wavenumberInvcm, NARROWEST.invcm)
+  for (const [name, width] of [['Gaussian', gaussianFwhm], ['Lorentzian', lorentzianFwhm]] as const) {
+    if (width === 0 || (width >= least && width <= WIDEST_INVCM)) continue
+    const cure = width < least ? `below the ${least.toExponential(1)} cm^-1 that the digits of the wavenumber resolve: leave out what is so narrow, or give a larger width` : `beyond the ${WIDEST_INVCM.toExponential(0)} cm^-1 computed here: give a smaller width`
+    throw new PhysicsError('profile_no_width', `The ${name} width is ${width.toExponential(1)} cm^-1, ${cure}.`, 'widths')
+  }
+}
+
 /** The widths of a line. Throws `profile_no_width`, `mass_unknown`, `instrument_twice`. */
 export function widthsOf(line: Pick<PredictedLine, 'wavenumber_invcm'>, massU: number | null, by: Broadened): Pick<ReadyLine, 'dopplerFwhmInvcm' | 'instrumentFwhmInvcm' | 'fwhmInvcm'> & Pick<ProfileLine, 'widths'> {
   const wavenumberInvcm = line.wavenumber_invcm
@@ -71,6 +85,7 @@ export function widthsOf(line: Pick<PredictedLine, 'wavenumber_invcm'>, massU: n
     ...(by.resolvingPower === null ? {} : { resolvingPower: by.resolvingPower }),
     ...(by.lorentzianFwhmInvcm === null ? {} : { lorentzianFwhmInvcm: by.lorentzianFwhmInvcm }),
   })
+  checkWidths(widths, wavenumberInvcm)
   return {
     widths,
     dopplerFwhmInvcm: dopplerRatio(motion) * wavenumberInvcm,
