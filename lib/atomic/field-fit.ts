@@ -189,6 +189,8 @@ function solveReadings(setup: FitSetup, options: AssignOptions, model: FieldMode
       const { solution } = outcome
       field = solution.theta[0] ?? 0
       const again = readAt(setup, options, field, solution.zeros)
+      // a reading of peaks that ends beyond the fields there are is none
+      if (Math.abs(field) > options.mostTesla) break
       if (round === 2 || JSON.stringify(again.assignments) === JSON.stringify(assignments)) {
         solved.push({ problem, solution, assignments, cost: again.cost })
         break

@@ -1,5 +1,5 @@
 import type { Snapshot } from '@/lib/catalogue/shape'
-import { fieldAnswer, type ReadFit } from '@/lib/prediction/field-fits/field'
+import { fieldAnswer, type ReadFit, visibleQ } from '@/lib/prediction/field-fits/field'
 import { gAnswer, gFaults, givenField } from '@/lib/prediction/field-fits/g'
 import { readLines, type ReadLine } from '@/lib/prediction/field-fits/lines'
 import { componentFaults, readEtalon, readMeasurements, readScale, scalesOf } from '@/lib/prediction/field-fits/measurements'
@@ -53,11 +53,26 @@ function read(snapshot: Snapshot, body: FieldFitRequest): ReadFit & { field: Ret
   return { body, lines: whole, scales, measured, scale: readScale(body, etalon), field }
 }
 
+/** Peaks named by a polarisation that is not seen: the two cannot both be so. */
+function warnOfUnseen(body: FieldFitRequest, warn: Warn): void {
+  const seen = visibleQ(body)
+  if (seen === null) return
+  const unseen = body.measurements.flatMap(({ m_lower: lower, m_upper: upper, group, q }, i) => {
+    const named = typeof lower === 'number' && typeof upper === 'number' ? upper - lower : (group ?? q ?? null)
+    if (named === null) return []
+    return (named === 'sigma' ? [-1, 1] : [named]).some((one) => seen.includes(one)) ? [] : [i]
+  })
+  if (unseen.length === 0) return
+  const why = body.visible_q ? 'visible_q does not name' : 'is not seen along the field (theta_deg)'
+  warn('polarisation_not_seen', `Measurements ${unseen.join(', ')} (counted from 0) are named by a q that ${why}: check the names, or ${body.visible_q ? 'visible_q' : 'theta_deg'}.`)
+}
+
 /** `POST /field-fits`: a field (or g) from measured positions, or why they do not fix it. */
 export function fieldFitAnswer(snapshot: Snapshot, body: FieldFitRequest, warn: Warn) {
   const fit = read(snapshot, body)
   if (body.unknown === 'field') boundedModels(body, fit.lines)
   boundGivenTerms(fit.lines.flatMap(({ detail, facts, fit: { lower, upper } }) => (detail === null && lower.term && upper.term ? [{ kind: facts.kind, lower: lower.term, upper: upper.term }] : [])), 'fit_too_large')
+  warnOfUnseen(body, warn)
   const data = body.unknown === 'g' ? gAnswer(fit, fit.field, warn) : fieldAnswer(fit, warn)
   return {
     data,

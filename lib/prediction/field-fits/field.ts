@@ -1,10 +1,11 @@
 import { G_S } from '@/lib/atomic/constants'
-import { because, type DeterminedFit, type FieldFitInput, type FieldFitMeasurement, fitField } from '@/lib/atomic/field-fit'
+import { because, type DeterminedFit, type FieldFitInput, type FieldFitMeasurement, fitField, type Reason } from '@/lib/atomic/field-fit'
 import type { Scale } from '@/lib/atomic/field-fit-problem'
 import { type ReadLine, zeroTold } from '@/lib/prediction/field-fits/lines'
 import type { LineScale } from '@/lib/prediction/field-fits/measurements'
 import { lineValidity, modelValid, tableWarnings, toldComponent, toldLine, toldMeasurement, toldZeros } from '@/lib/prediction/field-fits/told'
 import { modelsAt } from '@/lib/prediction/field-fits/work'
+import { FIELD_MAX_TESLA } from '@/lib/units/field'
 import type { FieldFitRequest } from '@/openapi/operations/field-fits'
 import type { DeterminedField, FieldFitAnswer } from '@/openapi/schemas/field-fits'
 
@@ -22,7 +23,7 @@ export interface ReadFit {
 /** A fitted zero this far from the table's line, as a share of its wavenumber, looks like another unit or another line. */
 const FAR_FROM_LINE = 1e-3
 
-const visibleQ = ({ visible_q, theta_deg }: FieldFitRequest): readonly number[] | null => visible_q ?? (theta_deg === 0 || theta_deg === 180 ? [-1, 1] : null)
+export const visibleQ = ({ visible_q, theta_deg }: FieldFitRequest): readonly number[] | null => visible_q ?? (theta_deg === 0 || theta_deg === 180 ? [-1, 1] : null)
 
 function residualsOf({ body, lines, measured }: ReadFit, fit: DeterminedFit): DeterminedField['residuals'] {
   return fit.residuals.map((residual, i) => ({
@@ -99,6 +100,12 @@ function warnOfUnits({ lines }: ReadFit, answer: DeterminedField, warn: Warn): v
   }
 }
 
+/** Why a field fitted is none: it is no number, or one beyond what is computed here. */
+const outOfRange = (fieldTesla: number): Reason =>
+  Number.isFinite(fieldTesla)
+    ? because('field_too_large', `The positions fit best at ${fieldTesla.toPrecision(6)} T, beyond the ${FIELD_MAX_TESLA} T that is computed here: check the unit of the positions, and which components the peaks are.`)
+    : because('not_converged', 'The fit ran away from all numbers; check the uncertainties and the unit.')
+
 /** One field from the positions of all lines. */
 export function fieldAnswer(read: ReadFit, warn: Warn): FieldFitAnswer {
   const { body, lines, scales, measured, scale } = read
@@ -113,8 +120,8 @@ export function fieldAnswer(read: ReadFit, warn: Warn): FieldFitAnswer {
     ...(seen === null ? {} : { visibleQ: seen }),
   }
   const fit = fitField(input)
-  if (fit.status === 'undetermined' || !Number.isFinite(fit.fieldTesla)) {
-    const reasons = fit.status === 'undetermined' ? fit.reasons : [because('not_converged', 'The fit ran away from all numbers; check the uncertainties and the unit.')]
+  if (fit.status === 'undetermined' || !(Math.abs(fit.fieldTesla) <= FIELD_MAX_TESLA)) {
+    const reasons = fit.status === 'undetermined' ? fit.reasons : [outOfRange(fit.fieldTesla)]
     return { unknown: 'field', status: 'undetermined', mode: 'positions', model: fit.model, lines: lines.map((line, i) => toldLine(line, scales[i] ?? null, i)), reasons }
   }
   for (const { code, detail } of fit.warnings) warn(code, detail)
