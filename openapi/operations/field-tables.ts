@@ -29,7 +29,7 @@ export const makeFieldTable = defineOperation({
   edition: 'computed',
   formats: ['arrow'],
   problems: [
-    'level_unknown', 'level_retired', 'zero_interval', 'species_differ', 'term_impossible', 'term_mixed', 'term_incomplete', 'no_ls_g', 'g_unknown', 'g_impossible', 'field_too_large', 'field_interval', 'table_too_large',
+    'level_unknown', 'level_retired', 'zero_interval', 'species_differ', 'term_impossible', 'term_mixed', 'term_incomplete', 'no_ls_g', 'g_unknown', 'g_impossible', 'field_too_large', 'field_interval', 'table_too_large', 'error_below_rounding',
     'physics_impossible', 'heavy_requests_waiting', 'computing_interrupted',
   ],
   example: { body: { multiplet: { transition: 'Na-I.1~Na-I.3' }, field: { start: 0, stop: 2, unit: 'T' }, max_error_invcm: 0.000001 } },

@@ -62,7 +62,7 @@ export async function predictionsAnswer(snapshot: Snapshot, body: PredictionsAsk
 
 type FieldTableAsked = z.output<NonNullable<(typeof makeFieldTable)['body']>>
 
-/** Whether a table is two nodes of few components; how many nodes a diagonalised one will have is not known before, and of many lines the validity takes long. */
+/** Whether a table is two nodes of few components; how many nodes a diagonalised one will have is not known before, and the strengths of many lines take long. */
 const isSmallTable = ({ model, multiplet }: { model: string; multiplet: MultipletGiven }): boolean =>
   model === 'linear' && 4 * componentCount(multiplet) <= SMALL_VALUES && linePairs(multiplet).length <= SMALL_LINES
 

@@ -2,7 +2,7 @@ import { endMark } from '@/lib/prediction/bulk/arrow-message'
 import { blockBatch, predictionHead } from '@/lib/prediction/bulk/arrow'
 import { fieldsTesla, largestField, type PredictionJob } from '@/lib/prediction/bulk/block'
 import { blockText } from '@/lib/prediction/bulk/json'
-import { prepareBlock } from '@/lib/prediction/bulk/prepared'
+import { prepareSteps } from '@/lib/prediction/bulk/prepared'
 
 /** Small pieces are joined up to this before they travel. */
 const CHUNK_BYTES = 131_072
@@ -13,10 +13,11 @@ function* textPieces(job: PredictionJob): Generator<string | null> {
   const [fields, largest] = [fieldsTesla(job.field), largestField(job.field)]
   if (job.format === 'json') yield '{"data":['
   for (const [i, given] of job.blocks.entries()) {
-    // deciding a model may take milliseconds, so others have their turn after each
+    // a block that is remembered takes no steps to decide, and may yet be large
     yield null
+    const block = yield* prepareSteps(given, largest, job.options)
     if (job.format === 'json' && i > 0) yield ','
-    yield* blockText(prepareBlock(given, largest, job.options), fields, job.options)
+    yield* blockText(block, fields, job.options)
     if (job.format === 'ndjson') yield '\n'
   }
   yield job.format === 'json' ? `],"meta":${job.meta}}` : `{"meta":${job.meta},"complete":true}\n`
@@ -26,8 +27,9 @@ function* arrowPieces(job: PredictionJob): Generator<Uint8Array | null> {
   const [fields, largest] = [fieldsTesla(job.field), largestField(job.field)]
   yield predictionHead(job)
   for (const [i, given] of job.blocks.entries()) {
+    // a block that is remembered takes no steps to decide, and may yet be large
     yield null
-    yield* blockBatch(prepareBlock(given, largest, job.options), i, fields, job)
+    yield* blockBatch(yield* prepareSteps(given, largest, job.options), i, fields, job)
   }
   yield endMark()
 }

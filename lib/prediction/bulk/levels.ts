@@ -1,3 +1,4 @@
+import { G_S } from '@/lib/atomic/constants'
 import { PhysicsError } from '@/lib/atomic/errors'
 import { landeG } from '@/lib/atomic/lande'
 import type { TermLevels } from '@/lib/atomic/mixing'
@@ -142,7 +143,7 @@ export class BlockMaker {
             l,
             levels: levels.map((member) => {
               const numbers = { twoS: twice(s), l, twoJ: twice(member.j) }
-              return { twoJ: numbers.twoJ, energyInvcm: member.energy_invcm, g: memberG(numbers, member.g_j, this.choice) ?? (numbers.twoJ === 0 ? null : landeG(numbers)) }
+              return { twoJ: numbers.twoJ, energyInvcm: member.energy_invcm, g: memberG(numbers, member.g_j, this.choice) ?? (numbers.twoJ === 0 ? null : landeG(numbers, { gS: this.choice.gS ?? G_S })) }
             }),
           }
     this.terms.set(index, term)

@@ -41,6 +41,8 @@ const IN_FLIGHT = 2
 /** Chunks of one job that are ready or asked for: two, so that a caller of one job has as many turns as one of several. */
 const AHEAD = 2
 
+const LEFT_BEFORE = 'The caller left before the computation began.'
+
 const interrupted = (detail: string): Problem => new Problem('computing_interrupted', detail, { headers: { 'retry-after': '2' } })
 
 interface Bench {
@@ -163,13 +165,15 @@ export class Pool {
 
   /** Admits a job, at once or when its turn comes. Refuses with 429 where the caller has too many waiting, with 503 after a long wait. */
   open(caller: string, job: unknown, signal?: AbortSignal): Promise<Job> {
+    // whoever has left already takes no worker
+    if (signal?.aborted === true) return Promise.reject(interrupted(LEFT_BEFORE))
     if (this.waiting.of(caller) >= (this.settings.waitingPerCaller ?? 8)) {
       throw new Problem('heavy_requests_waiting', `${this.perCaller} of your large computations are under way and ${this.waiting.of(caller)} wait; ask again when some have ended.`, { headers: { 'retry-after': '5' } })
     }
     return new Promise((resolve, reject) => {
       const entry: Waiting = { caller, job, admit: resolve, refuse: reject }
       const leave = (reason: unknown): void => {
-        if (this.waiting.remove(caller, entry)) reject(reason instanceof Error ? reason : interrupted('The caller left before the computation began.'))
+        if (this.waiting.remove(caller, entry)) reject(reason instanceof Error ? reason : interrupted(LEFT_BEFORE))
         clearTimeout(timer)
       }
       const timer = setTimeout(() => leave(interrupted('Other computations took too long for this one to begin.')), this.settings.longestWaitMs ?? 60_000)

@@ -2,10 +2,11 @@ import { angularFactors, componentStrength, shiftLorentz } from '@/lib/atomic/co
 import { G_S, MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
 import { type FieldMultiplet, lineNormalisation, lineShare, multipletOfTerms, whyNoAmplitude } from '@/lib/atomic/field-multiplet'
 import type { FieldBlock } from '@/lib/atomic/field-term'
+import type { FieldModel } from '@/lib/atomic/intermediate-validity'
 import { rankOf } from '@/lib/atomic/rules'
 import type { BlockGiven, PredictionOptions } from '@/lib/prediction/bulk/block'
 import { canJoin, type Place, placesOf } from '@/lib/prediction/bulk/places'
-import { type Decision, decide } from '@/lib/prediction/bulk/validity'
+import { type Decision, decideSteps } from '@/lib/prediction/bulk/validity'
 
 /** Straight lines over the field, and strengths that do not depend on it. */
 export interface LinearBlock {
@@ -26,7 +27,8 @@ export interface DiagonalisedBlock {
 }
 
 /** A block with all that does not depend on the field. */
-export interface PreparedBlock extends Decision {
+export interface ModelledBlock {
+  model: FieldModel
   transition: string | null
   normalisation: 'line' | 'multiplet'
   places: Place[]
@@ -40,6 +42,9 @@ export interface PreparedBlock extends Decision {
   /** By component: intensity over strength at the angle asked; null where none is asked or it is not known (E2). */
   angular: Float64Array | null
 }
+
+/** The same with how well the linear law holds. */
+export type PreparedBlock = ModelledBlock & Decision
 
 interface Facts { energyInvcm: number; g: number | null }
 
@@ -88,17 +93,16 @@ function angularOf(block: BlockGiven, places: readonly Place[], thetaDeg: number
   return Float64Array.from(places, (place) => (byQ[place.q + rank] ?? 0) * (block.form === 'multiplet' ? 3 : 1))
 }
 
-/** Decides a block's model from the largest field and makes it ready. */
-export function prepareBlock(block: BlockGiven, fieldTesla: number, options: PredictionOptions): PreparedBlock {
-  const decision = decide(block, fieldTesla, options)
+/** Makes a block ready in a model. */
+export function modelledBlock(block: BlockGiven, model: FieldModel, options: Pick<PredictionOptions, 'gS' | 'thetaDeg'>): ModelledBlock {
   const places = placesOf(block)
   const { lower, upper } = levelsOf(block)
-  const intermediate = decision.model === 'intermediate'
+  const intermediate = model === 'intermediate'
   const diagonalised = intermediate ? diagonalisedOf(block, options.gS) : null
   const names = (two: (number | null)[] | undefined, nominal: (place: Place) => number) =>
     diagonalised === null || two === undefined ? places.map((place) => nominal(place) / 2) : [...diagonalised.components].map((i) => halved(two[i] ?? null))
   return {
-    ...decision,
+    model,
     transition: block.transition,
     normalisation: block.form,
     places,
@@ -111,7 +115,13 @@ export function prepareBlock(block: BlockGiven, fieldTesla: number, options: Pre
   }
 }
 
+/** Decides a block's model from the largest field and makes it ready; a step for each line that is judged. */
+export function* prepareSteps(block: BlockGiven, fieldTesla: number, options: PredictionOptions): Generator<null, PreparedBlock> {
+  const decision = yield* decideSteps(block, fieldTesla, options)
+  return { ...modelledBlock(block, decision.model, options), ...decision }
+}
+
 const halved = (two: number | null): number | null => (two === null ? null : two / 2)
 
 /** Whether strengths can be told of a block. */
-export const hasStrengths = ({ linear, diagonalised }: PreparedBlock): boolean => (linear !== null ? linear.strengths !== null : diagonalised?.factor !== null)
+export const hasStrengths = ({ linear, diagonalised }: ModelledBlock): boolean => (linear !== null ? linear.strengths !== null : diagonalised?.factor !== null)

@@ -10,6 +10,7 @@ import { readField } from '@/lib/prediction/bulk/field'
 import { BlockMaker } from '@/lib/prediction/bulk/levels'
 import { componentCount, linePairs } from '@/lib/prediction/bulk/places'
 import { canDiagonalise } from '@/lib/prediction/bulk/validity'
+import { GIVEN_MULTIPLET_MOST, givenMultipletFault } from '@/lib/prediction/term-work'
 import { vacuumNmOfWavenumber } from '@/lib/units/spectral'
 import type { predict } from '@/openapi/operations/predictions'
 import type { z } from 'zod'
@@ -138,6 +139,8 @@ export async function planPredictions(snapshot: Snapshot, body: PredictionsAsked
     read('transition' in multiplet ? `/multiplets/${i}/transition` : `/multiplets/${i}`, () => maker.multiplet(multiplet, `/multiplets/${i}`))
   }
   if (faults.length > 0) throw faultsProblem(faults)
+  const oversized = blocks.flatMap((block, i) => givenMultipletFault(block, 'answer_too_large', `/multiplets/${i - body.lines.length}`) ?? [])
+  if (oversized[0] !== undefined) throw new Problem('answer_too_large', oversized[0].detail, { errors: oversized, extra: { limit: GIVEN_MULTIPLET_MOST } })
   const values = fieldCount(field) * blocks.reduce((sum, block) => sum + componentCount(block), 0)
   if (values > MOST_VALUES) throw tooLarge(values)
   const lines = blocks.reduce((sum, block) => sum + linePairs(block).length, 0)

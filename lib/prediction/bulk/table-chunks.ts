@@ -4,8 +4,8 @@ import { G_S } from '@/lib/atomic/constants'
 import { multipletOfTerms } from '@/lib/atomic/field-multiplet'
 import { type FieldTable, fieldTableSteps, TABLE_PROOF } from '@/lib/atomic/field-table'
 import { batchMessage, endMark, type NodePlan, padded, schemaMessage } from '@/lib/prediction/bulk/arrow-message'
-import type { MultipletGiven, PredictionOptions } from '@/lib/prediction/bulk/block'
-import { type PreparedBlock, prepareBlock } from '@/lib/prediction/bulk/prepared'
+import type { MultipletGiven } from '@/lib/prediction/bulk/block'
+import { type ModelledBlock, modelledBlock } from '@/lib/prediction/bulk/prepared'
 
 export interface FieldTableJob {
   task: 'field-table'
@@ -27,13 +27,11 @@ export const TABLE_CHECKSUM =
 
 const LINEAR_PROOF = 'In the linear law every position is a straight line of the field and every strength constant, so two nodes give them exactly, but for rounding'
 
-/** Rounding that is kept free of the error asked for, in units of the last place of the largest position. */
-const ROUNDING = 32 * Number.EPSILON
-
-const OPTIONS: Omit<PredictionOptions, 'model' | 'gS'> = { thetaDeg: null, derivatives: true, strengths: true, quantity: 'wavenumber_invcm', tolerance: 0.01 }
+/** Rounding of positions, their interpolation included, by the largest of them: 16 units of its last place. */
+export const positionRounding = (largest: number): number => 16 * Number.EPSILON * largest
 
 /** The table in the linear law. */
-function linearTable(block: PreparedBlock, fromTesla: number, toTesla: number): FieldTable {
+function linearTable(block: ModelledBlock, fromTesla: number, toTesla: number): FieldTable {
   const nodes = [fromTesla, toTesla]
   const linear = block.linear ?? { slopes: new Float64Array(0), strengths: null }
   const both = (value: (c: number, tesla: number) => number) => Float64Array.from(nodes.flatMap((tesla) => block.places.map((_, c) => value(c, tesla) + 0)))
@@ -46,7 +44,7 @@ function linearTable(block: PreparedBlock, fromTesla: number, toTesla: number): 
     positionSlopes: both((c) => linear.slopes[c] ?? 0),
     strengths: strengths === null ? null : both((c) => strengths[c] ?? 0),
     strengthSlopes: strengths === null ? null : both(() => 0),
-    maximumErrorInvcm: 16 * Number.EPSILON * positions.reduce((largest, value) => Math.max(largest, Math.abs(value)), 0),
+    maximumErrorInvcm: positionRounding(positions.reduce((largest, value) => Math.max(largest, Math.abs(value)), 0)),
     maximumStrengthError: strengths === null ? null : 1e-15,
     proved: true,
   }
@@ -60,17 +58,18 @@ function withoutNegativeZeros(table: FieldTable): FieldTable {
   return table
 }
 
-function* makeTable(job: FieldTableJob, block: PreparedBlock): Generator<null, FieldTable> {
+function* makeTable(job: FieldTableJob, block: ModelledBlock): Generator<null, FieldTable> {
   const { fromTesla, toTesla, maxErrorInvcm, maxStrengthError } = job
   if (job.model === 'linear') return linearTable(block, fromTesla, toTesla)
   const largest = block.centres.reduce((most, centre) => Math.max(most, Math.abs(centre)), 0)
   const multiplet = multipletOfTerms(job.multiplet.lower, job.multiplet.upper, job.multiplet.kind, { gS: job.gS ?? G_S })
-  return yield* fieldTableSteps(multiplet, { fromTesla, toTesla, toleranceInvcm: Math.max(maxErrorInvcm - ROUNDING * largest, maxErrorInvcm / 2), toleranceStrength: maxStrengthError })
+  // twice the rounding is kept free, since the field moves positions beyond the largest without it; never more than half of what is asked
+  return yield* fieldTableSteps(multiplet, { fromTesla, toTesla, toleranceInvcm: Math.max(maxErrorInvcm - 2 * positionRounding(largest), maxErrorInvcm / 2), toleranceStrength: maxStrengthError })
 }
 
 const bytesOf = (numbers: Float64Array): Uint8Array => new Uint8Array(numbers.buffer, numbers.byteOffset, numbers.byteLength)
 
-function checksumOf(block: PreparedBlock, table: FieldTable): string {
+function checksumOf(block: ModelledBlock, table: FieldTable): string {
   const hash = createHash('sha256')
   const names = [block.places.map((place) => place.q), block.places.map((place) => place.twoMLower / 2), block.places.map((place) => place.twoMUpper / 2)]
   for (const name of names) hash.update(bytesOf(Float64Array.from(name, (value) => value + 0)))
@@ -79,7 +78,7 @@ function checksumOf(block: PreparedBlock, table: FieldTable): string {
 }
 
 /** What is said of a table beside its rows. */
-const headOf = (job: FieldTableJob, block: PreparedBlock) => ({
+const headOf = (job: FieldTableJob, block: ModelledBlock) => ({
   transition: job.multiplet.transition,
   model: job.model,
   j_lower: block.jLower,
@@ -89,7 +88,7 @@ const headOf = (job: FieldTableJob, block: PreparedBlock) => ({
   q: block.places.map((place) => place.q),
 })
 
-const tailOf = (job: FieldTableJob, block: PreparedBlock, table: FieldTable) => ({
+const tailOf = (job: FieldTableJob, block: ModelledBlock, table: FieldTable) => ({
   strength_normalisation: 'multiplet',
   max_error_invcm: table.maximumErrorInvcm,
   max_strength_error: table.maximumStrengthError,
@@ -114,7 +113,7 @@ function* matrixText(numbers: Float64Array, width: number): Generator<string> {
   yield ']'
 }
 
-function* jsonText(job: FieldTableJob, block: PreparedBlock, table: FieldTable): Generator<string> {
+function* jsonText(job: FieldTableJob, block: ModelledBlock, table: FieldTable): Generator<string> {
   yield `{"data":${JSON.stringify({ ...headOf(job, block), nodes_tesla: [...table.nodesTesla] }).slice(0, -1)}`
   for (const [name, from] of ROWS_OF) {
     const numbers = table[from]
@@ -126,7 +125,7 @@ function* jsonText(job: FieldTableJob, block: PreparedBlock, table: FieldTable):
 }
 
 /** One record batch with one row a node; lists are over the components, whose names stand in the schema's metadata. */
-function* arrowBytes(job: FieldTableJob, block: PreparedBlock, table: FieldTable): Generator<Uint8Array> {
+function* arrowBytes(job: FieldTableJob, block: ModelledBlock, table: FieldTable): Generator<Uint8Array> {
   const units = { positions: 'cm^-1', positionSlopes: 'cm^-1/T', strengths: null, strengthSlopes: '1/T' } as const
   const columns = ROWS_OF.flatMap(([name, from]) => {
     const numbers = table[from]
@@ -155,7 +154,7 @@ const encoder = new TextEncoder()
 
 /** The answer of a field table in bytes; `null` while it is being made. */
 export function* fieldTableChunks(job: FieldTableJob): Generator<Uint8Array | null> {
-  const block = prepareBlock(job.multiplet, job.toTesla, { ...OPTIONS, model: job.model, gS: job.gS })
+  const block = modelledBlock(job.multiplet, job.model, { gS: job.gS, thetaDeg: null })
   yield null
   const table = withoutNegativeZeros(yield* makeTable(job, block))
   if (job.format === 'arrow') yield* arrowBytes(job, block, table)

@@ -40,25 +40,32 @@ export interface Decision {
 /** Characters, about, of what is remembered: a key holds both terms. */
 const DECISIONS_REMEMBERED = 2e7
 
-/** A fit asks the same blocks at the same fields again and again, and the field limits cost most. */
-const decisions = remembering<Decision>(DECISIONS_REMEMBERED, (_, key) => 500 + key.length)
+/** A fit asks the same blocks at the same fields again and again, and the field limits cost most. Empty until all lines are judged. */
+const decisions = remembering<{ decision: Decision | null }>(DECISIONS_REMEMBERED, (_, key) => 500 + key.length)
 
-/** The model of a block and the error of the linear law at the largest field asked, which decides it under `auto`. */
-export function decide(block: BlockGiven, fieldTesla: number, { model, tolerance, gS }: PredictionOptions): Decision {
-  const ends = block.form === 'line' ? [block.lower, block.upper] : [block.lower, block.upper]
-  return decisions(`${model}|${tolerance}|${gS}|${fieldTesla}|${block.form}|${block.kind}|${JSON.stringify(ends)}`, () => {
-    const lines = linesOf(block).map(({ lower, upper }) => linearLawValidity({ kind: block.kind, lower, upper, fieldTesla, tolerance, gS: gS ?? G_S }))
-    const positions = worst(lines.map((line) => line.positions), tolerance)
-    const strengths = worst(lines.map((line) => line.strengths), tolerance)
-    const blend = worst(lines.map((line) => line.blend), tolerance)
-    const chosen = model === 'auto' ? (canDiagonalise(block) ? autoModel({ positions, strengths }) : 'linear') : model
-    const validity = {
-      field_tesla: fieldTesla,
-      positions: { ...told(positions), error_invcm: positions.errorInvcm },
-      strengths: told(strengths),
-      blend: { ...told(blend), error_invcm: blend.errorInvcm },
-      method: lines[0]?.method ?? 'No line joins these terms',
-    }
-    return { model: chosen, validity }
-  })
+/**
+ * The model of a block and the error of the linear law at the largest field asked, which decides it under `auto`. In steps, one a line: the lines
+ * of a large multiplet take seconds together, and whoever shares the thread has a turn in between.
+ */
+export function* decideSteps(block: BlockGiven, fieldTesla: number, { model, tolerance, gS }: PredictionOptions): Generator<null, Decision> {
+  const remembered = decisions(`${model}|${tolerance}|${gS}|${fieldTesla}|${block.form}|${block.kind}|${JSON.stringify([block.lower, block.upper])}`, () => ({ decision: null }))
+  if (remembered.decision !== null) return remembered.decision
+  const lines: LinearLawValidity[] = []
+  for (const { lower, upper } of linesOf(block)) {
+    yield null
+    lines.push(linearLawValidity({ kind: block.kind, lower, upper, fieldTesla, tolerance, gS: gS ?? G_S }))
+  }
+  const positions = worst(lines.map((line) => line.positions), tolerance)
+  const strengths = worst(lines.map((line) => line.strengths), tolerance)
+  const blend = worst(lines.map((line) => line.blend), tolerance)
+  const chosen = model === 'auto' ? (canDiagonalise(block) ? autoModel({ positions, strengths }) : 'linear') : model
+  const validity = {
+    field_tesla: fieldTesla,
+    positions: { ...told(positions), error_invcm: positions.errorInvcm },
+    strengths: told(strengths),
+    blend: { ...told(blend), error_invcm: blend.errorInvcm },
+    method: lines[0]?.method ?? 'No line joins these terms',
+  }
+  remembered.decision = { model: chosen, validity }
+  return remembered.decision
 }

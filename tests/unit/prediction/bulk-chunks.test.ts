@@ -6,7 +6,9 @@ import { multipletOfTerms } from '@/lib/atomic/field-multiplet'
 import { intermediateLine, multipletComponents } from '@/lib/atomic/intermediate-lines'
 import { vacToAir } from '@/lib/atomic/air'
 import { wholeAnswer } from '@/lib/prediction/bulk/answer'
-import { type BlockGiven, fieldsTesla, type PredictionJob, type PredictionOptions } from '@/lib/prediction/bulk/block'
+import { type BlockGiven, fieldsTesla, type MultipletGiven, type PredictionJob, type PredictionOptions } from '@/lib/prediction/bulk/block'
+import { predictionChunks } from '@/lib/prediction/bulk/chunks'
+import { fieldTableChunks } from '@/lib/prediction/bulk/table-chunks'
 import type { PredictionBlock, PredictionQuantity } from '@/openapi/schemas/predictions'
 
 const term = (twoS: number, l: number, levels: [number, number][]) => ({ twoS, l, levels: levels.map(([twoJ, energyInvcm]) => ({ twoJ, energyInvcm, g: landeG({ twoS, l, twoJ }) })) })
@@ -167,5 +169,23 @@ describe('what the blocks say', () => {
     const [vacuum] = asJson(job('json', [line(S, P, 1, 3)], { quantity: 'wavelength_vac_nm' }))
     const [air] = asJson(job('json', [line(S, P, 1, 3)], { quantity: 'wavelength_air_nm' }))
     vacuum?.values.forEach((row, f) => row.forEach((value, c) => expect(air?.values[f]?.[c]).toBe(vacToAir(value ?? 0))))
+  })
+})
+
+describe('turns of others', () => {
+  it('come between the lines of a multiplet while its model is decided', () => {
+    // a field that nothing else here asks for, since decisions are remembered
+    const chunks = predictionChunks(job('arrow', [multiplet(D5, F5)], {}, { values: [0.123], perTesla: 1 }))
+    let pauses = 0
+    for (let step = chunks.next(); step.value === null; step = chunks.next()) pauses += 1
+    // 12 lines obey the rule for J between 5D and 5F
+    expect(pauses).toBeGreaterThanOrEqual(12)
+  })
+
+  it('are as good as none for a table, which needs no validity', () => {
+    const table = fieldTableChunks({ task: 'field-table', format: 'json', multiplet: multiplet(D5, F5) as MultipletGiven, fromTesla: 0, toTesla: 1, model: 'linear', gS: null, maxErrorInvcm: 1e-6, maxStrengthError: 1e-6, meta: '{}' })
+    expect(table.next()).toEqual({ done: false, value: null })
+    expect(table.next().value).toBeInstanceOf(Uint8Array)
+    table.return(undefined)
   })
 })

@@ -146,6 +146,12 @@ describe('the pool', () => {
     expect(events.map((event) => event.event)).toEqual(['cancelled'])
   })
 
+  it('admits nothing for a caller who has left already', async () => {
+    const { pool, workers } = made()
+    await expect(pool.open('a', count('a', 3), AbortSignal.abort())).rejects.toMatchObject({ code: 'computing_interrupted' })
+    expect([pool.load, workers.length, pool.counts.cancelled]).toEqual([{ active: 0, waiting: 0 }, 0, 0])
+  })
+
   it('forgets a job that waits when its caller leaves', async () => {
     const { pool, workers } = made({ perCaller: 1 })
     const first = await pool.open('a', count('a', 3))
