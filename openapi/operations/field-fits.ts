@@ -151,7 +151,7 @@ export const fitFieldOperation = defineOperation({
   problems: [
     'level_unknown', 'level_retired', 'zero_interval', 'species_differ', 'transition_malformed', 'transition_forbidden', 'term_impossible', 'term_mixed', 'term_incomplete', 'g_impossible', 'no_ls_g', 'g_unknown',
     'g_of_j_zero', 'field_not_positive', 'field_needed', 'field_not_wanted', 'field_malformed', 'field_unit_unknown', 'field_too_large', 'spectrum_fit_not_built', 'assignment_malformed', 'assignment_needed', 'no_such_line', 'no_such_component', 'sigma_for_some',
-    'sigma_not_positive', 'spectral_not_positive', 'air_not_applicable', 'unit_not_applicable', 'etalon_malformed', 'scale_malformed', 'one_line_only', 'fit_too_large',
+    'sigma_not_positive', 'spectral_not_positive', 'air_not_applicable', 'unit_not_applicable', 'etalon_malformed', 'scale_malformed', 'one_line_only', 'fit_too_large', 'heavy_requests_waiting', 'computing_interrupted',
   ],
   example: {
     body: {

@@ -1,11 +1,14 @@
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { fieldAnswer, type ReadFit, visibleQ } from '@/lib/prediction/field-fits/field'
 import { gAnswer, gFaults, givenField } from '@/lib/prediction/field-fits/g'
+import { fitInPool } from '@/lib/prediction/field-fits/job'
 import { readLines, type ReadLine } from '@/lib/prediction/field-fits/lines'
 import { componentFaults, readEtalon, readMeasurements, readScale, scalesOf } from '@/lib/prediction/field-fits/measurements'
 import { residualTable } from '@/lib/prediction/field-fits/table'
-import { boundedModels, canDiagonalise } from '@/lib/prediction/field-fits/work'
+import { boundedFit, canDiagonalise } from '@/lib/prediction/field-fits/work'
+import type { Asking } from '@/lib/prediction/answers/bulk'
 import { boundGivenTerms } from '@/lib/prediction/term-work'
+import { fitField } from '@/lib/atomic/field-fit'
 import { linearLineModel } from '@/lib/atomic/field-fit-model'
 import { missingJ } from '@/lib/atomic/mixing'
 import { AIR } from '@/lib/prediction/conventions'
@@ -67,13 +70,16 @@ function warnOfUnseen(body: FieldFitRequest, warn: Warn): void {
   warn('polarisation_not_seen', `Measurements ${unseen.join(', ')} (counted from 0) are named by a q that ${why}: check the names, or ${body.visible_q ? 'visible_q' : 'theta_deg'}.`)
 }
 
-/** `POST /field-fits`: a field (or g) from measured positions, or why they do not fix it. */
-export function fieldFitAnswer(snapshot: Snapshot, body: FieldFitRequest, warn: Warn) {
+/**
+ * `POST /field-fits`: a field (or g) from measured positions, or why they do not fix it. What is long goes to the pool; without `asking`
+ * all is done here.
+ */
+export async function fieldFitAnswer(snapshot: Snapshot, body: FieldFitRequest, warn: Warn, asking?: Asking) {
   const fit = read(snapshot, body)
-  if (body.unknown === 'field') boundedModels(body, fit.lines)
+  const long = body.unknown === 'field' && boundedFit(body, fit.lines).long
   boundGivenTerms(fit.lines.flatMap(({ detail, facts, fit: { lower, upper } }) => (detail === null && lower.term && upper.term ? [{ kind: facts.kind, lower: lower.term, upper: upper.term }] : [])), 'fit_too_large')
   warnOfUnseen(body, warn)
-  const data = body.unknown === 'g' ? gAnswer(fit, fit.field, warn) : fieldAnswer(fit, warn)
+  const data = body.unknown === 'g' ? gAnswer(fit, fit.field, warn) : await fieldAnswer(fit, (input) => (long && asking ? fitInPool(asking.pool(), asking.caller, input, asking.signal) : fitField(input)), warn)
   return {
     data,
     meta: { model: data.model, g_values: body.g_values, conventions: CONVENTIONS },

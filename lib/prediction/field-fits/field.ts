@@ -1,5 +1,5 @@
 import { G_S } from '@/lib/atomic/constants'
-import { because, type DeterminedFit, type FieldFitInput, type FieldFitMeasurement, fitField, type Reason } from '@/lib/atomic/field-fit'
+import { because, type DeterminedFit, type FieldFitInput, type FieldFit, type FieldFitMeasurement, type Reason } from '@/lib/atomic/field-fit'
 import type { Scale } from '@/lib/atomic/field-fit-problem'
 import { type ReadLine, zeroTold } from '@/lib/prediction/field-fits/lines'
 import type { LineScale } from '@/lib/prediction/field-fits/measurements'
@@ -106,8 +106,8 @@ const outOfRange = (fieldTesla: number): Reason =>
     ? because('field_too_large', `The positions fit best at ${fieldTesla.toPrecision(6)} T, beyond the ${FIELD_MAX_TESLA} T that is computed here: check the unit of the positions, and which components the peaks are.`)
     : because('not_converged', 'The fit ran away from all numbers; check the uncertainties and the unit.')
 
-/** One field from the positions of all lines. */
-export function fieldAnswer(read: ReadFit, warn: Warn): FieldFitAnswer {
+/** One field from the positions of all lines, fitted where `fitted` does it. */
+export async function fieldAnswer(read: ReadFit, fitted: (input: FieldFitInput) => FieldFit | Promise<FieldFit>, warn: Warn): Promise<FieldFitAnswer> {
   const { body, lines, scales, measured, scale } = read
   const seen = visibleQ(body)
   const input: FieldFitInput = {
@@ -119,7 +119,7 @@ export function fieldAnswer(read: ReadFit, warn: Warn): FieldFitAnswer {
     ...(body.g_s === null || body.g_s === undefined ? {} : { gS: body.g_s }),
     ...(seen === null ? {} : { visibleQ: seen }),
   }
-  const fit = fitField(input)
+  const fit = await fitted(input)
   if (fit.status === 'undetermined' || !(Math.abs(fit.fieldTesla) <= FIELD_MAX_TESLA)) {
     const reasons = fit.status === 'undetermined' ? fit.reasons : [outOfRange(fit.fieldTesla)]
     return { unknown: 'field', status: 'undetermined', mode: 'positions', model: fit.model, lines: lines.map((line, i) => toldLine(line, scales[i] ?? null, i)), reasons }

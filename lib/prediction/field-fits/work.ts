@@ -6,6 +6,9 @@ import type { FieldFitRequest } from '@/openapi/operations/field-fits'
 
 /** Steps of arithmetic, about; a fit of this many takes under a second. */
 const MOST_WORK = 5e8
+/** Beyond either a fit takes longer than others should wait for: some tens of milliseconds, the refits without each point by the square of their number. */
+const LONG_WORK = 1e7
+const LONG_MEASUREMENTS = 40
 /** Fields that the intermediate model is solved at for a search, between which it is read off cubics. */
 const NODES = 150
 /** Steps per component for each pair of candidates: Newton's way to the field. */
@@ -49,10 +52,10 @@ function pairs(body: FieldFitRequest, models: readonly LineModel[]): { pairs: nu
 }
 
 /**
- * Refuses a fit that would take too long (413 `fit_too_large`), by an estimate from the sizes of terms, lines and measurements, and gives the
- * models' components. The linear fit alone is counted where no term can be diagonalised.
+ * Refuses a fit that would take too long (413 `fit_too_large`), by an estimate from the sizes of terms, lines and measurements, and says
+ * whether it is too long for the thread that answers. The linear fit alone is counted where no term can be diagonalised.
  */
-export function boundedModels(body: FieldFitRequest, lines: readonly ReadLine[]): LineModel[] {
+export function boundedFit(body: FieldFitRequest, lines: readonly ReadLine[]): { long: boolean } {
   const models = lines.map(({ fit }, i) => linearLineModel(fit, i))
   const intermediate = body.model !== 'linear' && canDiagonalise(lines)
   const one = evaluation(lines, models, intermediate)
@@ -62,7 +65,7 @@ export function boundedModels(body: FieldFitRequest, lines: readonly ReadLine[])
   const components = models.reduce((sum, model) => sum + model.components.length, 0)
   const search = tried.pairs * (PER_PLACE * tried.reading + PER_PAIR * components) + (tried.pairs > 0 && intermediate ? NODES * one : 0)
   const work = search + (OF_THE_FIT[kind] + body.measurements.length * PER_POINT[kind]) * one
-  if (work <= MOST_WORK) return models
+  if (work <= MOST_WORK) return { long: work > LONG_WORK || body.measurements.length > LONG_MEASUREMENTS }
   const cure = tried.pairs > 0 ? 'Name the components (m_lower with m_upper), or say which q can be seen' : 'Fit fewer lines or positions at once'
   throw new Problem('fit_too_large', `${lines.length} lines and ${body.measurements.length} positions would take too long to fit${tried.pairs > 0 ? ` with ${tried.pairs} pairs of components to try` : ''}. ${cure}, or use model=linear.`, {
     extra: { limit: MOST_WORK, work: Math.round(work) },

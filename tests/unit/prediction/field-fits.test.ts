@@ -1,5 +1,9 @@
+import { EventEmitter } from 'node:events'
 import { describe, expect, it } from 'vitest'
 import { MU_B_OVER_HC_INVCM_PER_T } from '@/lib/atomic/constants'
+import { type HeavyJob, heavyChunks } from '@/lib/prediction/bulk/heavy'
+import { type FromWorker, Pool, type ToWorker, type WorkerLike } from '@/lib/prediction/bulk/pool'
+import { serveJobs } from '@/lib/prediction/bulk/worker-side'
 import { fieldFitAnswer } from '@/lib/prediction/field-fits/answer'
 import { FieldFitRequest } from '@/openapi/operations/field-fits'
 import { edition, SODIUM_LEVELS } from './edition'
@@ -17,6 +21,62 @@ async function fitted(body: object) {
   const { data } = await fieldFitAnswer(snapshot, FieldFitRequest.parse({ lines: [SINGLET], unit: 'cm-1', model: 'linear', ...body }), (code) => warnings.push(code))
   return { data, warnings }
 }
+
+/** The worker's code in this thread; what passes between is cloned as between threads. */
+class NearWorker extends EventEmitter implements WorkerLike {
+  private readonly inside = new EventEmitter()
+
+  constructor() {
+    super()
+    const line = {
+      postMessage: (message: FromWorker) => void setImmediate(() => this.emit('message', structuredClone(message))),
+      on: (_event: 'message', listener: (message: ToWorker) => void) => this.inside.on('message', listener),
+    }
+    serveJobs(line, (job) => heavyChunks(job as HeavyJob))
+  }
+
+  postMessage(message: ToWorker): void {
+    const cloned = structuredClone(message)
+    setImmediate(() => this.inside.emit('message', cloned))
+  }
+
+  terminate(): void {
+    this.removeAllListeners()
+  }
+
+  unref(): void {
+    // nothing holds this process
+  }
+}
+
+describe('a long fit', () => {
+  /** A fit of so many peaks of D2, each named, with what it asks of the pool. */
+  async function asked(count: number, more: object = {}) {
+    const components = [[0.5, 1.5, 1], [-0.5, -1.5, -1], [0.5, -0.5, -5 / 3], [-0.5, 0.5, 5 / 3]] as const
+    const measurements = Array.from({ length: count }, (_, i) => {
+      const [lower, upper, shift] = components[i % 4] ?? components[0]
+      return { position: 16973.36619 + shift * MU_B_OVER_HC_INVCM_PER_T * 2 + 1e-3 * Math.sin(i), position_unc: 1e-3, m_lower: lower, m_upper: upper }
+    })
+    const body = FieldFitRequest.parse({ lines: [{ transition: 'Na-I.1~Na-I.3' }], unit: 'cm-1', measurements, ...more })
+    const pool = new Pool({ spawn: () => new NearWorker(), workers: 1 })
+    const { data } = await fieldFitAnswer(snapshot, body, () => undefined, { pool: () => pool, caller: 'a', signal: new AbortController().signal })
+    return { data, here: (await fieldFitAnswer(snapshot, body, () => undefined)).data, pool }
+  }
+
+  it('is made in a worker, with the same answer to the last digit', async () => {
+    const { data, here, pool } = await asked(60)
+    expect(data).toMatchObject({ status: 'determined', field_tesla: expect.closeTo(2, 2) as number })
+    expect(data).toEqual(here)
+    expect(pool.counts.slices).toBeGreaterThan(0)
+    // its place in the worker is free again
+    expect(pool.load).toEqual({ active: 0, waiting: 0 })
+  })
+
+  it('leaves a short one, and one of g, to the thread that answers', async () => {
+    expect((await asked(8)).pool.counts.slices).toBe(0)
+    expect((await asked(60, { unknown: 'g', field: 2 })).pool.counts.slices).toBe(0)
+  })
+})
 
 describe('a field fitted', () => {
   it('is told up to the largest that is computed', async () => {
