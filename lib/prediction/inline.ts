@@ -25,6 +25,30 @@ export function inlineFaults(level: InlineLevelGiven, pointer: string): Fault[] 
   return faults
 }
 
+/**
+ * What is wrong with the levels of one term, each by itself and all together: they share S, L and parity with the first, and each J stands once.
+ * `pointerOf` is the place of a level in the body.
+ */
+export function termFaults(levels: readonly InlineLevelGiven[], pointerOf: (index: number) => string): Fault[] {
+  const [first] = levels
+  const seen = new Set<number>()
+  return levels.flatMap((level, i): Fault[] => {
+    const at = pointerOf(i)
+    const faults = inlineFaults(level, at)
+    for (const name of ['s', 'l', 'parity'] as const) {
+      if (first && level[name] !== first[name]) {
+        faults.push({ pointer: `${at}/${name}`, code: 'term_mixed', detail: `${name} is ${String(level[name])} here and ${String(first[name])} in the first level of the term; the levels of one term share S, L and parity.` })
+      }
+    }
+    if (seen.has(level.j)) faults.push({ pointer: `${at}/j`, code: 'term_mixed', detail: `J = ${level.j} stands twice; each J of a term stands once.` })
+    seen.add(level.j)
+    return faults
+  })
+}
+
+/** Places of a level and the others of its term, as lines of a request give them: `lower` and `lower_others`. */
+export const besideOthers = (pointer: string) => (index: number): string => (index === 0 ? pointer : `${pointer}_others/${index - 1}`)
+
 /** The level decoded, in LS coupling. A g_j given is the adopted one; without it the LS value is. What only a table knows is null. */
 export function inlineLevel(given: InlineLevelGiven, gS: number | null): InlineLevelAnswer {
   const numbers = { twoS: twice(given.s), l: given.l, twoJ: twice(given.j) }

@@ -4,8 +4,8 @@ import { speciesOf, transitionIndices } from '@/lib/prediction/resolve'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { type Fault, faultsProblem, Problem } from '@/lib/problem'
 import type { PredictedLine } from '@/lib/prediction/components'
-import { inlineFaults, inlineLevel, type InlineLevelGiven } from '@/lib/prediction/inline'
-import { judgeInline } from '@/lib/prediction/judge'
+import { besideOthers, inlineLevel, type InlineLevelGiven, termFaults } from '@/lib/prediction/inline'
+import { intervalFaults, judgeInline } from '@/lib/prediction/judge'
 import { twice } from '@/lib/prediction/levels'
 import type { GivenTerms } from '@/lib/prediction/term-work'
 import { transitionDetail } from '@/lib/prediction/transition'
@@ -55,26 +55,11 @@ function termOf(level: Level, given: InlineLevelGiven, others: readonly InlineLe
   }
 }
 
-/** The levels of one term share S, L and parity, and each J stands once. */
-function othersFaults(end: 'lower' | 'upper', given: InlineLevelGiven, others: readonly InlineLevelGiven[]): Fault[] {
-  const seen = new Set([given.j])
-  return others.flatMap((other, i) => {
-    const at = `/${end}_others/${i}`
-    const faults = inlineFaults(other, at)
-    for (const name of ['s', 'l', 'parity'] as const) {
-      if (other[name] !== given[name]) faults.push({ pointer: `${at}/${name}`, code: 'term_mixed', detail: `${name} is ${String(other[name])} here and ${String(given[name])} in ${end}; the levels of one term share S, L and parity.` })
-    }
-    if (seen.has(other.j)) faults.push({ pointer: `${at}/j`, code: 'term_mixed', detail: `J = ${other.j} stands twice; each J of a term stands once.` })
-    seen.add(other.j)
-    return faults
-  })
-}
-
 /** A line of inline levels as the table would tell it. Refuses with every fault of its levels at once, pointers counted from the line. */
 export function inlineLine(given: InlineLineGiven, gS: number | null, name: string): PredictedLine {
   const [lowerOthers, upperOthers] = [given.lower_others ?? [], given.upper_others ?? []]
-  const mixed = [...othersFaults('lower', given.lower, lowerOthers), ...othersFaults('upper', given.upper, upperOthers)]
-  if (mixed.length > 0) throw faultsProblem(mixed)
+  const faults = [...termFaults([given.lower, ...lowerOthers], besideOthers('/lower')), ...termFaults([given.upper, ...upperOthers], besideOthers('/upper')), ...intervalFaults(given.lower, given.upper)]
+  if (faults.length > 0) throw faultsProblem(faults)
   const { transition, exchanged } = judgeInline(given.lower, given.upper, given.kind, gS)
   const ends = [{ level: given.lower, others: lowerOthers }, { level: given.upper, others: upperOthers }] as const
   const [low, high] = exchanged ? [ends[1], ends[0]] : ends

@@ -8,7 +8,7 @@ import { DEFAULT_TOLERANCE } from '@/lib/atomic/validity'
 import { bodyProblem, type Fault, faultsProblem, Problem } from '@/lib/problem'
 import type { Warning } from '@/lib/prediction/component-warnings'
 import { chooseG } from '@/lib/prediction/g-values'
-import { inlineFaults, inlineLevel, type InlineLevelGiven } from '@/lib/prediction/inline'
+import { inlineLevel, type InlineLevelGiven, termFaults } from '@/lib/prediction/inline'
 import { twice } from '@/lib/prediction/levels'
 import { FIELD_MAX_TESLA, FIELD_UNITS, fieldFrom, parseField, type FieldUnit } from '@/lib/units/field'
 import type { GValues, Model } from '@/openapi/schemas/common'
@@ -36,24 +36,6 @@ export function readFields(field: FieldsGiven): number[] {
   )
   if (faults.length > 0) throw faultsProblem(faults.slice(0, 100))
   return fields
-}
-
-/** All levels of one term share S, L and parity, and each J stands once. */
-export function termFaults(levels: readonly InlineLevelGiven[]): Fault[] {
-  const [first] = levels
-  const seen = new Set<number>()
-  return levels.flatMap((level, i): Fault[] => {
-    const at = `/levels/${i}`
-    const faults = inlineFaults(level, at)
-    for (const name of ['s', 'l', 'parity'] as const) {
-      if (first && level[name] !== first[name]) {
-        faults.push({ pointer: `${at}/${name}`, code: 'term_mixed', detail: `${name} is ${String(level[name])} here and ${String(first[name])} in the first level; the levels of one term share S, L and parity.` })
-      }
-    }
-    if (seen.has(level.j)) faults.push({ pointer: `${at}/j`, code: 'term_mixed', detail: `J = ${level.j} stands twice; each J of a term stands once.` })
-    seen.add(level.j)
-    return faults
-  })
 }
 
 export interface TermSublevelsAsked {
@@ -146,7 +128,7 @@ export function checkSize(states: number, fields: number, perState: number, bloc
  * cm^-1, derivatives in cm^-1 per tesla. Refuses `term_mixed`, `term_incomplete` (model=intermediate), `answer_too_large`.
  */
 export function termSublevels(asked: TermSublevelsAsked): { matrix: SublevelMatrix; model: 'linear' | 'intermediate'; warnings: Warning[] } {
-  const faults = termFaults(asked.levels)
+  const faults = termFaults(asked.levels, (i) => `/levels/${i}`)
   if (faults.length > 0) throw faultsProblem(faults)
   const fields = readFields(asked.field)
   const term = termOf(asked)

@@ -2,7 +2,7 @@ import type { FitEnd, FitLevel, FitLine } from '@/lib/atomic/field-fit-model'
 import { PhysicsError } from '@/lib/atomic/errors'
 import type { Snapshot } from '@/lib/catalogue/shape'
 import { chooseG, type GChoice } from '@/lib/prediction/g-values'
-import { inlineFaults, inlineLevel } from '@/lib/prediction/inline'
+import { besideOthers, inlineLevel, termFaults } from '@/lib/prediction/inline'
 import { lsNumbers, type PhysicalLevel, twoJOf } from '@/lib/prediction/levels'
 import { levelIndex } from '@/lib/prediction/resolve'
 import { lineFacts, type LineFacts, orderedPair, transitionDetail } from '@/lib/prediction/transition'
@@ -41,19 +41,9 @@ const faultAt = (pointer: string, error: unknown): Fault => {
 
 /** Levels of a line given in the request, with every fault found in them. */
 function inlineEnd(given: InlineLevel, others: readonly InlineLevel[], pointer: string, gS: number | null, faults: Fault[]): NamedLevel | null {
-  const before = faults.length
-  faults.push(...inlineFaults(given, pointer))
-  const seen = new Set([given.j])
-  others.forEach((other, i) => {
-    const at = `${pointer}_others/${i}`
-    faults.push(...inlineFaults(other, at))
-    for (const name of ['s', 'l', 'parity'] as const) {
-      if (other[name] !== given[name]) faults.push({ pointer: `${at}/${name}`, code: 'term_mixed', detail: `${name} is ${String(other[name])} here and ${String(given[name])} in the level itself; the levels of one term share S, L and parity.` })
-    }
-    if (seen.has(other.j)) faults.push({ pointer: `${at}/j`, code: 'term_mixed', detail: `J = ${other.j} stands twice; each J of a term stands once.` })
-    seen.add(other.j)
-  })
-  if (faults.length > before) return null
+  const found = termFaults([given, ...others], besideOthers(pointer))
+  faults.push(...found)
+  if (found.length > 0) return null
   const level = inlineLevel(given, gS)
   return { id: null, level, members: [{ id: null, level }, ...others.map((other) => ({ id: null, level: inlineLevel(other, gS) }))] }
 }

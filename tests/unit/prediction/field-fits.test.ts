@@ -78,6 +78,17 @@ describe('a long fit', () => {
   })
 })
 
+describe('a line given in a fit', () => {
+  it('is told everything that is wrong with its levels and their terms at once', async () => {
+    const lower = { ...SINGLET.lower, j: 2 }
+    const refused: unknown = await fitted({ lines: [{ lower, upper: SINGLET.upper, lower_others: [{ ...lower, s: 1, l: 1 }], upper_others: [{ ...SINGLET.upper, parity: 'even' }] }], measurements: peaks(2) }).catch((error: unknown) => error)
+    expect((refused as { errors: { pointer: string; code: string }[] }).errors.map(({ pointer, code }) => `${pointer} ${code}`).sort()).toEqual([
+      '/lines/0/lower/j term_impossible', '/lines/0/lower_others/0/j term_mixed', '/lines/0/lower_others/0/l term_mixed', '/lines/0/lower_others/0/s term_mixed',
+      '/lines/0/upper_others/0/j term_mixed', '/lines/0/upper_others/0/parity term_mixed',
+    ])
+  })
+})
+
 describe('a field fitted', () => {
   it('is told up to the largest that is computed', async () => {
     const { data } = await fitted({ measurements: named(9999) })

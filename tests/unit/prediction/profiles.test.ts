@@ -18,6 +18,17 @@ const faults = async (more: object): Promise<string[]> => {
   return (refused as { errors: { pointer: string; code: string }[] }).errors.map(({ pointer, code }) => `${pointer} ${code}`)
 }
 
+describe('a line given in the request', () => {
+  it('is told everything that is wrong with its levels and their terms at once', async () => {
+    const lower = { ...GIVEN.lower, j: 2 }
+    const lines = [{ lower, upper: { ...GIVEN.upper, energy_invcm: 0 }, lower_others: [{ ...lower, energy_invcm: 7, s: 1, l: 1 }], upper_others: [{ ...GIVEN.upper, parity: 'even' }] }]
+    expect((await faults({ lines, resolving_power: 1e5 })).sort()).toEqual([
+      '/lines/0/lower/j term_impossible', '/lines/0/lower_others/0/j term_mixed', '/lines/0/lower_others/0/l term_mixed', '/lines/0/lower_others/0/s term_mixed',
+      '/lines/0/upper/energy_invcm zero_interval', '/lines/0/upper_others/0/j term_mixed', '/lines/0/upper_others/0/parity term_mixed',
+    ])
+  })
+})
+
 describe('widths of profiles', () => {
   it.each([
     ['an instrument of nothing', { instrument_fwhm_invcm: 1e-300 }],
