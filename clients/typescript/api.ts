@@ -2964,7 +2964,7 @@ export interface Operations {
       meta: Meta
     }
   }
-  /** A magnetic field from measured positions of components, with its uncertainty. Weighted least squares on centred data for one field and a free zero of each line. Components are assigned by hand (m_lower with m_upper), by polarisation (q), as a whole unresolved group (group), or automatically. model=auto fits by the linear law, and again by diagonalised terms where the linear law does not hold at the field found. Where the data do not fix the field the answer is 200 with status undetermined and says why. mode is positions; a fit to a whole spectrum is not built yet, and another mode is refused as spectrum_fit_not_built. Tables (csv, ndjson, arrow) hold the residuals, one row per measurement. Up to 20 lines and 300 measurements; assignments that would need too much work are refused as fit_too_large. */
+  /** A magnetic field from measured positions of components, with its uncertainty. Weighted least squares on centred data for one field and a free zero of each line. Components are assigned by hand (m_lower with m_upper), by polarisation (q), as a whole unresolved group (group), or automatically. model=auto fits by the linear law, and again by diagonalised terms where the linear law does not hold at the field found. Where the data do not fix the field the answer is 200 with status undetermined and says why. mode is positions; a fit to a whole spectrum is not built yet, and another mode is refused as spectrum_fit_not_built. Tables (csv, ndjson, arrow) hold the residuals, one row per measurement. Up to 20 lines and 300 measurements; assignments that would need too much work are refused as fit_too_large, and so are lines given level by level whose distinct multiplets have more than 30000 components between them. A field beyond 10 000 T is told as undetermined. */
   fitField: {
     method: 'post'
     path: '/field-fits'
@@ -3129,7 +3129,7 @@ export interface Operations {
       meta: Meta
     }
   }
-  /** Stokes I, Q and V of several lines at one field, as an instrument shows them. Optically thin sums of Voigt profiles over the components of every line. The integral of I of a line over wavenumber is its weight. Widths: temperature with mass, microturbulence, instrument, Lorentzian; at least one is needed. Reversing the field (theta_deg to 180 - theta_deg) turns V and leaves I and Q. */
+  /** Stokes I, Q and V of several lines at one field, as an instrument shows them. Optically thin sums of Voigt profiles over the components of every line. The integral of I of a line over wavenumber is its weight. Widths: temperature with mass, microturbulence, instrument, Lorentzian; at least one is needed, none below 1e-15 of the wavenumber. Reversing the field (theta_deg to 180 - theta_deg) turns V and leaves I and Q. Up to 100 lines; the distinct multiplets of lines whose levels stand in the request have up to 30000 components between them, more is refused as answer_too_large. */
   computeProfiles: {
     method: 'post'
     path: '/profiles'
@@ -3172,7 +3172,7 @@ export interface Operations {
       tolerance?: number
       /** Angle between the field and the direction from source to observer; without it intensities are averaged over angle, and there are no Q and V. */
       theta_deg?: number | null
-      /** Mass number: its mass broadens, and with hyperfine its structure is in the profile. natural: the isotopes listed, by abundance. */
+      /** Mass number, of a species of the table: its mass broadens, and with hyperfine its structure is in the profile. natural: the isotopes listed, by abundance. */
       isotope?: number | 'natural' | null
       /** Put the hyperfine structure of the isotope into the profile; without isotope the natural mixture. */
       hyperfine?: boolean

@@ -3,9 +3,7 @@ import type { Kind } from '@/lib/atomic/rules'
 import type { BlockGiven } from '@/lib/prediction/bulk/block'
 import { componentCount } from '@/lib/prediction/bulk/places'
 import { type Fault, Problem } from '@/lib/problem'
-
-/** Components of the multiplets that one request may bring with it: about a second of work, since validity alone diagonalises each at many fields. */
-export const GIVEN_COMPONENTS_MOST = 30_000
+import { GIVEN_COMPONENTS_MOST } from '@/openapi/operations/inline'
 
 /** Two terms whose levels stand in a request. */
 export interface GivenTerms {

@@ -3,7 +3,7 @@ import { defineOperation } from '@/openapi/core/define'
 import { bodyEdition } from '@/openapi/core/parameters'
 import { GValues, Kind, Medium, Model, TRANSITION_ID } from '@/openapi/schemas/common'
 import { FieldFitAnswer, FitQuantity, FitUnit } from '@/openapi/schemas/field-fits'
-import { InlineLevel } from './inline'
+import { GIVEN_COMPONENTS_MOST, InlineLevel } from './inline'
 
 export const FIT_LINES_MOST = 20
 export const FIT_MEASUREMENTS_MOST = 300
@@ -141,7 +141,7 @@ export const fitFieldOperation = defineOperation({
     'Weighted least squares on centred data for one field and a free zero of each line. Components are assigned by hand (m_lower with m_upper), by polarisation (q), as a whole unresolved group (group), or automatically. '
     + 'model=auto fits by the linear law, and again by diagonalised terms where the linear law does not hold at the field found. Where the data do not fix the field the answer is 200 with status undetermined and says why. '
     + 'mode is positions; a fit to a whole spectrum is not built yet, and another mode is refused as spectrum_fit_not_built. Tables (csv, ndjson, arrow) hold the residuals, one row per measurement. '
-    + `Up to ${FIT_LINES_MOST} lines and ${FIT_MEASUREMENTS_MOST} measurements; assignments that would need too much work are refused as fit_too_large.`,
+    + `Up to ${FIT_LINES_MOST} lines and ${FIT_MEASUREMENTS_MOST} measurements; assignments that would need too much work are refused as fit_too_large, and so are lines given level by level whose distinct multiplets have more than ${GIVEN_COMPONENTS_MOST} components between them. A field beyond 10 000 T is told as undetermined.`,
   tag: 'Physics',
   role: 'reader',
   body: FieldFitRequest,

@@ -1,6 +1,9 @@
 import { z } from 'zod'
 import { Parity } from '@/openapi/schemas/common'
 
+/** Components of the multiplets that one request may bring with it: about a second of work, since validity alone diagonalises each at many fields. */
+export const GIVEN_COMPONENTS_MOST = 30_000
+
 /** J, S, I as a number. */
 export const halfInteger = (what: string) =>
   z

@@ -5,7 +5,7 @@ import { defineOperation } from '@/openapi/core/define'
 import { bodyEdition } from '@/openapi/core/parameters'
 import { GValues, Kind, Model, TRANSITION_ID } from '@/openapi/schemas/common'
 import { Analyser, GRID_UNITS, Profiles, StokesSign } from '@/openapi/schemas/profiles'
-import { InlineLevel } from './inline'
+import { GIVEN_COMPONENTS_MOST, InlineLevel } from './inline'
 
 export const PROFILE_LINES_MOST = 100
 
@@ -68,7 +68,7 @@ export const ProfilesRequest = z
     tolerance: z.number().min(1e-6).max(1).default(0.01),
     theta_deg: z.number().min(0).max(180).nullish().meta({ description: 'Angle between the field and the direction from source to observer; without it intensities are averaged over angle, and there are no Q and V.' }),
     isotope: z.union([z.int().min(1).max(400), z.literal('natural')]).nullish().meta({
-      description: 'Mass number: its mass broadens, and with hyperfine its structure is in the profile. natural: the isotopes listed, by abundance.',
+      description: 'Mass number, of a species of the table: its mass broadens, and with hyperfine its structure is in the profile. natural: the isotopes listed, by abundance.',
     }),
     hyperfine: z.boolean().default(false).meta({ description: 'Put the hyperfine structure of the isotope into the profile; without isotope the natural mixture.' }),
     temperature_k: z.number().min(0).max(1e9).nullish(),
@@ -114,7 +114,8 @@ export const computeProfiles = defineOperation({
   path: '/profiles',
   summary: 'Stokes I, Q and V of several lines at one field, as an instrument shows them',
   description:
-    'Optically thin sums of Voigt profiles over the components of every line. The integral of I of a line over wavenumber is its weight. Widths: temperature with mass, microturbulence, instrument, Lorentzian; at least one is needed. Reversing the field (theta_deg to 180 - theta_deg) turns V and leaves I and Q.',
+    'Optically thin sums of Voigt profiles over the components of every line. The integral of I of a line over wavenumber is its weight. Widths: temperature with mass, microturbulence, instrument, Lorentzian; at least one is needed, none below 1e-15 of the wavenumber. Reversing the field (theta_deg to 180 - theta_deg) turns V and leaves I and Q. '
+    + `Up to ${PROFILE_LINES_MOST} lines; the distinct multiplets of lines whose levels stand in the request have up to ${GIVEN_COMPONENTS_MOST} components between them, more is refused as answer_too_large.`,
   tag: 'Physics',
   role: 'reader',
   body: ProfilesRequest,
