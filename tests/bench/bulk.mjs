@@ -98,6 +98,8 @@ async function memory() {
     'linear, values only': linear(500_000),
     'linear, with derivatives and strengths': { ...linear(500_000), derivatives: true, strengths: true },
     'intermediate, with derivatives and strengths': { multiplets: [{ lower, upper }], field: field(500_000), model: 'intermediate', derivatives: true },
+    // J = 2 and 3, fifteen components, of two whole terms of the table: a line shows one state of each m block, and these have up to five
+    'intermediate, one line of quintets': { lines: [{ transition: 'Fe-I.3~Fe-I.22' }], field: field(333_333), model: 'intermediate', derivatives: true },
   }
   for (const [name, body] of Object.entries(questions)) {
     // twice before: the first of its kind compiles and starts what later ones find there

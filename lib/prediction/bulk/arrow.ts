@@ -1,12 +1,12 @@
 import { Field, FixedSizeList, Float64, Int32, Schema } from 'apache-arrow'
 import { batchMessage, bitmap, type NodePlan, padded, schemaMessage } from '@/lib/prediction/bulk/arrow-message'
 import { fieldCount, type PredictionJob } from '@/lib/prediction/bulk/block'
-import { BlockReader, type ColumnName, mayHaveHoles, QUANTITY_UNITS } from '@/lib/prediction/bulk/columns'
+import { ColumnStore } from '@/lib/prediction/bulk/column-store'
+import { type ColumnName, mayHaveHoles, QUANTITY_UNITS } from '@/lib/prediction/bulk/columns'
 import type { PreparedBlock } from '@/lib/prediction/bulk/prepared'
 
-/** Numbers of one piece of a column, and fields solved before another job may have its turn. */
+/** Numbers of one piece of a column. */
 const PIECE = 65_536
-const SOLVED_AT_ONCE = 16_384
 
 const DESCRIPTIONS: Record<ColumnName, string> = {
   value: 'At each field of the grid.',
@@ -71,15 +71,15 @@ function nameColumn(values: readonly (number | null)[], type: 'int32' | 'float64
 }
 
 /** Where a wavelength does not exist: bits of the values that do, and how many do not; null where all do. */
-function holesOf(reader: BlockReader, fields: number): { bits: Uint8Array; count: number } | null {
-  const { places } = reader.block
+function holesOf(store: ColumnStore, fields: number): { bits: Uint8Array; count: number } | null {
+  const { places } = store.block
   const numbers = new Float64Array(PIECE)
   const bits = new Uint8Array(Math.ceil((places.length * fields) / 8)).fill(255)
   let count = 0
   for (let c = 0; c < places.length; c += 1) {
     for (let from = 0; from < fields; from += PIECE) {
       const to = Math.min(fields, from + PIECE)
-      reader.fill('value', c, from, to, numbers, 0)
+      store.fill('value', c, from, to, numbers, 0)
       for (let i = 0; i < to - from; i += 1) {
         if (!Number.isNaN(numbers[i])) continue
         const place = c * fields + from + i
@@ -92,16 +92,17 @@ function holesOf(reader: BlockReader, fields: number): { bits: Uint8Array; count
 }
 
 /** One column's numbers, component by component, in pieces. */
-function* listBuffer(reader: BlockReader, column: ColumnName, fields: number): Generator<Uint8Array> {
-  const { places } = reader.block
+function* listBuffer(store: ColumnStore, column: ColumnName, fields: number): Generator<Uint8Array | null> {
+  const { places } = store.block
   const whole = places.length * fields
-  const present = reader.has(column)
+  const present = store.has(column)
+  if (present) yield* store.make(column)
   let piece = new Float64Array(Math.min(PIECE, whole))
   let [at, done] = [0, 0]
   for (let c = 0; c < places.length; c += 1) {
     for (let from = 0; from < fields; ) {
       const to = Math.min(fields, from + piece.length - at)
-      if (present) reader.fill(column, c, from, to, piece, at)
+      if (present) store.fill(column, c, from, to, piece, at)
       at += to - from
       from = to
       if (at < piece.length) continue
@@ -114,19 +115,14 @@ function* listBuffer(reader: BlockReader, column: ColumnName, fields: number): G
 }
 
 /**
- * One block as a record batch. The terms are solved once over all fields and held (states that run straight take no room), and the columns
- * are written from that, so that none of them stands in memory. `null` between pieces lets others have their turn.
+ * One block as a record batch, column by column, in pieces: how little of it stands in memory is `ColumnStore`'s business. `null` between pieces
+ * lets others have their turn.
  */
 export function* blockBatch(block: PreparedBlock, index: number, fields: Float64Array, job: PredictionJob): Generator<Uint8Array | null> {
   const { places } = block
   const rows = places.length
-  const reader = new BlockReader(block, job.options, fields, fields.length, PIECE)
-  if (block.diagonalised !== null) {
-    for (let from = 0; from < fields.length; from += SOLVED_AT_ONCE) {
-      reader.load(from, Math.min(fields.length, from + SOLVED_AT_ONCE), 0)
-      yield null
-    }
-  }
+  const store = new ColumnStore(block, job.options, fields, PIECE)
+  yield* store.make('value')
   const names = [
     nameColumn(places.map(() => index), 'int32'),
     nameColumn(places.map((place) => place.q), 'int32'),
@@ -135,12 +131,12 @@ export function* blockBatch(block: PreparedBlock, index: number, fields: Float64
     nameColumn(block.jLower, 'float64'),
     nameColumn(block.jUpper, 'float64'),
   ]
-  const holes = mayHaveHoles(job.options.quantity) ? holesOf(reader, fields.length) : null
+  const holes = mayHaveHoles(job.options.quantity) ? holesOf(store, fields.length) : null
   const lists = listColumns(job).map((column) => {
     const holed = column === 'value' || column === 'derivative' ? holes : null
-    const validity = reader.has(column) ? new Uint8Array(0) : new Uint8Array(Math.ceil(rows / 8))
+    const validity = store.has(column) ? new Uint8Array(0) : new Uint8Array(Math.ceil(rows / 8))
     const numbers = rows * fields.length
-    const list: NodePlan = { length: rows, nulls: reader.has(column) ? 0 : rows, buffers: [validity.byteLength] }
+    const list: NodePlan = { length: rows, nulls: store.has(column) ? 0 : rows, buffers: [validity.byteLength] }
     const item: NodePlan = { length: numbers, nulls: holed?.count ?? 0, buffers: [holed?.bits.byteLength ?? 0, 8 * numbers] }
     return { column, plans: [list, item], validity, bits: holed?.bits ?? new Uint8Array(0) }
   })
@@ -156,6 +152,6 @@ export function* blockBatch(block: PreparedBlock, index: number, fields: Float64
   for (const list of lists) {
     yield* paddedBytes(list.validity)
     yield* paddedBytes(list.bits)
-    yield* listBuffer(reader, list.column, fields.length)
+    yield* listBuffer(store, list.column, fields.length)
   }
 }

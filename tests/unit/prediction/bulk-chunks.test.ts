@@ -7,7 +7,9 @@ import { intermediateLine, multipletComponents } from '@/lib/atomic/intermediate
 import { vacToAir } from '@/lib/atomic/air'
 import { wholeAnswer } from '@/lib/prediction/bulk/answer'
 import { type BlockGiven, fieldsTesla, type MultipletGiven, type PredictionJob, type PredictionOptions } from '@/lib/prediction/bulk/block'
+import { ColumnStore, HELD_MOST } from '@/lib/prediction/bulk/column-store'
 import { predictionChunks } from '@/lib/prediction/bulk/chunks'
+import { type PreparedBlock, prepareSteps } from '@/lib/prediction/bulk/prepared'
 import { fieldTableChunks } from '@/lib/prediction/bulk/table-chunks'
 import type { PredictionBlock, PredictionQuantity } from '@/openapi/schemas/predictions'
 
@@ -187,5 +189,62 @@ describe('turns of others', () => {
     expect(table.next()).toEqual({ done: false, value: null })
     expect(table.next().value).toBeInstanceOf(Uint8Array)
     table.return(undefined)
+  })
+})
+
+/** A prepared block, whoever has a turn meanwhile. */
+function prepared(given: BlockGiven): PreparedBlock {
+  const steps = prepareSteps(given, 5, { ...OPTIONS, model: 'intermediate' })
+  for (;;) {
+    const step = steps.next()
+    if (step.done === true) return step.value
+  }
+}
+
+describe('the room that the columns of a batch take', () => {
+  const fields = Float64Array.from({ length: 1000 }, (_, i) => i / 200)
+  const columns = ['value', 'derivative', 'strength', 'intensity'] as const
+
+  const sameBits = (a: readonly Float64Array[], b: readonly Float64Array[]) => a.length === b.length && a.every((list, i) => Buffer.from(list.buffer).equals(Buffer.from(b[i]?.buffer ?? new ArrayBuffer(0))))
+
+  /** Every column of a block, and the most numbers held on the way. */
+  const read = (given: BlockGiven, most?: number) => {
+    const block = prepared(given)
+    const store = new ColumnStore(block, OPTIONS, fields, fields.length, most)
+    let [held, steps] = [0, 0]
+    const lists = columns.map((column) => {
+      for (const turn of store.make(column)) steps += turn === null ? 1 : 0
+      held = Math.max(held, store.numbersHeld)
+      const numbers = new Float64Array(block.places.length * fields.length)
+      block.places.forEach((_, c) => store.fill(column, c, 0, fields.length, numbers, c * fields.length))
+      return numbers
+    })
+    return { lists, held, steps, numbers: block.places.length * fields.length }
+  }
+
+  it('is that of the columns for a line with wide m blocks, and within the bound where they do not fit at once, bit for bit the same', () => {
+    // 15 components of J = 2 and 3; the solved blocks, of up to five states, would take 316 numbers a field
+    const given = line(D5, F5, 4, 6)
+    const plain = read(given)
+    expect([plain.numbers, plain.held]).toEqual([15_000, 4 * 15_000])
+    const bounded = read(given, 2 * 15_000)
+    expect(bounded.held).toBe(2 * 15_000)
+    expect(bounded.steps).toBe(2 * plain.steps)
+    expect(sameBits(bounded.lists, plain.lists)).toBe(true)
+    expect(read(given, 1).held).toBe(15_000)
+  })
+
+  it('is that of the solved terms for a multiplet, less than its columns', () => {
+    const { lists, held, numbers } = read(multiplet(D5, F5))
+    expect(held).toBeLessThan(2 * numbers)
+    expect(sameBits(read(multiplet(D5, F5), numbers).lists, lists)).toBe(true)
+  })
+
+  it('keeps the promise of 200 MB for the largest request of one line: 80 MB at most for what is held', () => {
+    expect(8 * HELD_MOST).toBeLessThanOrEqual(80e6)
+    const most = 5_000_000
+    const store = new ColumnStore(prepared(line(D5, F5, 4, 6)), OPTIONS, new Float64Array(Math.floor(most / 15)), 1)
+    expect(store.make('value').next()).toEqual({ done: false, value: null })
+    expect(store.numbersHeld).toBeLessThanOrEqual(HELD_MOST)
   })
 })
