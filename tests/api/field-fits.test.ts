@@ -241,10 +241,39 @@ describe('an undetermined fit says why', () => {
     expect(await reasons(body)).toEqual(expected)
   })
 
+  it('where the field would be larger than any that is computed', async () => {
+    const far = { lower: ENDS['1S0'], upper: { ...ENDS['1P1'], energy_invcm: 2e6 } }
+    const measurements = [-1, 0, 1].map((q) => ({ position: 2e6 + q * MU_B * 12_840, position_unc: 0.01, m_lower: 0, m_upper: q }))
+    expect(await reasons({ ...base, lines: [far], measurements })).toEqual(['field_too_large'])
+  })
+
   it('and is an empty table as well', async () => {
     const reply = await fit({ ...base, measurements: [] }, '?format=csv')
     expect(reply.status).toBe(200)
     expect(reply.text.trim().split('\n')).toHaveLength(1)
+  })
+})
+
+describe('a fit of many positions', () => {
+  it('is made in a worker, and answers as a short one does', async () => {
+    const components = [[0.5, 1.5, 1], [-0.5, -1.5, -1], [0.5, -0.5, -5 / 3], [-0.5, 0.5, 5 / 3]] as const
+    const measurements = Array.from({ length: 120 }, (_, i) => {
+      const [lower, upper, shift] = components[i % 4] ?? components[0]
+      return { position: D2.energy_invcm + shift * MU_B * 0.5 + 1e-3 * Math.sin(i), position_unc: 1e-3, m_lower: lower, m_upper: upper }
+    })
+    const { data } = await determined({ lines: [{ lower: S, upper: D2 }], unit: 'cm-1', model: 'linear', g_values: 'ls', g_s: 2, measurements })
+    // 120 points of 1e-3 cm^-1 on shifts of about 1.4 Lorentz units leave 1.5e-4 T; the sine scatters less
+    expect(Math.abs(data.field_tesla - 0.5)).toBeLessThan(1e-3)
+    expect(data.residuals).toHaveLength(120)
+    expect(data.residuals.every((one: Json) => one.field_without_tesla !== null)).toBe(true)
+  })
+})
+
+describe('a polarisation that is not seen', () => {
+  it('is told where a peak is named by it', async () => {
+    const body = { lines: [{ transition: 'Na-I.1~Na-I.3' }], unit: 'cm-1', measurements: [{ position: 16972.73584, m_lower: 0.5, m_upper: -0.5 }, { position: 16973.49179, m_lower: 0.5, m_upper: 0.5 }] }
+    expect(codes(await determined({ ...body, theta_deg: 0 }))).toContain('polarisation_not_seen')
+    expect(codes(await determined(body))).not.toContain('polarisation_not_seen')
   })
 })
 
@@ -300,6 +329,11 @@ describe('wrong fits are refused with everything that is wrong', () => {
   ])('%s', async (_, body, status, faults) => {
     const reply = await fit(body)
     expect([reply.status, ...faultsOf(reply)], reply.text).toEqual([status, ...faults])
+  })
+
+  it('a line of wrong levels is told all of it at once', async () => {
+    const reply = await fit({ ...ok, lines: [{ lower: { ...S, j: 2.5 }, upper: D2, lower_others: [{ ...S, l: 1 }] }] })
+    expect([reply.status, ...faultsOf(reply).sort()]).toEqual([422, '/lines/0/lower/j term_impossible', '/lines/0/lower_others/0/l term_mixed'])
   })
 
   it('a search among too many components is told, with the cure', async () => {

@@ -190,6 +190,9 @@ describe('wrong requests', () => {
 
   it.each([
     ['no width', { lines: [D1], field: 1 }, 422, ['/ profile_no_width']],
+    ['an instrument narrower than any number', { lines: [{ ...SINGLET, weight: 1e12 }], field: 1, instrument_fwhm_invcm: 1e-300 }, 422, ['/ profile_no_width']],
+    ['a natural width narrower than any number', { lines: [SINGLET], field: 1, lorentzian_fwhm_invcm: 1e-200 }, 422, ['/ profile_no_width']],
+    ['an isotope of levels given in the request', { lines: [SINGLET], field: 1, resolving_power: 1000, isotope: 23 }, 422, ['/isotope isotope_unknown']],
     ['a temperature and no mass', { lines: [SINGLET], field: 1, temperature_k: 300 }, 422, ['/mass_u mass_unknown']],
     ['no such level', { lines: [{ transition: 'Na-I.1~Na-I.9999' }], field: 1, resolving_power: 1000 }, 404, ['/lines/0/transition level_unknown']],
     ['a term that is not whole in the intermediate model', { lines: [{ lower: { energy_invcm: 0, s: 0.5, l: 0, j: 0.5, parity: 'even' }, upper: { energy_invcm: 16000, s: 0.5, l: 1, j: 0.5, parity: 'odd' } }], field: 1, model: 'intermediate', resolving_power: 1000 }, 422, ['/model term_incomplete']],
@@ -199,6 +202,12 @@ describe('wrong requests', () => {
   ])('%s', async (_, body, status, faults) => {
     const reply = await profiles(body)
     expect([reply.status, ...faultsOf(reply).map((fault) => fault.replace(/^ /, '/ '))]).toEqual([status, ...faults])
+  })
+
+  it('an isotope is told not to apply to lines given beside those of the table', async () => {
+    const reply = await profiles({ lines: [D1, SINGLET], field: 1, resolving_power: 1000, isotope: 23 })
+    expect(reply.status).toBe(200)
+    expect(reply.json.meta.warnings.map((warning: Json) => warning.code)).toContain('isotope_not_applied')
   })
 
   it('whole terms given inline are diagonalised', async () => {
