@@ -75,7 +75,8 @@ function linearOf(block: BlockGiven, places: readonly Place[]): LinearBlock {
 function diagonalisedOf(block: BlockGiven, gS: number | null): DiagonalisedBlock {
   const [lower, upper] = block.form === 'line' ? [block.lower.term, block.upper.term] : [block.lower, block.upper]
   if (lower === null || upper === null) throw new RangeError('a level without S and L cannot be diagonalised')
-  const multiplet = multipletOfTerms(lower, upper, block.kind, { gS: gS ?? G_S })
+  // with g_L named as the validity names it, which has made the same multiplet before
+  const multiplet = multipletOfTerms(lower, upper, block.kind, { gS: gS ?? G_S, gL: 1 })
   const all = Array.from({ length: multiplet.count }, (_, i) => i)
   const own = block.form === 'multiplet' ? all : all.filter((i) => multiplet.nominalTwoJLower[i] === block.lower.twoJ && multiplet.nominalTwoJUpper[i] === block.upper.twoJ)
   const links = own.map((i) => multiplet.links[multiplet.linkOf[i] ?? 0]).filter((link) => link !== undefined)

@@ -1,7 +1,5 @@
 import { Field, FixedSizeList, Float64, Schema } from 'apache-arrow'
 import { createHash } from 'node:crypto'
-import { G_S } from '@/lib/atomic/constants'
-import { multipletOfTerms } from '@/lib/atomic/field-multiplet'
 import { type FieldTable, fieldTableSteps, TABLE_PROOF } from '@/lib/atomic/field-table'
 import { batchMessage, endMark, type NodePlan, padded, schemaMessage } from '@/lib/prediction/bulk/arrow-message'
 import type { MultipletGiven } from '@/lib/prediction/bulk/block'
@@ -60,11 +58,10 @@ function withoutNegativeZeros(table: FieldTable): FieldTable {
 
 function* makeTable(job: FieldTableJob, block: ModelledBlock): Generator<null, FieldTable> {
   const { fromTesla, toTesla, maxErrorInvcm, maxStrengthError } = job
-  if (job.model === 'linear') return linearTable(block, fromTesla, toTesla)
+  if (block.diagonalised === null) return linearTable(block, fromTesla, toTesla)
   const largest = block.centres.reduce((most, centre) => Math.max(most, Math.abs(centre)), 0)
-  const multiplet = multipletOfTerms(job.multiplet.lower, job.multiplet.upper, job.multiplet.kind, { gS: job.gS ?? G_S })
   // twice the rounding is kept free, since the field moves positions beyond the largest without it; never more than half of what is asked
-  return yield* fieldTableSteps(multiplet, { fromTesla, toTesla, toleranceInvcm: Math.max(maxErrorInvcm - 2 * positionRounding(largest), maxErrorInvcm / 2), toleranceStrength: maxStrengthError })
+  return yield* fieldTableSteps(block.diagonalised.multiplet, { fromTesla, toTesla, toleranceInvcm: Math.max(maxErrorInvcm - 2 * positionRounding(largest), maxErrorInvcm / 2), toleranceStrength: maxStrengthError })
 }
 
 const bytesOf = (numbers: Float64Array): Uint8Array => new Uint8Array(numbers.buffer, numbers.byteOffset, numbers.byteLength)

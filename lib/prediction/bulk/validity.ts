@@ -1,4 +1,4 @@
-import { autoModel, type FieldModel, type LinearLawValidity, linearLawValidity } from '@/lib/atomic/intermediate-validity'
+import { autoModel, type FieldModel, linearLawLevelValidity, type LinearLawValidity, linearLawValidity } from '@/lib/atomic/intermediate-validity'
 import { missingJ, type TermLevels } from '@/lib/atomic/mixing'
 import { remembering } from '@/lib/atomic/remembering'
 import { G_S } from '@/lib/atomic/constants'
@@ -44,16 +44,22 @@ const DECISIONS_REMEMBERED = 2e7
 const decisions = remembering<{ decision: Decision | null }>(DECISIONS_REMEMBERED, (_, key) => 500 + key.length)
 
 /**
- * The model of a block and the error of the linear law at the largest field asked, which decides it under `auto`. In steps, one a line: the lines
- * of a large multiplet take seconds together, and whoever shares the thread has a turn in between.
+ * The model of a block and the error of the linear law at the largest field asked, which decides it under `auto`. In steps, three a line: the
+ * lines of a large multiplet take seconds together, and whoever shares the thread has a turn in between.
  */
 export function* decideSteps(block: BlockGiven, fieldTesla: number, { model, tolerance, gS }: PredictionOptions): Generator<null, Decision> {
   const remembered = decisions(`${model}|${tolerance}|${gS}|${fieldTesla}|${block.form}|${block.kind}|${JSON.stringify([block.lower, block.upper])}`, () => ({ decision: null }))
   if (remembered.decision !== null) return remembered.decision
   const lines: LinearLawValidity[] = []
+  const factors = { tolerance, gS: gS ?? G_S }
   for (const { lower, upper } of linesOf(block)) {
+    // the limits of both levels are remembered, so that the line finds them
+    for (const end of [lower, upper]) {
+      yield null
+      linearLawLevelValidity(end, fieldTesla, factors)
+    }
     yield null
-    lines.push(linearLawValidity({ kind: block.kind, lower, upper, fieldTesla, tolerance, gS: gS ?? G_S }))
+    lines.push(linearLawValidity({ kind: block.kind, lower, upper, fieldTesla, ...factors }))
   }
   const positions = worst(lines.map((line) => line.positions), tolerance)
   const strengths = worst(lines.map((line) => line.strengths), tolerance)
