@@ -104,7 +104,6 @@ export const levelRevisions = pgTable(
     check('level_revisions_status', sql`(${t.status} = 'active' and ${t.retiredReason} is null and ${t.successor} is null) or (${t.status} = 'retired' and ${t.retiredReason} is not null)`),
     check('level_revisions_successor', sql`${t.successor} <> ${t.levelId}`),
     check('level_revisions_g_chosen', sql`num_nonnulls(${t.gChosen}, ${t.gChosenReason}) <> 1 and ${isFinite(t.gChosen)}`),
-    index('level_revisions_identity').on(t.levelId, t.publishedFrom),
     index('level_revisions_species').on(t.speciesId, t.publishedFrom),
   ],
 )

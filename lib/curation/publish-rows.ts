@@ -63,19 +63,19 @@ const ORDER: readonly ChangeKind[] = ['source', 'species', 'isotope', 'level', '
 
 const of = ({ amendments }: Publication, kind: ChangeKind): SQL => sql`c.amendment_id = any(${sql.param(amendments)}::uuid[]) and c.kind = ${kind}`
 
-/** The identities of what is new. */
-const identities = (publication: Publication): SQL[] => [
-  sql`insert into sources (key) select c.subject from amendment_changes c where ${of(publication, 'source')} and c.action = 'create' order by c.position`,
-  sql`insert into species (id, ordinal)
+/** The identities of what is new, the many last. */
+const identities = (publication: Publication): [ChangeKind, SQL][] => [
+  ['source', sql`insert into sources (key) select c.subject from amendment_changes c where ${of(publication, 'source')} and c.action = 'create' order by c.position`],
+  ['species', sql`insert into species (id, ordinal)
       select c.subject, (select coalesce(max(ordinal), 0) from species) + row_number() over (order by c.position)
-      from amendment_changes c where ${of(publication, 'species')} and c.action = 'create'`,
-  sql`insert into isotopes (id, species_id, mass_number)
-      select c.subject, split_part(c.subject, '/', 1), split_part(c.subject, '/', 2)::integer from amendment_changes c where ${of(publication, 'isotope')} and c.action = 'create' order by c.position`,
-  sql`insert into levels (id, species_id, ordinal)
-      select c.subject, split_part(c.subject, '.', 1), split_part(c.subject, '.', 2)::integer from amendment_changes c where ${of(publication, 'level')} and c.action = 'create' order by c.position`,
-  sql`insert into hyperfine_constants (level_id, isotope_id)
+      from amendment_changes c where ${of(publication, 'species')} and c.action = 'create'`],
+  ['isotope', sql`insert into isotopes (id, species_id, mass_number)
+      select c.subject, split_part(c.subject, '/', 1), split_part(c.subject, '/', 2)::integer from amendment_changes c where ${of(publication, 'isotope')} and c.action = 'create' order by c.position`],
+  ['level', sql`insert into levels (id, species_id, ordinal)
+      select c.subject, split_part(c.subject, '.', 1), split_part(c.subject, '.', 2)::integer from amendment_changes c where ${of(publication, 'level')} and c.action = 'create' order by c.position`],
+  ['hyperfine', sql`insert into hyperfine_constants (level_id, isotope_id)
       select split_part(c.subject, '/', 1), split_part(c.subject, '.', 1) || '/' || split_part(c.subject, '/', 2)
-      from amendment_changes c where ${of(publication, 'hyperfine')} and c.action = 'create' order by c.position`,
+      from amendment_changes c where ${of(publication, 'hyperfine')} and c.action = 'create' order by c.position`],
 ]
 
 /** Ends what is replaced or retired. */
@@ -108,9 +108,18 @@ function retirements(publication: Publication): SQL {
     where ${of(publication, 'level')} and c.action = 'retire' order by c.position`
 }
 
-/** Writes the revisions of every kind but measured g_J, which are several for one level. All in sets: an edition may bring 100 000 levels. */
-export async function writeRevisions(tx: Tx, publication: Publication, kinds: ReadonlySet<ChangeKind>): Promise<void> {
-  for (const statement of identities(publication)) await tx.execute(statement)
+/**
+ * Writes the revisions of every kind but measured g_J, which are several for one level. All in sets: an edition may bring 100 000 levels.
+ * `onLong` is called when the first statement that may take long has been asked.
+ */
+export async function writeRevisions(tx: Tx, publication: Publication, kinds: ReadonlySet<ChangeKind>, onLong: () => void): Promise<void> {
+  for (const [kind, statement] of identities(publication)) {
+    if (!kinds.has(kind)) continue
+    const asked = tx.execute(statement).then(() => undefined)
+    if (kind === 'level') onLong()
+    await asked
+  }
+  onLong()
   for (const kind of ORDER.filter((one) => kinds.has(one))) {
     await tx.execute(ending(publication, kind))
     await tx.execute(revisions(publication, kind))

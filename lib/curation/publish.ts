@@ -40,9 +40,9 @@ function checkSeen(accepted: readonly AcceptedAmendment[], seen: NewEdition['ame
 }
 
 /** Writes everything that the edition changes. Runs beside the checks: where they find a conflict all of it is rolled back. */
-async function write(tx: Tx, edition: number, { amendments, changes }: Accepted, measured: () => Promise<Map<string, Checked>>): Promise<void> {
+async function write(tx: Tx, edition: number, { amendments, changes }: Accepted, measured: () => Promise<Map<string, Checked>>, onLong: () => void): Promise<void> {
   const publication = { edition, amendments: amendments.map(({ id }) => id) }
-  await writeRevisions(tx, publication, new Set(changes.map(({ kind }) => kind)))
+  await writeRevisions(tx, publication, new Set(changes.map(({ kind }) => kind)), onLong)
   await writeFeed(tx, publication)
   const checked = await measured()
   const levels = changes.filter(({ kind, action }) => kind === 'level' && action !== 'retire')
@@ -69,10 +69,14 @@ async function enter(tx: Tx, given: NewEdition): Promise<Entered> {
   checkSeen(accepted.amendments, given.amendments)
   if (accepted.amendments.length === 0) throw new Problem('nothing_to_publish', 'No amendment is accepted and waiting; nothing was published.')
   const number = accepted.table.edition + 1
-  // the database writes while the checks run here, so it is asked first, and the event loop sends what it is asked before the checks take the
-  // processor; what they find goes before what it may refuse
-  const checking = new Promise((sent) => void setImmediate(sent)).then(() => checkUnion(accepted))
-  const writing = write(tx, number, accepted, () => checking).then(() => null, (error: unknown) => ({ error }))
+  // the database writes while the checks run here; what they find goes before what it may refuse. They begin when it has been asked for what
+  // takes long and the event loop has sent that, since a short statement would wait for them to pause
+  let begin = (): void => undefined
+  const checking = new Promise<void>((begun) => void (begin = begun)).then(() => new Promise((sent) => void setImmediate(sent))).then(() => checkUnion(accepted))
+  const writing = write(tx, number, accepted, () => checking, begin).then(() => null, (error: unknown) => {
+    begin()
+    return { error }
+  })
   const { conflicts, otherwise, notes } = await judge(accepted, checking, given.notes).catch(async (error: unknown) => {
     // what is being written has to end in this transaction, not after it
     await writing
