@@ -7,29 +7,13 @@ import { PolarisationSign, polarisationName } from '@/app/_components/plots/pola
 import { signed } from '@/app/_components/plots/ruler'
 import { Symbols } from '@/app/_components/plots/symbols'
 import { RULE_NAMES } from '../_parts/rule-words'
+import { numericColumn } from './numeric-column'
 
 type Name = keyof Component & string
 
 const absent = (text: string) => <span className="text-muted">{text}</span>
 
-/** A column of plain numbers: copied in full, shown as `print` gives them. */
-function numeric(name: Name, header: React.ReactNode, print: (value: number) => string, missing = 'not known'): Column<Component> {
-  const value = (component: Component): number | null => {
-    const found = component[name]
-    return typeof found === 'number' ? found : null
-  }
-  return {
-    name,
-    header,
-    align: 'right',
-    value,
-    sort: true,
-    cell: (component) => {
-      const found = value(component)
-      return found === null ? absent(missing) : <span title={String(found)}>{print(found)}</span>
-    },
-  }
-}
+const numeric = numericColumn<Component>
 
 /** The pair that a sublevel tends to at high field: what it is called, and where the two numbers stand. */
 const far = (name: string, header: React.ReactNode, mL: 'm_l_lower' | 'm_l_upper', mS: 'm_s_lower' | 'm_s_upper'): Column<Component> => ({

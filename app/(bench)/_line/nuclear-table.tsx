@@ -7,26 +7,11 @@ import { PolarisationSign, polarisationName } from '@/app/_components/plots/pola
 import { signed } from '@/app/_components/plots/ruler'
 import { Symbols } from '@/app/_components/plots/symbols'
 import { nuclearKey } from './nuclear-key'
+import { numericColumn } from './numeric-column'
 
 type Name = keyof HyperfineComponent & string
 
-function numeric(name: Name, header: React.ReactNode, print: (value: number) => string, missing = 'not known'): Column<HyperfineComponent> {
-  const value = (one: HyperfineComponent): number | null => {
-    const found = one[name]
-    return typeof found === 'number' ? found : null
-  }
-  return {
-    name,
-    header,
-    align: 'right',
-    value,
-    sort: true,
-    cell: (one) => {
-      const found = value(one)
-      return found === null ? <span className="text-muted">{missing}</span> : <span title={String(found)}>{print(found)}</span>
-    },
-  }
-}
+const numeric = numericColumn<HyperfineComponent>
 
 const copied = (name: Name): Column<HyperfineComponent> => ({ ...numeric(name, name, String), only: 'copy' })
 
