@@ -8,7 +8,7 @@ import { type Fault, faultsProblem } from '@/lib/problem'
 import type { LineEndGiven, LineGiven, MultipletGiven } from '@/lib/prediction/bulk/block'
 import { canJoin } from '@/lib/prediction/bulk/places'
 import { chooseG, type GChoice, memberG } from '@/lib/prediction/g-values'
-import { inlineFaults, inlineLevel, type InlineLevelGiven } from '@/lib/prediction/inline'
+import { inlineFaults, inlineLevel, type InlineLevelGiven, termFaults } from '@/lib/prediction/inline'
 import { judgedOf, type PhysicalLevel, twice, twoJOf } from '@/lib/prediction/levels'
 import { transitionIndices } from '@/lib/prediction/resolve'
 import { membersOf, orderedPair } from '@/lib/prediction/transition'
@@ -27,21 +27,6 @@ function refuseForbidden(lower: PhysicalLevel, upper: PhysicalLevel, kind: Kind,
   if (verdict.rigorous) return
   const failed = verdict.rules.filter((rule) => rule.basis === 'rigorous' && rule.verdict === 'fail').map((rule) => `${rule.rule}: ${rule.detail}`)
   throw new PhysicsError('transition_forbidden', `${name} is forbidden as ${kind}, so it has no components. Broken: ${failed.join('; ')}.`)
-}
-
-/** All levels of one term share S, L and parity, and each J stands once. */
-function termFaults(levels: readonly InlineLevelGiven[], at: string): Fault[] {
-  const [first] = levels
-  const seen = new Set<number>()
-  return levels.flatMap((level, i): Fault[] => {
-    const faults = inlineFaults(level, `${at}/${i}`)
-    for (const name of ['s', 'l', 'parity'] as const) {
-      if (first && level[name] !== first[name]) faults.push({ pointer: `${at}/${i}/${name}`, code: 'term_mixed', detail: `${name} is ${String(level[name])} here and ${String(first[name])} in the first level; the levels of one term share S, L and parity.` })
-    }
-    if (seen.has(level.j)) faults.push({ pointer: `${at}/${i}/j`, code: 'term_mixed', detail: `J = ${level.j} stands twice; each J of a term stands once.` })
-    seen.add(level.j)
-    return faults
-  })
 }
 
 const meanOf = (levels: readonly { energy_invcm: number }[]): number => levels.reduce((sum, level) => sum + level.energy_invcm, 0) / levels.length
@@ -116,7 +101,7 @@ export class BlockMaker {
   }
 
   private inlineMultiplet(asked: { lower: InlineLevelGiven[]; upper: InlineLevelGiven[] }, at: string): MultipletGiven {
-    const faults: Fault[] = [...termFaults(asked.lower, `${at}/lower`), ...termFaults(asked.upper, `${at}/upper`)]
+    const faults: Fault[] = [...termFaults(asked.lower, (i) => `${at}/lower/${i}`), ...termFaults(asked.upper, (i) => `${at}/upper/${i}`)]
     if (meanOf(asked.lower) === meanOf(asked.upper)) faults.push({ pointer: `${at}/upper`, code: 'zero_interval', detail: 'The two terms have equal mean energies, so neither is the lower one.' })
     if (faults.length > 0) throw faultsProblem(faults)
     const [low, high] = meanOf(asked.upper) < meanOf(asked.lower) ? this.turned(asked.upper, asked.lower) : [asked.lower, asked.upper]
